@@ -1,0 +1,2 @@
+//! The `lenzbore` command.
+fn main() {}

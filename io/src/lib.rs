@@ -1,0 +1,1 @@
+//! Case files and units, material book, result folders, HDF5 and XDMF, tables and pictures. Computes no field.

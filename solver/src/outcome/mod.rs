@@ -1,0 +1,9 @@
+//! What is answered: figures with bands, forces, ledger, regime, grids, trace, fields.
+
+mod fields;
+mod figure;
+mod report;
+
+pub use fields::{Fields, Snapshot};
+pub use figure::{Basis, Figure, Location};
+pub use report::{Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters};

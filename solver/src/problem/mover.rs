@@ -1,0 +1,36 @@
+//! Everything that travels: parts with their own closed-form fields.
+
+use crate::sources::Source;
+
+/// Outline of a part's body over any coating, for clearance and overlap; `None` radii for a point dipole.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Outline {
+    /// Inner radius over the coating, m.
+    pub inner_radius_m: f64,
+    /// Outer radius over the coating, m.
+    pub outer_radius_m: f64,
+    /// Axial length over the coating, m.
+    pub length_m: f64,
+}
+
+/// One magnetic part of the mover.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Part {
+    /// The user's name of it.
+    pub name: String,
+    /// Its centre from the mover's reference point, m, upward positive.
+    pub centre_m: f64,
+    /// Its field.
+    pub source: Source,
+    /// Its body (zero sizes for a dipole).
+    pub outline: Outline,
+}
+
+/// The mover: parts fixed to one another, and their common mass.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Mover {
+    /// Magnetic parts, bottom to top.
+    pub parts: Vec<Part>,
+    /// Mass of everything that travels, kg; needed by `Travel::Free`.
+    pub mass_kg: Option<f64>,
+}

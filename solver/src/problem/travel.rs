@@ -1,0 +1,57 @@
+//! How the mover travels.
+
+/// The law of motion.
+#[derive(Debug, Clone, PartialEq)]
+pub enum Travel {
+    /// Uniform speed with settled fields, endless wall.
+    Steady {
+        /// Signed velocity, m/s.
+        velocity_m_per_s: f64,
+    },
+    /// Uniform speed through a finite wall.
+    Traverse(Traverse),
+    /// Equation of motion.
+    Free(Free),
+}
+
+/// Uniform speed from one position to another.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Traverse {
+    /// Speed, m/s, > 0.
+    pub speed_m_per_s: f64,
+    /// Position of the reference point at the start, m.
+    pub from_m: f64,
+    /// Position of the reference point at the end, m.
+    pub to_m: f64,
+}
+
+/// m dv/dt = -m g cos(tilt) + push - friction - air drag - spring + magnetic force.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Free {
+    /// Position of the reference point at release, m.
+    pub release_m: f64,
+    /// Signed velocity at release, m/s.
+    pub entry_velocity_m_per_s: f64,
+    /// The run ends when the reference point reaches this position, m.
+    pub until_m: f64,
+    /// The run ends after this time, s.
+    pub time_limit_s: f64,
+    /// Acceleration of gravity, m/s2, along -z (before tilt).
+    pub gravity_m_per_s2: f64,
+    /// Tilt of the axis from the vertical, rad.
+    pub tilt_rad: f64,
+    /// Constant axial force, N, signed.
+    pub push_newton: f64,
+    /// Constant friction, N, >= 0, against the motion.
+    pub friction_newton: f64,
+    /// Coulomb friction coefficient on the weight's component across the axis (with tilt).
+    pub friction_coefficient: f64,
+    /// Quadratic air drag, N s2/m2: force = -coefficient v |v|.
+    pub air_drag_n_s2_per_m2: f64,
+    /// Spring rate, N/m; 0 for none.
+    pub spring_rate_n_per_m: f64,
+    /// Position where the spring is free of force, m.
+    pub spring_free_at_m: f64,
+    /// Gate positions, m: first and second.
+    pub gates_m: [f64; 2],
+}

@@ -1,0 +1,1 @@
+//! Published checks, each beside its source, and independent semi-analytic paths.
