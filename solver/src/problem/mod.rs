@@ -1,14 +1,23 @@
-//! What is asked: wall, mover, travel, accuracy, all in SI units and valid by construction.
+//! What is asked: wall, mover, travel, accuracy, all in SI units. [`Problem::faults`] says why a problem has no answer.
 
 mod accuracy;
+mod faces;
+mod fault;
 mod mover;
+mod quantity;
 mod travel;
+mod validity;
 mod wall;
 
 pub use accuracy::{Accuracy, SnapshotPlan};
+pub use fault::{Named, ProblemFault, Subject};
 pub use mover::{Mover, Outline, Part};
+pub use quantity::{Quantity, SensibleRange};
 pub use travel::{Free, Travel, Traverse};
 pub use wall::{Extent, Layer, Wall};
+
+#[cfg(test)]
+mod tests;
 
 /// One question for the solver.
 #[derive(Debug, Clone, PartialEq)]

@@ -1,0 +1,246 @@
+//! What can be wrong with a problem.
+
+use std::fmt::{Display, Formatter};
+
+use super::quantity::Quantity;
+
+/// Which part of a problem a number belongs to.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+pub enum Subject {
+    /// The wall as a whole.
+    Wall,
+    /// A layer, by its index.
+    Layer(usize),
+    /// The mover as a whole.
+    Mover,
+    /// A part of the mover, by its index.
+    Part(usize),
+    /// The travel.
+    Travel,
+    /// The wanted accuracy.
+    Accuracy,
+    /// The plan of snapshots.
+    Snapshots,
+}
+
+/// A layer or part by index and name.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Named {
+    /// Index in its list.
+    pub index: usize,
+    /// The user's name of it.
+    pub name: String,
+}
+
+impl Display for Named {
+    fn fmt(&self, f: &mut Formatter<'_>) -> std::fmt::Result {
+        write!(f, "'{}'", self.name)
+    }
+}
+
+/// One reason why a [`super::Problem`] has no answer.
+#[derive(Debug, Clone, PartialEq, thiserror::Error)]
+#[non_exhaustive]
+pub enum ProblemFault {
+    /// A number that is not finite, or far outside what can be built.
+    #[error("{of} has an impossible {quantity}: {value} {}", quantity.unit())]
+    Impossible {
+        /// Which part of the problem.
+        subject: Subject,
+        /// The same in words.
+        of: String,
+        /// Which number.
+        quantity: Quantity,
+        /// The value found, SI.
+        value: f64,
+    },
+    /// A layer whose inner radius is not below its outer one.
+    #[error("layer {layer} has no thickness: inner diameter {} and outer diameter {}",
+        mm(2.0 * inner_radius_m), mm(2.0 * outer_radius_m))]
+    LayerInsideOut {
+        /// The layer.
+        layer: Named,
+        /// Its inner radius, m.
+        inner_radius_m: f64,
+        /// Its outer radius, m.
+        outer_radius_m: f64,
+    },
+    /// A layer whose upper end is not above its lower one.
+    #[error("layer {layer} has no length: it reaches from {} to {}", mm(*from_m), mm(*to_m))]
+    LayerEmpty {
+        /// The layer.
+        layer: Named,
+        /// Its lower end, m.
+        from_m: f64,
+        /// Its upper end, m.
+        to_m: f64,
+    },
+    /// A layer that reaches beyond the wall's ends.
+    #[error("layer {layer} reaches from {} to {}, beyond the wall's 0 to {}", mm(*from_m), mm(*to_m), mm(*length_m))]
+    LayerBeyondWall {
+        /// The layer.
+        layer: Named,
+        /// Its lower end, m.
+        from_m: f64,
+        /// Its upper end, m.
+        to_m: f64,
+        /// The wall's length, m.
+        length_m: f64,
+    },
+    /// Two layers that fill the same space.
+    #[error("layers {first} and {second} overlap: both fill diameters {} to {}{}",
+        mm(2.0 * radii_m[0]), mm(2.0 * radii_m[1]), along(*heights_m))]
+    LayersOverlap {
+        /// The first layer.
+        first: Named,
+        /// The second layer.
+        second: Named,
+        /// Radii that both fill, m.
+        radii_m: [f64; 2],
+        /// Heights that both fill, m; `None` in an endless wall.
+        heights_m: Option<[f64; 2]>,
+    },
+    /// A part whose inner radius is not below its outer one.
+    #[error("part {part} has no thickness: inner diameter {} and outer diameter {}",
+        mm(2.0 * inner_radius_m), mm(2.0 * outer_radius_m))]
+    PartInsideOut {
+        /// The part.
+        part: Named,
+        /// Its inner radius, m.
+        inner_radius_m: f64,
+        /// Its outer radius, m.
+        outer_radius_m: f64,
+    },
+    /// Two parts of the mover that fill the same space.
+    #[error("parts {first} and {second} overlap along {} of the axis, from {} to {}",
+        mm(heights_m[1] - heights_m[0]), mm(heights_m[0]), mm(heights_m[1]))]
+    PartsOverlap {
+        /// The first part.
+        first: Named,
+        /// The second part.
+        second: Named,
+        /// Heights that both fill, from the mover's reference point, m.
+        heights_m: [f64; 2],
+    },
+    /// A part without running clearance from a layer.
+    #[error("part {part} (diameters {} to {}) has no running clearance from layer {layer} (diameters {} to {})",
+        mm(2.0 * part_radii_m[0]), mm(2.0 * part_radii_m[1]), mm(2.0 * layer_radii_m[0]), mm(2.0 * layer_radii_m[1]))]
+    NoClearance {
+        /// The part.
+        part: Named,
+        /// Its radii over the coating, m.
+        part_radii_m: [f64; 2],
+        /// The layer.
+        layer: Named,
+        /// The layer's radii, m.
+        layer_radii_m: [f64; 2],
+    },
+    /// A wall without layers.
+    #[error("the wall has no layer")]
+    NoLayer,
+    /// A mover without a magnetic part.
+    #[error("the mover has no magnet, dipole or coil")]
+    NoPart,
+    /// A wall in which nothing can happen.
+    #[error("the wall neither conducts nor is it permeable: there is nothing to solve")]
+    InertWall,
+    /// A mover without a field.
+    #[error("the mover has no field: every magnet, dipole and coil is of strength zero")]
+    InertMover,
+    /// Settled fields asked of a wall with ends.
+    #[error("law 'steady' has settled fields, and a wall {} long has none", mm(*length_m))]
+    SteadyNeedsEndlessWall {
+        /// The wall's length, m.
+        length_m: f64,
+    },
+    /// Travel through a wall that has no ends.
+    #[error("law '{law}' travels from one end of the wall to the other, and an endless wall has no ends")]
+    TravelNeedsEnds {
+        /// The law.
+        law: &'static str,
+    },
+    /// Motion under forces without a mass.
+    #[error("law 'free' solves the equation of motion, which needs the mass of all that travels")]
+    FreeNeedsMass,
+    /// Travel that starts where it ends.
+    #[error("the travel ends where it starts, at {}", mm(*at_m))]
+    NoTravel {
+        /// The position, m.
+        at_m: f64,
+    },
+    /// Two gates at one place.
+    #[error("both gates stand at {}", mm(*at_m))]
+    GatesCoincide {
+        /// The position, m.
+        at_m: f64,
+    },
+    /// Fewer or more grid levels than extrapolation can use.
+    #[error("{found} grid levels: extrapolation and its band need 3 to 5")]
+    Levels {
+        /// The number found.
+        found: usize,
+    },
+    /// Cells across the wall that the levels cannot refine.
+    #[error("{found} cells across the wall: the levels need an even number from 4 to 200")]
+    CellsAcrossWall {
+        /// The number found.
+        found: usize,
+    },
+    /// Instants of snapshots that do not increase from 0.
+    #[error("the instants of the snapshots do not increase from 0")]
+    Instants,
+}
+
+impl ProblemFault {
+    /// What would be legal, in the user's words.
+    #[must_use]
+    pub fn legal(&self) -> Option<String> {
+        match self {
+            Self::Impossible { quantity, .. } => {
+                let range = quantity.sensible();
+                let zero = if range.zero && !range.signed { "0, or " } else { "" };
+                let low = if range.signed { -range.highest } else { range.lowest };
+                Some(format!("sensible: {zero}{low} to {} {}", range.highest, quantity.unit()).trim_end().to_owned())
+            }
+            Self::NoClearance { layer_radii_m: [inner, outer], .. } => {
+                let around = format!("around it, wider than {} inside", mm(2.0 * outer));
+                Some(if *inner > 0.0 {
+                    format!("a part runs in the bore, less than {} across, or {around}", mm(2.0 * inner))
+                } else {
+                    format!("layer and part share the axis: a part runs {around}")
+                })
+            }
+            _ => None,
+        }
+    }
+
+    /// What to do about it, in the user's words.
+    #[must_use]
+    pub fn mend(&self) -> Option<String> {
+        let text = match self {
+            Self::SteadyNeedsEndlessWall { .. } => {
+                "use law = \"traverse\" to travel through it, or length = \"endless\" to leave its ends out"
+            }
+            Self::TravelNeedsEnds { .. } => "give the wall a length, or use law = \"steady\"",
+            Self::FreeNeedsMass => "give [mover] its mass, as mass = \"0.42 kg\"",
+            Self::LayersOverlap { .. } => {
+                "layers may touch or leave gaps, never overlap: change a size, or 'from' and 'to'"
+            }
+            Self::LayerBeyondWall { .. } => "'from' and 'to' count from the wall's lower end",
+            Self::PartsOverlap { .. } => "parts may touch: move one ('at'), or place them by 'stack'",
+            Self::InertWall => "give a layer a conductivity",
+            _ => return None,
+        };
+        Some(text.to_owned())
+    }
+}
+
+/// A length in mm with as many digits as it takes.
+fn mm(metres: f64) -> String {
+    let rounded = (metres * 1e9).round() / 1e6;
+    format!("{rounded} mm")
+}
+
+fn along(heights_m: Option<[f64; 2]>) -> String {
+    heights_m.map(|[a, b]| format!(", from {} to {} along the axis", mm(a), mm(b))).unwrap_or_default()
+}
