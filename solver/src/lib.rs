@@ -1,13 +1,68 @@
 //! The axisymmetric magnetic diffusion solver.
 //!
-//! A [`problem::Problem`] states wall, mover and travel in SI units; solving it gives an
+//! A [`problem::Problem`] states wall, mover and travel in SI units; [`solve`] and [`drag_curve`] give an
 //! [`outcome::Outcome`]: figures with numerical bands, forces by three routes, the energy ledger,
 //! the trace and the fields. This crate knows no files.
+//!
+//! Unknown psi(r, z, t) = r A_phi; B_z = (1/r) dpsi/dr, B_r = -(1/r) dpsi/dz, E_phi = -(1/r) dpsi/dt, J_phi = sigma E_phi:
+//!
+//!   -d/dr((nu/r) dpsi/dr) - d/dz((nu/r) dpsi/dz) + (sigma/r) dpsi/dt = J_source + curl of (nu mu0 M).
 //!
 //! Signs: z upward positive, velocities signed, drag positive when it opposes the motion.
 
 pub mod constants;
+pub mod extrapolate;
+pub mod fault;
 pub mod monitor;
 pub mod outcome;
 pub mod problem;
 pub mod sources;
+
+mod band;
+mod fields;
+mod force;
+mod grid_report;
+mod grid_rules;
+mod interpolate;
+mod linear;
+mod operators;
+mod placement;
+mod regime;
+mod settled;
+mod target;
+mod wall_nodes;
+
+use fault::SolveFault;
+use monitor::Monitor;
+use outcome::Outcome;
+use problem::{Extent, Problem, Travel};
+
+/// Solves what the problem's law of travel asks.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    match &problem.travel {
+        Travel::Steady { velocity_m_per_s } => {
+            require_endless(problem)?;
+            settled::steady(problem, *velocity_m_per_s, monitor)
+        }
+        Travel::Traverse(_) | Travel::Free(_) => Err(SolveFault::Unsuited("being built")),
+    }
+}
+
+/// Drag against speed with settled fields; a finite wall is taken as endless by the caller.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn drag_curve(problem: &Problem, speeds_m_per_s: &[f64], monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    require_endless(problem)?;
+    settled::curve(problem, speeds_m_per_s, monitor)
+}
+
+fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
+    match problem.wall.extent {
+        Extent::Endless => Ok(()),
+        Extent::Finite { .. } => Err(SolveFault::Unsuited("settled fields need an endless wall; use traverse for a finite one")),
+    }
+}

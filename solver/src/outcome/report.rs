@@ -43,8 +43,8 @@ pub struct Regime {
     pub gap_ratio: f64,
     /// Magnetic Reynolds number mu0 sum(sigma mu_r w) v at the characteristic speed.
     pub magnetic_reynolds: f64,
-    /// Skin or wake depth sqrt(2 lambda / (mu sigma v)) / wall thickness.
-    pub depth_ratio: f64,
+    /// Least skin or wake depth sqrt(2 lambda / (mu sigma v)) / layer thickness; none at rest.
+    pub depth_ratio: Option<f64>,
     /// Characteristic speed used, m/s.
     pub speed_m_per_s: f64,
 }
@@ -60,8 +60,8 @@ pub struct GridReport {
     pub nodes_z: usize,
     /// Fewest cells across any layer.
     pub cells_across_wall: usize,
-    /// Cells across the skin or wake depth at the bore face.
-    pub cells_across_depth: f64,
+    /// Cells across the least skin or wake depth; none at rest.
+    pub cells_across_depth: Option<f64>,
     /// Largest ratio of neighbouring cells.
     pub growth: f64,
     /// Largest aspect ratio of a wall cell.

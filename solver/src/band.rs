@@ -1,0 +1,49 @@
+//! The numerical band of a figure.
+//!
+//! For a settled drag, extrapolated by two routes (F: J x B, P: heat / speed) over levels 1 .. n:
+//!
+//!   half = c (|E_n F - E_n P| + 0.1 max |E_n - E_(n-1)| + |half-domain cut - full|) + solver residual,
+//!
+//! E_(n-1) the extrapolation without the coarsest level. c = 0.5 belongs to the grid rule of this crate: both were fixed
+//! together against exact integrals, and change together. A figure with one route only takes the whole first
+//! difference that extrapolation leaves, by its own factor.
+
+use crate::extrapolate::extrapolate;
+
+/// c of the rule.
+const CAUTION: f64 = 0.5;
+/// Share of the last extrapolation step that still counts where a second route exists.
+const STEP_SHARE: f64 = 0.1;
+/// Share of the last extrapolation step for a figure with one route.
+const LONE_STEP_SHARE: f64 = 0.5;
+
+/// A figure on all levels, extrapolated with and without the coarsest.
+#[derive(Debug, Clone, PartialEq)]
+pub(crate) struct Ladder {
+    /// Extrapolated over all levels.
+    pub(crate) value: f64,
+    /// |E_n - E_(n-1)|.
+    pub(crate) step: f64,
+    /// The levels' own values.
+    pub(crate) levels: Vec<f64>,
+}
+
+impl Ladder {
+    /// Extrapolates `levels` at refinement `factors`, at least two.
+    pub(crate) fn new(factors: &[f64], levels: Vec<f64>) -> Self {
+        let value = extrapolate(factors, &levels);
+        let step = (value - extrapolate(&factors[1..], &levels[1..])).abs();
+        Self { value, step, levels }
+    }
+}
+
+/// Half-width for a figure with two routes. `cut` is the change by cutting the domain to half, `residual` the solver's, absolute.
+pub(crate) fn two_routes(first: &Ladder, second: &Ladder, cut: f64, residual: f64) -> f64 {
+    let apart = (first.value - second.value).abs();
+    CAUTION * (apart + STEP_SHARE * first.step.max(second.step) + cut.abs()) + residual.abs()
+}
+
+/// Half-width for a figure with one route.
+pub(crate) fn one_route(figure: &Ladder, cut: f64, residual: f64) -> f64 {
+    LONE_STEP_SHARE * figure.step + CAUTION * cut.abs() + residual.abs()
+}

@@ -1,0 +1,61 @@
+//! Why a solve can fail.
+
+use lenzbore_mesh::MeshFault;
+use thiserror::Error;
+
+/// A solve that gave no answer.
+#[derive(Debug, Clone, PartialEq, Error)]
+#[non_exhaustive]
+pub enum SolveFault {
+    /// The grid cannot be built.
+    #[error("the grid cannot be built: {0}")]
+    Mesh(#[from] MeshFault),
+    /// The matrix was not numerically positive definite.
+    #[error("the factorisation failed on {unknowns} unknowns: the matrix is not positive definite")]
+    Factorisation {
+        /// Unknowns.
+        unknowns: usize,
+    },
+    /// A number that is not finite appeared.
+    #[error("{what} is not a finite number")]
+    NotFinite {
+        /// What.
+        what: &'static str,
+    },
+    /// A linear solve left too large a residual.
+    #[error("a linear solve left a relative residual of {residual:.1e} (limit {limit:.1e})")]
+    Residual {
+        /// The residual.
+        residual: f64,
+        /// The limit.
+        limit: f64,
+    },
+    /// The recurrence did not converge.
+    #[error("the drag-speed recurrence did not converge within {steps} vectors (residual {residual:.1e})")]
+    Recurrence {
+        /// Vectors built.
+        steps: usize,
+        /// Residual left.
+        residual: f64,
+    },
+    /// The time stepping gave up.
+    #[error("the equation of motion did not converge at t = {time_s} s")]
+    Motion {
+        /// Instant, s.
+        time_s: f64,
+    },
+    /// The case does not suit the law of travel.
+    #[error("{0}")]
+    Unsuited(&'static str),
+    /// More memory would be needed than the machine has.
+    #[error("the solve would need {needed_mib} MiB of memory; {available_mib} MiB are available")]
+    Memory {
+        /// Needed, MiB.
+        needed_mib: u64,
+        /// Available, MiB.
+        available_mib: u64,
+    },
+    /// Stopped on request.
+    #[error("interrupted")]
+    Interrupted,
+}

@@ -1,0 +1,41 @@
+//! Whether the wanted accuracy was met, and what would meet it.
+
+use crate::outcome::{Accuracies, Figure};
+use crate::problem::Accuracy;
+
+/// Levels to begin with.
+const FIRST_LEVELS: usize = 3;
+/// Levels at most.
+pub(crate) const MOST_LEVELS: usize = 5;
+
+/// Levels to begin with: the case's own number, or three.
+pub(crate) fn levels_wanted(accuracy: &Accuracy) -> usize {
+    accuracy.levels.unwrap_or(FIRST_LEVELS).clamp(FIRST_LEVELS, MOST_LEVELS)
+}
+
+/// Whether a finer level may be added on our own.
+pub(crate) fn may_add_level(accuracy: &Accuracy, count: usize) -> bool {
+    accuracy.levels.is_none() && count < MOST_LEVELS
+}
+
+/// Compares every figure's band with the target.
+pub(crate) fn verdict(figures: &[Figure], target_relative: f64, levels: usize) -> Accuracies {
+    let relative = |f: &Figure| if f.band > 0.0 { f.band / f.value.abs() } else { 0.0 };
+    let worst = figures.iter().map(|f| (f.name.clone(), relative(f))).max_by(|a, b| a.1.total_cmp(&b.1));
+    let met = worst.as_ref().is_none_or(|(_, r)| *r <= target_relative);
+    let advice = (!met).then(|| advice(target_relative, worst.as_ref(), levels));
+    Accuracies { target_relative, met, worst, advice }
+}
+
+fn advice(target: f64, worst: Option<&(String, f64)>, levels: usize) -> String {
+    let miss = worst.map_or(1.0, |(_, r)| r / target);
+    let name = worst.map_or("a figure", |(n, _)| n.as_str());
+    if levels < MOST_LEVELS {
+        format!("{name} misses the target by a factor of {miss:.1}: accuracy.levels = {} would meet it or come closer", levels + 1)
+    } else {
+        format!(
+            "{name} misses the target by a factor of {miss:.1} on the finest levels: raise accuracy.cells_across_wall or accept a target of {:.1e}",
+            target * miss
+        )
+    }
+}
