@@ -50,7 +50,7 @@ class Cylinder:
         return self._end(r, z + half) - self._end(r, z - half)
 
     def _end(self, r, zeta):
-        """rA of the sheet below height zeta, less a constant that cancels between the two ends."""
+        """One end of the sheet: r A of the closed form at height zeta above it."""
         a = self.radius
         h2 = 4 * a * r / (a + r) ** 2
         k2 = 4 * a * r / ((a + r) ** 2 + zeta**2)
@@ -85,7 +85,7 @@ def _gamma(k, speed, inner, outer, conductivity):
     def bessel(x):
         return ive(1, x), kve(1, x), ive(0, x), kve(0, x)
 
-    # Wall: A = C ive-like growing from b inward + D decaying from a; scaled to 1 at b and a.
+    # Wall: A = C I1(qr) + D K1(qr), I scaled to its value at b and K to its value at a, so nothing overflows.
     ia, ka, i0a, k0a = bessel(q * a)
     ib, kb, i0b, k0b = bessel(q * b)
     phase_a = np.exp(1j * (q * a).imag)

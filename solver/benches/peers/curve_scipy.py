@@ -11,7 +11,6 @@ import time
 import numpy as np
 import scipy
 import scipy.sparse as sp
-from scipy.sparse.linalg import splu
 
 import closed_forms
 import fd_scheme
@@ -27,7 +26,8 @@ CASES = {
 class Level:
     """All that one grid needs and no speed changes."""
 
-    def __init__(self, source, r, z, inner, outer):
+    def __init__(self, source, r, z, inner, outer, slope, ordering):
+        self.ordering = ordering
         across = fd_scheme.conductance_across(r, inner, outer, CONDUCTIVITY)
         self.wall = np.flatnonzero(across > 0)
         self.shape = (len(z) - 2, len(r) - 2)
@@ -35,17 +35,20 @@ class Level:
         half = np.full(self.shape[0] - 1, 0.5)
         self.convection = sp.kron(sp.diags_array([half, -half], offsets=[1, -1]), sp.diags_array(across)).tocsc()
         rim = r[1:-1][self.wall][None, :]
-        self.slope = source.psi_z(rim, z[1:-1, None])
+        dual_z = ((z[2:] - z[:-2]) / 2)[:, None]
+        if slope == "closed-form":
+            self.slope = source.psi_z(rim, z[1:-1, None])
+        else:
+            psi = source.psi(rim, z[:, None])
+            self.slope = (psi[2:] - psi[:-2]) / 2 / dual_z
         driven = np.zeros(self.shape)
-        driven[:, self.wall] = across[self.wall] * self.slope * ((z[2:] - z[:-2]) / 2)[:, None]
+        driven[:, self.wall] = across[self.wall] * self.slope * dual_z
         self.driven = driven.ravel()
 
     def drag(self, speed):
         """Axial force of the wall's currents on the magnet's field, J x B summed over the rings."""
         matrix = (self.stiffness - speed * self.convection).tocsc()
-        # The pattern is symmetric: a symmetric ordering without pivoting is the fastest setting of SuperLU here.
-        factor = splu(matrix, permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0, options={"SymmetricMode": True})
-        reaction = factor.solve(speed * self.driven)
+        reaction = fd_scheme.factorise(matrix, self.ordering).solve(speed * self.driven)
         current = speed * (self.driven + self.convection @ reaction).reshape(self.shape)[:, self.wall]
         return 2 * np.pi * float(np.sum(current * self.slope))
 
@@ -56,14 +59,14 @@ def extrapolate(factors, values):
     return float(np.linalg.solve(powers, np.array(values))[0])
 
 
-def build(case, factors, top_speed, grid_file):
+def build(case, factors, top_speed, grid_file, slope, ordering):
     """The levels, on given node lines or on lines made for the greatest speed."""
     source, inner, outer = CASES[case]
     if grid_file:
         lines = grids.load(grid_file)
     else:
         lines = [grids.moving_frame(source, inner, outer, CONDUCTIVITY, top_speed, f) for f in factors]
-    return [Level(source, r, z, inner, outer) for r, z in lines]
+    return [Level(source, r, z, inner, outer, slope, ordering) for r, z in lines]
 
 
 def main():
@@ -73,13 +76,16 @@ def main():
     parser.add_argument("--at", type=float, nargs="+", help="these speeds (m/s) in place of the range")
     parser.add_argument("--factors", type=float, nargs="+", default=[1.0, 1.5, 2.0], help="refinement of each level")
     parser.add_argument("--grids", help='JSON file of node lines {"levels": [{"r": [...], "z": [...]}]}, metres')
+    parser.add_argument("--slope", choices=["closed-form", "differences"], default="closed-form",
+                        help="d psi_s/dz at the nodes: exact, or differences of psi_s between neighbours")
+    parser.add_argument("--ordering", choices=["symmetric", "default"], default="symmetric", help="setting of SuperLU")
     parser.add_argument("--exact", action="store_true", help="also print the error against the exact integral (untimed)")
     options = parser.parse_args()
     start, stop, points = options.speeds
     speeds = options.at or np.geomspace(start, stop, int(points)).tolist()
 
     began = time.perf_counter()
-    levels = build(options.case, options.factors, max(speeds), options.grids)
+    levels = build(options.case, options.factors, max(speeds), options.grids, options.slope, options.ordering)
     if len(levels) != len(options.factors):
         parser.error("--factors must name one refinement for each level of --grids")
     prepared = time.perf_counter()

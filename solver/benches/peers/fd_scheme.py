@@ -7,6 +7,7 @@ K = D^T N D over the free nodes (psi = 0 on the axis and the outer boundary); no
 
 import numpy as np
 import scipy.sparse as sp
+from scipy.sparse.linalg import splu
 
 MU0 = 4e-7 * np.pi
 
@@ -28,3 +29,14 @@ def conductance_across(r, inner, outer, conductivity):
     low = np.clip(mid[:-1], inner, outer)
     high = np.clip(mid[1:], inner, outer)
     return conductivity * np.log(high / low)
+
+
+def factorise(matrix, ordering="symmetric"):
+    """SuperLU of a matrix of symmetric pattern.
+
+    "symmetric" is the fastest setting measured here (minimum degree on the pattern, no pivoting; both K + 2G/dt and
+    K - v C have a positive definite symmetric part); "default" is what a bare `splu(matrix)` does.
+    """
+    if ordering == "default":
+        return splu(matrix)
+    return splu(matrix, permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0, options={"SymmetricMode": True})

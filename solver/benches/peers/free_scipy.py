@@ -19,7 +19,6 @@ import scipy
 import scipy.sparse as sp
 from scipy.interpolate import BarycentricInterpolator, make_interp_spline
 from scipy.optimize import brentq
-from scipy.sparse.linalg import splu
 
 import closed_forms
 import fd_scheme
@@ -37,7 +36,8 @@ RUNGS = 10
 class Space:
     """Operators on one grid, the magnet's flux at the wall and the factorisations of the ladder."""
 
-    def __init__(self, r, z):
+    def __init__(self, r, z, flux, ordering):
+        self.ordering = ordering
         self.stiffness = fd_scheme.stiffness(r, z)
         across = fd_scheme.conductance_across(r, INNER, OUTER, CONDUCTIVITY)
         mid = (z[1:] + z[:-1]) / 2
@@ -47,8 +47,13 @@ class Space:
         self.conductance = conductance[self.wall]
         self.size = conductance.size
         self.height = z[1:-1][along > 0]
-        self.flux = self._flux_spline(r[1:-1][across > 0])
-        self.flux_slope = self.flux.derivative()
+        radii = r[1:-1][across > 0]
+        if flux == "closed-form":
+            self.flux = lambda height: MAGNET.psi(radii[None, :], height[:, None])
+            self.flux_slope = lambda height: MAGNET.psi_z(radii[None, :], height[:, None])
+        else:
+            self.flux = self._flux_spline(radii)
+            self.flux_slope = self.flux.derivative()
         self.factors = {}
 
     def _flux_spline(self, radii):
@@ -71,8 +76,7 @@ class Space:
             diagonal = np.zeros(self.size)
             diagonal[self.wall] = 2 / step * self.conductance
             matrix = (self.stiffness + sp.diags_array(diagonal)).tocsc()
-            self.factors[step] = splu(matrix, permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0,
-                                      options={"SymmetricMode": True})
+            self.factors[step] = fd_scheme.factorise(matrix, self.ordering)
         load = np.zeros((self.size, at_wall.shape[1]))
         load[self.wall] = 2 / step * self.conductance[:, None] * at_wall
         return self.factors[step].solve(load)[self.wall]
@@ -82,8 +86,7 @@ class Space:
         air = np.setdiff1d(np.arange(self.size), self.wall)
         psi = np.zeros(self.size)
         psi[self.wall] = reaction
-        factor = splu(self.stiffness[air][:, air].tocsc(), permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0,
-                      options={"SymmetricMode": True})
+        factor = fd_scheme.factorise(self.stiffness[air][:, air].tocsc(), self.ordering)
         psi[air] = factor.solve(-(self.stiffness @ psi)[air])
         return np.pi * float(psi @ (self.stiffness @ psi))
 
@@ -241,40 +244,49 @@ def figures(trace, space):
 
 
 def node_lines(options):
-    """Node lines of every level."""
+    """Node lines of every level and, where the file gives them, the steps of the pairs at f = 1."""
     if options.grids:
-        return grids.load(options.grids)
+        with open(options.grids, encoding="utf-8") as handle:
+            pairs = json.load(handle).get("pairs_s")
+        return grids.load(options.grids), pairs
     gap, width = INNER - MAGNET.radius, OUTER - INNER
     face = min(width / 4, min(INNER, 2 * gap) / 8)
-    return [grids.wall_frame(LENGTH, INNER, OUTER, face, options.cell, 40 * OUTER, f) for f in options.factors]
+    lines = [grids.wall_frame(LENGTH, INNER, OUTER, face, options.cell, 40 * OUTER, f) for f in options.factors]
+    return lines, None
 
 
 def main():
     parser = argparse.ArgumentParser(description=__doc__, formatter_class=argparse.RawDescriptionHelpFormatter)
-    parser.add_argument("--factors", type=float, nargs="+", default=[1.0, 1.5, 2.0], help="refinement of each level")
-    parser.add_argument("--cell", type=float, default=1.0e-3, help="cell along the wall at f = 1, metres")
+    parser.add_argument("--factors", type=float, nargs="+", default=[1.0, 1.5, 2.0],
+                        help="refinement of each level, 1 first")
+    parser.add_argument("--cell", type=float, default=1.5e-3, help="cell along the wall at f = 1, metres")
     parser.add_argument("--share", type=float, default=1.0, help="greatest travel a step, in cells along the wall")
-    parser.add_argument("--grids", help='JSON file of node lines {"levels": [{"r": [...], "z": [...]}]}, metres')
+    parser.add_argument("--flux", choices=["spline", "closed-form"], default="spline",
+                        help="the magnet's flux at the wall: order-7 spline made once, or elliptic integrals every step")
+    parser.add_argument("--ordering", choices=["symmetric", "default"], default="symmetric", help="setting of SuperLU")
+    parser.add_argument("--grids", help='JSON file {"levels": [{"r": [...], "z": [...]}]}, metres; with "pairs_s": [...] '
+                        "also the step of every pair at f = 1")
     options = parser.parse_args()
 
     began = time.perf_counter()
-    lines = node_lines(options)
+    lines, pairs = node_lines(options)
     if len(lines) != len(options.factors):
         parser.error("--factors must name one refinement for each level of --grids")
-    per_level, pairs = [], None
+    per_level = []
     for factor, (r, z) in zip(options.factors, lines):
         clock = time.perf_counter()
-        space = Space(r, z)
+        space = Space(r, z, options.flux, options.ordering)
         if pairs is None:
             trace, pairs = choose_ladder(space, float(np.min(np.diff(z))), options.share)
         else:
-            trace = replay(space, pairs, factor / options.factors[0])
+            trace = replay(space, pairs, factor)
         found = figures(trace, space)
         found["seconds"] = time.perf_counter() - clock
         per_level.append(found)
     names = ["transit_time_s", "entry_time_s", "entry_speed_m_per_s", "exit_speed_m_per_s", "heat_J"]
     result = {name: extrapolate(options.factors, [level[name] for level in per_level]) for name in names}
     result["seconds"] = time.perf_counter() - began
+    result["flux"] = options.flux
     result["scipy"] = scipy.__version__
     result["ladder_s"] = sorted(set(pairs))
     result["levels"] = per_level
