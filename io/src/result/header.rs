@@ -1,0 +1,33 @@
+//! What a result says of itself besides the outcome: filled in from the resolved case.
+
+use serde_json::{Map, Value};
+
+/// The program that computed a result.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Program {
+    /// Its name.
+    pub name: String,
+    /// Its version.
+    pub version: String,
+}
+
+/// Title, record, resolved case and what stands beside the figures.
+#[derive(Debug, Clone, PartialEq)]
+pub struct ResultHeader {
+    /// Title of the case.
+    pub title: String,
+    /// The case's `[record]`: document, revision, purpose and the like.
+    pub record: Map<String, Value>,
+    /// Digest of the resolved case.
+    pub digest: String,
+    /// The program and its version.
+    pub program: Program,
+    /// The case with every default and book value and its source.
+    pub resolved: Value,
+    /// What the model leaves out.
+    pub not_modelled: Vec<String>,
+    /// A semi-analytic value to hold the figures against, where the case allows one.
+    pub independent: Option<Value>,
+    /// Cautions that come from the case itself; those of the computation follow them.
+    pub cautions: Vec<String>,
+}

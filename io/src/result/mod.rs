@@ -1,0 +1,20 @@
+//! Everything that leaves a run: summary, tables, fields and pictures, in one folder that appears whole or not at all.
+
+#[cfg(test)]
+pub(crate) mod demo;
+#[cfg(test)]
+mod demo_fields;
+mod fault;
+mod finite;
+pub mod folder;
+mod hdf5;
+mod header;
+mod names;
+mod series;
+mod summary;
+mod xdmf;
+
+pub use fault::IoFault;
+pub use header::{Program, ResultHeader};
+pub use series::{Column, csv, curve_columns, trace_columns};
+pub use summary::{summary, summary_text};

@@ -1,0 +1,15 @@
+//! The names of the files in a result folder.
+
+/// Figures, forces, ledger, cautions, the resolved case.
+pub const SUMMARY: &str = "summary.json";
+/// The series of a run.
+pub const TRACE: &str = "trace.csv";
+/// Drag against speed.
+pub const CURVE: &str = "curve.csv";
+/// Grid, regions, snapshots, traces, figures of every level.
+pub const FIELDS: &str = "run.h5";
+/// Opens `run.h5` in a visualisation program.
+pub const FIELDS_INDEX: &str = "run.xdmf";
+
+/// Files by any of which a folder is known as a run's result.
+pub const RESULT_MARKS: [&str; 4] = [SUMMARY, TRACE, CURVE, FIELDS];
