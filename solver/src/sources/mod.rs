@@ -2,6 +2,22 @@
 //!
 //! Every source is coaxial with the z axis and centred at z = 0 of its own frame. Cylindrical coordinates (r, z), r >= 0.
 
+mod coil;
+mod current_loop;
+mod dipole;
+pub mod elliptic;
+mod gauss;
+mod magnet;
+#[cfg(test)]
+mod quadrature;
+mod sheet;
+mod superpose;
+
+pub use coil::Coil;
+pub use dipole::Dipole;
+pub use magnet::Magnet;
+pub use sheet::CylinderSheet;
+
 /// An axisymmetric field in free space.
 pub trait AxialField {
     /// psi = r A_phi, Wb/rad: 2 pi psi is the flux through the disc of radius `r` at height `z`.
