@@ -1,1 +1,5 @@
 //! Case files and units, material book, result folders, HDF5 and XDMF, tables and pictures. Computes no field.
+
+pub mod message;
+pub mod units;
+pub mod result;
