@@ -6,7 +6,7 @@ use std::f64::consts::PI;
 use lenzbore_mesh::Grid;
 
 use crate::constants::MU0;
-use crate::interpolate::{POINTS, stencil};
+use crate::interpolate::{POINTS, Stencil};
 use crate::placement::{MoverSide, StressBand};
 use crate::problem::Mover;
 use crate::sources::Source;
@@ -46,55 +46,47 @@ fn simpson(from: f64, to: f64, f: impl Fn(f64) -> f64) -> f64 {
 
 /// psi at any point by local interpolation; psi = 0 on the axis.
 pub(crate) fn psi_at(grid: &Grid, psi: &[f64], r: f64, z: f64) -> f64 {
-    let (qr, qz) = (stencil(grid.r.nodes(), r), stencil(grid.z.nodes(), z));
-    let mut sum = 0.0;
-    for n in 0..POINTS {
-        let base = grid.node(qr.first, qz.first + n);
-        let row: f64 = qr.value.iter().zip(&psi[base..base + POINTS]).map(|(w, p)| w * p).sum();
-        sum += qz.value[n] * row;
-    }
-    sum
+    let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<POINTS>::at(grid.z.nodes(), z));
+    let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
+    qz.value.iter().enumerate().map(|(n, w)| w * row(n)).sum()
 }
+
+/// Points along the axis for the gradient that a dipole feels: B_z of the wall's currents is smooth there on the scale
+/// of the bore radius, in cells of an eighth of it.
+const AXIAL_POINTS: usize = 10;
+/// Radii from the axis whose polynomial in r^2 gives the limit on it.
+const AXIS_RADII: usize = 4;
 
 /// dB_z/dz on the axis: B_z = 2 psi / r^2 there, as the limit of the polynomial in r^2 through the first radii.
 fn axial_gradient_on_axis(grid: &Grid, psi: &[f64], z: f64) -> f64 {
-    const RADII: usize = 4;
-    let squares: Vec<f64> = grid.r.nodes()[1..=RADII].iter().map(|r| r * r).collect();
+    let squares: Vec<f64> = grid.r.nodes()[1..=AXIS_RADII].iter().map(|r| r * r).collect();
     let limit_weight = |k: usize| -> f64 {
-        (0..RADII).filter(|&m| m != k).map(|m| squares[m] / (squares[m] - squares[k])).product()
+        (0..AXIS_RADII).filter(|&m| m != k).map(|m| squares[m] / (squares[m] - squares[k])).product()
     };
-    let qz = stencil(grid.z.nodes(), z);
-    let mut gradient = 0.0;
-    for n in 0..POINTS {
+    let qz = Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), z);
+    let on_axis = |n: usize| -> f64 {
         let base = grid.node(1, qz.first + n);
-        let on_axis: f64 = (0..RADII).map(|k| limit_weight(k) * 2.0 * psi[base + k] / squares[k]).sum();
-        gradient += qz.slope[n] * on_axis;
-    }
-    gradient
+        (0..AXIS_RADII).map(|k| limit_weight(k) * 2.0 * psi[base + k] / squares[k]).sum()
+    };
+    qz.slope.iter().enumerate().map(|(n, w)| w * on_axis(n)).sum()
 }
 
 /// Axial force on the mover by the Maxwell stress averaged over the running gap, N.
 ///
-/// F = (2 pi / (mu0 (r2 - r1))) integral of r (B_sr B_rz + B_rr B_sz) dr dz, with the mover's own field `source(r, z)`
-/// = (B_r, B_z) and the reaction field from differences of `psi_reaction`. Products of either field with itself carry no net force.
-pub(crate) fn by_stress(
-    grid: &Grid,
-    psi_reaction: &[f64],
-    bands: &[StressBand],
-    source: impl Fn(f64, f64) -> (f64, f64),
-) -> f64 {
-    let (r, z) = (grid.r.nodes(), grid.z.nodes());
+/// F = (2 pi / (mu0 (r2 - r1))) integral of r (B_sr B_rz + B_rr B_sz) dr dz, the mover's own field s and the reaction
+/// field r from differences of `psi_source` and `psi_reaction` (all nodes; the source's are read in the bands only). Products
+/// of either field with itself carry no net force.
+pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], psi_source: &[f64], bands: &[StressBand]) -> f64 {
+    let r = grid.r.nodes();
     let mut force = 0.0;
     for band in bands {
         let (first, last) = (grid.r.nearest(band.inner_m), grid.r.nearest(band.outer_m));
         let mut sum = 0.0;
         for j in 0..grid.nz() - 1 {
-            let zc = 0.5 * (z[j] + z[j + 1]);
             for i in first..last {
-                let rc = 0.5 * (r[i] + r[i + 1]);
                 let (b_r, b_z) = cell_flux_density(grid, psi_reaction, i, j);
-                let (s_r, s_z) = source(rc, zc);
-                sum += rc * (s_r * b_z + b_r * s_z) * grid.r.cell(i) * grid.z.cell(j);
+                let (s_r, s_z) = cell_flux_density(grid, psi_source, i, j);
+                sum += 0.5 * (r[i] + r[i + 1]) * (s_r * b_z + b_r * s_z) * grid.r.cell(i) * grid.z.cell(j);
             }
         }
         let sign = if band.mover == MoverSide::Inside { 1.0 } else { -1.0 };

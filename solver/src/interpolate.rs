@@ -1,32 +1,52 @@
 //! Local Lagrange interpolation on node lines: exact at nodes, high order between them.
 
-/// Points of a local stencil.
+/// Points of the usual local stencil.
 pub(crate) const POINTS: usize = 6;
 
-/// A stencil: first node, weights of the value and of the derivative.
+/// A stencil of `N` points: first node, weights of the value and of the derivative.
 #[derive(Debug, Clone, Copy)]
-pub(crate) struct Stencil {
+pub(crate) struct Stencil<const N: usize> {
     pub(crate) first: usize,
-    pub(crate) value: [f64; POINTS],
-    pub(crate) slope: [f64; POINTS],
+    pub(crate) value: [f64; N],
+    pub(crate) slope: [f64; N],
 }
 
-/// The stencil of the `POINTS` nodes around `s`; `nodes` has at least that many.
-pub(crate) fn stencil(nodes: &[f64], s: f64) -> Stencil {
-    let above = nodes.partition_point(|&x| x <= s);
-    let first = above.saturating_sub(POINTS / 2).min(nodes.len().saturating_sub(POINTS));
-    let x = &nodes[first..first + POINTS];
-    let (mut value, mut slope) = ([0.0; POINTS], [0.0; POINTS]);
-    for k in 0..POINTS {
-        let others = || (0..POINTS).filter(move |&m| m != k);
-        let scale: f64 = others().map(|m| x[k] - x[m]).product();
-        value[k] = others().map(|m| s - x[m]).product::<f64>() / scale;
-        slope[k] = others()
-            .map(|skip| others().filter(|&m| m != skip).map(|m| s - x[m]).product::<f64>())
-            .sum::<f64>()
-            / scale;
+impl<const N: usize> Stencil<N> {
+    /// The stencil of the `N` nodes around `s`; `nodes` has at least that many.
+    pub(crate) fn at(nodes: &[f64], s: f64) -> Self {
+        let above = nodes.partition_point(|&x| x <= s);
+        let first = above.saturating_sub(N / 2).min(nodes.len().saturating_sub(N));
+        let x = &nodes[first..first + N];
+        let (mut value, mut slope) = ([0.0; N], [0.0; N]);
+        for k in 0..N {
+            let others = || (0..N).filter(move |&m| m != k);
+            let scale: f64 = others().map(|m| x[k] - x[m]).product();
+            value[k] = others().map(|m| s - x[m]).product::<f64>() / scale;
+            let without = |skip: usize| others().filter(|&m| m != skip).map(|m| s - x[m]).product::<f64>();
+            slope[k] = others().map(without).sum::<f64>() / scale;
+        }
+        Self { first, value, slope }
     }
-    Stencil { first, value, slope }
+
+    /// The interpolated value of `samples` at the nodes.
+    pub(crate) fn value_of(&self, samples: &[f64]) -> f64 {
+        self.value.iter().zip(&samples[self.first..]).map(|(w, y)| w * y).sum()
+    }
+
+    /// The interpolated derivative of `samples` at the nodes.
+    pub(crate) fn slope_of(&self, samples: &[f64]) -> f64 {
+        self.slope.iter().zip(&samples[self.first..]).map(|(w, y)| w * y).sum()
+    }
+}
+
+/// Value of a sampled curve at `s`: six points, or linear where there are fewer.
+pub(crate) fn sampled(positions: &[f64], values: &[f64], s: f64) -> f64 {
+    match positions.len() {
+        0 => 0.0,
+        1 => values[0],
+        n if n < POINTS => Stencil::<2>::at(positions, s).value_of(values),
+        _ => Stencil::<POINTS>::at(positions, s).value_of(values),
+    }
 }
 
 /// The greatest |value| of a sampled curve and its place: the parabola through the largest sample and its neighbours,
@@ -39,9 +59,8 @@ pub(crate) fn peak(positions: &[f64], values: &[f64]) -> (f64, f64) {
     }
     let sign = values[k].signum();
     let at = |s: f64| {
-        let q = stencil(positions, s);
-        let sum = |w: &[f64; POINTS]| -> f64 { (0..POINTS).map(|m| w[m] * values[q.first + m]).sum::<f64>() * sign };
-        (sum(&q.value), sum(&q.slope))
+        let q = Stencil::<POINTS>::at(positions, s);
+        (q.value_of(values) * sign, q.slope_of(values) * sign)
     };
     // The slope falls from positive to negative within the two cells around the largest sample: bisect it.
     let (mut low, mut high) = (positions[k - 1], positions[k + 1]);
@@ -67,11 +86,11 @@ mod tests {
         let nodes = [0.0, 0.3, 0.5, 0.9, 1.4, 1.5, 2.2, 3.0];
         for power in 0..6 {
             for s in [0.1, 0.7, 1.45, 2.9] {
-                let q = stencil(&nodes, s);
-                let sum = |w: &[f64; POINTS]| -> f64 { (0..POINTS).map(|m| w[m] * nodes[q.first + m].powi(power)).sum() };
-                approx::assert_relative_eq!(sum(&q.value), s.powi(power), max_relative = 1e-12, epsilon = 1e-12);
+                let q = Stencil::<POINTS>::at(&nodes, s);
+                let samples = nodes.map(|x: f64| x.powi(power));
+                approx::assert_relative_eq!(q.value_of(&samples), s.powi(power), max_relative = 1e-12, epsilon = 1e-12);
                 let slope = if power == 0 { 0.0 } else { f64::from(power) * s.powi(power - 1) };
-                approx::assert_relative_eq!(sum(&q.slope), slope, max_relative = 1e-11, epsilon = 1e-11);
+                approx::assert_relative_eq!(q.slope_of(&samples), slope, max_relative = 1e-11, epsilon = 1e-11);
             }
         }
     }

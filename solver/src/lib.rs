@@ -25,6 +25,7 @@ mod grid_report;
 mod grid_rules;
 mod interpolate;
 mod linear;
+mod march;
 mod operators;
 mod placement;
 mod regime;
@@ -47,7 +48,10 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
             require_endless(problem)?;
             settled::steady(problem, *velocity_m_per_s, monitor)
         }
-        Travel::Traverse(_) | Travel::Free(_) => Err(SolveFault::Unsuited("being built")),
+        Travel::Traverse(_) | Travel::Free(_) => {
+            require_finite(problem)?;
+            march::march(problem, monitor)
+        }
     }
 }
 
@@ -64,5 +68,12 @@ fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
     match problem.wall.extent {
         Extent::Endless => Ok(()),
         Extent::Finite { .. } => Err(SolveFault::Unsuited("settled fields need an endless wall; use traverse for a finite one")),
+    }
+}
+
+fn require_finite(problem: &Problem) -> Result<(), SolveFault> {
+    match problem.wall.extent {
+        Extent::Finite { .. } => Ok(()),
+        Extent::Endless => Err(SolveFault::Unsuited("traverse and free need the wall's length")),
     }
 }

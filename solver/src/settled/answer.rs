@@ -1,6 +1,6 @@
 //! Levels to figures: a single speed, or a whole drag-speed curve.
 
-use lenzbore_mesh::Refinement;
+use lenzbore_mesh::{Grid, Refinement};
 
 use super::level::{LevelDrag, SettledLevel};
 use crate::band::{self, Ladder};
@@ -225,9 +225,9 @@ fn three_forces(problem: &Problem, levels: &mut Levels, velocity: f64, point: &P
     for level in &mut levels.levels {
         let (psi, _, _) = level.reaction(velocity)?;
         let grid = &level.operators.grid;
-        let source = |r: f64, z: f64| (problem.mover.flux_density_r(r, z), problem.mover.flux_density_z(r, z));
+        let source = band_source(grid, problem, &levels.placement);
         on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0));
-        stress_levels.push(sign * by_stress(grid, &psi, &levels.placement.stress_bands, source));
+        stress_levels.push(sign * by_stress(grid, &psi, &source, &levels.placement.stress_bands));
     }
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
@@ -237,6 +237,19 @@ fn three_forces(problem: &Problem, levels: &mut Levels, velocity: f64, point: &P
     let band_newton = point.drag_band + step_share * mover.step.max(stress.step);
     let apart = (mover_newton - wall_newton).abs().max((stress_newton - wall_newton).abs());
     Ok(Forces { wall_newton, mover_newton, stress_newton, band_newton, agree: apart <= band_newton, time_s: 0.0 })
+}
+
+/// psi of the mover at the nodes of the stress bands, zero elsewhere.
+fn band_source(grid: &Grid, problem: &Problem, placement: &Placement) -> Vec<f64> {
+    let mut psi = vec![0.0; grid.nodes()];
+    for band in &placement.stress_bands {
+        for i in grid.r.nearest(band.inner_m)..=grid.r.nearest(band.outer_m) {
+            for (j, &z) in grid.z.nodes().iter().enumerate() {
+                psi[grid.node(i, j)] = problem.mover.psi(grid.r.nodes()[i], z);
+            }
+        }
+    }
+    psi
 }
 
 fn wanted_fields(problem: &Problem, levels: &mut Levels, velocity: f64) -> Result<Option<Fields>, SolveFault> {

@@ -112,7 +112,8 @@ impl SettledLevel {
     }
 
     fn peak(&self, currents: &[f64]) -> (f64, (f64, f64)) {
-        let density = current_density(&self.operators, currents);
+        let mut density = vec![0.0; currents.len()];
+        current_density_into(&self.operators, currents, &mut density);
         let z = self.operators.grid.z.nodes();
         let mut best = (0.0, (0.0, 0.0));
         for row in &self.operators.wall.rows {
@@ -159,14 +160,12 @@ fn drag_of(currents: &[f64], slope: &[f64]) -> f64 {
 }
 
 /// Current density at wall nodes, on the better conducting side of a face, A/m2: sigma I / (G r).
-pub(crate) fn current_density(operators: &Operators, currents: &[f64]) -> Vec<f64> {
+pub(crate) fn current_density_into(operators: &Operators, currents: &[f64], out: &mut [f64]) {
     let wall = &operators.wall;
-    (0..wall.len())
-        .map(|w| {
-            let g = wall.conductance[w];
-            if g > 0.0 { wall.sigma_max[w] * currents[w] / (g * wall.radius[w]) } else { 0.0 }
-        })
-        .collect()
+    for (w, out) in out.iter_mut().enumerate() {
+        let g = wall.conductance[w];
+        *out = if g > 0.0 { wall.sigma_max[w] * currents[w] / (g * wall.radius[w]) } else { 0.0 };
+    }
 }
 
 /// psi of the mover at all nodes of the wall's radii (boundary rows included), zero elsewhere.

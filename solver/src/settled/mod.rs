@@ -9,3 +9,4 @@ mod level;
 mod recurrence;
 
 pub(crate) use answer::{curve, steady};
+pub(crate) use level::current_density_into;

@@ -1,0 +1,402 @@
+//! Levels to figures: the coarsest level chooses the steps, finer ones replay them, all are extrapolated.
+
+use lenzbore_mesh::Refinement;
+
+use super::figures::{LevelFigure, end_of, level_figures};
+use super::level::MarchLevel;
+use super::motion::{Motion, friction, frictionless, potential_energy};
+use super::run::{Course, Run, Share};
+use super::schedule::Schedule;
+use super::series::Series;
+use super::snapshots::instants;
+use crate::band::{self, Ladder};
+use crate::extrapolate::extrapolate;
+use crate::fault::SolveFault;
+use crate::fields::empty_fields;
+use crate::grid_report::grid_report;
+use crate::grid_rules::{Frame, GridPlan};
+use crate::monitor::Monitor;
+use crate::outcome::{
+    Basis, Caution, Fields, Figure, Forces, GridReport, Ledger, Location, Outcome, Snapshot, Stop, Trace, WorkCounters,
+};
+use crate::placement::Placement;
+use crate::problem::{Free, Problem, SnapshotPlan, Travel};
+use crate::regime::regime;
+use crate::target::{levels_wanted, may_add_level, verdict};
+
+/// Share of the last extrapolation step within which the routes count as agreeing.
+const ROUTE_STEP_SHARE: f64 = 0.1;
+
+/// One level's record.
+struct LevelRecord {
+    series: Series,
+    report: GridReport,
+    counters: WorkCounters,
+    fields: Option<Fields>,
+}
+
+/// A march set up: where it goes, on which grids.
+struct Journey<'p> {
+    problem: &'p Problem,
+    placement: Placement,
+    plan: GridPlan,
+    motion: Motion,
+    course: Course,
+    reach: (f64, f64),
+    speed: f64,
+}
+
+/// Solves `traverse` or `free`.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    let journey = Journey::new(problem)?;
+    let count = levels_wanted(&problem.accuracy);
+    let mut records = journey.first(monitor, count)?;
+    loop {
+        journey.replay_missing(&mut records, monitor)?;
+        let outcome = journey.outcome(&mut records);
+        if outcome.accuracy.met || !may_add_level(&problem.accuracy, records.levels.len()) {
+            monitor.progress(1.0, "done");
+            return Ok(outcome);
+        }
+        records.wanted += 1;
+    }
+}
+
+/// The schedule, the levels so far, the coarsest level on half the domain.
+struct Records {
+    schedule: Schedule,
+    levels: Vec<LevelRecord>,
+    cut: Option<LevelRecord>,
+    wanted: usize,
+}
+
+impl<'p> Journey<'p> {
+    fn new(problem: &'p Problem) -> Result<Self, SolveFault> {
+        let placement = Placement::new(problem);
+        let (motion, from, to, velocity, time_limit) = match &problem.travel {
+            Travel::Traverse(t) => {
+                let motion = Motion::of_traverse(t);
+                let Motion::Uniform { velocity } = motion else { return Err(SolveFault::Unsuited("no velocity")) };
+                (motion, t.from_m, t.to_m, velocity, (t.to_m - t.from_m).abs() / t.speed_m_per_s)
+            }
+            Travel::Free(law) => {
+                let mass = problem.mover.mass_kg.ok_or(SolveFault::Unsuited("free travel needs the mover's mass"))?;
+                let motion = Motion::Free { law: law.clone(), mass };
+                (motion, law.release_m, law.until_m, law.entry_velocity_m_per_s, law.time_limit_s)
+            }
+            Travel::Steady { .. } => return Err(SolveFault::Unsuited("settled fields are no march")),
+        };
+        let reach = reach(problem, from, to);
+        let speed = fastest(&motion, velocity, reach);
+        if !(speed > 0.0 && speed.is_finite()) {
+            return Err(SolveFault::Unsuited("the mover does not move: nothing drives it, or friction holds it at release"));
+        }
+        let plan = GridPlan::new(problem, &placement, Frame::Wall { low: reach.0, high: reach.1, speed })?;
+        let stride = match motion {
+            Motion::Uniform { .. } => 0.5 * plan.axial_cell_m,
+            Motion::Free { .. } => plan.axial_cell_m,
+        };
+        let course = Course { from, velocity, until: to, time_limit, stride };
+        Ok(Self { problem, placement, plan, motion, course, reach, speed })
+    }
+
+    fn level(&self, refinement: Refinement, half: bool) -> Result<MarchLevel<'_>, SolveFault> {
+        let grid = if half { self.plan.half_grid(refinement) } else { self.plan.grid(refinement) };
+        MarchLevel::new(self.problem, &self.placement, &self.plan, grid, self.reach)
+    }
+
+    fn first(&self, monitor: &dyn Monitor, wanted: usize) -> Result<Records, SolveFault> {
+        let mut level = self.level(Refinement::COARSEST, false)?;
+        let run = Run::new(&mut level, &self.motion, &self.course)?;
+        let (series, schedule) = run.choose(&self.course, monitor, Share { from: 0.0, to: 0.08 })?;
+        let record = self.record(&level, series, Refinement::COARSEST, None);
+        Ok(Records { schedule, levels: vec![record], cut: None, wanted })
+    }
+
+    /// Replays the levels not yet there: the finest beside the others, so that two cores are busy.
+    fn replay_missing(&self, records: &mut Records, monitor: &dyn Monitor) -> Result<(), SolveFault> {
+        let refinements = Refinement::first(records.wanted);
+        let missing = &refinements[records.levels.len()..];
+        let Some((&finest, others)) = missing.split_last() else { return Ok(()) };
+        let wanted = instants(&self.problem.snapshots, &records.levels[0].series, &self.course);
+        let keep = self.problem.snapshots != SnapshotPlan::None;
+        let schedule = &records.schedule;
+        let quiet = QuietMonitor { inner: monitor };
+        let need_cut = records.cut.is_none();
+        let (fine, coarse) = std::thread::scope(|scope| {
+            let beside = scope.spawn(|| {
+                let mut list = Vec::new();
+                for &refinement in others {
+                    list.push(self.replay(schedule, refinement, false, &[], false, &quiet)?);
+                }
+                let cut = if need_cut {
+                    Some(self.replay(schedule, Refinement::COARSEST, true, &[], false, &quiet)?)
+                } else {
+                    None
+                };
+                Ok::<_, SolveFault>((list, cut))
+            });
+            let fine = self.replay(schedule, finest, false, &wanted, keep, monitor);
+            (fine, beside.join())
+        });
+        let (list, cut) = coarse.map_err(|_| SolveFault::NotFinite { what: "a level's thread" })??;
+        records.levels.iter_mut().for_each(|l| l.fields = None);
+        records.levels.extend(list);
+        records.levels.push(fine?);
+        records.cut = records.cut.take().or(cut);
+        Ok(())
+    }
+
+    fn replay(
+        &self,
+        schedule: &Schedule,
+        refinement: Refinement,
+        half: bool,
+        wanted: &[f64],
+        keep: bool,
+        monitor: &dyn Monitor,
+    ) -> Result<LevelRecord, SolveFault> {
+        let mut level = self.level(refinement, half)?;
+        let run = Run::new(&mut level, &self.motion, &self.course)?;
+        let (series, snapshots) = run.replay(schedule, refinement, wanted, monitor, Share { from: 0.08, to: 1.0 })?;
+        Ok(self.record(&level, series, refinement, keep.then_some(snapshots)))
+    }
+
+    fn record(
+        &self,
+        level: &MarchLevel<'_>,
+        series: Series,
+        refinement: Refinement,
+        snapshots: Option<Vec<Snapshot>>,
+    ) -> LevelRecord {
+        let operators = &level.operators;
+        let mut report =
+            grid_report(self.problem, &self.placement, &operators.grid, refinement.factor(), self.speed);
+        report.steps = series.time_mid.len();
+        report.residual = level.worst_residual;
+        let fields = snapshots.map(|snapshots| {
+            let mut fields = empty_fields(&operators.grid, &operators.materials, &self.problem.wall);
+            fields.snapshots = snapshots;
+            fields
+        });
+        LevelRecord { series, report, counters: level.counters, fields }
+    }
+
+    fn outcome(&self, records: &mut Records) -> Outcome {
+        let factors: Vec<f64> = Refinement::first(records.levels.len()).iter().map(|f| f.factor()).collect();
+        let (stop, _) = end_of(&records.levels[0].series, &self.course);
+        let by_level: Vec<Vec<LevelFigure>> =
+            records.levels.iter().map(|l| level_figures(self.problem, &l.series, &self.course)).collect();
+        let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &self.course));
+        let residual = records.levels.iter().map(|l| l.report.residual).fold(0.0, f64::max);
+        let figures = combine(&factors, &by_level, cut.as_deref(), residual);
+        let trace = self.trace(records, &factors);
+        let forces = self.forces(records, &factors, &figures);
+        let ledger = self.ledger(records, &factors);
+        let accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
+        let mut counters = WorkCounters::default();
+        for level in records.levels.iter().chain(records.cut.as_ref()) {
+            counters.factorisations += level.counters.factorisations;
+            counters.solves += level.counters.solves;
+            counters.steps += level.counters.steps;
+        }
+        Outcome {
+            regime: regime(self.problem, &self.placement, self.regime_speed(&trace)),
+            grids: records.levels.iter().map(|l| l.report.clone()).collect(),
+            counters,
+            cautions: self.cautions(stop, &figures),
+            stop,
+            accuracy,
+            trace,
+            curve: None,
+            forces,
+            ledger: Some(ledger),
+            fields: records.levels.last_mut().and_then(|l| l.fields.clone()),
+            figures,
+        }
+    }
+
+    fn regime_speed(&self, trace: &Trace) -> f64 {
+        let largest = (0..trace.drag_newton.len()).max_by(|&a, &b| trace.drag_newton[a].total_cmp(&trace.drag_newton[b]));
+        largest.map_or(self.speed, |k| trace.velocity_m_per_s[k].abs())
+    }
+
+    /// The series at the middles of the coarsest level's pairs, extrapolated.
+    fn trace(&self, records: &Records, factors: &[f64]) -> Trace {
+        let (_, end) = end_of(&records.levels[0].series, &self.course);
+        let mut trace = Trace::default();
+        for k in 0..records.schedule.pairs() {
+            let t = records.schedule.middle(k);
+            if t > end {
+                break;
+            }
+            let of = |read: fn(&Series, f64) -> f64| -> Ladder {
+                Ladder::new(factors, records.levels.iter().map(|l| read(&l.series, t)).collect())
+            };
+            let velocity = of(|s, t| s.at(&s.velocity, t)).value;
+            let force = of(|s, t| s.mid_at(&s.force_mid, t) - s.mid_at(&s.pull_mid, t));
+            trace.time_s.push(t);
+            trace.position_m.push(of(|s, t| s.at(&s.position, t)).value);
+            trace.velocity_m_per_s.push(velocity);
+            trace.drag_newton.push(-velocity.signum() * force.value);
+            trace.drag_band_newton.push(band::one_route(&force, 0.0, 0.0));
+            trace.heat_watt.push(of(|s, t| s.mid_at(&s.heat_rate_mid, t)).value);
+        }
+        trace
+    }
+
+    /// The three routes at the instant of the greatest drag.
+    fn forces(&self, records: &Records, factors: &[f64], figures: &[Figure]) -> Option<Forces> {
+        let drag = figures.iter().find(|f| f.name == "drag_peak")?;
+        let time_s = drag.location.and_then(|l| l.t_s)?;
+        let at = |l: &LevelRecord, of: fn(&Series) -> &[f64]| {
+            let series = &l.series;
+            let t = super::figures::drag_peak(series, &self.course).0;
+            let sign = -series.at(&series.velocity, t).signum();
+            sign * (series.mid_at(of(series), t) - series.mid_at(&series.pull_mid, t))
+        };
+        let ladder = |of: fn(&Series) -> &[f64]| {
+            Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect())
+        };
+        let wall = ladder(|s| &s.force_mid);
+        let (mover, stress) = (ladder(|s| &s.force_on_mover_mid), ladder(|s| &s.force_by_stress_mid));
+        let band_newton = drag.band + ROUTE_STEP_SHARE * mover.step.max(stress.step);
+        let apart = (mover.value - wall.value).abs().max((stress.value - wall.value).abs());
+        Some(Forces {
+            wall_newton: wall.value,
+            mover_newton: mover.value,
+            stress_newton: stress.value,
+            band_newton,
+            agree: apart <= band_newton,
+            time_s,
+        })
+    }
+
+    fn ledger(&self, records: &Records, factors: &[f64]) -> Ledger {
+        let entry = |l: &LevelRecord| {
+            let series = &l.series;
+            let (_, end) = end_of(series, &self.course);
+            let energy = series.mid_at(&series.energy_mid, end) - series.energy_start;
+            (self.work_against_drag(series, end), series.at(&series.heat, end), energy)
+        };
+        let entries: Vec<(f64, f64, f64)> = records.levels.iter().map(entry).collect();
+        let value = |of: fn(&(f64, f64, f64)) -> f64| extrapolate(factors, &entries.iter().map(of).collect::<Vec<_>>());
+        let (work, heat, field_energy) = (value(|e| e.0), value(|e| e.1), value(|e| e.2));
+        let imbalance_relative = if work.abs() > 0.0 { (work - heat - field_energy) / work } else { 0.0 };
+        Ledger { work, heat, field_energy, imbalance_relative, unit: "J" }
+    }
+
+    /// Work done against the magnetic force: of the prescribed motion, or out of the mover's mechanical energy.
+    fn work_against_drag(&self, series: &Series, end: f64) -> f64 {
+        match &self.motion {
+            Motion::Uniform { .. } => -series.at(&series.work, end),
+            Motion::Free { law, mass } => {
+                let energy = |z: f64, v: f64| 0.5 * mass * v * v + potential_energy(law, *mass, z);
+                let (z, v) = (series.at(&series.position, end), series.at(&series.velocity, end));
+                energy(self.course.from, self.course.velocity) - energy(z, v) - series.at(&series.losses, end)
+            }
+        }
+    }
+
+    fn cautions(&self, stop: Stop, figures: &[Figure]) -> Vec<Caution> {
+        let mut texts: Vec<String> = Vec::new();
+        if self.problem.wall.is_permeable() {
+            texts.push("Permeability is taken as linear: a steel near saturation behaves otherwise.".to_owned());
+            texts.push(
+                "A permeable wall pulls on the mover at rest too: drag figures leave that static pull out.".to_owned(),
+            );
+        }
+        if let Motion::Free { .. } = self.motion {
+            if stop == Stop::TimeLimit {
+                texts.push("The time limit ended the run before the end of travel.".to_owned());
+            }
+            if stop == Stop::AtRest {
+                texts.push("Friction brought the mover to rest before the end of travel.".to_owned());
+            }
+            if !figures.iter().any(|f| f.name == "transit_time") {
+                texts.push("The mover did not pass both gates: times and speeds at them are left out.".to_owned());
+            }
+        }
+        texts.into_iter().map(|text| Caution { text }).collect()
+    }
+}
+
+/// Figures that all levels have, extrapolated, with bands.
+fn combine(factors: &[f64], by_level: &[Vec<LevelFigure>], cut: Option<&[LevelFigure]>, residual: f64) -> Vec<Figure> {
+    let Some(finest) = by_level.last() else { return Vec::new() };
+    let mut figures = Vec::new();
+    for figure in finest {
+        let find = |list: &[LevelFigure]| list.iter().find(|f| f.name == figure.name).map(|f| f.value);
+        let values: Option<Vec<f64>> = by_level.iter().map(|list| find(list)).collect();
+        let Some(values) = values else { continue };
+        let coarsest = values[0];
+        let ladder = Ladder::new(factors, values);
+        let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
+        let half_width = band::one_route(&ladder, change, residual * ladder.value.abs());
+        figures.push(Figure {
+            name: figure.name.to_owned(),
+            value: ladder.value,
+            unit: figure.unit,
+            band: half_width,
+            basis: Basis::Extrapolated,
+            location: figure.location,
+            levels: ladder.levels,
+        });
+    }
+    figures
+}
+
+/// Positions that the reference point may take, with a little room beyond the end.
+fn reach(problem: &Problem, from: f64, to: f64) -> (f64, f64) {
+    let room = 0.02 * (to - from).abs();
+    let (mut low, mut high) = (from.min(to) - room, from.max(to) + room);
+    if let Travel::Free(law) = &problem.travel
+        && law.spring_rate_n_per_m > 0.0
+    {
+        low = low.min(law.spring_free_at_m);
+        high = high.max(law.spring_free_at_m);
+    }
+    (low, high)
+}
+
+/// Greatest speed that the motion can reach without drag, m/s; 0 where it cannot start.
+fn fastest(motion: &Motion, velocity: f64, reach: (f64, f64)) -> f64 {
+    match motion {
+        Motion::Uniform { velocity } => velocity.abs(),
+        Motion::Free { law, mass } => {
+            if velocity.abs() <= 0.0 && frictionless(law, *mass, law.release_m).abs() <= friction(law, *mass) {
+                return 0.0;
+            }
+            free_speed(law, *mass, velocity, reach)
+        }
+    }
+}
+
+fn free_speed(law: &Free, mass: f64, velocity: f64, reach: (f64, f64)) -> f64 {
+    let start = potential_energy(law, mass, law.release_m);
+    let lowest = [reach.0, reach.1, law.spring_free_at_m.clamp(reach.0, reach.1)]
+        .into_iter()
+        .map(|z| potential_energy(law, mass, z))
+        .fold(f64::INFINITY, f64::min);
+    (velocity * velocity + 2.0 * (start - lowest).max(0.0) / mass).sqrt()
+}
+
+/// Location of an event at `t`.
+pub(super) fn at_time(series: &Series, t: f64) -> Location {
+    Location { r_m: None, z_m: Some(series.at(&series.position, t)), t_s: Some(t) }
+}
+
+/// Passes the request to stop on, but reports no progress: for work beside the level that does.
+struct QuietMonitor<'m> {
+    inner: &'m dyn Monitor,
+}
+
+impl Monitor for QuietMonitor<'_> {
+    fn progress(&self, _fraction: f64, _doing: &str) {}
+    fn cancelled(&self) -> bool {
+        self.inner.cancelled()
+    }
+}

@@ -1,0 +1,144 @@
+//! The figures that one level's series give.
+
+use super::answer::at_time;
+use super::run::Course;
+use super::series::Series;
+use crate::constants::STANDARD_GRAVITY;
+use crate::outcome::{Location, Stop};
+use crate::problem::{Free, Problem, Travel};
+
+/// Relative change of speed over a bore radius below which the speed counts as terminal.
+const TERMINAL_CHANGE: f64 = 1.0e-3;
+
+/// A figure of one level.
+#[derive(Debug, Clone, Copy)]
+pub(crate) struct LevelFigure {
+    pub(crate) name: &'static str,
+    pub(crate) unit: &'static str,
+    pub(crate) value: f64,
+    pub(crate) location: Option<Location>,
+}
+
+/// Why and when a run ended.
+pub(crate) fn end_of(series: &Series, course: &Course) -> (Stop, f64) {
+    let last = series.time.last().copied().unwrap_or(0.0);
+    if let Some(t) = series.stopped_at {
+        return (Stop::AtRest, t);
+    }
+    match series.crossing(course.until) {
+        Some(t) if t <= course.time_limit * (1.0 + 1.0e-12) => (Stop::EndOfTravel, t),
+        _ if (last - course.time_limit).abs() <= 1.0e-9 * last => (Stop::EndOfTravel, last),
+        _ => (Stop::TimeLimit, course.time_limit.min(last)),
+    }
+}
+
+/// Drag at the step middles: the force against the motion, without a permeable wall's static pull, N.
+fn drag_mid(series: &Series) -> Vec<f64> {
+    let force = series.force_mid.iter().zip(&series.pull_mid);
+    force.zip(series.position.windows(2)).map(|((f, pull), z)| -(f - pull) * (z[1] - z[0]).signum()).collect()
+}
+
+/// Instant and value of the greatest drag.
+pub(crate) fn drag_peak(series: &Series, course: &Course) -> (f64, f64) {
+    series.greatest(&drag_mid(series), end_of(series, course).1)
+}
+
+/// All figures of a level.
+pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course) -> Vec<LevelFigure> {
+    let end = end_of(series, course).1;
+    let mut figures = Vec::new();
+    let (t_drag, drag) = drag_peak(series, course);
+    let drag = LevelFigure { name: "drag_peak", unit: "N", value: drag, location: Some(at_time(series, t_drag)) };
+    let energy = LevelFigure {
+        name: "dissipated_energy",
+        unit: "J",
+        value: series.at(&series.heat, end) + series.mid_at(&series.energy_mid, end) - series.energy_start,
+        location: None,
+    };
+    match &problem.travel {
+        Travel::Free(law) => {
+            gate_figures(law, series, end, &mut figures);
+            terminal(problem, series, &mut figures);
+            figures.push(drag);
+            acceleration_figures(law, series, end, &mut figures);
+            figures.push(energy);
+        }
+        Travel::Traverse(_) | Travel::Steady { .. } => {
+            figures.push(drag);
+            figures.push(LevelFigure { name: "impulse", unit: "N s", value: impulse(series, end), location: None });
+            figures.push(energy);
+        }
+    }
+    figures.push(current_peak(series, end));
+    if series.pull_mid.iter().any(|p| p.abs() > 0.0) {
+        let pull: Vec<f64> = series.pull_mid.iter().map(|p| p.abs()).collect();
+        let (t, value) = series.greatest(&pull, end);
+        figures.push(LevelFigure { name: "static_pull_peak", unit: "N", value, location: Some(at_time(series, t)) });
+    }
+    figures
+}
+
+/// Integral of the drag over time, N s.
+fn impulse(series: &Series, end: f64) -> f64 {
+    let steps = series.time.windows(2).zip(drag_mid(series));
+    steps.map(|(t, drag)| drag * (t[1].min(end) - t[0].min(end))).sum()
+}
+
+fn gate_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec<LevelFigure>) {
+    let passed = |gate: f64| series.crossing(gate).filter(|&t| t <= end * (1.0 + 1.0e-12));
+    let (first, second) = (passed(law.gates_m[0]), passed(law.gates_m[1]));
+    let mut event = |name, unit, value, t| {
+        figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
+    };
+    if let Some(t) = first {
+        event("entry_time", "s", t, t);
+    }
+    if let Some(t) = second {
+        event("exit_time", "s", t, t);
+        if let Some(entry) = first {
+            event("transit_time", "s", t - entry, t);
+        }
+        event("exit_speed", "m/s", series.velocity_at(t).abs(), t);
+    }
+}
+
+/// The speed where it hardly changes any more inside the wall.
+fn terminal(problem: &Problem, series: &Series, figures: &mut Vec<LevelFigure>) {
+    let length = problem.wall.length_m().unwrap_or(0.0);
+    let scale = problem.wall.inner_radius_m().max(0.2 * problem.wall.outer_radius_m());
+    let change = |k: usize| {
+        let speed = series.at(&series.velocity, series.time_mid[k]);
+        series.acceleration_mid[k].abs() * scale / (speed * speed)
+    };
+    let inside = (0..series.time_mid.len()).filter(|&k| {
+        let z = series.position_mid[k];
+        z > 2.0 * scale && z < length - 2.0 * scale
+    });
+    let steadiest = inside.min_by(|&a, &b| change(a).total_cmp(&change(b)));
+    if let Some(k) = steadiest.filter(|&k| change(k) < TERMINAL_CHANGE) {
+        let t = series.time_mid[k];
+        let value = series.velocity_at(t).abs();
+        figures.push(LevelFigure { name: "terminal_speed", unit: "m/s", value, location: Some(at_time(series, t)) });
+    }
+}
+
+fn acceleration_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec<LevelFigure>) {
+    let moves = series.position.windows(2).map(|z| (z[1] - z[0]).signum());
+    let slowing: Vec<f64> = series.acceleration_mid.iter().zip(moves).map(|(a, s)| -a * s).collect();
+    let weight = law.gravity_m_per_s2 * law.tilt_rad.cos();
+    let felt: Vec<f64> = series.acceleration_mid.iter().map(|a| (a + weight).abs() / STANDARD_GRAVITY).collect();
+    for (name, unit, values) in
+        [("deceleration_peak", "m/s2", slowing), ("felt_acceleration_peak", "1", felt)]
+    {
+        let (t, value) = series.greatest(&values, end);
+        figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
+    }
+}
+
+fn current_peak(series: &Series, end: f64) -> LevelFigure {
+    let (t, value) = series.greatest(&series.peak_mid, end);
+    let k = series.time_mid.partition_point(|&s| s < t).min(series.time_mid.len().saturating_sub(1));
+    let read = |values: &[f64]| values.get(k).copied();
+    let location = Location { r_m: read(&series.peak_r_mid), z_m: read(&series.peak_z_mid), t_s: Some(t) };
+    LevelFigure { name: "current_density_peak", unit: "A/m2", value, location: Some(location) }
+}

@@ -1,0 +1,219 @@
+//! One grid level of a march: operators, the mover's field at the wall, factors by step size.
+
+use std::collections::VecDeque;
+use std::f64::consts::PI;
+use std::sync::Arc;
+
+use lenzbore_mesh::{Grid, Regions};
+
+use crate::fault::SolveFault;
+use crate::grid_rules::GridPlan;
+use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
+use crate::operators::{Materials, Operators, add_product};
+use crate::outcome::WorkCounters;
+use crate::placement::Placement;
+use crate::problem::Problem;
+use crate::sources::SourceTable;
+
+/// Factors kept at a time, one a step size.
+const KEPT_FACTORS: usize = 4;
+/// Accuracy of the table of the mover's field, relative to the largest |psi| at a radius.
+const TABLE_TOLERANCE: f64 = 1.0e-10;
+
+/// A level of the march.
+pub(crate) struct MarchLevel<'a> {
+    pub(crate) problem: &'a Problem,
+    pub(crate) placement: &'a Placement,
+    pub(crate) operators: Operators,
+    pattern: Arc<Pattern>,
+    factors: VecDeque<(u64, Factor)>,
+    at_rest: Option<AtRest>,
+    table: SourceTable,
+    /// Row of the table for each run of wall nodes.
+    table_rows: Vec<usize>,
+    /// (radial index, row of the table) of the stress bands' nodes.
+    band_rows: Vec<(usize, usize)>,
+    pub(crate) counters: WorkCounters,
+    pub(crate) worst_residual: f64,
+}
+
+impl<'a> MarchLevel<'a> {
+    /// Builds the level for positions of the reference point between `low` and `high`.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn new(
+        problem: &'a Problem,
+        placement: &'a Placement,
+        plan: &GridPlan,
+        grid: Grid,
+        (low, high): (f64, f64),
+    ) -> Result<Self, SolveFault> {
+        let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
+        let operators = Operators::new(grid, materials);
+        let pattern = Pattern::new(&operators.stiffness)?;
+        let at_rest = AtRest::new(&operators, &pattern)?;
+        let grid = &operators.grid;
+        let wall_indices: Vec<usize> = operators.wall.rows.iter().map(|row| row.i).collect();
+        let bands = placement.stress_bands.iter();
+        let band_indices: Vec<usize> =
+            bands.flat_map(|b| grid.r.nearest(b.inner_m)..=grid.r.nearest(b.outer_m)).collect();
+        let mut indices: Vec<usize> = wall_indices.iter().chain(&band_indices).copied().collect();
+        indices.sort_unstable();
+        indices.dedup();
+        let row_of = |i: usize| indices.partition_point(|&k| k < i);
+        let radii: Vec<f64> = indices.iter().map(|&i| grid.r.nodes()[i]).collect();
+        let (bottom, top) = (0.0, problem.wall.length_m().unwrap_or(0.0));
+        let table = SourceTable::new(&problem.mover, &radii, bottom - high, top - low, TABLE_TOLERANCE);
+        Ok(Self {
+            problem,
+            placement,
+            table_rows: wall_indices.iter().map(|&i| row_of(i)).collect(),
+            band_rows: band_indices.iter().map(|&i| (i, row_of(i))).collect(),
+            table,
+            pattern,
+            factors: VecDeque::new(),
+            at_rest,
+            operators,
+            counters: WorkCounters::default(),
+            worst_residual: 0.0,
+        })
+    }
+
+    /// psi_s at the wall nodes with the mover at `position`, and d psi_s / d position.
+    pub(crate) fn fill_source(&self, position: f64, psi: &mut [f64], by_position: &mut [f64]) {
+        let z = self.operators.grid.z.nodes();
+        for (row, &table_row) in self.operators.wall.rows.iter().zip(&self.table_rows) {
+            let range = row.start..row.start + row.count;
+            let heights = &z[row.j..row.j + row.count];
+            self.table.fill_both(table_row, heights, position, &mut psi[range.clone()], &mut by_position[range]);
+        }
+        by_position.iter_mut().for_each(|s| *s = -*s);
+    }
+
+    /// psi_s at the nodes of the stress bands (all-node array, other nodes untouched).
+    pub(crate) fn fill_bands(&self, position: f64, psi_nodes: &mut [f64], row_psi: &mut [f64], row_slope: &mut [f64]) {
+        let grid = &self.operators.grid;
+        for &(i, table_row) in &self.band_rows {
+            self.table.fill_both(table_row, grid.z.nodes(), position, row_psi, row_slope);
+            for (j, &p) in row_psi.iter().enumerate() {
+                psi_nodes[grid.node(i, j)] = p;
+            }
+        }
+    }
+
+    /// Makes sure that the factor of K + 2 G / dt is at hand.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn prepare(&mut self, dt: f64) -> Result<(), SolveFault> {
+        let key = dt.to_bits();
+        if let Some(at) = self.factors.iter().position(|(k, _)| *k == key) {
+            // Most recently used first.
+            if let Some(entry) = self.factors.remove(at) {
+                self.factors.push_front(entry);
+            }
+            return Ok(());
+        }
+        let mut added = vec![0.0; self.operators.unknowns()];
+        for (&u, g) in self.operators.wall.unknown.iter().zip(&self.operators.wall.conductance) {
+            added[u] = 2.0 * g / dt;
+        }
+        self.factors.truncate(KEPT_FACTORS - 1);
+        self.factors.push_front((key, Factor::new(&self.pattern, &self.operators.stiffness, Some(&added))?));
+        self.counters.factorisations += 1;
+        Ok(())
+    }
+
+    /// Solves (K + 2 G / dt) x = b in place for one or two columns with the factor made ready last.
+    pub(crate) fn solve(&mut self, columns: &mut [f64]) {
+        if let Some((_, factor)) = self.factors.front_mut() {
+            factor.solve_in_place(columns);
+            self.counters.solves += columns.len() / self.operators.unknowns();
+        }
+    }
+
+    /// y at rest: the static field of mover (`psi_source` at the wall nodes) and permeable wall, and the field energy, J.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn field_at_rest(&mut self, psi_source: &[f64]) -> Result<(Vec<f64>, f64), SolveFault> {
+        let mut flux = psi_source.to_vec();
+        let Some(at_rest) = &mut self.at_rest else { return Ok((flux, 0.0)) };
+        at_rest.solve(&self.operators, psi_source);
+        self.counters.solves += 1;
+        check_residual(&self.operators.stiffness, None, &at_rest.psi, &at_rest.right, RESIDUAL_LIMIT)?;
+        // pi (psi_r K psi_r + 2 psi_r (K - K0) psi_s + psi_s (K - K0) psi_s), with K psi_r = -(K - K0) psi_s.
+        let mut energy = 0.0;
+        for (w, &u) in self.operators.wall.unknown.iter().enumerate() {
+            flux[w] += at_rest.psi[u];
+            energy -= PI * (at_rest.psi[u] + psi_source[w]) * at_rest.right[u];
+        }
+        Ok((flux, energy))
+    }
+
+    /// Axial force of a permeable wall on the mover at rest at `position`, N: 2 pi (K0 psi_r) . d psi_s / d position.
+    pub(crate) fn static_pull(&mut self, position: f64) -> f64 {
+        let Some(mut at_rest) = self.at_rest.take() else { return 0.0 };
+        let (mut source, mut slope) = (std::mem::take(&mut at_rest.source), std::mem::take(&mut at_rest.slope));
+        self.fill_source(position, &mut source, &mut slope);
+        at_rest.solve(&self.operators, &source);
+        self.counters.solves += 1;
+        let free = self.operators.stiffness_free();
+        let mut force = 0.0;
+        for (s, &u) in slope.iter().zip(&self.operators.wall.unknown) {
+            let row = free.outer_view(u);
+            force += 2.0 * PI * s * row.map_or(0.0, |q| q.iter().map(|(c, v)| v * at_rest.psi[c]).sum());
+        }
+        (at_rest.source, at_rest.slope) = (source, slope);
+        self.at_rest = Some(at_rest);
+        force
+    }
+}
+
+/// The static problem of a permeable wall: K psi_r = -(K - K0) psi_s.
+struct AtRest {
+    factor: Factor,
+    nodes: Vec<f64>,
+    right: Vec<f64>,
+    psi: Vec<f64>,
+    source: Vec<f64>,
+    slope: Vec<f64>,
+}
+
+impl AtRest {
+    fn new(operators: &Operators, pattern: &Arc<Pattern>) -> Result<Option<Self>, SolveFault> {
+        if operators.excess.is_none() {
+            return Ok(None);
+        }
+        let (n, w) = (operators.unknowns(), operators.wall.len());
+        Ok(Some(Self {
+            factor: Factor::new(pattern, &operators.stiffness, None)?,
+            nodes: vec![0.0; operators.grid.nodes()],
+            right: vec![0.0; n],
+            psi: vec![0.0; n],
+            source: vec![0.0; w],
+            slope: vec![0.0; w],
+        }))
+    }
+
+    fn solve(&mut self, operators: &Operators, psi_source: &[f64]) {
+        spread_wall(operators, psi_source, &mut self.nodes);
+        self.right.fill(0.0);
+        if let Some(excess) = &operators.excess {
+            add_product(excess, &self.nodes, -1.0, &mut self.right);
+        }
+        self.psi.copy_from_slice(&self.right);
+        self.factor.solve_in_place(&mut self.psi);
+    }
+}
+
+/// Wall values spread over all nodes (other nodes untouched).
+pub(crate) fn spread_wall(operators: &Operators, values: &[f64], nodes: &mut [f64]) {
+    let grid = &operators.grid;
+    for row in &operators.wall.rows {
+        for k in 0..row.count {
+            nodes[grid.node(row.i, row.j + k)] = values[row.start + k];
+        }
+    }
+}

@@ -1,0 +1,18 @@
+//! Motion in time through a finite wall: implicit midpoint on the wall's total flux y = psi_s + psi_r,
+//!
+//!   (2 G / dt + K) psi_mid = (2 G / dt)(y_n - mean psi_s) - (K - K0) mean psi_s,   y_(n+1) = 2 (psi_mid + mean psi_s) - y_n,
+//!
+//! mean psi_s the mean of the mover's own field at both ends of the step. The force is a discrete gradient,
+//! F dz = 2 pi sum (K0 psi_mid) . (psi_s(z_(n+1)) - psi_s(z_n)), so that work = heat + change of field energy holds step by step.
+
+mod answer;
+mod figures;
+mod level;
+mod motion;
+mod run;
+mod schedule;
+mod series;
+mod snapshots;
+mod step;
+
+pub(crate) use answer::march;

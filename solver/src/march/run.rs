@@ -1,0 +1,337 @@
+//! The loop over steps: the coarsest level chooses the schedule, finer levels replay it.
+
+use lenzbore_mesh::Refinement;
+
+use super::level::MarchLevel;
+use super::motion::{Motion, friction, frictionless, losses, other_force};
+use super::schedule::Schedule;
+use super::series::Series;
+use super::step::{State, StepReport, Stepper, heat_rate};
+use crate::fault::SolveFault;
+use crate::fields::snapshot;
+use crate::force::{by_stress, on_mover};
+use crate::interpolate::peak;
+use crate::monitor::Monitor;
+use crate::outcome::Snapshot;
+use crate::settled::current_density_into;
+
+/// Greatest change of speed in a pair of steps, relative to the speed.
+const SPEED_CHANGE: f64 = 0.15;
+/// Pairs at most.
+const MOST_PAIRS: usize = 2_000_000;
+/// Pairs run on beyond the end, so that the end itself is read between steps.
+const PAIRS_BEYOND: usize = 2;
+
+/// Where a run begins and ends.
+#[derive(Debug, Clone)]
+pub(crate) struct Course {
+    pub(crate) from: f64,
+    pub(crate) velocity: f64,
+    /// The run ends at this position ...
+    pub(crate) until: f64,
+    /// ... or at this instant.
+    pub(crate) time_limit: f64,
+    /// Travel in a step at most, m, on the coarsest level.
+    pub(crate) stride: f64,
+}
+
+impl Course {
+    fn passed(&self, position: f64) -> bool {
+        if self.until < self.from { position <= self.until } else { position >= self.until }
+    }
+}
+
+/// How far along a whole job this run's progress counts.
+#[derive(Debug, Clone, Copy)]
+pub(crate) struct Share {
+    pub(crate) from: f64,
+    pub(crate) to: f64,
+}
+
+/// One level under way.
+pub(crate) struct Run<'a, 'p> {
+    level: &'a mut MarchLevel<'p>,
+    motion: &'a Motion,
+    stepper: Stepper,
+    state: State,
+    saved: State,
+    series: Series,
+    currents: Vec<f64>,
+    density: Vec<f64>,
+    psi_nodes: Vec<f64>,
+    band_nodes: Vec<f64>,
+    row: (Vec<f64>, Vec<f64>),
+    heat: f64,
+    work: f64,
+    losses: f64,
+    snapshots: Vec<Snapshot>,
+}
+
+impl<'a, 'p> Run<'a, 'p> {
+    /// Sets the mover at the start, its field at rest in the wall.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn new(level: &'a mut MarchLevel<'p>, motion: &'a Motion, course: &Course) -> Result<Self, SolveFault> {
+        let (wall, grid) = (level.operators.wall.len(), &level.operators.grid);
+        let (nodes, nz) = (grid.nodes(), grid.nz());
+        let (mut source, mut slope) = (vec![0.0; wall], vec![0.0; wall]);
+        level.fill_source(course.from, &mut source, &mut slope);
+        let (flux, energy_start) = level.field_at_rest(&source)?;
+        let acceleration = match motion {
+            Motion::Uniform { .. } => 0.0,
+            Motion::Free { law, mass } => {
+                driving_force(law, *mass, course) / mass
+            }
+        };
+        let state = State::new(course.from, course.velocity, flux, source, acceleration);
+        let mut series = Series { energy_start, ..Series::default() };
+        series.time.push(0.0);
+        series.position.push(course.from);
+        series.velocity.push(course.velocity);
+        series.heat.push(0.0);
+        series.work.push(0.0);
+        series.losses.push(0.0);
+        Ok(Self {
+            stepper: Stepper::new(level),
+            saved: state.clone(),
+            state,
+            series,
+            currents: vec![0.0; wall],
+            density: vec![0.0; wall],
+            psi_nodes: vec![0.0; nodes],
+            band_nodes: vec![0.0; nodes],
+            row: (vec![0.0; nz], vec![0.0; nz]),
+            heat: 0.0,
+            work: 0.0,
+            losses: 0.0,
+            snapshots: Vec::new(),
+            level,
+            motion,
+        })
+    }
+
+    /// Runs the coarsest level to its end, choosing the schedule.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn choose(
+        mut self,
+        course: &Course,
+        monitor: &dyn Monitor,
+        share: Share,
+    ) -> Result<(Series, Schedule), SolveFault> {
+        let (first_dt, floor) = first_step(&self.state, course);
+        let mut schedule = Schedule::new(first_dt);
+        let mut rung = Schedule::first_rung();
+        let mut beyond = 0;
+        while schedule.pairs() < MOST_PAIRS {
+            if monitor.cancelled() {
+                return Err(SolveFault::Interrupted);
+            }
+            rung = self.wanted_rung(&schedule, rung, course, floor);
+            rung = self.accepted_pair(&mut schedule, rung, course, floor)?;
+            let gone = (self.state.position - course.from) / (course.until - course.from);
+            let elapsed = schedule.start(schedule.pairs()) / course.time_limit;
+            monitor.progress(share.from + (share.to - share.from) * gone.max(elapsed).clamp(0.0, 1.0), "first level");
+            if self.series.stopped_at.is_some() {
+                break;
+            }
+            let over = course.passed(self.state.position) || elapsed >= 1.0;
+            beyond = if over { beyond + 1 } else { 0 };
+            if beyond > PAIRS_BEYOND {
+                break;
+            }
+        }
+        self.level.counters.steps += self.series.time_mid.len();
+        Ok((self.series, schedule))
+    }
+
+    /// Replays `schedule` at `refinement`, keeping snapshots at the step middles nearest to `instants`.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn replay(
+        mut self,
+        schedule: &Schedule,
+        refinement: Refinement,
+        instants: &[f64],
+        monitor: &dyn Monitor,
+        share: Share,
+    ) -> Result<(Series, Vec<Snapshot>), SolveFault> {
+        let mut wanted = instants.iter().copied().peekable();
+        for k in 0..schedule.pairs() {
+            let (steps, dt) = schedule.steps(k, refinement);
+            self.level.prepare(dt)?;
+            for n in 0..steps {
+                if monitor.cancelled() {
+                    return Err(SolveFault::Interrupted);
+                }
+                let begin = schedule.start(k) + count(n) * dt;
+                let report = self.step(begin, dt)?;
+                self.record(begin, dt, &report);
+                while wanted.next_if(|&t| t < begin + dt).is_some() {
+                    self.keep_snapshot(begin + 0.5 * dt, report.travel);
+                }
+            }
+            monitor.progress(share.from + (share.to - share.from) * count(k + 1) / count(schedule.pairs()), "finer level");
+            if self.series.stopped_at.is_some() {
+                break;
+            }
+        }
+        self.level.counters.steps += self.series.time_mid.len();
+        Ok((self.series, self.snapshots))
+    }
+
+    /// One rung up where the last pair leaves room for it, else as many down as it must.
+    fn wanted_rung(&self, schedule: &Schedule, rung: u32, course: &Course, floor: f64) -> u32 {
+        let Motion::Free { .. } = self.motion else { return rung };
+        if schedule.pairs() == 0 {
+            return rung;
+        }
+        let speed = self.state.velocity.abs();
+        let acceleration = self.series.acceleration_mid.last().copied().unwrap_or(0.0).abs();
+        let by_travel = course.stride / speed;
+        let by_change = 0.5 * SPEED_CHANGE * speed.max(floor) / acceleration;
+        let by_time = course.time_limit / 16.0;
+        let limit = 0.95 * by_travel.min(by_change).min(by_time);
+        let mut rung = rung + 1;
+        while rung > 0 && schedule.dt(rung) > limit {
+            rung -= 1;
+        }
+        rung
+    }
+
+    /// Tries pairs from `rung` down until one keeps within stride and speed change; records it.
+    fn accepted_pair(
+        &mut self,
+        schedule: &mut Schedule,
+        mut rung: u32,
+        course: &Course,
+        floor: f64,
+    ) -> Result<u32, SolveFault> {
+        let begin = schedule.start(schedule.pairs());
+        loop {
+            let dt = schedule.dt(rung);
+            self.level.prepare(dt)?;
+            self.saved.copy_from(&self.state);
+            let keep = (self.heat, self.work, self.losses, self.series.time_mid.len());
+            for n in 0..2 {
+                let start = begin + count(n) * dt;
+                let report = self.step(start, dt)?;
+                self.record(start, dt, &report);
+                if self.series.stopped_at.is_some() {
+                    break;
+                }
+            }
+            let (before, after) = (self.saved.velocity, self.state.velocity);
+            let fastest = before.abs().max(after.abs());
+            let change = (after - before).abs() / fastest.max(floor);
+            let uniform = matches!(self.motion, Motion::Uniform { .. });
+            let fits = fastest * dt <= course.stride * (1.0 + 1.0e-9) && change <= SPEED_CHANGE;
+            if uniform || fits || rung == 0 || self.series.stopped_at.is_some() {
+                schedule.push(rung);
+                return Ok(rung);
+            }
+            self.state.copy_from(&self.saved);
+            (self.heat, self.work, self.losses) = (keep.0, keep.1, keep.2);
+            self.series.truncate(keep.3);
+            rung -= 1;
+        }
+    }
+
+    fn step(&mut self, time: f64, dt: f64) -> Result<StepReport, SolveFault> {
+        self.stepper.step(self.level, self.motion, &mut self.state, &mut self.currents, time, dt)
+    }
+
+    fn record(&mut self, begin: f64, dt: f64, report: &StepReport) {
+        let series = &mut self.series;
+        let middle = self.state.position - 0.5 * report.travel;
+        self.heat += report.heat;
+        self.work += report.force * report.travel;
+        if let Motion::Free { law, mass } = self.motion {
+            self.losses += losses(law, *mass, report.travel, report.travel / dt);
+        }
+        series.time.push(begin + dt);
+        series.position.push(self.state.position);
+        series.velocity.push(self.state.velocity);
+        series.heat.push(self.heat);
+        series.work.push(self.work);
+        series.losses.push(self.losses);
+        series.time_mid.push(begin + 0.5 * dt);
+        series.position_mid.push(middle);
+        series.force_mid.push(report.force);
+        series.heat_rate_mid.push(heat_rate(self.level, &self.currents));
+        series.energy_mid.push(report.energy);
+        series.acceleration_mid.push(report.acceleration);
+        if report.held {
+            let before = series.velocity[series.velocity.len() - 2];
+            series.stopped_at = Some(begin + dt * before / (before - self.state.velocity));
+        }
+        let pull = self.level.static_pull(middle);
+        self.series.pull_mid.push(pull);
+        self.record_routes(middle);
+        self.record_peak();
+    }
+
+    /// The two other routes at the step's middle.
+    fn record_routes(&mut self, middle: f64) {
+        let operators = &self.level.operators;
+        let (nr, grid) = (operators.grid.nr(), &operators.grid);
+        for (j, row) in self.stepper.reaction().chunks_exact(nr - 2).enumerate() {
+            self.psi_nodes[(j + 1) * nr + 1..(j + 2) * nr - 1].copy_from_slice(row);
+        }
+        self.level.fill_bands(middle, &mut self.band_nodes, &mut self.row.0, &mut self.row.1);
+        let bands = &self.level.placement.stress_bands;
+        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, &self.level.problem.mover, middle));
+        self.series.force_by_stress_mid.push(by_stress(grid, &self.psi_nodes, &self.band_nodes, bands));
+    }
+
+    /// The greatest current density at the step's middle.
+    fn record_peak(&mut self) {
+        let operators = &self.level.operators;
+        current_density_into(operators, &self.currents, &mut self.density);
+        let wall = &operators.wall;
+        let greatest = |row: &crate::wall_nodes::WallRow| {
+            self.density[row.start..row.start + row.count].iter().fold(0.0_f64, |m, d| m.max(d.abs()))
+        };
+        let best = wall.rows.iter().map(|row| (greatest(row), row)).max_by(|a, b| a.0.total_cmp(&b.0));
+        let (z, r) = (operators.grid.z.nodes(), operators.grid.r.nodes());
+        let (value, r_m, z_m) = best.map_or((0.0, 0.0, 0.0), |(_, row)| {
+            let (at, value) = peak(&z[row.j..row.j + row.count], &self.density[row.start..row.start + row.count]);
+            (value, r[row.i], at)
+        });
+        self.series.peak_mid.push(value);
+        self.series.peak_r_mid.push(r_m);
+        self.series.peak_z_mid.push(z_m);
+    }
+
+    fn keep_snapshot(&mut self, time: f64, travel: f64) {
+        let position = self.state.position - 0.5 * travel;
+        let operators = &self.level.operators;
+        self.snapshots.push(snapshot(operators, self.level.problem, &self.psi_nodes, &self.currents, time, position));
+    }
+}
+
+/// Force at release without the magnetic one, N: friction holds, or acts against the sliding.
+fn driving_force(law: &crate::problem::Free, mass: f64, course: &Course) -> f64 {
+    let pull = frictionless(law, mass, course.from);
+    let direction = if course.velocity.abs() > 0.0 { course.velocity.signum() } else { pull.signum() };
+    let force = other_force(law, mass, course.from, course.velocity, direction).value;
+    let held = course.velocity.abs() <= 0.0 && pull.abs() <= friction(law, mass);
+    if held { 0.0 } else { force }
+}
+
+/// The first step and the speed below which changes are taken absolute.
+fn first_step(state: &State, course: &Course) -> (f64, f64) {
+    let (speed, acceleration) = (state.velocity.abs(), state.first_acceleration().abs());
+    let floor = (acceleration * course.stride).sqrt();
+    let by_rest = 0.05 * (course.stride / acceleration).sqrt();
+    let by_speed = if speed > 0.0 { course.stride / speed } else { f64::INFINITY };
+    (by_rest.min(by_speed).min(course.time_limit / 16.0), floor)
+}
+
+#[expect(clippy::cast_precision_loss, reason = "step counts stay far below 2^52")]
+fn count(n: usize) -> f64 {
+    n as f64
+}
