@@ -1,5 +1,7 @@
 //! Case files and units, material book, result folders, HDF5 and XDMF, tables and pictures. Computes no field.
 
+pub mod materials;
 pub mod message;
 pub mod units;
+pub mod picture;
 pub mod result;

@@ -144,6 +144,8 @@ pub enum CaseFault {
         found: String,
         /// The grades of the book.
         grades: Vec<String>,
+        /// The word that gives the value itself.
+        instead: &'static str,
     },
     /// A material that the book does not have, or one that does not fit the part.
     #[error("the material book has no {wanted} '{found}'")]
@@ -232,8 +234,8 @@ impl CaseFault {
             Self::UnknownChoice { nearest: Some(near), .. } | Self::UnknownMaterial { nearest: Some(near), .. } => {
                 Some(format!("did you mean \"{near}\"?"))
             }
-            Self::BareMaterial { .. } => {
-                Some("conductivity differs by grade: name one, or give 'conductivity' itself".to_owned())
+            Self::BareMaterial { instead, .. } => {
+                Some(format!("the {instead} differs by grade: name one, or give '{instead}' itself"))
             }
             Self::Clash { mend, .. } => Some(mend.clone()),
             Self::Problem(fault) => fault.mend(),
