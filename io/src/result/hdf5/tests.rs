@@ -117,7 +117,7 @@ fn misfits_are_refused_before_anything_is_written() {
         spoil(&mut fields);
         write_fields(&path, &demo::header("x"), &outcome, &fields, &Unwatched).unwrap_err()
     };
-    let short = attempt(|f| drop(f.snapshots[0].psi_total.pop()));
+    let short = attempt(|f| f.snapshots[0].psi_total.truncate(5));
     assert!(matches!(short, IoFault::Length { what, .. } if what.starts_with("psi_total")));
     let spoilt = attempt(|f| f.snapshots[0].heat_density[7] = f64::NAN);
     assert!(matches!(spoilt, IoFault::NotFinite { what, .. } if what == "heat_density_W_per_m3 [7]"));

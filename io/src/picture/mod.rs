@@ -1,0 +1,23 @@
+//! Pictures of a run, SVG and PNG: drag against speed, travel, section of wall and mover.
+//!
+//! Drawn for one column of a page (85 mm) on white; letters are bundled, so a PNG is the same on every machine.
+
+mod axes;
+mod curve;
+mod key;
+mod letters;
+#[cfg(test)]
+pub(crate) mod look;
+mod paper;
+mod ribbon;
+mod scale;
+mod simplify;
+mod smooth;
+mod style;
+mod svg;
+mod travel;
+mod units;
+
+pub use curve::curve;
+pub use paper::{DOTS_PER_INCH, Picture};
+pub use travel::travel;
