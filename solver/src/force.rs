@@ -13,14 +13,15 @@ use crate::sources::Source;
 
 /// Axial force of a reaction field on the mover's equivalent currents with its reference point at `position`, N.
 ///
-/// A current sheet K from z1 to z2 at radius R feels 2 pi K (psi(R, z2) - psi(R, z1)); a dipole m feels m dB_z/dz.
-pub(crate) fn on_mover(grid: &Grid, psi_reaction: &[f64], mover: &Mover, position: f64) -> f64 {
+/// A current sheet K from z1 to z2 at radius R feels 2 pi K (psi(R, z2) - psi(R, z1)); a dipole m feels m dB_z/dz. `gap` is the
+/// free distance around a dipole, m.
+pub(crate) fn on_mover(grid: &Grid, psi_reaction: &[f64], mover: &Mover, position: f64, gap: f64) -> f64 {
     let psi = |r: f64, z: f64| psi_at(grid, psi_reaction, r, z);
     let mut force = 0.0;
     for part in &mover.parts {
         let centre = position + part.centre_m;
         force += match part.source {
-            Source::Dipole { moment_a_m2 } => moment_a_m2 * axial_gradient_on_axis(grid, psi_reaction, centre),
+            Source::Dipole { moment_a_m2 } => on_dipole(grid, psi_reaction, moment_a_m2, centre, gap),
             Source::Magnet { inner_radius_m, outer_radius_m, length_m, remanence_tesla } => {
                 let rise = |r: f64| psi(r, centre + 0.5 * length_m) - psi(r, centre - 0.5 * length_m);
                 let inner = if inner_radius_m > 0.0 { rise(inner_radius_m) } else { 0.0 };
@@ -46,29 +47,32 @@ fn simpson(from: f64, to: f64, f: impl Fn(f64) -> f64) -> f64 {
 
 /// psi at any point by local interpolation; psi = 0 on the axis.
 pub(crate) fn psi_at(grid: &Grid, psi: &[f64], r: f64, z: f64) -> f64 {
-    let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<POINTS>::at(grid.z.nodes(), z));
+    let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), z));
     let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
     qz.value.iter().enumerate().map(|(n, w)| w * row(n)).sum()
 }
 
-/// Points along the axis for the gradient that a dipole feels: B_z of the wall's currents is smooth there on the scale
-/// of the bore radius, in cells of an eighth of it.
+/// Points along z: cells there may be as long as 3/4 of the gap over which the reaction field varies.
 const AXIAL_POINTS: usize = 10;
-/// Radii from the axis whose polynomial in r^2 gives the limit on it.
-const AXIS_RADII: usize = 4;
+/// Midpoints over a meridian of the sphere that stands for a dipole; the integrand is smooth and periodic.
+const MERIDIAN_POINTS: u32 = 32;
 
-/// dB_z/dz on the axis: B_z = 2 psi / r^2 there, as the limit of the polynomial in r^2 through the first radii.
-fn axial_gradient_on_axis(grid: &Grid, psi: &[f64], z: f64) -> f64 {
-    let squares: Vec<f64> = grid.r.nodes()[1..=AXIS_RADII].iter().map(|r| r * r).collect();
-    let limit_weight = |k: usize| -> f64 {
-        (0..AXIS_RADII).filter(|&m| m != k).map(|m| squares[m] / (squares[m] - squares[k])).product()
-    };
-    let qz = Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), z);
-    let on_axis = |n: usize| -> f64 {
-        let base = grid.node(1, qz.first + n);
-        (0..AXIS_RADII).map(|k| limit_weight(k) * 2.0 * psi[base + k] / squares[k]).sum()
-    };
-    qz.slope.iter().enumerate().map(|(n, w)| w * on_axis(n)).sum()
+/// m dB_z/dz for a dipole, as the force on a uniformly magnetised sphere of the same moment and `radius`: by the mean value
+/// of a harmonic field they are the same, and the sphere needs no derivative at a point.
+///
+/// F = 2 pi M radius integral of (d psi/dz)(radius sin t, radius cos t) sin t dt, M = 3 m / (4 pi radius^3).
+fn on_dipole(grid: &Grid, psi: &[f64], moment: f64, centre: f64, radius: f64) -> f64 {
+    let step = PI / f64::from(MERIDIAN_POINTS);
+    let mut sum = 0.0;
+    for k in 0..MERIDIAN_POINTS {
+        let (sin, cos) = ((f64::from(k) + 0.5) * step).sin_cos();
+        let qr = Stencil::<POINTS>::at(grid.r.nodes(), radius * sin);
+        let qz = Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), centre + radius * cos);
+        let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
+        let slope: f64 = qz.slope.iter().enumerate().map(|(n, w)| w * row(n)).sum();
+        sum += slope * sin * step;
+    }
+    1.5 * moment * sum / (radius * radius)
 }
 
 /// Axial force on the mover by the Maxwell stress averaged over the running gap, N.

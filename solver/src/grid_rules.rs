@@ -8,7 +8,7 @@
 //!   growing by 0.26 per distance from the faces;
 //! - along, in the mover's frame: breakpoints at magnet ends with h = gap/2 there (gap/4 for permeable
 //!   walls), at most a/8 (a/16 for permeable) to a distance a beyond them, growing likewise from there;
-//! - along, in the wall's frame: that size all over the swept part of the wall;
+//! - along, in the wall's frame: min(3/4 gap, a/8) all over the swept part of the wall (half for permeable);
 //! - boundary: 40 b outward and ahead, 40 b + 4 a Re behind the mover.
 
 use lenzbore_mesh::{Anchor, Cap, Grid, MeshFault, PlannedLine, Rectangle, Refinement, SizeLaw};
@@ -146,6 +146,12 @@ fn held(from_m: f64, to_m: f64, size_m: f64) -> Cap {
 
 type AxialPlan = (PlannedLine, Vec<Rectangle>, (f64, f64), (f64, f64), f64);
 
+/// Axial size in the wall's frame, where no cell stays at the magnet's ends.
+fn swept_size(problem: &Problem, placement: &Placement) -> f64 {
+    (0.75 * placement.gap_m / finer(problem)).min(axial_cap(problem, placement))
+}
+
+/// Axial size at the magnet's ends in the mover's frame.
 fn axial_size(problem: &Problem, placement: &Placement) -> f64 {
     (placement.gap_m / (2.0 * finer(problem))).min(axial_cap(problem, placement))
 }
@@ -190,7 +196,7 @@ fn plan_z_wall(
     (low, high): (f64, f64),
     outer: f64,
 ) -> Result<AxialPlan, MeshFault> {
-    let size = axial_size(problem, placement);
+    let size = swept_size(problem, placement);
     let length = problem.wall.length_m().unwrap_or(0.0);
     let mut law = SizeLaw { growth: GROWTH, ..SizeLaw::default() };
     let reach = 6.0 * placement.scale_m;

@@ -24,9 +24,6 @@ use crate::problem::{Free, Problem, SnapshotPlan, Travel};
 use crate::regime::regime;
 use crate::target::{levels_wanted, may_add_level, verdict};
 
-/// Share of the last extrapolation step within which the routes count as agreeing.
-const ROUTE_STEP_SHARE: f64 = 0.1;
-
 /// One level's record.
 struct LevelRecord {
     series: Series,
@@ -263,7 +260,7 @@ impl<'p> Journey<'p> {
         };
         let wall = ladder(|s| &s.force_mid);
         let (mover, stress) = (ladder(|s| &s.force_on_mover_mid), ladder(|s| &s.force_by_stress_mid));
-        let band_newton = drag.band + ROUTE_STEP_SHARE * mover.step.max(stress.step);
+        let band_newton = drag.band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
         let apart = (mover.value - wall.value).abs().max((stress.value - wall.value).abs());
         Some(Forces {
             wall_newton: wall.value,

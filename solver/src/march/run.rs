@@ -282,8 +282,9 @@ impl<'a, 'p> Run<'a, 'p> {
             self.psi_nodes[(j + 1) * nr + 1..(j + 2) * nr - 1].copy_from_slice(row);
         }
         self.level.fill_bands(middle, &mut self.band_nodes, &mut self.row.0, &mut self.row.1);
-        let bands = &self.level.placement.stress_bands;
-        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, &self.level.problem.mover, middle));
+        let (bands, gap) = (&self.level.placement.stress_bands, self.level.placement.gap_m);
+        let mover = &self.level.problem.mover;
+        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, mover, middle, gap));
         self.series.force_by_stress_mid.push(by_stress(grid, &self.psi_nodes, &self.band_nodes, bands));
     }
 

@@ -226,15 +226,13 @@ fn three_forces(problem: &Problem, levels: &mut Levels, velocity: f64, point: &P
         let (psi, _, _) = level.reaction(velocity)?;
         let grid = &level.operators.grid;
         let source = band_source(grid, problem, &levels.placement);
-        on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0));
+        on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0, levels.placement.gap_m));
         stress_levels.push(sign * by_stress(grid, &psi, &source, &levels.placement.stress_bands));
     }
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
     let (mover_newton, stress_newton) = (mover.value, stress.value);
-    // Each route is uncertain by its own last extrapolation step.
-    let step_share = 0.1;
-    let band_newton = point.drag_band + step_share * mover.step.max(stress.step);
+    let band_newton = point.drag_band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
     let apart = (mover_newton - wall_newton).abs().max((stress_newton - wall_newton).abs());
     Ok(Forces { wall_newton, mover_newton, stress_newton, band_newton, agree: apart <= band_newton, time_s: 0.0 })
 }
