@@ -85,10 +85,10 @@ mod tests {
             for z in [0.0, 1e-5, 0.5, 0.8, 0.81, 3.0, 200.0] {
                 let (outer, inner) = (sheet_fields((1.0, 0.8), r, z), sheet_fields((0.6, 0.8), r, z));
                 let [psi, br, bz] = [0, 1, 2].map(|i| RING.remanence_tesla * (outer[i] - inner[i]));
-                // The largest difference met is 6e-11, the references' own where the two sheets cancel.
-                assert_relative_eq!(RING.psi(r, z), r * r * psi, max_relative = 3e-10);
-                assert_relative_eq!(RING.flux_density_r(r, z), r * br, max_relative = 3e-10);
-                assert_relative_eq!(RING.flux_density_z(r, z), bz, epsilon = 3e-10 * bz.hypot(r * br));
+                // The use needs 1e-9; the largest difference met is 3e-14.
+                assert_relative_eq!(RING.psi(r, z), r * r * psi, max_relative = 1e-12);
+                assert_relative_eq!(RING.flux_density_r(r, z), r * br, max_relative = 1e-12);
+                assert_relative_eq!(RING.flux_density_z(r, z), bz, epsilon = 1e-12 * bz.hypot(r * br));
             }
         }
     }

@@ -11,12 +11,17 @@ mod magnet;
 #[cfg(test)]
 mod quadrature;
 mod sheet;
+mod spacing;
+mod stack;
 mod superpose;
+mod table;
 
 pub use coil::Coil;
 pub use dipole::Dipole;
 pub use magnet::Magnet;
 pub use sheet::CylinderSheet;
+pub use stack::{North, Stack, StackItem, coated_magnet};
+pub use table::SourceTable;
 
 /// An axisymmetric field in free space.
 pub trait AxialField {
