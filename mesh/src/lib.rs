@@ -19,4 +19,4 @@ pub use line::{NodeLine, PlannedLine};
 pub use quality::{LineQuality, cells_between};
 pub use refinement::Refinement;
 pub use region::{Rectangle, Regions};
-pub use size::{Anchor, SizeLaw};
+pub use size::{Anchor, Cap, SizeLaw};

@@ -201,13 +201,13 @@ impl NodeLine {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::Anchor;
+    use crate::{Anchor, Cap};
 
     fn law() -> SizeLaw {
         SizeLaw {
             growth: 0.26,
             anchors: vec![Anchor { position_m: 1.0, size_m: 0.1 }, Anchor { position_m: 2.0, size_m: 0.05 }],
-            caps: vec![(1.0, 2.0, 0.2)],
+            caps: vec![Cap { from_m: 1.0, to_m: 2.0, size_m: 0.2, release_m: None }],
         }
     }
 
