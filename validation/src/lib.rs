@@ -1,1 +1,14 @@
 //! Published checks, each beside its source, and independent semi-analytic paths.
+//!
+//! The independent paths share no code with the field solver beyond the statement of the problem:
+//! [`endless`] solves a layered wall without ends by its Fourier-Bessel integral.
+
+pub mod cases;
+pub mod checks;
+pub mod elliptic;
+pub mod endless;
+mod error;
+pub mod quadrature;
+pub mod references;
+
+pub use error::Error;

@@ -1,0 +1,63 @@
+//! The registry of checks.
+//!
+//! A check holds figures of the program, or of an independent method in this crate, against values with a source. Tests call
+//! each of them; so can a command.
+
+mod closed_form;
+mod endless;
+mod verdict;
+
+pub use verdict::{Comparison, Verdict};
+
+use crate::Error;
+use crate::references::Source;
+
+/// What a check is evidence for.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Kind {
+    /// The equations are solved right: against an exact solution of the same equations.
+    CodeVerification,
+    /// Two independent methods agree.
+    CrossCheck,
+    /// The equations are the right ones: against an experiment.
+    Validation,
+}
+
+impl Kind {
+    /// The words used in lists of checks.
+    #[must_use]
+    pub fn words(self) -> &'static str {
+        match self {
+            Self::CodeVerification => "code verification",
+            Self::CrossCheck => "cross-check",
+            Self::Validation => "validation (experiment)",
+        }
+    }
+}
+
+/// One check.
+#[derive(Debug, Clone, Copy)]
+pub struct Check {
+    /// Short name, words joined by hyphens.
+    pub name: &'static str,
+    /// One sentence: what is held against what.
+    pub about: &'static str,
+    /// What it is evidence for.
+    pub kind: Kind,
+    /// Where the values come from.
+    pub source: &'static Source,
+    /// Runs it.
+    pub run: fn() -> Result<Verdict, Error>,
+}
+
+/// All checks, those of the independent methods first.
+#[must_use]
+pub fn all() -> Vec<Check> {
+    [closed_form::CHECKS, endless::CHECKS].concat()
+}
+
+/// The check of that name.
+#[must_use]
+pub fn named(name: &str) -> Option<Check> {
+    all().into_iter().find(|c| c.name == name)
+}

@@ -1,0 +1,76 @@
+//! What a check found.
+
+use std::fmt;
+
+/// One figure held against its reference.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Comparison {
+    /// Which figure.
+    pub what: String,
+    /// Value found.
+    pub found: f64,
+    /// Half-width of the band that the program put on it, where it did.
+    pub band: Option<f64>,
+    /// Reference value.
+    pub expected: f64,
+    /// Greatest difference allowed.
+    pub allowed: f64,
+    /// Unit of all four.
+    pub unit: &'static str,
+}
+
+impl Comparison {
+    /// Difference to the reference.
+    #[must_use]
+    pub fn difference(&self) -> f64 {
+        self.found - self.expected
+    }
+
+    /// Within tolerance, and the reference (known to half of nothing better than `allowed`) inside the band where there is one.
+    #[must_use]
+    pub fn passes(&self) -> bool {
+        let within = self.difference().abs() <= self.allowed;
+        within && self.found.is_finite()
+    }
+}
+
+impl fmt::Display for Comparison {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let mark = if self.passes() { "ok  " } else { "FAIL" };
+        write!(f, "{mark} {}: {:.9e}", self.what, self.found)?;
+        if let Some(band) = self.band {
+            write!(f, " +/- {band:.1e}")?;
+        }
+        write!(f, " {} against {:.9e}", self.unit, self.expected)?;
+        write!(f, ", difference {:.1e}, allowed {:.1e}", self.difference(), self.allowed)
+    }
+}
+
+/// All comparisons of a check.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct Verdict {
+    /// In order.
+    pub comparisons: Vec<Comparison>,
+}
+
+impl Verdict {
+    /// Whether there is at least one comparison and all pass.
+    #[must_use]
+    pub fn passed(&self) -> bool {
+        !self.comparisons.is_empty() && self.comparisons.iter().all(Comparison::passes)
+    }
+
+    /// Adds a comparison without a band.
+    pub fn compare(&mut self, what: impl Into<String>, found: f64, expected: f64, allowed: f64, unit: &'static str) {
+        self.comparisons.push(Comparison { what: what.into(), found, band: None, expected, allowed, unit });
+    }
+}
+
+impl fmt::Display for Verdict {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        for comparison in &self.comparisons {
+            writeln!(f, "{comparison}")?;
+        }
+        Ok(())
+    }
+}
