@@ -1,12 +1,13 @@
 //! The direct-current coil of rectangular section with uniform current density.
 //!
 //! The coil is a nest of current sheets: field = int_{r1}^{r2} (mu0 N I/(2 b (r2 - r1))) sheet(a) da. As a function of a
-//! the sheet's field is analytic but for a jump of a derivative at a = r and branch points at a = r +- i (|z| -+ b). The integral is
-//! split at r and halved towards the branch points until each panel lies at least [`CLEARANCE`] half widths from them; the
-//! Gauss-Legendre order then follows from that distance and gives 1e-15 a panel (see `gauss.rs`). A point in an end's plane inside
-//! the section (branch point on the path, a logarithm) is closed in on by halving to rounding.
+//! the sheet's field is analytic but for a jump of a derivative at a = r and branch points at a = r +- i (|z| -+ b). The
+//! integral is split at r and halved towards the branch points until each panel lies at least [`CLEARANCE`] half widths
+//! from them; the Gauss-Legendre order then follows from that distance and gives 1e-15 a panel (see `gauss.rs`). A point
+//! in an end's plane inside the section (branch point on the path, a logarithm) is closed in on by halving to rounding.
 //!
-//! Principle: J. T. Conway, IEEE Transactions on Magnetics 37, 2977-2988 (2001), which reduces thick coils to one integral over sheets.
+//! Principle (sheets in closed form, radius by quadrature): M. W. Garrett, Calculation of fields, forces, and mutual
+//! inductances of current systems by elliptic integrals, Journal of Applied Physics 34, 2567-2573 (1963); not read in full.
 
 use super::AxialField;
 use super::current_loop::Jet;

@@ -6,12 +6,13 @@
 //!
 //! These are Maxwell's and Callaghan & Maslen's closed forms after one Landen transformation. In the usual modulus
 //! 4 a r/R^2 the first-, second- and third-kind terms cancel to O(k^2) for r << a and r >> a; after the transformation
-//! every sum below has terms of one sign (derived with w = exp(i phi) by shrinking the contour of the defining integral
-//! onto the cut 0 <= w <= k), so no digit is lost anywhere but in the true sign change of a loop's B_z.
+//! (derived with w = exp(i phi) by shrinking the contour of the defining integral onto the cut 0 <= w <= k) all terms
+//! have one sign but for one that is never near the sum of the others, so no digit is lost anywhere but in the true
+//! sign change of a loop's B_z.
 //!
-//! Sources: J. C. Maxwell, A Treatise on Electricity and Magnetism, art. 701 (the transformed form of the mutual inductance);
-//! NIST DLMF 19.34; E. E. Callaghan & S. H. Maslen, The magnetic field of a finite solenoid, NASA TN D-465 (1960);
-//! N. Derby & S. Olbert, Cylindrical magnets and ideal solenoids, American Journal of Physics 78, 229-235 (2010).
+//! Sources: J. C. Maxwell, A Treatise on Electricity and Magnetism, art. 701 (the transformed form of the mutual
+//! inductance); NIST DLMF 19.34; E. E. Callaghan & S. H. Maslen, The magnetic field of a finite solenoid, NASA TN D-465
+//! (1960); N. Derby & S. Olbert, Cylindrical magnets and ideal solenoids, American Journal of Physics 78, 229-235 (2010).
 
 use super::elliptic::{cel, cel2};
 use std::cmp::Ordering;
@@ -114,7 +115,7 @@ impl LoopGeometry {
     /// r < a: (2z/(pi S)) cel(kc, 1 - hk, 1, 1); r > a: -(2z/(pi S)) hk cel(kc, 1 - hk, 0, 1); r = a: their mean,
     /// (z/(pi S)) K.
     pub(crate) fn column_flux_density_z(&self) -> f64 {
-        if !(self.z.abs() > 0.0) {
+        if self.z.abs() <= 0.0 {
             return 0.0;
         }
         let factor = 2.0 * self.z / (PI * self.s);
@@ -177,9 +178,9 @@ mod tests {
     use crate::sources::quadrature::loop_fields;
     use approx::assert_relative_eq;
 
-    /// (a, b, h in m; M in nH; dM/dh in H/m): computed independently from Maxwell's closed form (Treatise, art. 701; NIST DLMF 19.34),
-    /// mu0 = 4 pi 1e-7. The first M is the worked example of E. B. Rosa & F. W. Grover, Bulletin of the Bureau of Standards 8, 1-237
-    /// (1912), 1036.66 cm: that figure is from memory. Tolerance: the digits given.
+    /// (a, b, h in m; M in nH; dM/dh in H/m): computed independently from Maxwell's closed form (Treatise, art. 701; NIST
+    /// DLMF 19.34), mu0 = 4 pi 1e-7. The first M is the worked example of E. B. Rosa & F. W. Grover, Bulletin of the
+    /// Bureau of Standards 8, 1-237 (1912), 1036.66 cm: that figure is from memory. Tolerance: the digits given.
     const MUTUAL: [(f64, f64, f64, f64, f64); 8] = [
         (0.25, 0.25, 0.01, 1036.66484928, -3.13317825e-5),
         (0.25, 0.25, 0.10, 337.68471849, -2.74179666e-6),

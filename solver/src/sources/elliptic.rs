@@ -3,8 +3,8 @@
 //! A thin layer over the `ellip` crate (9e-16 relative by its own measurement): moduli are clamped
 //! away from the singular end, so every call returns a finite number and nothing can fail.
 //!
-//! Source of the integral and of its algorithm: R. Bulirsch, Numerical calculation of elliptic integrals and
-//! elliptic functions III, Numerische Mathematik 13, 305-315 (1969); Legendre's forms in terms of it: NIST DLMF 19.2(iii).
+//! Source of the integral and of its algorithm: R. Bulirsch, Numerical calculation of elliptic integrals and elliptic
+//! functions III, Numerische Mathematik 13, 305-315 (1969); Legendre's forms in terms of it: NIST DLMF 19.2(iii).
 
 /// Smallest complementary modulus passed on; a filament seen from 1e-60 of its radius.
 const LEAST_COMPLEMENT: f64 = 1e-30;

@@ -22,8 +22,8 @@ pub(crate) fn rule(n: usize) -> &'static GaussRule {
 /// The rule whose error on a unit interval [-1, 1] is about 1e-15 for an integrand analytic but for points
 /// at least `distance` > 1 from the centre.
 ///
-/// The error of n points falls as rho^(-2n), rho = d + sqrt(d^2 - 1) being the sum of half axes of the
-/// largest ellipse of analyticity (L. N. Trefethen, Approximation Theory and Approximation Practice, 2013, theorem 19.3; from memory).
+/// The error of n points falls as rho^(-2n), rho = d + sqrt(d^2 - 1) being the sum of half axes of the largest ellipse of
+/// analyticity (L. N. Trefethen, Approximation Theory and Approximation Practice, 2013, theorem 19.3; from memory).
 pub(crate) fn rule_for_distance(distance: f64) -> &'static GaussRule {
     let d = distance.clamp(1.05, 1e12);
     let log_rho = (d + (d * d - 1.0).sqrt()).ln();

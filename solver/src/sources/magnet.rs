@@ -1,7 +1,8 @@
 //! Cylinder and ring magnets, uniformly magnetised along the axis, recoil permeability 1.
 //!
-//! The magnetisation M = remanence/mu0 is equivalent to the surface current M on the outer face and -M on the bore, so the field is
-//! that of an outer sheet less an inner one. It is B everywhere, inside the material too, where it equals mu0 H + remanence.
+//! The magnetisation M = remanence/mu0 is equivalent to the surface current M on the outer face and -M on the bore, so
+//! the field is that of an outer sheet less an inner one. It is B everywhere, inside the material too, where it equals
+//! mu0 H + remanence.
 
 use super::AxialField;
 use super::current_loop::Jet;
@@ -95,8 +96,8 @@ mod tests {
 
     #[test]
     fn equals_its_pole_faces_in_the_bore_of_a_long_ring() {
-        // On the axis the charges +-Br on the end faces give B_z = (Br/2) [z'/sqrt(z'^2 + a^2)] taken over both radii and ends;
-        // integrated here as discs of charge, which do not cancel as the sheets do.
+        // On the axis the charges +-Br on the end faces give B_z = (Br/2) [z'/sqrt(z'^2 + a^2)] taken over both radii
+        // and ends; integrated here as discs of charge, which do not cancel as the sheets do.
         let ring = Magnet { inner_radius_m: 0.9, outer_radius_m: 1.0, half_length_m: 20.0, remanence_tesla: 1.0 };
         for z in [0.0, 5.0, 15.0] {
             let face = |u: f64| integrate(0.9, 1.0, 1e-13, &mut |a| a * u / (2.0 * (a * a + u * u).powf(1.5)));

@@ -1,8 +1,12 @@
 //! Independent references for the tests: adaptive Gauss-Kronrod quadrature of the Biot-Savart integrals of a loop,
 //! stacked along z and over radius. No elliptic integral appears here.
 //!
-//! The loop integrals (mu0 I = 1, D^2 = a^2 + r^2 + z^2 - 2 a r cos phi) are integrated by parts where the raw cosine would cancel:
-//! psi = (a^2 r^2/4 pi) int sin^2/D^3, B_r = (3 a^2 r z/4 pi) int sin^2/D^5, B_z = (a/4 pi) int (a - r cos)/D^3 over 0..2 pi.
+//! The loop integrals (mu0 I = 1, D^2 = a^2 + r^2 + z^2 - 2 a r cos phi, over 0..2 pi), integrated by parts where the
+//! raw cosine would cancel:
+//!
+//! - psi = (a^2 r^2/4 pi) int sin^2/D^3,
+//! - B_r = (3 a^2 r z/4 pi) int sin^2/D^5,
+//! - B_z = (a/4 pi) int (a - r cos)/D^3.
 
 use std::f64::consts::PI;
 
@@ -97,8 +101,8 @@ fn loop_component(which: usize, a: f64, r: f64, z: f64, tolerance: f64) -> f64 {
 
 /// One component of the field of the sheet r = a, |z| < b with mu0 K = 1.
 pub(crate) fn sheet_component(which: usize, (a, b): (f64, f64), r: f64, z: f64, tolerance: f64) -> f64 {
-    // Intervals as centre and half width, whose length is exact. B_r of a loop is odd in height: what cancels below is left out.
-    // The others are split where the integrand peaks.
+    // Intervals as centre and half width, whose length is exact. B_r of a loop is odd in height: what cancels below is
+    // left out. The others are split where the integrand peaks.
     let intervals = match which {
         1 => vec![(z.abs().max(b), z.abs().min(b))],
         _ if z.abs() < b => vec![(0.5 * (z - b), 0.5 * (b - z)), (0.5 * (z + b), 0.5 * (b + z))],
@@ -122,8 +126,8 @@ pub(crate) fn loop_fields(a: f64, r: f64, z: f64) -> Fields {
     [0, 1, 2].map(|which| loop_component(which, a, r, z, 1e-13))
 }
 
-/// The same with the integral along z done by hand where its ends do not cancel: int dz/(q + z^2)^(3/2) = z/(q sqrt(q + z^2)),
-/// and B_r as the difference of two loops' psi.
+/// The same with the integral along z done by hand where its ends do not cancel: int dz/(q + z^2)^(3/2) = z/(q sqrt(q +
+/// z^2)), and B_r as the difference of two loops' psi.
 fn sheet_component_near(which: usize, (a, b): (f64, f64), r: f64, z: f64, tolerance: f64) -> f64 {
     let (up, down) = (z + b, z - b);
     if which == 1 {

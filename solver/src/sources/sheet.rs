@@ -1,27 +1,32 @@
 //! The thin cylindrical current sheet: an ideal solenoid, or the surface of a uniformly magnetised cylinder.
 //!
-//! In the usual moduli (k'^2 = 4 a r/((a+r)^2 + z^2), h'^2 = 4 a r/(a+r)^2) the closed forms read
-//! psi = (mu0 K/2 pi) sqrt(a r) \[z k' ((k'^2 + h'^2 - h'^2 k'^2)/(h'^2 k'^2) K - E/k'^2 + ((h'^2 - 1)/h'^2) Pi)\] from z - b to z + b
-//! (E. E. Callaghan & S. H. Maslen, NASA TN D-465, 1960) and, with Bulirsch's cel C,
-//! B_r = (mu0 K/pi) \[alpha C(k, 1, 1, -1)\], B_z = (mu0 K/pi) (a/(a+r)) \[beta C(k, gamma^2, 1, gamma)\]
-//! (N. Derby & S. Olbert, American Journal of Physics 78, 229-235, 2010, eqs 4 to 6; formulas typed from memory of the paper).
-//! They are evaluated here in the cancellation-free form of `current_loop.rs`. Where both ends are so far away
-//! that their difference would cancel, the loops between them are summed by Gauss-Legendre quadrature, to the same 1e-15.
+//! With k'^2 = 4 a r/((a+r)^2 + z^2), h'^2 = 4 a r/(a+r)^2 and a sheet current K_s, the usual closed forms are, each
+//! taken from z - b to z + b (alpha, beta: a, z over sqrt(z^2 + (r+a)^2); gamma = (a-r)/(a+r); C: Bulirsch's cel with
+//! the complement of k'),
+//!
+//! - psi = (mu0 K_s/2 pi) sqrt(a r) z k' ((k'^2 + h'^2 - h'^2 k'^2)/(h'^2 k'^2) K - E/k'^2 + ((h'^2 - 1)/h'^2) Pi),
+//!   E. E. Callaghan & S. H. Maslen, The magnetic field of a finite solenoid, NASA TN D-465 (1960);
+//! - B_r = (mu0 K_s/pi) alpha C(1, 1, -1), B_z = (mu0 K_s/pi) (a/(a+r)) beta C(gamma^2, 1, gamma),
+//!   N. Derby & S. Olbert, Cylindrical magnets and ideal solenoids, American Journal of Physics 78, 229-235 (2010).
+//!
+//! Both are from memory and were confirmed by quadrature. They are evaluated here in the cancellation-free form of
+//! `current_loop.rs`. Where both ends are so far away that their difference would cancel, the loops between them are
+//! summed by Gauss-Legendre quadrature, to the same 1e-15.
 
 use super::AxialField;
 use super::current_loop::{Jet, LoopGeometry};
 use super::gauss::{GaussRule, rule_for_distance};
 
-/// Distance from the middle of an interval to the filament's radius, in half intervals, from which the ends' difference is
-/// replaced by quadrature (9 points at this distance, fewer beyond).
+/// Distance from the middle of an interval to the filament's radius, in half intervals, from which the ends' difference
+/// is replaced by quadrature (9 points at this distance, fewer beyond).
 const FAR: f64 = 4.0;
 
 /// Uniform azimuthal sheet current on r = `radius_m`, |z| < `half_length_m`.
 ///
 /// psi, B_r and B_z are good to about 1e-14 relative (B_z: relative to |B| near its change of sign), on the axis, inside,
-/// at the ends' planes and hundreds of radii away (beyond the end of a magnet some
-/// hundred radii long, where neither rule applies well: 1e-11). At r = `radius_m` psi and B_r are continuous and B_z takes its mean; on
-/// the edge itself, where B_r is logarithmically infinite, a finite value stands for it.
+/// at the ends' planes and hundreds of radii away (beyond the end of a magnet some hundred radii long, where neither rule
+/// applies well: 1e-11). At r = `radius_m` psi and B_r are continuous and B_z takes its mean; on the edge itself, where
+/// B_r is logarithmically infinite, a finite value stands for it.
 ///
 /// ```
 /// use lenzbore_solver::sources::{AxialField, CylinderSheet};
@@ -38,7 +43,8 @@ pub struct CylinderSheet {
     pub tesla: f64,
 }
 
-/// Middle and half width of an interval, with the rule to integrate over it where that is better than a difference of its ends.
+/// Middle and half width of an interval, with the rule to integrate over it where that is better than a difference of its
+/// ends.
 struct Interval {
     centre: f64,
     half: f64,
@@ -119,7 +125,11 @@ impl AxialField for CylinderSheet {
 
 #[cfg(test)]
 mod tests {
-    #![allow(clippy::float_cmp, reason = "exact limits are compared exactly")]
+    #![allow(
+        clippy::float_cmp,
+        clippy::approx_constant,
+        reason = "exact limits are compared exactly; tables give digits"
+    )]
     use super::*;
     use crate::sources::quadrature::{integrate, sheet_fields};
     use approx::assert_relative_eq;
@@ -139,7 +149,8 @@ mod tests {
         e_psi.max(e_br).max(e_bz)
     }
 
-    /// The use needs 1e-9; the largest difference met is 3e-12, at 1e-6 radii from the edge (the references' own limit there), 3e-15 elsewhere.
+    /// The use needs 1e-9; the largest difference met is 3e-12, at 1e-6 radii from the edge (the references' own limit
+    /// there), 3e-15 elsewhere.
     const PROMISE: f64 = 1e-11;
 
     #[test]
@@ -164,8 +175,8 @@ mod tests {
         }
     }
 
-    /// (b, r, z, B_r, B_z) with a = 1, mu0 K = 1: computed independently from the formulas of N. Derby & S. Olbert, American Journal
-    /// of Physics 78, 229-235 (2010). Tolerance: the twelve digits given.
+    /// (b, r, z, B_r, B_z) with a = 1, mu0 K = 1: computed independently from the formulas of N. Derby & S. Olbert,
+    /// American Journal of Physics 78, 229-235 (2010). Tolerance: the twelve digits given.
     const DERBY_OLBERT: [(f64, f64, f64, f64, f64); 21] = [
         (1.0, 0.0, 0.0, 0.0, 0.707_106_781_187),
         (1.0, 0.5, 0.0, 0.0, 0.739_446_877_768),
@@ -190,8 +201,8 @@ mod tests {
         (2.0, 1.5, 4.0, 0.019_421_336_912, 0.025_147_263_478),
     ];
 
-    /// (b, r, z, A_phi) with a = 1, mu0 K = 1: computed independently from the formula of E. E. Callaghan & S. H. Maslen, NASA TN D-465
-    /// (1960), and confirmed by quadrature. Tolerance: the twelve digits given.
+    /// (b, r, z, A_phi) with a = 1, mu0 K = 1: computed independently from the formula of E. E. Callaghan & S. H. Maslen,
+    /// NASA TN D-465 (1960), and confirmed by quadrature. Tolerance: the twelve digits given.
     const CALLAGHAN_MASLEN: [(f64, f64, f64, f64); 10] = [
         (1.0, 0.5, 0.0, 0.180_855_966_408),
         (1.0, 1.2, 0.0, 0.290_536_393_195),
@@ -216,8 +227,8 @@ mod tests {
         }
     }
 
-    /// (2a/l, K): computed independently from Lorenz's formula; 1.0, 0.5, 2, 5 and 10 agree with the values printed by H. Nagaoka,
-    /// Journal of the College of Science, Tokyo 27(6) (1909), as remembered. Tolerance: the ten digits given.
+    /// (2a/l, K): computed independently from Lorenz's formula; 1.0, 0.5, 2, 5 and 10 agree with the values printed by H.
+    /// Nagaoka, Journal of the College of Science, Tokyo 27(6) (1909), as remembered. Tolerance: the ten digits given.
     const NAGAOKA: [(f64, f64); 7] = [
         (0.05, 0.979_091_743_3),
         (0.2, 0.920_092_670_8),
@@ -285,7 +296,8 @@ mod tests {
             assert_relative_eq!(s.psi(1.0 - step, z), s.psi(1.0 + step, z), max_relative = 1e-7);
             assert_relative_eq!(s.flux_density_r(1.0 - step, z), s.flux_density_r(1.0 + step, z), epsilon = 1e-7);
         }
-        // A point on the sheet between the ends sees one column upward, one downward: exact by symmetry at the end plane.
+        // A point on the sheet between the ends sees one column upward, one downward: exact by symmetry at the end
+        // plane.
         assert_relative_eq!(
             s.flux_density_z(1.0, 0.7),
             0.5 * sheet(1.4).flux_density_z(1.0, 0.0),

@@ -1,9 +1,9 @@
 //! How fast a mover's psi bends along z at a given radius: bounds on its sixth derivative, which set a table's spacing.
 //!
-//! psi(z) at fixed r is analytic but for branch points at z = z_end +- i |r - a| (each edge of a part) or poles of order three
-//! at z = z_0 +- i r (a dipole). With d the distance of a real z from them:
-//! - a sheet's edge: psi' ~ (mu0 K sqrt(a r)/2 pi) ln(1/d), so |psi^(6)| <~ (mu0 K sqrt(a r)/2 pi) 4!/d^5, and, further off than
-//!   the loop's size, at most the dipole's (mu0 K a^2 r^2/4) (7!/2)/d^8;
+//! psi(z) at fixed r is analytic but for branch points at z = z_end +- i |r - a| (each edge of a part) or poles of order
+//! three at z = z_0 +- i r (a dipole). With d the distance of a real z from them:
+//! - a sheet's edge: psi' ~ (mu0 K sqrt(a r)/2 pi) ln(1/d), so |psi^(6)| <~ (mu0 K sqrt(a r)/2 pi) 4!/d^5 and, further
+//!   off than the loop's size, at most the dipole's (mu0 K a^2 r^2/4) (7!/2)/d^8;
 //! - a coil's corner: the same, spread over its width w: times d/(4 w) where that is below 1;
 //! - a dipole: |psi^(6)| <= (mu0 m r^2/4 pi) (8!/2)/d^9 (derivatives of (r^2 + z^2)^(-3/2) are Gegenbauer polynomials).
 //!
@@ -61,7 +61,7 @@ impl Roughness {
 
 impl Kind {
     fn sixth_derivative(&self, d: f64) -> f64 {
-        if !(d > 0.0) {
+        if d <= 0.0 {
             return f64::INFINITY;
         }
         match *self {

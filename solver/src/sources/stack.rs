@@ -1,7 +1,7 @@
 //! Builds the parts of a mover from a stack, bottom to top.
 //!
-//! Lengths run over the coating, as a stack is measured on the bench: total = sum of the items' lengths + (items - 1) gaps.
-//! Centres are given from the middle of that total, which is the mover's reference point.
+//! Lengths run over the coating, as a stack is measured on the bench: total = sum of the items' lengths + (items - 1)
+//! gaps. Centres are given from the middle of that total, which is the mover's reference point.
 
 use super::Source;
 use crate::problem::{Outline, Part};
@@ -93,11 +93,11 @@ impl Stack {
     }
 }
 
-/// A magnet whose sizes are measured over a coating of `coating_m` a side: the material is smaller by the coating on every
-/// face (a bore's radius larger by it), its outline is what was measured.
+/// A magnet whose sizes are measured over a coating of `coating_m` a side: the material is smaller by the coating on
+/// every face (a bore's radius larger by it), its outline is what was measured.
 ///
-/// `inner_radius_m` 0 is a cylinder, without coating on the axis. Sizes in m, `remanence_tesla` along +z, signed. `None` where
-/// the coating leaves no material.
+/// `inner_radius_m` 0 is a cylinder, without coating on the axis. Sizes in m, `remanence_tesla` along +z, signed. `None`
+/// where the coating leaves no material.
 ///
 /// ```
 /// use lenzbore_solver::sources::{Source, coated_magnet};

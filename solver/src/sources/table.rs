@@ -1,9 +1,9 @@
 //! A fast table of a mover's psi and d psi/dz along z, for use inside time steps.
 //!
 //! Each row (radius) is cut into equal bins and each bin into equal cells, as many as the local bend of psi asks for
-//! (`spacing.rs`); a cell carries the quintic that meets psi, its slope and its curvature at both ends. The interpolant is twice
-//! continuously differentiable and its error is h^6 |psi^(6)|/46080 (t^3 (1-t)^3/6! at most). Finding the cell costs two
-//! multiplications and no search.
+//! (`spacing.rs`); a cell carries the quintic that meets psi, its slope and its curvature at both ends. The interpolant
+//! is twice continuously differentiable and its error is h^6 |psi^(6)|/46080 (t^3 (1-t)^3/6! at most). Finding the cell
+//! costs two multiplications and no search.
 
 use super::AxialField;
 use super::current_loop::Jet;
@@ -40,13 +40,13 @@ struct Row {
 
 /// psi(r, z) and d psi/dz of a mover on a set of radii, z from the mover's reference point.
 ///
-/// `fill`, `fill_slope` and `fill_both` allocate nothing; z outside the table's range (or NaN) takes the closed form.
-/// The slope is the exact derivative of the interpolant of psi. Rows are numbered as the radii given; a row out of range is
+/// `fill`, `fill_slope` and `fill_both` allocate nothing; z outside the table's range (or NaN) takes the closed form. The
+/// slope is the exact derivative of the interpolant of psi. Rows are numbered as the radii given; a row out of range is
 /// the caller's mistake and stops the program.
 ///
-/// Accuracy: psi to `relative_tolerance` of the row's largest |psi|; the slope to some 100 times that, relative to the row's
-/// largest slope (0.5 mm from the edge of a magnet of 10.5 mm radius: 2e-11 and 8e-9 measured for 1e-10).
-/// Cost: 7 ns a value, 11 ns for psi and slope together. Thirty rows over 1 m from a gap of 0.5 mm take 8 ms to build for one
+/// Accuracy: psi to `relative_tolerance` of the row's largest |psi|; the slope to some 100 times that, relative to the
+/// row's largest slope (0.5 mm from the edge of a magnet of 10.5 mm radius: 2e-11 and 8e-9 measured for 1e-10). Cost: 7
+/// ns a value, 11 ns for psi and slope together. Thirty rows over 1 m from a gap of 0.5 mm take 8 ms to build for one
 /// magnet, 45 ms for three, 70 ms for a coil, with 330 to 700 cells a row.
 ///
 /// ```
@@ -71,8 +71,8 @@ pub struct SourceTable {
 impl SourceTable {
     /// Tabulates `mover` at `radii` (m, >= 0) for z from `z_min` to `z_max` (m from the reference point).
     ///
-    /// `relative_tolerance` is the largest error of psi over the row's largest |psi| (at least 1e-13; 1e-10 is usual). A range
-    /// that is empty or not finite gives a table that uses the closed form throughout.
+    /// `relative_tolerance` is the largest error of psi over the row's largest |psi| (at least 1e-13; 1e-10 is usual). A
+    /// range that is empty or not finite gives a table that uses the closed form throughout.
     #[must_use]
     pub fn new(mover: &Mover, radii: &[f64], z_min: f64, z_max: f64, relative_tolerance: f64) -> Self {
         let span = z_max - z_min;
@@ -126,7 +126,8 @@ impl SourceTable {
         }
     }
 
-    /// psi and d psi/dz at heights `z` less `shift` (for nodes at rest seen from a mover at `shift`), as many as the shortest slice.
+    /// psi and d psi/dz at heights `z` less `shift` (for nodes at rest seen from a mover at `shift`), as many as the
+    /// shortest slice.
     pub fn fill_both(&self, row: usize, z: &[f64], shift: f64, psi_out: &mut [f64], slope_out: &mut [f64]) {
         let row = &self.rows[row];
         for ((&z, psi), along) in z.iter().zip(psi_out).zip(slope_out) {
@@ -149,7 +150,7 @@ impl Row {
     #[inline]
     fn locate(&self, height: f64) -> Option<(&Cell, f64, f64)> {
         let x = height * self.bins_per_metre;
-        if !(x >= 0.0) {
+        if x < 0.0 || x.is_nan() {
             return None;
         }
         let bin = whole(x);
@@ -251,8 +252,8 @@ impl<'a> RowBuilder<'a> {
         row
     }
 
-    /// Appends the cells of a bin, more than the rule's number where a check in their roughest place demands it; none where the
-    /// closed form has to serve.
+    /// Appends the cells of a bin, more than the rule's number where a check in their roughest place demands it; none
+    /// where the closed form has to serve.
     fn bin(&self, bin: u32, width: f64, cells: &mut Vec<Cell>) {
         let start = cells.len();
         let mut count = self.cells_by_rule(bin, width);
@@ -268,7 +269,7 @@ impl<'a> RowBuilder<'a> {
             }
             let excess = self.error_at_roughest(low, h, &cells[start..]) / self.allowed;
             // A row of zeros has no error and no allowance: NaN, and nothing to refine.
-            if !(excess > 1.0) {
+            if excess <= 1.0 || excess.is_nan() {
                 return;
             }
             count = (1.2 * count * excess.powf(1.0 / 6.0)).ceil();
