@@ -17,12 +17,15 @@ const STEP_SHARE: f64 = 0.1;
 /// Share of the last extrapolation step for a figure with one route.
 const LONE_STEP_SHARE: f64 = 0.5;
 
+/// What one more level usually makes of the extrapolation step, on the cautious side.
+const LEVEL_GAIN: f64 = 0.1;
+
 /// A figure on all levels, extrapolated with and without the coarsest.
 #[derive(Debug, Clone, PartialEq)]
 pub(crate) struct Ladder {
     /// Extrapolated over all levels.
     pub(crate) value: f64,
-    /// |E_n - E_(n-1)|.
+    /// |E_n - E_(n-1)|, with more than three levels at least a tenth of |E_(n-1) - E_(n-2)|.
     pub(crate) step: f64,
     /// The levels' own values.
     pub(crate) levels: Vec<f64>,
@@ -32,7 +35,12 @@ impl Ladder {
     /// Extrapolates `levels` at refinement `factors`, at least two.
     pub(crate) fn new(factors: &[f64], levels: Vec<f64>) -> Self {
         let value = extrapolate(factors, &levels);
-        let step = (value - extrapolate(&factors[1..], &levels[1..])).abs();
+        let without = |coarse: usize| extrapolate(&factors[coarse..], &levels[coarse..]);
+        let mut step = (value - without(1)).abs();
+        if levels.len() > 3 {
+            // Two high orders may agree by accident: an earlier step, less what a level usually gains, counts too.
+            step = step.max(LEVEL_GAIN * (without(1) - without(2)).abs());
+        }
         Self { value, step, levels }
     }
 }

@@ -50,8 +50,6 @@ pub(crate) struct GridPlan {
     z: PlannedLine,
     /// Painted regions, in the order of the wall's layers.
     pub(crate) rectangles: Vec<Rectangle>,
-    /// Outer radius of the domain, lower and upper boundary, m.
-    pub(crate) extent: (f64, f64, f64),
     /// Where the domain is cut to see the boundary's error, m.
     pub(crate) half_extent: (f64, f64, f64),
     /// Axial cell size in the swept part, m (coarsest level).
@@ -81,7 +79,7 @@ impl GridPlan {
             Frame::Wall { speed, .. } => speed,
         };
         let r = plan_r(problem, placement, speed, r_max)?;
-        let (z, rectangles, extent, half, cell) = match frame {
+        let (z, rectangles, half, cell) = match frame {
             Frame::Mover { velocity } => plan_z_mover(problem, placement, velocity, outer)?,
             Frame::Wall { low, high, .. } => plan_z_wall(problem, placement, (low, high), outer)?,
         };
@@ -89,10 +87,14 @@ impl GridPlan {
             r,
             z,
             rectangles,
-            extent: (r_max, extent.0, extent.1),
             half_extent: (outer + 0.5 * BOUNDARY * outer, half.0, half.1),
             axial_cell_m: cell,
         })
+    }
+
+    /// Nodes of the coarsest level.
+    pub(crate) fn coarsest_nodes(&self) -> usize {
+        (self.r.cells() + 1) * (self.z.cells() + 1)
     }
 
     /// The grid of one level.
@@ -144,7 +146,7 @@ fn held(from_m: f64, to_m: f64, size_m: f64) -> Cap {
     Cap { from_m, to_m, size_m, release_m: None }
 }
 
-type AxialPlan = (PlannedLine, Vec<Rectangle>, (f64, f64), (f64, f64), f64);
+type AxialPlan = (PlannedLine, Vec<Rectangle>, (f64, f64), f64);
 
 /// Axial size in the wall's frame, where no cell stays at the magnet's ends.
 fn swept_size(problem: &Problem, placement: &Placement) -> f64 {
@@ -187,7 +189,7 @@ fn plan_z_mover(problem: &Problem, placement: &Placement, velocity: f64, outer: 
     let points = sorted_apart(points, 0.0);
     let line = PlannedLine::new(&points, &law)?;
     let rectangles = problem.wall.layers.iter().map(|l| rectangle(l, f64::NEG_INFINITY, f64::INFINITY)).collect();
-    Ok((line, rectangles, (low - below, high + above), (low - 0.5 * below, high + 0.5 * above), size))
+    Ok((line, rectangles, (low - 0.5 * below, high + 0.5 * above), size))
 }
 
 fn plan_z_wall(
@@ -219,7 +221,7 @@ fn plan_z_wall(
     let line = PlannedLine::new(&sorted_apart(all, 0.0), &law)?;
     let rectangles = problem.wall.layers.iter().map(|l| rectangle(l, l.from_m, l.to_m)).collect();
     let half = (0.5 * bottom, length + 0.5 * BOUNDARY * outer);
-    Ok((line, rectangles, (bottom, top), half, size))
+    Ok((line, rectangles, half, size))
 }
 
 fn rectangle(layer: &Layer, z_from_m: f64, z_to_m: f64) -> Rectangle {

@@ -11,6 +11,7 @@
 //! Signs: z upward positive, velocities signed, drag positive when it opposes the motion.
 
 pub mod constants;
+pub mod cost;
 pub mod extrapolate;
 pub mod fault;
 pub mod monitor;

@@ -69,11 +69,4 @@ impl WallNodes {
     pub(crate) fn len(&self) -> usize {
         self.unknown.len()
     }
-
-    /// Values of an unknown vector at the wall nodes.
-    pub(crate) fn gather(&self, unknowns: &[f64], out: &mut [f64]) {
-        for (o, &u) in out.iter_mut().zip(&self.unknown) {
-            *o = unknowns[u];
-        }
-    }
 }

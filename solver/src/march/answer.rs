@@ -62,6 +62,45 @@ pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome,
     }
 }
 
+/// The grids of a march, and the speed that they are made for.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub(crate) fn plan(problem: &Problem, placement: &Placement) -> Result<(GridPlan, f64), SolveFault> {
+    let (motion, course) = set_out(problem)?;
+    let reach = reach(problem, course.from, course.until);
+    let speed = fastest(&motion, course.velocity, reach);
+    if !(speed > 0.0 && speed.is_finite()) {
+        return Err(SolveFault::Unsuited("the mover does not move: nothing drives it, or friction holds it at release"));
+    }
+    let plan = GridPlan::new(problem, placement, Frame::Wall { low: reach.0, high: reach.1, speed })?;
+    Ok((plan, speed))
+}
+
+/// The motion, and its course but for the stride.
+fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault> {
+    match &problem.travel {
+        Travel::Traverse(t) => {
+            let velocity = (t.to_m - t.from_m).signum() * t.speed_m_per_s;
+            let time_limit = (t.to_m - t.from_m).abs() / t.speed_m_per_s;
+            let course = Course { from: t.from_m, velocity, until: t.to_m, time_limit, stride: 0.0 };
+            Ok((Motion::Uniform { velocity }, course))
+        }
+        Travel::Free(law) => {
+            let mass = problem.mover.mass_kg.ok_or(SolveFault::Unsuited("free travel needs the mover's mass"))?;
+            let course = Course {
+                from: law.release_m,
+                velocity: law.entry_velocity_m_per_s,
+                until: law.until_m,
+                time_limit: law.time_limit_s,
+                stride: 0.0,
+            };
+            Ok((Motion::Free { law: law.clone(), mass }, course))
+        }
+        Travel::Steady { .. } => Err(SolveFault::Unsuited("settled fields are no march")),
+    }
+}
+
 /// The schedule, the levels so far, the coarsest level on half the domain.
 struct Records {
     schedule: Schedule,
@@ -73,30 +112,12 @@ struct Records {
 impl<'p> Journey<'p> {
     fn new(problem: &'p Problem) -> Result<Self, SolveFault> {
         let placement = Placement::new(problem);
-        let (motion, from, to, velocity, time_limit) = match &problem.travel {
-            Travel::Traverse(t) => {
-                let motion = Motion::of_traverse(t);
-                let Motion::Uniform { velocity } = motion else { return Err(SolveFault::Unsuited("no velocity")) };
-                (motion, t.from_m, t.to_m, velocity, (t.to_m - t.from_m).abs() / t.speed_m_per_s)
-            }
-            Travel::Free(law) => {
-                let mass = problem.mover.mass_kg.ok_or(SolveFault::Unsuited("free travel needs the mover's mass"))?;
-                let motion = Motion::Free { law: law.clone(), mass };
-                (motion, law.release_m, law.until_m, law.entry_velocity_m_per_s, law.time_limit_s)
-            }
-            Travel::Steady { .. } => return Err(SolveFault::Unsuited("settled fields are no march")),
-        };
-        let reach = reach(problem, from, to);
-        let speed = fastest(&motion, velocity, reach);
-        if !(speed > 0.0 && speed.is_finite()) {
-            return Err(SolveFault::Unsuited("the mover does not move: nothing drives it, or friction holds it at release"));
-        }
-        let plan = GridPlan::new(problem, &placement, Frame::Wall { low: reach.0, high: reach.1, speed })?;
-        let stride = match motion {
-            Motion::Uniform { .. } => 0.5 * plan.axial_cell_m,
-            Motion::Free { .. } => plan.axial_cell_m,
-        };
-        let course = Course { from, velocity, until: to, time_limit, stride };
+        let (plan, speed) = plan(problem, &placement)?;
+        let (motion, course) = set_out(problem)?;
+        // v dt <= h for free motion, half of it where the speed is held.
+        let share = if let Motion::Uniform { .. } = motion { 0.5 } else { 1.0 };
+        let course = Course { stride: share * plan.axial_cell_m, ..course };
+        let reach = reach(problem, course.from, course.until);
         Ok(Self { problem, placement, plan, motion, course, reach, speed })
     }
 

@@ -15,4 +15,4 @@ mod series;
 mod snapshots;
 mod step;
 
-pub(crate) use answer::march;
+pub(crate) use answer::{march, plan};

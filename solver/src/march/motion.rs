@@ -1,6 +1,6 @@
 //! The law of motion: uniform speed, or m dv/dt = all forces.
 
-use crate::problem::{Free, Traverse};
+use crate::problem::Free;
 
 /// What moves the mover.
 #[derive(Debug, Clone)]
@@ -25,14 +25,6 @@ pub(crate) struct Force {
     pub(crate) value: f64,
     pub(crate) by_position: f64,
     pub(crate) by_velocity: f64,
-}
-
-impl Motion {
-    /// Motion of a traverse.
-    pub(crate) fn of_traverse(traverse: &Traverse) -> Self {
-        let direction = (traverse.to_m - traverse.from_m).signum();
-        Self::Uniform { velocity: direction * traverse.speed_m_per_s }
-    }
 }
 
 /// Sum of weight, push, friction, air drag and spring, N; `direction` is the sense of sliding (0: no friction).

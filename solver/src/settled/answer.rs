@@ -32,16 +32,25 @@ struct Levels {
 impl Levels {
     fn new(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Self, SolveFault> {
         let placement = Placement::new(problem);
-        let plan = GridPlan::new(problem, &placement, Frame::Mover { velocity })?;
+        let plan = plan(problem, &placement, velocity)?;
         let refinements = Refinement::first(count);
-        let finest = refinements.last().map_or(1.0, |f| f.factor());
-        let mut levels = Vec::with_capacity(count);
-        for refinement in &refinements {
-            let share = refinement.factor() / finest;
-            levels.push(SettledLevel::new(problem, &plan, plan.grid(*refinement), velocity, monitor)?);
-            monitor.progress(0.95 * share * share * share, "settled fields");
-        }
-        let cut = SettledLevel::new(problem, &plan, plan.half_grid(Refinement::COARSEST), velocity, monitor)?;
+        let level = |refinement: Refinement| SettledLevel::new(problem, &plan, plan.grid(refinement), velocity, monitor);
+        let half = || SettledLevel::new(problem, &plan, plan.half_grid(Refinement::COARSEST), velocity, monitor);
+        let Some((&finest, others)) = refinements.split_last() else {
+            return Err(SolveFault::Unsuited("no grid level was asked for"));
+        };
+        // The finest level takes as long as all others: two cores share the work.
+        let (last, beside) = std::thread::scope(|scope| {
+            let beside = scope.spawn(|| {
+                let coarse: Result<Vec<_>, _> = others.iter().map(|&f| level(f)).collect();
+                coarse.and_then(|c| Ok((c, half()?)))
+            });
+            let last = level(finest);
+            (last, beside.join())
+        });
+        let (mut levels, cut) = beside.map_err(|_| SolveFault::NotFinite { what: "a level's thread" })??;
+        levels.push(last?);
+        monitor.progress(0.9, "settled fields");
         let factors = refinements.iter().map(|f| f.factor()).collect();
         Ok(Self { placement, factors, levels, cut, velocity })
     }
@@ -98,6 +107,14 @@ impl Levels {
         let peak_at = at.last().map_or((0.0, 0.0), |d| d.peak_at);
         Point { drag, heat, peak, drag_band, peak_band, peak_at }
     }
+}
+
+/// The grids for settled fields at up to |`velocity`|.
+///
+/// # Errors
+/// A line that cannot be built.
+pub(crate) fn plan(problem: &Problem, placement: &Placement, velocity: f64) -> Result<GridPlan, SolveFault> {
+    Ok(GridPlan::new(problem, placement, Frame::Mover { velocity })?)
 }
 
 struct Point {

@@ -15,7 +15,7 @@ use crate::problem::Problem;
 use crate::sources::AxialField;
 
 /// Recurrence residual at which the drag has long converged (it converges as its square).
-const RECURRENCE_LIMIT: f64 = 1.0e-9;
+const RECURRENCE_LIMIT: f64 = 1.0e-8;
 /// More vectors than this is a failure.
 const MOST_VECTORS: usize = 6000;
 

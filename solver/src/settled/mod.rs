@@ -8,5 +8,5 @@ mod cross_check;
 mod level;
 mod recurrence;
 
-pub(crate) use answer::{curve, steady};
+pub(crate) use answer::{curve, plan, steady};
 pub(crate) use level::current_density_into;
