@@ -18,7 +18,7 @@ use crate::sources::SourceTable;
 /// Factors kept at a time, one a step size.
 const KEPT_FACTORS: usize = 4;
 /// Accuracy of the table of the mover's field, relative to the largest |psi| at a radius.
-const TABLE_TOLERANCE: f64 = 1.0e-10;
+const TABLE_TOLERANCE: f64 = 1.0e-11;
 
 /// A level of the march.
 pub(crate) struct MarchLevel<'a> {
