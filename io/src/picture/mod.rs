@@ -11,6 +11,7 @@ pub(crate) mod look;
 mod paper;
 mod ribbon;
 mod scale;
+mod section;
 mod simplify;
 mod smooth;
 mod style;
@@ -20,4 +21,5 @@ mod units;
 
 pub use curve::curve;
 pub use paper::{DOTS_PER_INCH, Picture};
+pub use section::{drawing, section};
 pub use travel::travel;

@@ -23,17 +23,33 @@ impl Banded {
     /// Draws ribbon and line.
     pub(super) fn draw(&self, svg: &mut Svg, x: &Scale, y: &Scale) {
         if self.is_visible(y) {
-            let edge = |sign: f64| {
-                let points: Vec<(f64, f64)> =
-                    (0..self.x.len()).map(|i| (x.at(self.x[i]), clamped(y, self.y[i] + sign * self.band[i]))).collect();
-                simplified(&points, TOLERANCE)
-            };
-            let mut outline = edge(1.0);
-            outline.extend(edge(-1.0).into_iter().rev());
-            svg.area(&polygon(&outline), FILL, 1.0, None);
+            for (from, to) in self.one_way() {
+                let edge = |sign: f64| {
+                    let points: Vec<(f64, f64)> =
+                        (from..=to).map(|i| (x.at(self.x[i]), clamped(y, self.y[i] + sign * self.band[i]))).collect();
+                    simplified(&points, TOLERANCE)
+                };
+                let mut outline = edge(1.0);
+                outline.extend(edge(-1.0).into_iter().rev());
+                svg.area(&polygon(&outline), FILL, 1.0, None);
+            }
         }
         let points: Vec<(f64, f64)> = self.x.iter().zip(&self.y).map(|(a, b)| (x.at(*a), clamped(y, *b))).collect();
         svg.path(&polyline(&simplified(&points, TOLERANCE)), CURVE);
+    }
+
+    /// First and last index of each stretch along which x runs one way: a ribbon that turns back would cancel itself.
+    fn one_way(&self) -> Vec<(usize, usize)> {
+        let mut out = Vec::new();
+        let mut from = 0;
+        for i in 1..self.x.len() {
+            let turns = i + 1 < self.x.len() && (self.x[i + 1] - self.x[i]) * (self.x[i] - self.x[i - 1]) < 0.0;
+            if turns || i + 1 == self.x.len() {
+                out.push((from, i));
+                from = i;
+            }
+        }
+        out
     }
 
     /// Whether the ribbon is anywhere wider than the line that lies on it.

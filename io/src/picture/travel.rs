@@ -166,10 +166,11 @@ impl View {
         let peak = outcome.figures.iter().find(|f| f.name == "drag_peak")?;
         let time = peak.location?.t_s?;
         let along = if self.by_time { time * self.factor } else { interpolated(&outcome.trace.time_s, &drag.x, time)? };
-        if !x.holds(along) {
+        let shown = peak.value * unit.factor;
+        if !x.holds(along) || !y.holds(shown) {
             return None;
         }
-        let at = (x.at(along), y.at((peak.value * unit.factor).clamp(y.low, y.high)));
+        let at = (x.at(along), y.at(shown));
         svg.circle(at, 9.0, "#ffffff", Some(Stroke::full(ORANGE, 3.4)));
         Some(self.peak_text(peak, time))
     }

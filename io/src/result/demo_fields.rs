@@ -39,11 +39,11 @@ fn snapshot(problem: &Problem, fields: &Fields, time_s: f64, position: f64, velo
     let mover = &problem.mover;
     let nodes = || fields.z_m.iter().flat_map(|z| fields.r_m.iter().map(move |r| (*r, *z - position)));
     let a = problem.wall.inner_radius_m().max(1e-3);
+    let b = problem.wall.outer_radius_m();
     let reaction = |r: f64, z: f64| {
-        let (r, z) = (r.min(1.2 * a), z + 0.4 * a * velocity.signum());
-        -0.06 * velocity * (mover.psi(r, z + 0.05 * a) - mover.psi(r, z - 0.05 * a)) / (0.1 * a)
-            * (-(r / (4.0 * a)).powi(2)).exp()
-            * a
+        let z = z - 0.3 * b * velocity.signum();
+        let outside = mover.psi(r.hypot(b), z + 0.1 * b) - mover.psi(r.hypot(b), z - 0.1 * b);
+        0.2 * velocity * (r / b).powi(2) / (1.0 + (r / b).powi(2)) * outside
     };
     let psi_reaction: Vec<f64> = nodes().map(|(r, z)| reaction(r, z)).collect();
     let psi_total = nodes().zip(&psi_reaction).map(|((r, z), part)| mover.psi(r, z) + part).collect();
