@@ -1,5 +1,6 @@
 //! Case files and units, material book, result folders, HDF5 and XDMF, tables and pictures. Computes no field.
 
+pub mod case;
 pub mod materials;
 pub mod message;
 pub mod units;

@@ -1,0 +1,145 @@
+//! Reads a case file and the files it starts from.
+
+use std::path::{Component, Path, PathBuf};
+
+use super::CaseSource;
+use super::overlay::overlay;
+use super::overrides::overrides_tree;
+use super::parse::parse_document;
+use super::tree::{Entry, Table, Value};
+use crate::message::{CaseFault, Diagnostic, Place, SourceKind, Sources};
+
+/// So many files may start from one another.
+const LONGEST_CHAIN: usize = 16;
+/// A case file is a page or two; anything longer than this is something else.
+const LARGEST_FILE_BYTES: u64 = 4_000_000;
+
+/// What was read, before any word is understood.
+#[derive(Debug, Default)]
+pub(super) struct Loaded {
+    pub tree: Table,
+    pub sources: Sources,
+    pub faults: Vec<Diagnostic>,
+    /// What was pushed out by other sizes or another law.
+    pub notes: Vec<String>,
+    /// Whether every file could be read as TOML.
+    pub readable: bool,
+}
+
+/// Reads the case, its base files and the overrides into one tree.
+pub(super) fn load(source: &CaseSource<'_>, sets: &[String]) -> Loaded {
+    let mut loaded = Loaded { readable: true, ..Loaded::default() };
+    let tree = match source {
+        CaseSource::Path(path) => read_file(path, None, &mut Vec::new(), &mut loaded),
+        CaseSource::Text { name, text, base_dir } => read_text(name, text, base_dir, &mut Vec::new(), &mut loaded),
+    };
+    let over = overrides_tree(sets, &tree, &mut loaded.sources, &mut loaded.faults);
+    loaded.tree = overlay(tree, over, &mut loaded.notes);
+    loaded
+}
+
+fn read_file(path: &Path, named_at: Option<Place>, chain: &mut Vec<PathBuf>, loaded: &mut Loaded) -> Table {
+    match text_of(path) {
+        Ok(text) => {
+            chain.push(identity(path));
+            let base_dir = path.parent().unwrap_or(Path::new(""));
+            read_text(&path.display().to_string(), &text, base_dir, chain, loaded)
+        }
+        Err(why) => {
+            let fault = CaseFault::UnreadableFile { path: path.display().to_string(), why };
+            loaded.faults.push(match named_at {
+                Some(place) => Diagnostic::at(place, fault),
+                None => Diagnostic::of_input(fault),
+            });
+            loaded.readable = false;
+            Table::default()
+        }
+    }
+}
+
+fn text_of(path: &Path) -> Result<String, String> {
+    let plain = |e: std::io::Error| match e.kind() {
+        std::io::ErrorKind::NotFound => "there is no such file".to_owned(),
+        std::io::ErrorKind::PermissionDenied => "no permission to read it".to_owned(),
+        std::io::ErrorKind::InvalidData => "it is not UTF-8 text".to_owned(),
+        _ => e.to_string(),
+    };
+    let about = std::fs::metadata(path).map_err(plain)?;
+    if about.is_dir() {
+        return Err("it is a folder".to_owned());
+    }
+    if about.len() > LARGEST_FILE_BYTES {
+        return Err(format!("it is larger than {LARGEST_FILE_BYTES} bytes, too long for a case file"));
+    }
+    std::fs::read_to_string(path).map_err(plain)
+}
+
+/// The same file under different spellings of its path.
+fn identity(path: &Path) -> PathBuf {
+    path.canonicalize().unwrap_or_else(|_| path.to_owned())
+}
+
+fn read_text(name: &str, text: &str, base_dir: &Path, chain: &mut Vec<PathBuf>, loaded: &mut Loaded) -> Table {
+    let source = loaded.sources.add(name, text, SourceKind::File);
+    let mut tree = match parse_document(text, source) {
+        Ok(tree) => tree,
+        Err(faults) => {
+            loaded.faults.extend(faults);
+            loaded.readable = false;
+            return Table::default();
+        }
+    };
+    let Some(like) = tree.remove("like") else { return tree };
+    match base_of(&like, base_dir, chain, loaded) {
+        Some(base) => overlay(base, tree, &mut loaded.notes),
+        None => tree,
+    }
+}
+
+fn base_of(like: &Entry, base_dir: &Path, chain: &mut Vec<PathBuf>, loaded: &mut Loaded) -> Option<Table> {
+    let place = like.node.place.clone();
+    let fault = match &like.node.value {
+        Value::Text(text) if text.trim().is_empty() => shape(like, "an empty text"),
+        Value::Text(text) => {
+            let path = tidy(&base_dir.join(text));
+            let known = identity(&path);
+            if chain.contains(&known) {
+                let start = chain.iter().position(|p| *p == known).unwrap_or(0);
+                let circle = chain.iter().skip(start).chain([&known]);
+                CaseFault::LikeCircle { chain: circle.map(|p| file_name(p)).collect() }
+            } else if chain.len() >= LONGEST_CHAIN {
+                CaseFault::LikeTooLong { most: LONGEST_CHAIN }
+            } else {
+                return Some(read_file(&path, Some(place), chain, loaded));
+            }
+        }
+        other => shape(like, other.shape()),
+    };
+    loaded.faults.push(Diagnostic::at(place, fault));
+    loaded.readable = false;
+    None
+}
+
+fn shape(like: &Entry, found: &'static str) -> CaseFault {
+    let wanted = "the path of a case file";
+    CaseFault::WrongShape { word: like.word.clone(), found, wanted, example: "like = \"base.toml\"" }
+}
+
+fn file_name(path: &Path) -> String {
+    path.file_name().map_or_else(|| path.display().to_string(), |n| n.to_string_lossy().into_owned())
+}
+
+/// `cases/../base.toml` is shown as `base.toml`.
+fn tidy(path: &Path) -> PathBuf {
+    let mut tidy = PathBuf::new();
+    for part in path.components() {
+        match part {
+            Component::CurDir => {}
+            Component::ParentDir if matches!(tidy.components().next_back(), Some(Component::Normal(_))) => {
+                tidy.pop();
+            }
+            other => tidy.push(other),
+        }
+    }
+    tidy
+}

@@ -1,0 +1,133 @@
+//! Case files: from text to a [`Problem`] that can be solved, or to every fault at once.
+//!
+//! The words are TOML tables; `like` starts from another file, `--set` overrides any word. Every word is resolved to SI
+//! with its origin, every default is filled in and said.
+//!
+//! ```
+//! use lenzbore_io::case::{CaseSource, STARTER, read_case};
+//! let source = CaseSource::Text { name: "starter.toml", text: STARTER, base_dir: std::path::Path::new("") };
+//! let case = read_case(&source, &["wall.sleeve.thickness=2.1 mm".to_owned()])?;
+//! assert_eq!(case.resolved.number("wall.sleeve.thickness"), Some(0.0021));
+//! # Ok::<(), lenzbore_io::message::Diagnostics>(())
+//! ```
+
+mod curve;
+mod geometry;
+mod load;
+mod mover;
+mod names;
+mod output;
+mod overlay;
+mod overrides;
+mod parse;
+mod parts;
+mod reader;
+mod resolve;
+mod resolved;
+mod sizes;
+mod temperature;
+mod travel;
+mod tree;
+mod wall;
+mod words;
+
+use std::path::Path;
+
+use lenzbore_solver::problem::{Extent, Problem, Travel};
+
+use crate::message::Diagnostics;
+pub use resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
+pub use words::{LAWS, LawWords, TABLES, TableWords, law_words, table_words};
+
+#[cfg(test)]
+mod tests;
+
+/// A commented case that resolves as it stands: what `lenzbore new` writes.
+pub const STARTER: &str = include_str!("starter.toml");
+
+/// Where a case comes from.
+#[derive(Debug, Clone, Copy)]
+pub enum CaseSource<'a> {
+    /// A file.
+    Path(&'a Path),
+    /// A text that was read elsewhere, as from standard input.
+    Text {
+        /// What messages call it, as `-`.
+        name: &'a str,
+        /// The text.
+        text: &'a str,
+        /// Folder that a relative `like` starts from.
+        base_dir: &'a Path,
+    },
+}
+
+/// The speeds at which `lenzbore curve` wants settled drag.
+#[derive(Debug, Clone, PartialEq)]
+pub struct CurvePlan {
+    /// Increasing speeds, m/s, all above 0.
+    pub speeds_m_per_s: Vec<f64>,
+    /// Cautions that belong to the curve alone.
+    pub cautions: Vec<String>,
+}
+
+/// Which results are wanted beside the summary, which is always written.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct OutputPlan {
+    /// `trace.csv`.
+    pub trace: bool,
+    /// `run.h5` and `run.xdmf`.
+    pub fields: bool,
+    /// Pictures.
+    pub pictures: bool,
+}
+
+/// A case that can be solved.
+#[derive(Debug, Clone, PartialEq)]
+pub struct ResolvedCase {
+    /// Its title; the file's stem, or `case`, where it has none.
+    pub title: String,
+    /// `[record]`.
+    pub record: serde_json::Map<String, serde_json::Value>,
+    /// The problem. Without `[travel]` (see [`Self::travel_given`]) its travel is steady at the curve's highest speed.
+    pub problem: Problem,
+    /// Whether the case has a `[travel]`; if not, it has a curve.
+    pub travel_given: bool,
+    /// `[curve]`.
+    pub curve: Option<CurvePlan>,
+    /// `[output]`; when fields are kept stands in [`Problem::snapshots`].
+    pub output: OutputPlan,
+    /// Every word with its value in SI and its origin.
+    pub resolved: Resolved,
+    /// What the user should know about the input.
+    pub cautions: Vec<String>,
+    /// What the case has or asks for and the model leaves out.
+    pub not_modelled: Vec<String>,
+    /// SHA-256 of the resolved words, see [`Resolved::digest`].
+    pub digest: String,
+    /// Case file and base files, in the order of reading.
+    pub files: Vec<String>,
+}
+
+impl ResolvedCase {
+    /// The problem for `lenzbore curve`: the wall endless, the travel steady at the curve's highest speed.
+    #[must_use]
+    pub fn curve_problem(&self) -> Option<Problem> {
+        let velocity_m_per_s = *self.curve.as_ref()?.speeds_m_per_s.last()?;
+        let mut problem = self.problem.clone();
+        problem.wall.extent = Extent::Endless;
+        for layer in &mut problem.wall.layers {
+            (layer.from_m, layer.to_m) = (0.0, 0.0);
+        }
+        problem.travel = Travel::Steady { velocity_m_per_s };
+        Some(problem)
+    }
+}
+
+/// Reads a case with its base files and overrides.
+///
+/// # Errors
+/// Every fault of the case at once, each with its place, what would be legal and the mend. Where a file cannot be read
+/// as TOML, the faults of its text alone.
+pub fn read_case(source: &CaseSource<'_>, sets: &[String]) -> Result<ResolvedCase, Diagnostics> {
+    resolve::resolve(load::load(source, sets), source)
+}
