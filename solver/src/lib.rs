@@ -16,6 +16,7 @@ pub mod extrapolate;
 pub mod fault;
 pub mod monitor;
 pub mod outcome;
+pub mod probe;
 pub mod problem;
 pub mod sources;
 
@@ -32,6 +33,8 @@ mod placement;
 mod regime;
 mod settled;
 mod target;
+#[cfg(test)]
+mod verification;
 mod wall_nodes;
 
 use fault::SolveFault;
