@@ -2,7 +2,7 @@
 //!
 //! For a settled drag, extrapolated by two routes (F: J x B, P: heat / speed) over levels 1 .. n:
 //!
-//!   half = c (|E_n F - E_n P| + 0.1 max |E_n - E_(n-1)| + |half-domain cut - full|) + solver residual,
+//!   half = c (|E_n F - E_n P| + max |E_n - E_(n-1)| + |half-domain cut - full|) + solver residual,
 //!
 //! E_(n-1) the extrapolation without the coarsest level. c = 0.5 belongs to the grid rule of this crate: both were fixed
 //! together against exact integrals, and change together. A figure with one route only takes the whole first
@@ -13,7 +13,7 @@ use crate::extrapolate::extrapolate;
 /// c of the rule.
 const CAUTION: f64 = 0.5;
 /// Share of the last extrapolation step that still counts where a second route exists.
-const STEP_SHARE: f64 = 0.1;
+const STEP_SHARE: f64 = 1.0;
 /// Share of the last extrapolation step for a figure with one route.
 const LONE_STEP_SHARE: f64 = 0.5;
 

@@ -6,7 +6,7 @@ use std::f64::consts::PI;
 use lenzbore_mesh::Grid;
 
 use crate::constants::MU0;
-use crate::interpolate::{POINTS, Stencil};
+use crate::interpolate::{ALONG_POINTS, POINTS, Stencil};
 use crate::placement::{MoverSide, StressBand};
 use crate::problem::Mover;
 use crate::sources::Source;
@@ -47,13 +47,11 @@ fn simpson(from: f64, to: f64, f: impl Fn(f64) -> f64) -> f64 {
 
 /// psi at any point by local interpolation; psi = 0 on the axis.
 pub(crate) fn psi_at(grid: &Grid, psi: &[f64], r: f64, z: f64) -> f64 {
-    let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), z));
+    let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<ALONG_POINTS>::at(grid.z.nodes(), z));
     let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
     qz.value.iter().enumerate().map(|(n, w)| w * row(n)).sum()
 }
 
-/// Points along z: cells there may be as long as 3/4 of the gap over which the reaction field varies.
-const AXIAL_POINTS: usize = 10;
 /// Midpoints over a meridian of the sphere that stands for a dipole; the integrand is smooth and periodic.
 const MERIDIAN_POINTS: u32 = 32;
 
@@ -67,7 +65,7 @@ fn on_dipole(grid: &Grid, psi: &[f64], moment: f64, centre: f64, radius: f64) ->
     for k in 0..MERIDIAN_POINTS {
         let (sin, cos) = ((f64::from(k) + 0.5) * step).sin_cos();
         let qr = Stencil::<POINTS>::at(grid.r.nodes(), radius * sin);
-        let qz = Stencil::<AXIAL_POINTS>::at(grid.z.nodes(), centre + radius * cos);
+        let qz = Stencil::<ALONG_POINTS>::at(grid.z.nodes(), centre + radius * cos);
         let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
         let slope: f64 = qz.slope.iter().enumerate().map(|(n, w)| w * row(n)).sum();
         sum += slope * sin * step;

@@ -77,6 +77,36 @@ pub(crate) fn peak(positions: &[f64], values: &[f64]) -> (f64, f64) {
     if refined >= values[k].abs() { (s, refined) } else { (positions[k], values[k].abs()) }
 }
 
+/// The greatest |f| near node `k` of `positions`, with its place: golden section over the two cells around the node.
+pub(crate) fn peak_near(positions: &[f64], k: usize, f: impl Fn(f64) -> f64) -> (f64, f64) {
+    let (low, high) = (positions[k.saturating_sub(1)], positions[(k + 1).min(positions.len() - 1)]);
+    let s = greatest(|s| f(s).abs(), low, high, 1.0e-6 * (high - low));
+    (s, f(s).abs())
+}
+
+/// Points of the stencil for fields along the wall, whose cells may be as long as 3/4 of the gap.
+pub(crate) const ALONG_POINTS: usize = 10;
+
+/// Place of the single maximum of `f` in (low, high) by golden section, to `within` (J. Kiefer, "Sequential minimax search
+/// for a maximum", Proc. Am. Math. Soc. 4, 502-506, 1953).
+pub(crate) fn greatest(f: impl Fn(f64) -> f64, mut low: f64, mut high: f64, within: f64) -> f64 {
+    let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
+    let (mut a, mut b) = (high - ratio * (high - low), low + ratio * (high - low));
+    let (mut fa, mut fb) = (f(a), f(b));
+    while high - low > within {
+        if fa < fb {
+            (low, a, fa) = (a, b, fb);
+            b = low + ratio * (high - low);
+            fb = f(b);
+        } else {
+            (high, b, fb) = (b, a, fa);
+            a = high - ratio * (high - low);
+            fa = f(a);
+        }
+    }
+    0.5 * (low + high)
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;

@@ -10,13 +10,16 @@ use super::step::{State, StepReport, Stepper, heat_rate};
 use crate::fault::SolveFault;
 use crate::fields::snapshot;
 use crate::force::{by_stress, on_mover};
-use crate::interpolate::peak;
+use crate::interpolate::{ALONG_POINTS, Stencil, peak_near, sampled};
 use crate::monitor::Monitor;
 use crate::outcome::Snapshot;
-use crate::settled::current_density_into;
+use crate::settled::greatest_node;
+use crate::sources::AxialField;
 
 /// Greatest change of speed in a pair of steps, relative to the speed.
 const SPEED_CHANGE: f64 = 0.15;
+/// Nodes on either side of the greatest current density that its peak is read from.
+const PEAK_REACH: usize = 8;
 /// Pairs at most.
 const MOST_PAIRS: usize = 2_000_000;
 /// Pairs run on beyond the end, so that the end itself is read between steps.
@@ -57,7 +60,7 @@ pub(crate) struct Run<'a, 'p> {
     saved: State,
     series: Series,
     currents: Vec<f64>,
-    density: Vec<f64>,
+    near: [f64; 2 * PEAK_REACH + 1],
     psi_nodes: Vec<f64>,
     band_nodes: Vec<f64>,
     row: (Vec<f64>, Vec<f64>),
@@ -98,7 +101,7 @@ impl<'a, 'p> Run<'a, 'p> {
             state,
             series,
             currents: vec![0.0; wall],
-            density: vec![0.0; wall],
+            near: [0.0; 2 * PEAK_REACH + 1],
             psi_nodes: vec![0.0; nodes],
             band_nodes: vec![0.0; nodes],
             row: (vec![0.0; nz], vec![0.0; nz]),
@@ -271,7 +274,7 @@ impl<'a, 'p> Run<'a, 'p> {
         let pull = self.level.static_pull(middle);
         self.series.pull_mid.push(pull);
         self.record_routes(middle);
-        self.record_peak();
+        self.record_peak(dt, report.travel);
     }
 
     /// The two other routes at the step's middle.
@@ -288,23 +291,28 @@ impl<'a, 'p> Run<'a, 'p> {
         self.series.force_by_stress_mid.push(by_stress(grid, &self.psi_nodes, &self.band_nodes, bands));
     }
 
-    /// The greatest current density at the step's middle.
-    fn record_peak(&mut self) {
+    /// The greatest current density over the step: sigma |dpsi/dt| / r, the mover's own part exact between nodes.
+    fn record_peak(&mut self, dt: f64, travel: f64) {
         let operators = &self.level.operators;
-        current_density_into(operators, &self.currents, &mut self.density);
         let wall = &operators.wall;
-        let greatest = |row: &crate::wall_nodes::WallRow| {
-            self.density[row.start..row.start + row.count].iter().fold(0.0_f64, |m, d| m.max(d.abs()))
-        };
-        let best = wall.rows.iter().map(|row| (greatest(row), row)).max_by(|a, b| a.0.total_cmp(&b.0));
-        let (z, r) = (operators.grid.z.nodes(), operators.grid.r.nodes());
-        let (value, r_m, z_m) = best.map_or((0.0, 0.0, 0.0), |(_, row)| {
-            let (at, value) = peak(&z[row.j..row.j + row.count], &self.density[row.start..row.start + row.count]);
-            (value, r[row.i], at)
+        let (value, r, z) = greatest_node(operators, &self.currents).map_or((0.0, 0.0, 0.0), |(row, k)| {
+            let r = operators.grid.r.nodes()[row.i];
+            let heights = &operators.grid.z.nodes()[row.j..row.j + row.count];
+            let (end, mover) = (self.state.position, &self.level.problem.mover);
+            let own = |z: f64| (mover.psi(r, z - end + travel) - mover.psi(r, z - end)) / (r * dt);
+            // Only the nodes around the greatest are read by the interpolation.
+            let (from, to) = (k.saturating_sub(PEAK_REACH), (k + PEAK_REACH + 1).min(row.count));
+            for n in from..to {
+                let w = row.start + n;
+                self.near[n - from] = self.currents[w] / (wall.conductance[w] * r) - own(heights[n]);
+            }
+            let (places, near) = (&heights[from..to], &self.near[..to - from]);
+            let (at, field) = peak_near(places, k - from, |z| own(z) + along(places, near, z));
+            (wall.sigma_max[row.start + k] * field, r, at)
         });
         self.series.peak_mid.push(value);
-        self.series.peak_r_mid.push(r_m);
-        self.series.peak_z_mid.push(z_m);
+        self.series.peak_r_mid.push(r);
+        self.series.peak_z_mid.push(z);
     }
 
     fn keep_snapshot(&mut self, time: f64, travel: f64) {
@@ -312,6 +320,14 @@ impl<'a, 'p> Run<'a, 'p> {
         let operators = &self.level.operators;
         self.snapshots.push(snapshot(operators, self.level.problem, &self.psi_nodes, &self.currents, time, position));
     }
+}
+
+/// Interpolated value along the wall, or linear between the few nodes of a very short one.
+fn along(places: &[f64], values: &[f64], z: f64) -> f64 {
+    if places.len() < ALONG_POINTS {
+        return sampled(places, values, z);
+    }
+    Stencil::<ALONG_POINTS>::at(places, z).value_of(values)
 }
 
 /// Force at release without the magnetic one, N: friction holds, or acts against the sliding.

@@ -9,6 +9,7 @@ use crate::fields::{empty_fields, snapshot};
 use crate::force::{by_stress, on_mover};
 use crate::grid_report::grid_report;
 use crate::grid_rules::{Frame, GridPlan};
+use crate::interpolate::greatest;
 use crate::monitor::Monitor;
 use crate::outcome::{
     Basis, Caution, DragCurve, DragPoint, Fields, Figure, Forces, GridReport, Ledger, Location, Outcome, Stop, Trace,
@@ -20,8 +21,12 @@ use crate::regime::regime;
 use crate::sources::AxialField;
 use crate::target::{levels_wanted, verdict};
 
+/// How closely the critical speed is searched, relative.
+const SEARCH: f64 = 1.0e-7;
+
 /// All levels of one settled problem, with the coarsest once more on half the domain.
-struct Levels {
+struct Levels<'p> {
+    problem: &'p Problem,
     placement: Placement,
     factors: Vec<f64>,
     levels: Vec<SettledLevel>,
@@ -29,8 +34,8 @@ struct Levels {
     velocity: f64,
 }
 
-impl Levels {
-    fn new(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Self, SolveFault> {
+impl<'p> Levels<'p> {
+    fn new(problem: &'p Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Self, SolveFault> {
         let placement = Placement::new(problem);
         let plan = plan(problem, &placement, velocity)?;
         let refinements = Refinement::first(count);
@@ -52,7 +57,7 @@ impl Levels {
         levels.push(last?);
         monitor.progress(0.9, "settled fields");
         let factors = refinements.iter().map(|f| f.factor()).collect();
-        Ok(Self { placement, factors, levels, cut, velocity })
+        Ok(Self { problem, placement, factors, levels, cut, velocity })
     }
 
     fn ladder(&self, figure: impl Fn(&SettledLevel) -> f64) -> Ladder {
@@ -96,7 +101,7 @@ impl Levels {
 
     /// Drag, heat and peak at `velocity` with their bands.
     fn point(&self, velocity: f64) -> Point {
-        let at: Vec<LevelDrag> = self.levels.iter().map(|l| l.figures(velocity)).collect();
+        let at: Vec<LevelDrag> = self.levels.iter().map(|l| l.figures(&self.problem.mover, velocity)).collect();
         let ladder = |f: fn(&LevelDrag) -> f64| Ladder::new(&self.factors, at.iter().map(f).collect());
         let (drag, heat, peak) = (ladder(|d| d.drag), ladder(|d| d.drag_by_heat), ladder(|d| d.peak));
         let cut = self.cut_change(drag.value, |l| l.drag(velocity));
@@ -199,7 +204,7 @@ fn moving_figures(point: &Point, velocity: f64) -> Vec<Figure> {
     ]
 }
 
-fn resting_figures(levels: &Levels) -> Vec<Figure> {
+fn resting_figures(levels: &Levels<'_>) -> Vec<Figure> {
     let zero = |name: &str, unit| Figure {
         name: name.to_owned(),
         value: 0.0,
@@ -217,7 +222,7 @@ fn resting_figures(levels: &Levels) -> Vec<Figure> {
     ]
 }
 
-fn damping_at_rest(levels: &Levels, name: &str) -> Figure {
+fn damping_at_rest(levels: &Levels<'_>, name: &str) -> Figure {
     let ladder = levels.ladder(SettledLevel::damping_coefficient);
     let cut = levels.cut_change(ladder.value, SettledLevel::damping_coefficient);
     plain(name, "N s/m", &ladder, band::one_route(&ladder, cut, levels.residual(ladder.value)))
@@ -236,7 +241,7 @@ fn plain(name: &str, unit: &'static str, ladder: &Ladder, band: f64) -> Figure {
 }
 
 /// The three routes, extrapolated, with the band within which they must agree.
-fn three_forces(problem: &Problem, levels: &mut Levels, velocity: f64, point: &Point) -> Result<Forces, SolveFault> {
+fn three_forces(problem: &Problem, levels: &mut Levels<'_>, velocity: f64, point: &Point) -> Result<Forces, SolveFault> {
     let sign = -velocity.signum();
     let (mut on_mover_levels, mut stress_levels) = (Vec::new(), Vec::new());
     for level in &mut levels.levels {
@@ -267,7 +272,7 @@ fn band_source(grid: &Grid, problem: &Problem, placement: &Placement) -> Vec<f64
     psi
 }
 
-fn wanted_fields(problem: &Problem, levels: &mut Levels, velocity: f64) -> Result<Option<Fields>, SolveFault> {
+fn wanted_fields(problem: &Problem, levels: &mut Levels<'_>, velocity: f64) -> Result<Option<Fields>, SolveFault> {
     if problem.snapshots == SnapshotPlan::None {
         return Ok(None);
     }
@@ -347,7 +352,7 @@ fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monit
     })
 }
 
-fn curve_point(levels: &Levels, speed: f64) -> DragPoint {
+fn curve_point(levels: &Levels<'_>, speed: f64) -> DragPoint {
     if speed <= 0.0 {
         return DragPoint {
             speed_m_per_s: 0.0,
@@ -370,7 +375,7 @@ fn curve_point(levels: &Levels, speed: f64) -> DragPoint {
 }
 
 /// tau in drag ~ c (v - tau dv/dt) at low speed, s.
-fn lag_time(levels: &Levels) -> Figure {
+fn lag_time(levels: &Levels<'_>) -> Figure {
     let of = |l: &SettledLevel| l.lag_product() / l.damping_coefficient();
     let ladder = levels.ladder(of);
     let cut = levels.cut_change(ladder.value, of);
@@ -378,7 +383,7 @@ fn lag_time(levels: &Levels) -> Figure {
 }
 
 /// Speed of the greatest extrapolated drag, where it lies inside the range: golden section on the small problems.
-fn critical_speed(levels: &Levels, speeds: &[f64]) -> Option<f64> {
+fn critical_speed(levels: &Levels<'_>, speeds: &[f64]) -> Option<f64> {
     let mut sorted: Vec<f64> = speeds.iter().copied().filter(|&v| v > 0.0).collect();
     sorted.sort_by(f64::total_cmp);
     let drag = |v: f64| levels.ladder(|l| l.drag(v)).value;
@@ -387,35 +392,16 @@ fn critical_speed(levels: &Levels, speeds: &[f64]) -> Option<f64> {
         return None;
     }
     let low = if best > 0 { sorted[best - 1] } else { 0.0 };
-    let critical = greatest(drag, low, sorted[best + 1]);
-    Some(critical)
-}
-
-/// Place of the single maximum of `f` in (low, high) by golden section (J. Kiefer, Proc. Am. Math. Soc. 4, 502-506, 1953).
-fn greatest(f: impl Fn(f64) -> f64, mut low: f64, mut high: f64) -> f64 {
-    let ratio = 0.5 * (5.0_f64.sqrt() - 1.0);
-    let (mut a, mut b) = (high - ratio * (high - low), low + ratio * (high - low));
-    let (mut fa, mut fb) = (f(a), f(b));
-    while high - low > 1.0e-7 * high {
-        if fa < fb {
-            (low, a, fa) = (a, b, fb);
-            b = low + ratio * (high - low);
-            fb = f(b);
-        } else {
-            (high, b, fb) = (b, a, fa);
-            a = high - ratio * (high - low);
-            fa = f(a);
-        }
-    }
-    0.5 * (low + high)
+    let high = sorted[best + 1];
+    Some(greatest(drag, low, high, SEARCH * high))
 }
 
 /// The critical speed, with the band that the levels' own maxima leave.
-fn critical_figure(levels: &Levels, speed: f64, at: &Point) -> Figure {
+fn critical_figure(levels: &Levels<'_>, speed: f64, at: &Point) -> Figure {
     let (low, high) = (0.5 * speed, 1.5 * speed);
-    let ladder = levels.ladder(|l| greatest(|v| l.drag(v), low, high));
+    let ladder = levels.ladder(|l| greatest(|v| l.drag(v), low, high, SEARCH * high));
     // Near the maximum drag ~ drag_max (1 - ((v - vc) / s)^2): a change of the drag's slope moves the place.
-    let search = 1.0e-6 * speed;
+    let search = SEARCH * speed;
     let relative = at.drag_band / at.drag.value.abs();
     Figure { value: speed, ..plain("critical_speed", "m/s", &ladder, band::one_route(&ladder, 0.0, 0.0) + search + 2.0 * relative * speed) }
 }

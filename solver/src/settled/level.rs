@@ -7,12 +7,14 @@ use lenzbore_mesh::{Grid, Regions};
 use super::recurrence::Recurrence;
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
+use crate::interpolate::{ALONG_POINTS, Stencil, peak_near};
 use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
 use crate::monitor::Monitor;
 use crate::operators::{Materials, Operators, add_product};
 use crate::outcome::WorkCounters;
-use crate::problem::Problem;
+use crate::problem::{Mover, Problem};
 use crate::sources::AxialField;
+use crate::wall_nodes::WallRow;
 
 /// Recurrence residual at which the drag has long converged (it converges as its square).
 const RECURRENCE_LIMIT: f64 = 1.0e-8;
@@ -97,10 +99,10 @@ impl SettledLevel {
     }
 
     /// Drag by two routes, and the peak current density.
-    pub(crate) fn figures(&self, velocity: f64) -> LevelDrag {
+    pub(crate) fn figures(&self, mover: &Mover, velocity: f64) -> LevelDrag {
         let currents = self.recurrence.ring_currents(velocity);
         let heat = self.heat(&currents);
-        let (peak, peak_at) = self.peak(&currents);
+        let (peak, peak_at) = self.peak(mover, velocity, &currents);
         LevelDrag { drag: drag_of(&currents, &self.slope), drag_by_heat: heat / velocity, peak, peak_at }
     }
 
@@ -111,19 +113,22 @@ impl SettledLevel {
         2.0 * PI * rings.map(|(i, g)| i * i / g).sum::<f64>()
     }
 
-    fn peak(&self, currents: &[f64]) -> (f64, (f64, f64)) {
-        let mut density = vec![0.0; currents.len()];
-        current_density_into(&self.operators, currents, &mut density);
-        let z = self.operators.grid.z.nodes();
-        let mut best = (0.0, (0.0, 0.0));
-        for row in &self.operators.wall.rows {
-            let range = row.start..row.start + row.count;
-            let (at, value) = crate::interpolate::peak(&z[row.j..row.j + row.count], &density[range]);
-            if value > best.0 {
-                best = (value, (self.operators.grid.r.nodes()[row.i], at));
-            }
+    /// The greatest current density and its (r, z): sigma v |d psi/dz| / r, the mover's own part exact, the reaction's
+    /// from a high-order stencil along the wall.
+    fn peak(&self, mover: &Mover, velocity: f64, currents: &[f64]) -> (f64, (f64, f64)) {
+        let (grid, wall) = (&self.operators.grid, &self.operators.wall);
+        let Some((row, k)) = greatest_node(&self.operators, currents) else { return (0.0, (0.0, 0.0)) };
+        let (r, z) = (grid.r.nodes()[row.i], &grid.z.nodes()[row.j..row.j + row.count]);
+        let mut flux = self.recurrence.flux(velocity, row.start..row.start + row.count);
+        if let Some(fixed) = &self.static_reaction {
+            flux.iter_mut().enumerate().for_each(|(n, f)| *f += fixed[grid.node(row.i, row.j + n)]);
         }
-        best
+        let field = |s: f64| {
+            let reaction = Stencil::<ALONG_POINTS>::at(z, s).slope_of(&flux);
+            velocity * (reaction / r - mover.flux_density_r(r, s))
+        };
+        let (at, field) = peak_near(z, k, field);
+        (wall.sigma_max[row.start + k] * field, (r, at))
     }
 
     /// The reaction of the moving wall at `velocity` at all nodes (without the static part), with its ring currents and
@@ -159,13 +164,16 @@ fn drag_of(currents: &[f64], slope: &[f64]) -> f64 {
     2.0 * PI * currents.iter().zip(slope).map(|(i, q)| i * q).sum::<f64>()
 }
 
-/// Current density at wall nodes, on the better conducting side of a face, A/m2: sigma I / (G r).
-pub(crate) fn current_density_into(operators: &Operators, currents: &[f64], out: &mut [f64]) {
+/// The wall node of the greatest current density: its row, and its number in the row.
+pub(crate) fn greatest_node(operators: &Operators, currents: &[f64]) -> Option<(WallRow, usize)> {
     let wall = &operators.wall;
-    for (w, out) in out.iter_mut().enumerate() {
+    let density = |w: usize| {
         let g = wall.conductance[w];
-        *out = if g > 0.0 { wall.sigma_max[w] * currents[w] / (g * wall.radius[w]) } else { 0.0 };
-    }
+        if g > 0.0 { (wall.sigma_max[w] * currents[w] / (g * wall.radius[w])).abs() } else { 0.0 }
+    };
+    let best = (0..wall.len()).map(|w| (w, density(w))).max_by(|a, b| a.1.total_cmp(&b.1)).filter(|b| b.1 > 0.0)?.0;
+    let row = wall.rows[wall.rows.partition_point(|row| row.start <= best) - 1];
+    Some((row, best - row.start))
 }
 
 /// psi of the mover at all nodes of the wall's radii (boundary rows included), zero elsewhere.
@@ -243,7 +251,7 @@ fn recur(
     let wall = &operators.wall;
     let mut current: Vec<f64> = wall.conductance.iter().zip(slope).map(|(g, q)| g * q).collect();
     let mut vector = vec![0.0; operators.unknowns()];
-    let mut recurrence = Recurrence { beta_1: 0.0, betas: Vec::new(), currents: Vec::new() };
+    let mut recurrence = Recurrence { beta_1: 0.0, betas: Vec::new(), currents: Vec::new(), fluxes: Vec::new() };
     let mut right = vec![0.0; operators.unknowns()];
     let mut worst = 0.0_f64;
     for k in 0..MOST_VECTORS {
@@ -278,6 +286,7 @@ fn recur(
         vector.iter_mut().for_each(|x| *x /= beta);
         current.iter_mut().for_each(|x| *x /= beta);
         recurrence.currents.push(current.clone());
+        recurrence.fluxes.push(wall.unknown.iter().map(|&u| vector[u]).collect());
         let mut next = vec![0.0; wall.len()];
         convect(operators, &vector, &mut next);
         if k > 0 {

@@ -9,4 +9,4 @@ mod level;
 mod recurrence;
 
 pub(crate) use answer::{curve, plan, steady};
-pub(crate) use level::current_density_into;
+pub(crate) use level::greatest_node;

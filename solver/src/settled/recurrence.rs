@@ -6,6 +6,8 @@
 //! J. M. Varah, "Iterative solution of skew-symmetric linear systems", SIAM J. Matrix Anal. Appl. 31, 584-601, 2009;
 //! citation from memory.)
 
+use std::ops::Range;
+
 /// The tridiagonal problem and what its vectors stand for.
 #[derive(Debug, Clone)]
 pub(crate) struct Recurrence {
@@ -15,6 +17,8 @@ pub(crate) struct Recurrence {
     pub(crate) betas: Vec<f64>,
     /// K v_k at the wall nodes.
     pub(crate) currents: Vec<Vec<f64>>,
+    /// v_k at the wall nodes.
+    pub(crate) fluxes: Vec<Vec<f64>>,
 }
 
 impl Recurrence {
@@ -55,15 +59,24 @@ impl Recurrence {
 
     /// Ring currents at the wall nodes at `velocity`, A.
     pub(crate) fn ring_currents(&self, velocity: f64) -> Vec<f64> {
+        self.combine(velocity, &self.currents, 0..self.currents.first().map_or(0, Vec::len))
+    }
+
+    /// The reaction psi at the wall nodes in `range` at `velocity`, Wb/rad.
+    pub(crate) fn flux(&self, velocity: f64, range: Range<usize>) -> Vec<f64> {
+        self.combine(velocity, &self.fluxes, range)
+    }
+
+    fn combine(&self, velocity: f64, vectors: &[Vec<f64>], range: Range<usize>) -> Vec<f64> {
         let x = self.coefficients(velocity);
-        let mut currents = vec![0.0; self.currents.first().map_or(0, Vec::len)];
-        for (x, vector) in x.iter().zip(&self.currents) {
+        let mut sum = vec![0.0; range.len()];
+        for (x, vector) in x.iter().zip(vectors) {
             let factor = velocity * self.beta_1 * x;
-            for (c, v) in currents.iter_mut().zip(vector) {
-                *c += factor * v;
+            for (s, v) in sum.iter_mut().zip(&vector[range.clone()]) {
+                *s += factor * v;
             }
         }
-        currents
+        sum
     }
 }
 
@@ -74,7 +87,7 @@ mod tests {
     #[test]
     fn coefficients_solve_the_skew_tridiagonal_system() {
         let recurrence =
-            Recurrence { beta_1: 1.0, betas: vec![0.7, 0.4, 0.9, 0.2], currents: vec![vec![]; 4] };
+            Recurrence { beta_1: 1.0, betas: vec![0.7, 0.4, 0.9, 0.2], currents: vec![vec![]; 4], fluxes: vec![] };
         let v = 2.5;
         let x = recurrence.coefficients(v);
         let t = |k: usize| v * recurrence.betas[k];
