@@ -12,9 +12,11 @@ mod header;
 mod names;
 mod series;
 mod summary;
+mod write;
 mod xdmf;
 
 pub use fault::IoFault;
 pub use header::{Program, ResultHeader};
 pub use series::{Column, csv, curve_columns, trace_columns};
 pub use summary::{summary, summary_text};
+pub use write::{WriteOptions, Written, pictures_of, write};

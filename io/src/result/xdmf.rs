@@ -1,7 +1,8 @@
 //! `run.xdmf`: tells general visualisation programs how to read `run.h5`.
 //!
-//! The (r, z) half-plane is a rectilinear mesh of one plane: first coordinate r, second z, third 0. Dimensions in this
-//! format run slowest first, as the arrays `[t, z, r]` do, while the coordinate lists run fastest first: r, z, 0.
+//! The (r, z) half-plane is a rectilinear mesh in two dimensions: r across, z up. Dimensions in this format run slowest
+//! first, as the arrays `[t, z, r]` do, while the coordinate lists run fastest first: r, z. A mesh in three dimensions of
+//! one plane would say the same, but readers then refuse the two-dimensional `/regions`.
 
 use std::fmt::Write as _;
 
@@ -60,18 +61,17 @@ pub fn xdmf(fields: &Fields) -> String {
 fn mesh(fields: &Fields) -> String {
     let (nz, nr) = (fields.z_m.len(), fields.r_m.len());
     let mut text = format!(
-        "<Topology TopologyType=\"3DRectMesh\" Dimensions=\"1 {nz} {nr}\"/>\n\
-         <Geometry GeometryType=\"VXVYVZ\">\n\
+        "<Topology TopologyType=\"2DRectMesh\" Dimensions=\"{nz} {nr}\"/>\n\
+         <Geometry GeometryType=\"VXVY\">\n\
          <DataItem Dimensions=\"{nr}\" {DOUBLE}>{FIELDS}:/grid/r_m</DataItem>\n\
          <DataItem Dimensions=\"{nz}\" {DOUBLE}>{FIELDS}:/grid/z_m</DataItem>\n\
-         <DataItem Dimensions=\"1\" NumberType=\"Float\" Precision=\"8\" Format=\"XML\">0</DataItem>\n\
          </Geometry>\n"
     );
     for (name, kind) in REGION_ARRAYS {
         let _ = writeln!(
             text,
             "<Attribute Name=\"region {name}\" AttributeType=\"Scalar\" Center=\"Cell\">\n\
-             <DataItem Dimensions=\"1 {} {}\" {kind} Format=\"HDF\">{FIELDS}:/regions/{name}</DataItem>\n</Attribute>",
+             <DataItem Dimensions=\"{} {}\" {kind} Format=\"HDF\">{FIELDS}:/regions/{name}</DataItem>\n</Attribute>",
             nz - 1,
             nr - 1
         );
@@ -88,7 +88,7 @@ fn snapshot_array(fields: &Fields, t: usize, name: &str, centre: Centre) -> Stri
     };
     format!(
         "<Attribute Name=\"{name}\" AttributeType=\"Scalar\" Center=\"{word}\">\n\
-         <DataItem ItemType=\"HyperSlab\" Dimensions=\"1 {nz} {nr}\">\n\
+         <DataItem ItemType=\"HyperSlab\" Dimensions=\"{nz} {nr}\">\n\
          <DataItem Dimensions=\"3 3\" NumberType=\"Int\" Format=\"XML\">{t} 0 0 1 1 1 1 {nz} {nr}</DataItem>\n\
          <DataItem Dimensions=\"{count} {nz} {nr}\" {DOUBLE}>{FIELDS}:/snapshots/{name}</DataItem>\n\
          </DataItem>\n</Attribute>\n"

@@ -11,7 +11,7 @@ const CLEAR: f64 = 5.0;
 const BEYOND: f64 = 8.0;
 
 /// Height that one row of level dimensions takes.
-pub(super) const ROW: f64 = 40.0;
+pub(super) const ROW: f64 = 42.0;
 
 /// A level dimension between `x.0` and `x.1` on the line `y`; extension lines come from heights `from`.
 pub(super) fn level(svg: &mut Svg, x: (f64, f64), from: (f64, f64), y: f64, text: &str) {
@@ -25,7 +25,7 @@ pub(super) fn level(svg: &mut Svg, x: (f64, f64), from: (f64, f64), y: f64, text
         svg.line((x.0, y), (x.1, y), THIN);
         head(svg, (x.0, y), (-1.0, 0.0));
         head(svg, (x.1, y), (1.0, 0.0));
-        svg.text(0.5 * (x.0 + x.1), y - 8.0, text, kind);
+        svg.text(0.5 * (x.0 + x.1), y - 10.0, text, kind);
     } else {
         outside(svg, x, y, text);
     }
@@ -38,7 +38,7 @@ fn outside(svg: &mut Svg, x: (f64, f64), y: f64, text: &str) {
     svg.line((x.0, y), (end, y), THIN);
     head(svg, (x.0, y), (1.0, 0.0));
     head(svg, (x.1, y), (-1.0, 0.0));
-    svg.text(x.1 + ARROW.0 + 10.0, y - 8.0, text, Type { rim: "#ffffff", ..letters(SMALL, Anchor::Start) });
+    svg.text(x.1 + ARROW.0 + 10.0, y - 10.0, text, Type { rim: "#ffffff", ..letters(SMALL, Anchor::Start) });
 }
 
 /// An upright dimension between heights `y.0` (upper) and `y.1` on the line `x`, read from the right.
@@ -60,7 +60,7 @@ pub(super) fn upright(svg: &mut Svg, y: (f64, f64), from: f64, x: f64, text: &st
     }
     let fits = room >= width(text, SMALL, false) + 12.0;
     let place = if fits { middle } else { y.0 - ARROW.0 - 22.0 - 0.5 * width(text, SMALL, false) };
-    svg.text(x - 8.0, place, text, kind);
+    svg.text(x - 9.0, place, text, kind);
 }
 
 /// The arrow head of a dimension line.

@@ -12,7 +12,7 @@ use crate::picture::svg::polygon;
 use crate::result::IoFault;
 
 /// Spacing of the samples on paper, 0.1 mm.
-const PITCH: f64 = 3.5;
+const PITCH: f64 = 2.8;
 /// Samples beyond the window, so that the closing edges of the lines fall outside it.
 const BEYOND: usize = 3;
 /// Lines wanted from the axis to the greatest flux.
@@ -91,7 +91,7 @@ impl Samples {
     fn level_lines(&self, sign: f64, step: f64, view: &View) -> Result<String, IoFault> {
         let fault = |e: contour::Error| IoFault::Picture { picture: "section", source: Box::new(e) };
         let values: Vec<f64> = self.psi.iter().map(|psi| sign * psi).collect();
-        let highest = values.iter().copied().fold(0.0, f64::max).min(2.0 * self.largest);
+        let highest = values.iter().copied().fold(0.0, f64::max).min(1.001 * self.largest);
         let levels: Vec<f64> = (1..=40).map(|k| step * f64::from(k)).take_while(|level| *level < highest).collect();
         let builder = ContourBuilder::new(self.columns, self.rows, true);
         let mut path = String::new();

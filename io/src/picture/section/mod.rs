@@ -165,7 +165,7 @@ impl Sheet<'_> {
             let step = significant(flux.step_weber * unit.factor, 3);
             entries.push((
                 Swatch::Line(FLUX),
-                format!("flux lines of the whole field, {step} {} between neighbours", unit.unit),
+                format!("flux lines of the total field, {step} {} between neighbours", unit.unit),
             ));
         }
         if coloured {

@@ -5,7 +5,7 @@ use lenzbore_solver::sources::Source;
 
 use super::dimension::arrow_head;
 use super::view::{Body, View};
-use crate::picture::letters::CAPITAL;
+use crate::picture::letters::{CAPITAL, width};
 use crate::picture::scale::significant;
 use crate::picture::style::{SMALL, letters};
 use crate::picture::svg::{Anchor, Stroke, Svg, Type};
@@ -105,21 +105,25 @@ fn point(svg: &mut Svg, view: &View, z: f64, moment_up: bool) {
     svg.text(x + 14.0, y + 40.0 * along + 0.5 * CAPITAL * SMALL, "m", kind);
 }
 
-/// An arrow ahead of the mover with its speed; none at rest.
+/// An arrow ahead of the mover with its speed, on the axis or, for a mover around the wall, on the right; none at rest.
 pub(super) fn motion(svg: &mut Svg, problem: &Problem, view: &View, position: f64, velocity: f64) {
     if velocity.abs() <= 0.0 {
         return;
     }
     let body = Body::of(&problem.mover);
+    let around = body.inner >= problem.wall.outer_radius_m();
+    let x = if around { view.x(0.5 * (body.inner + body.outer)) } else { view.axis };
     let up = velocity > 0.0;
     let along = if up { -1.0 } else { 1.0 };
     let clear = if body.is_solid() { 16.0 } else { 60.0 };
     let from = view.y(position + if up { body.high } else { body.low }) + clear * along;
     let to = from + 84.0 * along;
+    svg.line((x, from), (x, to - 20.0 * along), Stroke::full("#222222", 7.0));
+    arrow_head(svg, (x, to), (0.0, along), (32.0, 24.0));
     let unit = Shown::speed(velocity);
-    svg.line((view.axis, from), (view.axis, to - 20.0 * along), Stroke::full("#222222", 7.0));
-    arrow_head(svg, (view.axis, to), (0.0, along), (32.0, 24.0));
     let text = format!("{} {}", significant(unit.factor * velocity.abs(), 4), unit.unit);
-    let kind = Type { rim: "#ffffff", ..letters(SMALL, Anchor::Start) };
-    svg.text(view.axis + 14.0, 0.5 * (from + to) + 0.5 * CAPITAL * SMALL, &text, kind);
+    let fits = x + 18.0 + width(&text, SMALL, false) < view.right();
+    let (place, anchor) = if fits { (x + 18.0, Anchor::Start) } else { (x - 18.0, Anchor::End) };
+    let kind = Type { rim: "#ffffff", ..letters(SMALL, anchor) };
+    svg.text(place, 0.5 * (from + to) + 0.5 * CAPITAL * SMALL, &text, kind);
 }

@@ -56,27 +56,34 @@ pub(super) fn room_above(problem: &Problem) -> f64 {
 pub(super) fn diameters(svg: &mut Svg, problem: &Problem, view: &View, position: f64, cuts: &[Cut<'_>]) -> f64 {
     let mut y = view.top - 14.0;
     for radius in wall_radii(problem) {
-        let highest = cuts.iter().filter(|c| c.radii().iter().any(|r| (r - radius).abs() < 1e-9));
-        let from = view.y(highest.map(|c| c.high).fold(view.low, f64::max));
-        level(svg, (view.x(-radius), view.x(radius)), (from, from), y, &diameter(radius));
-        y -= ROW;
+        let with_it = cuts.iter().filter(|c| c.radii().iter().any(|r| (r - radius).abs() < 1e-9));
+        if let Some(highest) = with_it.map(|c| c.high).max_by(f64::total_cmp) {
+            let from = view.y(highest);
+            level(svg, (view.x(-radius), view.x(radius)), (from, from), y, &diameter(radius));
+            y -= ROW;
+        }
     }
-    let body = Body::of(&problem.mover);
-    let low = view.y(position + body.low);
-    let mut y = view.bottom() + ROW;
-    if let Some((inner, outer)) = gap(problem) {
-        let wall_end = cuts.iter().map(|c| c.low).fold(view.high, f64::min);
-        let below_wall = view.y(wall_end.min(view.high));
-        let from =
-            if body.outer > inner * 0.999_999 && body.outer <= outer { (low, below_wall) } else { (below_wall, low) };
-        level(svg, (view.x(inner), view.x(outer)), from, y, &format!("gap {}", millimetres(outer - inner)));
-        y += ROW;
-    }
+    let low = view.y(position + Body::of(&problem.mover).low);
+    let gap = gap(problem).filter(|_| !cuts.is_empty());
+    let first = view.bottom() + ROW;
+    let mut y = first + if gap.is_some() { ROW } else { 0.0 };
     for radius in mover_radii(problem) {
         level(svg, (view.x(-radius), view.x(radius)), (low, low), y, &diameter(radius));
         y += ROW;
     }
+    if let Some(gap) = gap {
+        running_gap(svg, problem, view, (gap, low, first), cuts);
+    }
     y - ROW + 10.0
+}
+
+/// The running gap on the right half, with extension lines from the mover at height `low` and from the wall's lower end.
+fn running_gap(svg: &mut Svg, problem: &Problem, view: &View, place: ((f64, f64), f64, f64), cuts: &[Cut<'_>]) {
+    let ((inner, outer), low, y) = place;
+    let wall = view.y(cuts.iter().map(|c| c.low).fold(view.high, f64::min));
+    let in_bore = Body::of(&problem.mover).outer <= inner * (1.0 + 1e-9);
+    let from = if in_bore { (low, wall) } else { (wall, low) };
+    level(svg, (view.x(inner), view.x(outer)), from, y, &format!("gap {}", millimetres(outer - inner)));
 }
 
 /// The mover's length on its right; gives the right edge.

@@ -75,6 +75,17 @@ fn rings_around_a_rod_and_long_stacks_fit_too() {
 }
 
 #[test]
+fn a_mover_outside_the_wall_is_drawn_without_it() {
+    let (problem, mut outcome) = demo::free();
+    outcome.fields = Some(demo::fields(&problem, &[0.4], -1.0));
+    let picture = section("Before the entry", &problem, &outcome).unwrap();
+    let text = look::words(&picture);
+    assert!(text.contains("Ø22.03") && !text.contains("Ø25") && !text.contains("gap"), "{text}");
+    assert!(!look::has_non_numbers(&picture));
+    picture.png().unwrap();
+}
+
+#[test]
 fn a_coil_shows_the_sense_of_its_current() {
     let (mut problem, mut outcome) = demo::steady();
     problem.mover.parts = vec![Part {

@@ -50,7 +50,7 @@ impl Body {
 }
 
 impl View {
-    /// Chosen about the mover at `position`, with its left edge at `left` and its upper edge at `top` on paper.
+    /// Chosen about the mover at `position`, in the middle of the room right of `left`, with its upper edge at `top` on paper.
     pub(super) fn about(problem: &Problem, position: f64, left: f64, top: f64) -> Self {
         let body = Body::of(&problem.mover);
         let outermost = problem.wall.outer_radius_m().max(body.outer);
@@ -58,7 +58,8 @@ impl View {
         let low = position + body.low - AIR.1 * outermost;
         let high = position + body.high + AIR.1 * outermost;
         let scale = (ROOM.0 / (2.0 * half_width)).min(ROOM.1 / (high - low));
-        Self { half_width, low, high, scale, axis: left + scale * half_width, top }
+        let centred = 0.5 * (ROOM.0 - 2.0 * scale * half_width);
+        Self { half_width, low, high, scale, axis: left + centred + scale * half_width, top }
     }
 
     /// Place on paper of a radius, negative on the left half.

@@ -9,7 +9,6 @@ use super::view::View;
 use crate::picture::svg::{Stroke, Svg, polygon, polyline};
 use crate::result::IoFault;
 
-const EDGE: Stroke = Stroke::full("#222222", 3.0);
 const BREAK: Stroke = Stroke::full("#222222", 1.6);
 /// A picture element of the colours on paper, 0.1 mm.
 const ELEMENT: f64 = 1.6;
@@ -31,7 +30,10 @@ pub(super) struct Cut<'a> {
 pub(super) fn cuts<'a>(problem: &'a Problem, view: &View) -> Vec<Cut<'a>> {
     let endless = problem.wall.extent == Extent::Endless;
     let thickness = view.scale * (problem.wall.outer_radius_m() - problem.wall.inner_radius_m());
-    let wave = (view.x(problem.wall.inner_radius_m()), thickness / (thickness / 90.0).round().max(1.0));
+    // On a rod the wave is symmetric about the axis.
+    let quarter = if problem.wall.inner_radius_m() > 0.0 { 0.0 } else { 0.25 };
+    let length = thickness / (thickness / 90.0).round().max(1.0);
+    let wave = (view.x(problem.wall.inner_radius_m()) - quarter * length, length);
     let cut = |layer: &'a Layer| {
         let (from, to) = if endless { (f64::NEG_INFINITY, f64::INFINITY) } else { (layer.from_m, layer.to_m) };
         let (low, high) = (from.max(view.low), to.min(view.high));
@@ -117,19 +119,20 @@ impl Cut<'_> {
 
     /// Faces, ends and break lines of both halves.
     pub(super) fn edges(&self, svg: &mut Svg, view: &View) {
+        let edge = Stroke::full("#222222", (0.1 * view.scale * self.layer.thickness_m()).clamp(1.3, 3.0));
         for side in [1.0, -1.0] {
             let on_side = |points: Vec<(f64, f64)>| -> Vec<(f64, f64)> {
                 points.into_iter().map(|(x, y)| (view.axis + side * (x - view.axis), y)).collect()
             };
             let (upper, lower) = (on_side(self.end(view, true)), on_side(self.end(view, false)));
             for (line, is_end) in [(&upper, self.ends.1), (&lower, self.ends.0)] {
-                svg.path(&polyline(line), if is_end { EDGE } else { BREAK });
+                svg.path(&polyline(line), if is_end { edge } else { BREAK });
             }
             let faces = upper.iter().zip(&lower);
             let outer = [upper.last().copied().zip(lower.last().copied())];
             let inner = faces.take(1).map(|(a, b)| Some((*a, *b))).filter(|_| self.layer.inner_radius_m > 0.0);
             for (a, b) in inner.chain(outer).flatten() {
-                svg.line(a, b, EDGE);
+                svg.line(a, b, edge);
             }
         }
     }

@@ -1,0 +1,138 @@
+//! One call that writes everything a run leaves.
+
+use std::path::{Path, PathBuf};
+
+use lenzbore_solver::monitor::Monitor;
+use lenzbore_solver::outcome::Outcome;
+use lenzbore_solver::problem::Problem;
+
+use super::fault::IoFault;
+use super::folder::PendingFolder;
+use super::header::ResultHeader;
+use super::{csv, curve_columns, hdf5, names, summary_text, trace_columns, xdmf};
+use crate::picture::{self, Picture};
+
+/// What to write; what does not apply to a run (no series, no fields, no curve) is left out without a word.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct WriteOptions {
+    /// Put the result in the place of an older one.
+    pub replace: bool,
+    /// `summary.json`.
+    pub summary: bool,
+    /// `trace.csv` and `curve.csv`.
+    pub trace: bool,
+    /// `run.h5` and `run.xdmf`.
+    pub fields: bool,
+    /// SVG and PNG pictures.
+    pub pictures: bool,
+}
+
+impl Default for WriteOptions {
+    /// Everything, and nothing replaced.
+    fn default() -> Self {
+        Self { replace: false, summary: true, trace: true, fields: true, pictures: true }
+    }
+}
+
+/// What was written.
+#[derive(Debug, Clone, PartialEq, Eq)]
+pub struct Written {
+    /// The result folder, absolute.
+    pub folder: PathBuf,
+    /// Names of the files in it, in the order they were written.
+    pub files: Vec<String>,
+}
+
+/// Writes a result folder that appears whole, or not at all.
+///
+/// # Errors
+/// [`IoFault::Exists`] and its like where the folder may not be written, [`IoFault::NotFinite`] where the outcome holds
+/// a number that is none, [`IoFault::Interrupted`] when the monitor says so, else what disk and libraries say. After any
+/// of them nothing stands under the folder's name that did not stand there before.
+pub fn write(
+    folder: &Path,
+    options: &WriteOptions,
+    header: &ResultHeader,
+    problem: &Problem,
+    outcome: &Outcome,
+    monitor: &dyn Monitor,
+) -> Result<Written, IoFault> {
+    let pending = PendingFolder::begin(folder, options.replace)?;
+    let mut sheaf = Sheaf { pending, files: Vec::new(), monitor };
+    if options.summary {
+        sheaf.put(names::SUMMARY, summary_text(header, outcome)?.as_bytes())?;
+    }
+    if options.trace {
+        tables(&mut sheaf, outcome)?;
+    }
+    if options.fields {
+        fields(&mut sheaf, header, outcome)?;
+    }
+    if options.pictures {
+        pictures(&mut sheaf, header, problem, outcome)?;
+    }
+    sheaf.pause()?;
+    Ok(Written { folder: sheaf.pending.commit()?, files: sheaf.files })
+}
+
+/// The pictures that apply to a run: drag against speed, travel, section where there is something new to see in it.
+///
+/// # Errors
+/// [`IoFault::Picture`].
+pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<Vec<Picture>, IoFault> {
+    let mut all: Vec<Picture> = picture::curve(&header.title, outcome).into_iter().collect();
+    all.extend(picture::travel(&header.title, problem, outcome));
+    all.push(picture::section(&header.title, problem, outcome)?);
+    Ok(all)
+}
+
+/// A pending folder and what is in it so far.
+struct Sheaf<'a> {
+    pending: PendingFolder,
+    files: Vec<String>,
+    monitor: &'a dyn Monitor,
+}
+
+impl Sheaf<'_> {
+    fn put(&mut self, name: &str, bytes: &[u8]) -> Result<(), IoFault> {
+        self.pause()?;
+        self.pending.write(name, bytes)?;
+        self.files.push(name.to_owned());
+        Ok(())
+    }
+
+    /// Ends here if the user wants so.
+    fn pause(&self) -> Result<(), IoFault> {
+        if self.monitor.cancelled() { Err(IoFault::Interrupted) } else { Ok(()) }
+    }
+}
+
+fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
+    if !outcome.trace.time_s.is_empty() {
+        sheaf.put(names::TRACE, csv(&trace_columns(&outcome.trace)?).as_bytes())?;
+    }
+    if let Some(curve) = &outcome.curve {
+        sheaf.put(names::CURVE, csv(&curve_columns(curve)?).as_bytes())?;
+    }
+    Ok(())
+}
+
+fn fields(sheaf: &mut Sheaf<'_>, header: &ResultHeader, outcome: &Outcome) -> Result<(), IoFault> {
+    let Some(fields) = &outcome.fields else { return Ok(()) };
+    let path = sheaf.pending.path().join(names::FIELDS);
+    hdf5::write_fields(&path, header, outcome, fields, sheaf.monitor)?;
+    sheaf.files.push(names::FIELDS.to_owned());
+    sheaf.put(names::FIELDS_INDEX, xdmf::xdmf(fields).as_bytes())
+}
+
+fn pictures(sheaf: &mut Sheaf<'_>, header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<(), IoFault> {
+    for picture in pictures_of(header, problem, outcome)? {
+        sheaf.put(&format!("{}.svg", picture.name), picture.svg.as_bytes())?;
+        sheaf.put(&format!("{}.png", picture.name), &picture.png()?)?;
+    }
+    Ok(())
+}
+
+#[cfg(test)]
+#[path = "write_tests.rs"]
+mod tests;
