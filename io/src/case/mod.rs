@@ -11,6 +11,8 @@
 //! # Ok::<(), lenzbore_io::message::Diagnostics>(())
 //! ```
 
+mod across;
+mod conductor;
 mod curve;
 mod geometry;
 mod load;
@@ -28,6 +30,7 @@ mod sizes;
 mod temperature;
 mod travel;
 mod tree;
+mod values;
 mod wall;
 mod words;
 

@@ -7,7 +7,7 @@ use super::place::{Place, Position, Sources};
 #[derive(Debug, Clone, PartialEq)]
 pub struct Diagnostic {
     /// What is wrong.
-    pub fault: CaseFault,
+    pub fault: Box<CaseFault>,
     /// Where; `None` where the input as a whole is meant.
     pub place: Option<Place>,
     /// Other places that belong to it, each with a word of why.
@@ -18,13 +18,13 @@ impl Diagnostic {
     /// A fault at a place.
     #[must_use]
     pub fn at(place: Place, fault: CaseFault) -> Self {
-        Self { fault, place: Some(place), related: Vec::new() }
+        Self { fault: Box::new(fault), place: Some(place), related: Vec::new() }
     }
 
     /// A fault of the input as a whole.
     #[must_use]
     pub fn of_input(fault: CaseFault) -> Self {
-        Self { fault, place: None, related: Vec::new() }
+        Self { fault: Box::new(fault), place: None, related: Vec::new() }
     }
 
     /// Adds another place.

@@ -168,7 +168,7 @@ fn every_unit_that_a_message_offers_is_read() {
         Kind::SpringRate,
         Kind::DampingCoefficient,
     ] {
-        assert!(kind.fitting_units().len() >= 1 && Kind::of_dimension(kind.dimension()) == Some(kind));
+        assert!(!kind.fitting_units().is_empty() && Kind::of_dimension(kind.dimension()) == Some(kind));
         for unit in kind.fitting_units().iter().chain([&kind.si_unit()]) {
             assert!(read_quantity(&format!("3 {unit}"), kind).is_ok(), "{kind}: {unit}");
         }
