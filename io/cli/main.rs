@@ -1,2 +1,39 @@
-//! The `lenzbore` command.
-fn main() {}
+//! The `lenzbore` command: typed words, a validated problem, work, an exit status.
+//!
+//! Exit status: 0 done; 1 the answer is no; 2 the input is wrong; 3 the computation or a file failed; 4 undecided, or the
+//! accuracy target was missed; 130 interrupted.
+
+mod arguments;
+mod check;
+mod end;
+mod job;
+mod materials;
+mod memory;
+mod new;
+mod progress;
+mod say;
+mod sketch;
+mod solve;
+
+use std::process::ExitCode;
+
+use clap::Parser;
+
+use arguments::{Arguments, Command};
+use end::End;
+
+fn main() -> ExitCode {
+    let arguments = Arguments::parse();
+    let end = match arguments.command {
+        Command::New(words) => new::run(&words),
+        Command::Check(words) => check::run(&words),
+        Command::Run(words) => solve::run(&words, solve::Question::Travel),
+        Command::Curve(words) => solve::run(&words, solve::Question::Curve),
+        Command::Materials(words) => materials::run(&words),
+        Command::Unbuilt(words) => Err(End::unbuilt(&words)),
+    };
+    match end {
+        Ok(()) => ExitCode::SUCCESS,
+        Err(end) => end.report(),
+    }
+}

@@ -1,0 +1,95 @@
+//! The words of the command line.
+
+use std::path::PathBuf;
+
+use clap::{Args, Parser, Subcommand};
+
+/// Drag, travel, eddy currents and heat of a magnet carrier in a conducting tube, each figure with a numerical band.
+#[derive(Debug, Parser)]
+#[command(
+    version,
+    after_help = "Exit status: 0 done; 1 the answer is no; 2 the input is wrong; 3 the computation or a file failed; \
+                  4 undecided, or the accuracy target was missed; 130 interrupted.\n\
+                  Strong magnets pinch; walls get hot; an eddy-current brake holds nothing at rest. Figures are model \
+                  results, not an approval: a life-safety brake is designed and approved by licensed engineers under the local code."
+)]
+pub struct Arguments {
+    /// What to do.
+    #[command(subcommand)]
+    pub command: Command,
+}
+
+/// The commands.
+#[derive(Debug, Subcommand)]
+pub enum Command {
+    /// Writes a commented starter case
+    New(NewWords),
+    /// Reads a case and says what would be solved: parts to scale, clearance, grids, steps, memory and time; solves nothing
+    Check(CheckWords),
+    /// Solves what the case's law of travel asks
+    Run(SolveWords),
+    /// Drag against speed, with settled fields in an endless wall
+    Curve(SolveWords),
+    /// The material book, with the source of every number
+    Materials(MaterialsWords),
+    /// A command that is not built yet, or none at all
+    #[command(external_subcommand)]
+    Unbuilt(Vec<String>),
+}
+
+/// `lenzbore new`.
+#[derive(Debug, Args)]
+pub struct NewWords {
+    /// File to write; `-` is standard output
+    #[arg(default_value = "case.toml")]
+    pub path: PathBuf,
+}
+
+/// What names a case.
+#[derive(Debug, Args)]
+pub struct CaseWords {
+    /// Case file (TOML); `-` reads it from standard input
+    pub case: PathBuf,
+    /// Overrides a word of the case, as wall.sleeve.thickness="2.1 mm"; may be given again
+    #[arg(long, value_name = "WORD=VALUE")]
+    pub set: Vec<String>,
+    /// Prints one JSON object on standard output instead of text
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `lenzbore check`.
+#[derive(Debug, Args)]
+pub struct CheckWords {
+    /// The case.
+    #[command(flatten)]
+    pub case: CaseWords,
+    /// Also writes a drawing of the parts to this SVG or PNG file
+    #[arg(long, value_name = "FILE")]
+    pub drawing: Option<PathBuf>,
+}
+
+/// `lenzbore run` and `lenzbore curve`.
+#[derive(Debug, Args)]
+pub struct SolveWords {
+    /// The case.
+    #[command(flatten)]
+    pub case: CaseWords,
+    /// Result folder [default: out/<case file stem>, for a curve out/<case file stem>-curve]
+    #[arg(long, value_name = "FOLDER")]
+    pub out: Option<PathBuf>,
+    /// Puts the result in the place of an older one
+    #[arg(long)]
+    pub replace: bool,
+}
+
+/// `lenzbore materials`.
+#[derive(Debug, Args)]
+pub struct MaterialsWords {
+    /// Shows only grades that have this in their name, family or description
+    #[arg(long, value_name = "TEXT")]
+    pub search: Option<String>,
+    /// Prints one JSON object instead of text
+    #[arg(long)]
+    pub json: bool,
+}

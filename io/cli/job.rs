@@ -1,0 +1,51 @@
+//! A case named on the command line, read and ready.
+
+use std::io::Read;
+use std::path::{Path, PathBuf};
+
+use lenzbore_io::case::{CaseSource, ResolvedCase, read_case};
+use lenzbore_io::result::{Program, ResultHeader};
+use serde_json::Value;
+
+use crate::arguments::CaseWords;
+use crate::end::End;
+
+/// Largest case text read from standard input, bytes.
+const LONGEST_INPUT: u64 = 16 << 20;
+
+/// Reads the case that the words name.
+pub fn read(words: &CaseWords) -> Result<ResolvedCase, End> {
+    if words.case.as_os_str() != "-" {
+        return Ok(read_case(&CaseSource::Path(&words.case), &words.set)?);
+    }
+    let mut text = String::new();
+    std::io::stdin()
+        .take(LONGEST_INPUT)
+        .read_to_string(&mut text)
+        .map_err(|e| End::Input(format!("standard input cannot be read as a case: {e}")))?;
+    let source = CaseSource::Text { name: "-", text: &text, base_dir: Path::new("") };
+    Ok(read_case(&source, &words.set)?)
+}
+
+/// The result folder where none was named: out/<stem of the case file>.
+pub fn default_folder(words: &CaseWords, suffix: &str) -> PathBuf {
+    let stem = words.case.file_stem().map_or_else(String::new, |s| s.to_string_lossy().into_owned());
+    let stem = if stem.is_empty() || stem == "-" { "case".to_owned() } else { stem };
+    Path::new("out").join(format!("{stem}{suffix}"))
+}
+
+/// What the result says of itself.
+pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[String]) -> ResultHeader {
+    let mut cautions = case.cautions.clone();
+    cautions.extend_from_slice(more_cautions);
+    ResultHeader {
+        title: case.title.clone(),
+        record: case.record.clone(),
+        digest: case.digest.clone(),
+        program: Program { name: env!("CARGO_PKG_NAME").to_owned(), version: env!("CARGO_PKG_VERSION").to_owned() },
+        resolved: case.resolved.to_json(),
+        not_modelled: case.not_modelled.clone(),
+        independent,
+        cautions,
+    }
+}

@@ -1,0 +1,29 @@
+//! `lenzbore new`: writes a commented starter case.
+
+use std::fs::OpenOptions;
+use std::io::{ErrorKind, Write};
+
+use lenzbore_io::case::STARTER;
+
+use crate::arguments::NewWords;
+use crate::end::End;
+use crate::say;
+
+/// Writes the starter; an existing file is never overwritten.
+pub fn run(words: &NewWords) -> Result<(), End> {
+    let path = &words.path;
+    if path.as_os_str() == "-" {
+        say::to_standard_output(STARTER);
+        return Ok(());
+    }
+    let mut file = OpenOptions::new().write(true).create_new(true).open(path).map_err(|e| match e.kind() {
+        ErrorKind::AlreadyExists => End::Input(format!("{} exists already; name another file", path.display())),
+        ErrorKind::NotFound => End::Input(format!("{}: the folder does not exist", path.display())),
+        _ => End::Failed(format!("{} cannot be written: {e}", path.display())),
+    })?;
+    file.write_all(STARTER.as_bytes())
+        .map_err(|e| End::Failed(format!("{} cannot be written: {e}", path.display())))?;
+    let shown = path.display();
+    say::to_standard_output(&format!("wrote {shown}\nnext: lenzbore check {shown}, then lenzbore run {shown}\n"));
+    Ok(())
+}

@@ -1,0 +1,104 @@
+//! `lenzbore run` and `lenzbore curve`: solve, write, say.
+
+use lenzbore_io::case::ResolvedCase;
+use lenzbore_io::result::{WriteOptions, folder, summary, write};
+use lenzbore_solver::outcome::Outcome;
+use lenzbore_solver::problem::{Problem, Travel};
+use lenzbore_solver::{drag_curve, solve};
+use lenzbore_validation::endless;
+use serde_json::{Value, json};
+
+use crate::arguments::SolveWords;
+use crate::end::End;
+use crate::progress::Terminal;
+use crate::{job, memory, say};
+
+/// What is asked of a case.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Question {
+    /// Its law of travel.
+    Travel,
+    /// Drag against speed.
+    Curve,
+}
+
+/// Solves and writes.
+pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
+    let case = job::read(&words.case)?;
+    let suffix = if question == Question::Curve { "-curve" } else { "" };
+    let target = words.out.clone().unwrap_or_else(|| job::default_folder(&words.case, suffix));
+    folder::vet(&target, words.replace)?;
+    let terminal = Terminal::new()?;
+    let (problem, outcome, cautions) = answer(&case, question, &terminal)?;
+    terminal.finish();
+    let independent = independent(&problem, &outcome, question);
+    let header = job::header(&case, independent, &cautions);
+    let options = WriteOptions {
+        replace: words.replace,
+        summary: true,
+        trace: case.output.trace,
+        fields: case.output.fields,
+        pictures: case.output.pictures,
+    };
+    let written = write(&target, &options, &header, &problem, &outcome, &terminal)?;
+    if words.case.json {
+        say::to_standard_output(&format!("{:#}\n", summary(&header, &outcome)?));
+    } else {
+        say::to_standard_output(&say::answer(&header, &outcome));
+        let files = written.files.join(", ");
+        say::to_standard_output(&format!("\nwritten to {}: {files}\n", target.display()));
+    }
+    missed(&outcome)
+}
+
+fn answer(case: &ResolvedCase, question: Question, terminal: &Terminal) -> Result<(Problem, Outcome, Vec<String>), End> {
+    match question {
+        Question::Travel => {
+            if !case.travel_given {
+                return Err(End::Input("the case has no [travel]; `lenzbore curve` sweeps its [curve]".to_owned()));
+            }
+            memory::require(&case.problem, None)?;
+            let outcome = solve(&case.problem, terminal)?;
+            Ok((case.problem.clone(), outcome, Vec::new()))
+        }
+        Question::Curve => {
+            let (Some(problem), Some(plan)) = (case.curve_problem(), case.curve.as_ref()) else {
+                return Err(End::Input(
+                    "the case has no [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40".to_owned(),
+                ));
+            };
+            memory::require(&problem, plan.speeds_m_per_s.last().copied())?;
+            let outcome = drag_curve(&problem, &plan.speeds_m_per_s, terminal)?;
+            Ok((problem, outcome, plan.cautions.clone()))
+        }
+    }
+}
+
+/// A semi-analytic value of the drag by the Fourier-Bessel integral, where the case allows one: settled fields.
+fn independent(problem: &Problem, outcome: &Outcome, question: Question) -> Option<Value> {
+    let (name, velocity) = match (question, &problem.travel) {
+        (Question::Curve, _) => ("drag_max", outcome.figures.iter().find(|f| f.name == "critical_speed")?.value),
+        (Question::Travel, Travel::Steady { velocity_m_per_s }) => ("drag", *velocity_m_per_s),
+        _ => return None,
+    };
+    let figure = outcome.figures.iter().find(|f| f.name == name)?;
+    let exact = endless::drag(&problem.wall, &problem.mover, velocity).ok()?;
+    exact.value.is_finite().then(|| {
+        json!({
+            "figure": name,
+            "value": exact.value,
+            "unit": figure.unit,
+            "error": exact.error,
+            "inside_band": (exact.value - figure.value).abs() <= figure.band + exact.error,
+            "method": "Fourier-Bessel integral over axial wavenumbers for the endless layered wall (after Partovi and Morris, Can. J. Phys. 84, 253-271, 2006)",
+        })
+    })
+}
+
+fn missed(outcome: &Outcome) -> Result<(), End> {
+    if outcome.accuracy.met {
+        return Ok(());
+    }
+    let advice = outcome.accuracy.advice.clone().unwrap_or_default();
+    Err(End::Missed(format!("the accuracy target was missed: {advice}")))
+}
