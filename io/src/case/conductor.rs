@@ -170,11 +170,13 @@ fn at_wall_temperature(
 ) -> Option<f64> {
     let Some((coefficient, coefficient_at)) = coefficient else {
         if value > 0.0 && !section.table.has("temperature_coefficient") {
-            reader.cautions.push(format!(
-                "layer '{name}': without a temperature coefficient its conductivity is taken as constant, as it was at {}, and the wall is at {}",
-                celsius(value_at),
-                celsius(warmth)
-            ));
+            let taken = "without a temperature coefficient its conductivity is taken as constant";
+            let (given, wall) = (celsius(value_at), celsius(warmth));
+            reader.cautions.push(if given == wall {
+                format!("layer '{name}': {taken}; it is taken to hold at the wall's {wall}, so nothing is lost here")
+            } else {
+                format!("layer '{name}': {taken}, as at {given}, and the wall is at {wall}")
+            });
         }
         return Some(value);
     };

@@ -3,6 +3,18 @@
 //! The words are TOML tables; `like` starts from another file, `--set` overrides any word. Every word is resolved to SI
 //! with its origin, every default is filled in and said.
 //!
+//! What the words leave open is settled so:
+//!
+//! - Of the three sizes across a layer two are given and stay when one of them is set. If the third is set, the inner
+//!   diameter stays where it was given, else the thickness; a caution says which size follows.
+//! - A `traverse` starts and ends with the whole mover 6 bore diameters clear of the wall (upward where neither `from` nor
+//!   `to` is given). `free` travel ends 2 bore diameters below the lower gate, or above the upper one where the release is
+//!   below their middle. The bore diameter is the wall's outer diameter where it has no bore.
+//! - `mover.reference` is `"middle"`, `"lower end"`, `"upper end"` or a height above the lower end, and serves a stack;
+//!   parts placed by `at` count from the reference point.
+//! - A given conductivity holds at 20 degC where `conductivity_at` does not say otherwise, a remanence at 20 degC.
+//! - `[curve]` with two speeds spreads `points` between them; with more it takes them as they are.
+//!
 //! ```
 //! use lenzbore_io::case::{CaseSource, STARTER, read_case};
 //! let source = CaseSource::Text { name: "starter.toml", text: STARTER, base_dir: std::path::Path::new("") };

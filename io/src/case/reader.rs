@@ -42,6 +42,13 @@ impl Section<'_> {
         words.iter().find_map(|w| self.table.get(w)).map_or_else(|| self.place.clone(), |n| n.place.clone())
     }
 
+    /// Whether an unknown word of the table is most likely this one.
+    pub fn misspells(&self, word: &str) -> bool {
+        let legal = table_words(self.kind).map_or(&[][..], |t| t.words);
+        let unknown = self.table.entries.iter().filter(|e| !legal.contains(&e.word.as_str()));
+        unknown.into_iter().any(|e| nearest(&e.word, legal.iter().copied()) == Some(word))
+    }
+
     fn path_of(&self, word: &str) -> Vec<String> {
         self.path.iter().cloned().chain([word.to_owned()]).collect()
     }

@@ -81,17 +81,18 @@ fn law(reader: &mut Reader, section: &Section<'_>) -> Option<&'static str> {
         reader.check_words(section);
         return None;
     }
-    let laws = LAWS.map(|l| l.law);
-    let Some(words) = reader.choice(section, "law", &laws, example).and_then(law_words) else {
-        reader.check_words(section);
-        return None;
-    };
-    if !words.modelled {
-        let what = format!("law = \"{}\"", words.law);
+    let asked = section.table.text("law").unwrap_or_default().trim();
+    if let Some(later) = LAWS.iter().find(|l| l.law == asked && !l.modelled) {
+        let what = format!("law = \"{}\"", later.law);
         let instead = Some("laws that are: \"steady\", \"traverse\", \"free\"".to_owned());
         reader.fault(section.place_of("law"), CaseFault::NotModelled { what, instead });
         return None;
     }
+    let laws: Vec<&'static str> = LAWS.iter().filter(|l| l.modelled).map(|l| l.law).collect();
+    let Some(words) = reader.choice(section, "law", &laws, example).and_then(law_words) else {
+        reader.check_words(section);
+        return None;
+    };
     check_law_words(reader, section, words.law, words.words);
     Some(words.law)
 }

@@ -33,7 +33,11 @@ impl Reader {
         self.quantity(section, word, wanted)
     }
 
+    /// Says that a word is missing, unless it is there with a slip, which has its own fault.
     pub fn missing(&mut self, section: &Section<'_>, word: &'static str, why: &'static str, example: &'static str) {
+        if section.misspells(word) {
+            return;
+        }
         let fault = CaseFault::Missing { table: section.label.to_owned(), word, why, example };
         self.fault(section.place.clone(), fault);
     }

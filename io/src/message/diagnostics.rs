@@ -49,7 +49,8 @@ impl Diagnostics {
     #[must_use]
     pub fn new(sources: Sources, mut faults: Vec<Diagnostic>) -> Self {
         faults.sort_by(|a, b| a.place.cmp(&b.place));
-        faults.dedup();
+        // A part that stands twice in a stack brings the same fault twice.
+        faults.dedup_by(|b, a| a.place == b.place && a.fault.to_string() == b.fault.to_string());
         Self { sources, faults }
     }
 

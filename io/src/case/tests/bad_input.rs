@@ -140,7 +140,11 @@ fn choices_are_listed() {
             "law = \"free\"\nrelease = \"640 mm\"",
             "law = \"fre\"\n",
             "19:7",
-            &["law = 'fre' is none of its values", "\"steady\", \"traverse\", \"free\"", "did you mean \"free\"?"],
+            &[
+                "law = 'fre' is none of its values",
+                "legal values: \"steady\", \"traverse\", \"free\"\n",
+                "did you mean \"free\"?",
+            ],
         ),
         (
             "name = \"M\"",
@@ -365,6 +369,20 @@ fn names_must_be_distinct_and_addressable() {
             &["the name 'M' is taken", "first: t.toml:13:8"],
         ),
     ]);
+}
+
+#[test]
+fn a_misspelt_word_is_not_missing_too() {
+    check(&[
+        ("thickness =", "thicknes =", "9:1", &["'thicknes' is no word of [[wall.layer]]", "did you mean 'thickness'?"]),
+        ("release =", "relase =", "20:1", &["'relase' is no word of [travel]", "did you mean 'release'?"]),
+    ]);
+}
+
+#[test]
+fn a_part_that_stands_twice_in_a_stack_has_its_fault_once() {
+    let text = with("[mover]\n", "[mover]\nstack = [\"M+\", \"M-\"]\n").replace("\"22 mm\"", "\"26 mm\"");
+    assert_eq!(bad(&text, &[]).faults().len(), 1);
 }
 
 #[test]
