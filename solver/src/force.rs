@@ -7,9 +7,9 @@ use lenzbore_mesh::Grid;
 
 use crate::constants::MU0;
 use crate::interpolate::{ALONG_POINTS, POINTS, Stencil};
-use crate::placement::{MoverSide, StressBand};
-use crate::problem::Mover;
-use crate::sources::Source;
+use crate::placement::{MoverSide, Placement};
+use crate::problem::{Mover, Problem};
+use crate::sources::{AxialField, Source};
 
 /// Axial force of a reaction field on the mover's equivalent currents with its reference point at `position`, N.
 ///
@@ -73,26 +73,39 @@ fn on_dipole(grid: &Grid, psi: &[f64], moment: f64, centre: f64, radius: f64) ->
     1.5 * moment * sum / (radius * radius)
 }
 
-/// Axial force on the mover by the Maxwell stress averaged over the running gap, N.
+/// Distance from the mover's ends, in bore radii, beyond which the product of both fields no longer counts (it falls with
+/// the seventh power of the distance at least).
+const STRESS_REACH: f64 = 16.0;
+
+/// Axial force on the mover by the Maxwell stress on the wall's faces, its reference point at `position`, N.
 ///
-/// F = (2 pi / (mu0 (r2 - r1))) integral of r (B_sr B_rz + B_rr B_sz) dr dz, the mover's own field s and the reaction
-/// field r from differences of `psi_source` and `psi_reaction` (all nodes; the source's are read in the bands only). Products
-/// of either field with itself carry no net force.
-pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], psi_source: &[f64], bands: &[StressBand]) -> f64 {
-    let r = grid.r.nodes();
+/// F = (2 pi R / mu0) integral of (B_sr B_rz + B_rr B_sz) dz over a cylinder around the mover (with the other sign inside
+/// it), by the trapezoidal rule over the nodes: the mover's own field s exact, the reaction field r from one-sided
+/// high-order stencils in the air at the face. Products of either field with itself carry no net force.
+pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], problem: &Problem, placement: &Placement, position: f64) -> f64 {
+    let (r, z) = (grid.r.nodes(), grid.z.nodes());
+    let reach = STRESS_REACH * placement.scale_m;
+    let first = grid.z.nearest(position + placement.lowest_m - reach);
+    let last = grid.z.nearest(position + placement.highest_m + reach);
     let mut force = 0.0;
-    for band in bands {
-        let (first, last) = (grid.r.nearest(band.inner_m), grid.r.nearest(band.outer_m));
+    for face in &placement.stress_faces {
+        let i = grid.r.nearest(face.radius_m);
+        let (from, sign) = match face.mover {
+            MoverSide::Inside => (i.saturating_sub(POINTS - 1), 1.0),
+            MoverSide::Outside => (i, -1.0),
+        };
+        let across = Stencil::<POINTS>::over(&r[from..from + POINTS], r[i]);
         let mut sum = 0.0;
-        for j in 0..grid.nz() - 1 {
-            for i in first..last {
-                let (b_r, b_z) = cell_flux_density(grid, psi_reaction, i, j);
-                let (s_r, s_z) = cell_flux_density(grid, psi_source, i, j);
-                sum += 0.5 * (r[i] + r[i + 1]) * (s_r * b_z + b_r * s_z) * grid.r.cell(i) * grid.z.cell(j);
-            }
+        for j in first..=last {
+            let slope_r = across.slope_of(&psi_reaction[grid.node(from, j)..]);
+            let along = Stencil::<POINTS>::at(z, z[j]);
+            let slope_z: f64 =
+                along.slope.iter().enumerate().map(|(n, w)| w * psi_reaction[grid.node(i, along.first + n)]).sum();
+            let own_r = problem.mover.flux_density_r(r[i], z[j] - position);
+            let own_z = problem.mover.flux_density_z(r[i], z[j] - position);
+            sum += grid.z.dual(j) * (own_r * slope_r - slope_z * own_z);
         }
-        let sign = if band.mover == MoverSide::Inside { 1.0 } else { -1.0 };
-        force += sign * 2.0 * PI / (MU0 * (r[last] - r[first])) * sum;
+        force += sign * 2.0 * PI / MU0 * sum;
     }
     force
 }

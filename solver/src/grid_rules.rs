@@ -134,7 +134,6 @@ fn plan_r(problem: &Problem, placement: &Placement, speed: f64, r_max: f64) -> R
         law.caps.push(held(0.0, bore, bore / 6.0));
     }
     keep_finest_anchor(&mut law.anchors);
-    points.extend(placement.stress_bands.iter().flat_map(|b| [b.inner_m, b.outer_m]));
     let mut points = sorted_apart(points, 0.0);
     for &radius in &placement.source_radii_m {
         insert_apart(&mut points, radius, 0.2 * placement.gap_m);

@@ -16,7 +16,11 @@ impl<const N: usize> Stencil<N> {
     pub(crate) fn at(nodes: &[f64], s: f64) -> Self {
         let above = nodes.partition_point(|&x| x <= s);
         let first = above.saturating_sub(N / 2).min(nodes.len().saturating_sub(N));
-        let x = &nodes[first..first + N];
+        Self { first, ..Self::over(&nodes[first..first + N], s) }
+    }
+
+    /// The stencil over exactly these `N` nodes, for samples counted from the first of them.
+    pub(crate) fn over(x: &[f64], s: f64) -> Self {
         let (mut value, mut slope) = ([0.0; N], [0.0; N]);
         for k in 0..N {
             let others = || (0..N).filter(move |&m| m != k);
@@ -25,7 +29,7 @@ impl<const N: usize> Stencil<N> {
             let without = |skip: usize| others().filter(|&m| m != skip).map(|m| s - x[m]).product::<f64>();
             slope[k] = others().map(without).sum::<f64>() / scale;
         }
-        Self { first, value, slope }
+        Self { first: 0, value, slope }
     }
 
     /// The interpolated value of `samples` at the nodes.

@@ -3,21 +3,19 @@
 use crate::problem::{Part, Problem};
 use crate::sources::Source;
 
-/// On which side of a band of the running gap the mover lies.
+/// On which side of a wall face the mover lies.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub(crate) enum MoverSide {
-    /// The mover is inside the band.
+    /// The mover is inside the cylinder.
     Inside,
-    /// The mover is outside the band.
+    /// The mover is outside the cylinder.
     Outside,
 }
 
-/// A band of a running gap over which the Maxwell stress is averaged: from the wall's face to mid-gap, where both the
-/// mover's and the wall's fields are smooth.
+/// A wall face across a running gap, on which the Maxwell stress is taken: there the mover's field is at its smoothest.
 #[derive(Debug, Clone, Copy, PartialEq)]
-pub(crate) struct StressBand {
-    pub(crate) inner_m: f64,
-    pub(crate) outer_m: f64,
+pub(crate) struct StressFace {
+    pub(crate) radius_m: f64,
     pub(crate) mover: MoverSide,
 }
 
@@ -40,8 +38,8 @@ pub(crate) struct Placement {
     pub(crate) lowest_m: f64,
     /// Highest source end, m.
     pub(crate) highest_m: f64,
-    /// Bands over which the Maxwell stress is averaged.
-    pub(crate) stress_bands: Vec<StressBand>,
+    /// Faces on which the Maxwell stress is taken.
+    pub(crate) stress_faces: Vec<StressFace>,
 }
 
 /// Inner and outer radius and half length of a source; zeros for a dipole.
@@ -67,7 +65,7 @@ impl Placement {
         }
         radii.sort_by(f64::total_cmp);
         ends.sort_by(f64::total_cmp);
-        let stress_bands = stress_bands(problem);
+        let stress_faces = stress_faces(problem);
         let (gap_m, scale_m) = gap_and_scale(problem);
         Self {
             gap_m,
@@ -78,7 +76,7 @@ impl Placement {
             highest_m: ends.last().copied().unwrap_or(0.0),
             source_radii_m: radii,
             source_ends_m: ends,
-            stress_bands,
+            stress_faces,
         }
     }
 }
@@ -107,8 +105,8 @@ fn is_inside(part: &Part, inner_radius: f64) -> bool {
     source_sizes(&part.source).1 < inner_radius
 }
 
-/// One band in every gap between a mover's source and a wall layer next to it.
-fn stress_bands(problem: &Problem) -> Vec<StressBand> {
+/// The wall's face at every gap between a mover's source and a wall layer next to it.
+fn stress_faces(problem: &Problem) -> Vec<StressFace> {
     let mut spans: Vec<(f64, f64, bool)> = Vec::new();
     spans.extend(problem.wall.layers.iter().map(|l| (l.inner_radius_m, l.outer_radius_m, true)));
     for part in &problem.mover.parts {
@@ -116,17 +114,16 @@ fn stress_bands(problem: &Problem) -> Vec<StressBand> {
         spans.push((inner, outer, false));
     }
     spans.sort_by(|p, q| p.0.total_cmp(&q.0).then(p.1.total_cmp(&q.1)));
-    let mut bands = Vec::new();
+    let mut faces = Vec::new();
     // Outer radius of everything of the same kind seen so far in this run of neighbours.
     let mut reach: Option<(f64, bool)> = None;
     for (inner, outer, wall) in spans {
         reach = match reach {
             Some((edge, was_wall)) if was_wall != wall => {
-                let middle = 0.5 * (edge + inner);
-                bands.push(if wall {
-                    StressBand { inner_m: middle, outer_m: inner, mover: MoverSide::Inside }
+                faces.push(if wall {
+                    StressFace { radius_m: inner, mover: MoverSide::Inside }
                 } else {
-                    StressBand { inner_m: edge, outer_m: middle, mover: MoverSide::Outside }
+                    StressFace { radius_m: edge, mover: MoverSide::Outside }
                 });
                 Some((outer, wall))
             }
@@ -134,5 +131,5 @@ fn stress_bands(problem: &Problem) -> Vec<StressBand> {
             None => Some((outer, wall)),
         };
     }
-    bands
+    faces
 }

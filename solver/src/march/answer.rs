@@ -15,6 +15,7 @@ use crate::fault::SolveFault;
 use crate::fields::empty_fields;
 use crate::grid_report::grid_report;
 use crate::grid_rules::{Frame, GridPlan};
+use crate::interpolate::sampled;
 use crate::monitor::Monitor;
 use crate::outcome::{
     Basis, Caution, Fields, Figure, Forces, GridReport, Ledger, Location, Outcome, Snapshot, Stop, Trace, WorkCounters,
@@ -22,7 +23,10 @@ use crate::outcome::{
 use crate::placement::Placement;
 use crate::problem::{Free, Problem, SnapshotPlan, Travel};
 use crate::regime::regime;
-use crate::target::{levels_wanted, may_add_level, verdict};
+use crate::target::{is_local, levels_wanted, may_add_level, verdict};
+
+/// Levels added at most on our own: a march costs the cube of the refinement.
+const MOST_MARCH_LEVELS: usize = 4;
 
 /// One level's record.
 struct LevelRecord {
@@ -54,7 +58,7 @@ pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome,
     loop {
         journey.replay_missing(&mut records, monitor)?;
         let outcome = journey.outcome(&mut records);
-        if outcome.accuracy.met || !may_add_level(&problem.accuracy, records.levels.len()) {
+        if outcome.accuracy.met || !may_add_level(&problem.accuracy, records.levels.len(), MOST_MARCH_LEVELS) {
             monitor.progress(1.0, "done");
             return Ok(outcome);
         }
@@ -270,17 +274,18 @@ impl<'p> Journey<'p> {
     fn forces(&self, records: &Records, factors: &[f64], figures: &[Figure]) -> Option<Forces> {
         let drag = figures.iter().find(|f| f.name == "drag_peak")?;
         let time_s = drag.location.and_then(|l| l.t_s)?;
-        let at = |l: &LevelRecord, of: fn(&Series) -> &[f64]| {
+        let at = |l: &LevelRecord, of: fn(&Series, f64) -> f64| {
             let series = &l.series;
             let t = super::figures::drag_peak(series, &self.course).0;
             let sign = -series.at(&series.velocity, t).signum();
-            sign * (series.mid_at(of(series), t) - series.mid_at(&series.pull_mid, t))
+            sign * (of(series, t) - series.mid_at(&series.pull_mid, t))
         };
-        let ladder = |of: fn(&Series) -> &[f64]| {
+        let ladder = |of: fn(&Series, f64) -> f64| {
             Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect())
         };
-        let wall = ladder(|s| &s.force_mid);
-        let (mover, stress) = (ladder(|s| &s.force_on_mover_mid), ladder(|s| &s.force_by_stress_mid));
+        let wall = ladder(|s, t| s.mid_at(&s.force_mid, t));
+        let mover = ladder(|s, t| s.mid_at(&s.force_on_mover_mid, t));
+        let stress = ladder(|s, t| sampled(&s.time_stress, &s.force_by_stress, t));
         let band_newton = drag.band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
         let apart = (mover.value - wall.value).abs().max((stress.value - wall.value).abs());
         Some(Forces {
@@ -353,7 +358,8 @@ fn combine(factors: &[f64], by_level: &[Vec<LevelFigure>], cut: Option<&[LevelFi
         let coarsest = values[0];
         let ladder = Ladder::new(factors, values);
         let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
-        let half_width = band::one_route(&ladder, change, residual * ladder.value.abs());
+        let rule = if is_local(figure.name) { band::local } else { band::one_route };
+        let half_width = rule(&ladder, change, residual * ladder.value.abs());
         figures.push(Figure {
             name: figure.name.to_owned(),
             value: ladder.value,

@@ -31,8 +31,6 @@ pub(crate) struct MarchLevel<'a> {
     table: SourceTable,
     /// Row of the table for each run of wall nodes.
     table_rows: Vec<usize>,
-    /// (radial index, row of the table) of the stress bands' nodes.
-    band_rows: Vec<(usize, usize)>,
     pub(crate) counters: WorkCounters,
     pub(crate) worst_residual: f64,
 }
@@ -55,10 +53,7 @@ impl<'a> MarchLevel<'a> {
         let at_rest = AtRest::new(&operators, &pattern)?;
         let grid = &operators.grid;
         let wall_indices: Vec<usize> = operators.wall.rows.iter().map(|row| row.i).collect();
-        let bands = placement.stress_bands.iter();
-        let band_indices: Vec<usize> =
-            bands.flat_map(|b| grid.r.nearest(b.inner_m)..=grid.r.nearest(b.outer_m)).collect();
-        let mut indices: Vec<usize> = wall_indices.iter().chain(&band_indices).copied().collect();
+        let mut indices: Vec<usize> = wall_indices.clone();
         indices.sort_unstable();
         indices.dedup();
         let row_of = |i: usize| indices.partition_point(|&k| k < i);
@@ -69,7 +64,6 @@ impl<'a> MarchLevel<'a> {
             problem,
             placement,
             table_rows: wall_indices.iter().map(|&i| row_of(i)).collect(),
-            band_rows: band_indices.iter().map(|&i| (i, row_of(i))).collect(),
             table,
             pattern,
             factors: VecDeque::new(),
@@ -89,17 +83,6 @@ impl<'a> MarchLevel<'a> {
             self.table.fill_both(table_row, heights, position, &mut psi[range.clone()], &mut by_position[range]);
         }
         by_position.iter_mut().for_each(|s| *s = -*s);
-    }
-
-    /// psi_s at the nodes of the stress bands (all-node array, other nodes untouched).
-    pub(crate) fn fill_bands(&self, position: f64, psi_nodes: &mut [f64], row_psi: &mut [f64], row_slope: &mut [f64]) {
-        let grid = &self.operators.grid;
-        for &(i, table_row) in &self.band_rows {
-            self.table.fill_both(table_row, grid.z.nodes(), position, row_psi, row_slope);
-            for (j, &p) in row_psi.iter().enumerate() {
-                psi_nodes[grid.node(i, j)] = p;
-            }
-        }
     }
 
     /// Makes sure that the factor of K + 2 G / dt is at hand.

@@ -20,6 +20,8 @@ use crate::sources::AxialField;
 const SPEED_CHANGE: f64 = 0.15;
 /// Nodes on either side of the greatest current density that its peak is read from.
 const PEAK_REACH: usize = 8;
+/// Share of the greatest force so far above which the stress is taken too.
+const NEAR_GREATEST: f64 = 0.8;
 /// Pairs at most.
 const MOST_PAIRS: usize = 2_000_000;
 /// Pairs run on beyond the end, so that the end itself is read between steps.
@@ -62,8 +64,7 @@ pub(crate) struct Run<'a, 'p> {
     currents: Vec<f64>,
     near: [f64; 2 * PEAK_REACH + 1],
     psi_nodes: Vec<f64>,
-    band_nodes: Vec<f64>,
-    row: (Vec<f64>, Vec<f64>),
+    greatest_force: f64,
     heat: f64,
     work: f64,
     losses: f64,
@@ -77,7 +78,7 @@ impl<'a, 'p> Run<'a, 'p> {
     /// See [`SolveFault`].
     pub(crate) fn new(level: &'a mut MarchLevel<'p>, motion: &'a Motion, course: &Course) -> Result<Self, SolveFault> {
         let (wall, grid) = (level.operators.wall.len(), &level.operators.grid);
-        let (nodes, nz) = (grid.nodes(), grid.nz());
+        let nodes = grid.nodes();
         let (mut source, mut slope) = (vec![0.0; wall], vec![0.0; wall]);
         level.fill_source(course.from, &mut source, &mut slope);
         let (flux, energy_start) = level.field_at_rest(&source)?;
@@ -103,8 +104,7 @@ impl<'a, 'p> Run<'a, 'p> {
             currents: vec![0.0; wall],
             near: [0.0; 2 * PEAK_REACH + 1],
             psi_nodes: vec![0.0; nodes],
-            band_nodes: vec![0.0; nodes],
-            row: (vec![0.0; nz], vec![0.0; nz]),
+            greatest_force: 0.0,
             heat: 0.0,
             work: 0.0,
             losses: 0.0,
@@ -238,7 +238,7 @@ impl<'a, 'p> Run<'a, 'p> {
             }
             self.state.copy_from(&self.saved);
             (self.heat, self.work, self.losses) = (keep.0, keep.1, keep.2);
-            self.series.truncate(keep.3);
+            self.series.truncate(keep.3, begin);
             rung -= 1;
         }
     }
@@ -273,22 +273,26 @@ impl<'a, 'p> Run<'a, 'p> {
         }
         let pull = self.level.static_pull(middle);
         self.series.pull_mid.push(pull);
-        self.record_routes(middle);
+        self.record_routes(middle, begin + 0.5 * dt);
         self.record_peak(dt, report.travel);
     }
 
     /// The two other routes at the step's middle.
-    fn record_routes(&mut self, middle: f64) {
+    fn record_routes(&mut self, middle: f64, time_mid: f64) {
         let operators = &self.level.operators;
         let (nr, grid) = (operators.grid.nr(), &operators.grid);
         for (j, row) in self.stepper.reaction().chunks_exact(nr - 2).enumerate() {
             self.psi_nodes[(j + 1) * nr + 1..(j + 2) * nr - 1].copy_from_slice(row);
         }
-        self.level.fill_bands(middle, &mut self.band_nodes, &mut self.row.0, &mut self.row.1);
-        let (bands, gap) = (&self.level.placement.stress_bands, self.level.placement.gap_m);
-        let mover = &self.level.problem.mover;
-        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, mover, middle, gap));
-        self.series.force_by_stress_mid.push(by_stress(grid, &self.psi_nodes, &self.band_nodes, bands));
+        let (problem, placement) = (self.level.problem, self.level.placement);
+        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, &problem.mover, middle, placement.gap_m));
+        // The stress is wanted at the greatest drag alone: it is taken where the force is near its greatest so far.
+        let force = self.series.force_mid.last().map_or(0.0, |f| f.abs());
+        self.greatest_force = self.greatest_force.max(force);
+        if force >= NEAR_GREATEST * self.greatest_force {
+            self.series.time_stress.push(time_mid);
+            self.series.force_by_stress.push(by_stress(grid, &self.psi_nodes, problem, placement, middle));
+        }
     }
 
     /// The greatest current density over the step: sigma |dpsi/dt| / r, the mover's own part exact between nodes.

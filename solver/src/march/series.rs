@@ -18,8 +18,9 @@ pub(crate) struct Series {
     pub(crate) force_mid: Vec<f64>,
     /// The same by the reaction field on the mover, N.
     pub(crate) force_on_mover_mid: Vec<f64>,
-    /// The same by the stress in the gap, N.
-    pub(crate) force_by_stress_mid: Vec<f64>,
+    /// Instants at which the stress was taken, and the force by it, N: near the greatest forces only.
+    pub(crate) time_stress: Vec<f64>,
+    pub(crate) force_by_stress: Vec<f64>,
     /// Heat rate, W.
     pub(crate) heat_rate_mid: Vec<f64>,
     /// Field energy beyond the mover's own, J.
@@ -41,8 +42,11 @@ pub(crate) struct Series {
 }
 
 impl Series {
-    /// Forgets all steps after the first `steps`.
-    pub(crate) fn truncate(&mut self, steps: usize) {
+    /// Forgets all steps after the first `steps`, which end at `time`.
+    pub(crate) fn truncate(&mut self, steps: usize, time: f64) {
+        let kept = self.time_stress.partition_point(|&t| t < time);
+        self.time_stress.truncate(kept);
+        self.force_by_stress.truncate(kept);
         for ends in [&mut self.time, &mut self.position, &mut self.velocity, &mut self.heat, &mut self.work, &mut self.losses] {
             ends.truncate(steps + 1);
         }
@@ -51,7 +55,6 @@ impl Series {
             &mut self.position_mid,
             &mut self.force_mid,
             &mut self.force_on_mover_mid,
-            &mut self.force_by_stress_mid,
             &mut self.heat_rate_mid,
             &mut self.energy_mid,
             &mut self.pull_mid,

@@ -1,6 +1,6 @@
 //! Levels to figures: a single speed, or a whole drag-speed curve.
 
-use lenzbore_mesh::{Grid, Refinement};
+use lenzbore_mesh::Refinement;
 
 use super::level::{LevelDrag, SettledLevel};
 use crate::band::{self, Ladder};
@@ -18,8 +18,7 @@ use crate::outcome::{
 use crate::placement::Placement;
 use crate::problem::{Problem, SnapshotPlan};
 use crate::regime::regime;
-use crate::sources::AxialField;
-use crate::target::{levels_wanted, verdict};
+use crate::target::{MOST_LEVELS, levels_wanted, may_add_level, verdict};
 
 /// How closely the critical speed is searched, relative.
 const SEARCH: f64 = 1.0e-7;
@@ -108,7 +107,7 @@ impl<'p> Levels<'p> {
         let residual = self.residual(drag.value);
         let drag_band = band::two_routes(&drag, &heat, cut, residual);
         let peak_cut = if drag.value.abs() > 0.0 { cut / drag.value * peak.value } else { 0.0 };
-        let peak_band = band::one_route(&peak, peak_cut, self.residual(peak.value));
+        let peak_band = band::local(&peak, peak_cut, self.residual(peak.value));
         let peak_at = at.last().map_or((0.0, 0.0), |d| d.peak_at);
         Point { drag, heat, peak, drag_band, peak_band, peak_at }
     }
@@ -139,7 +138,7 @@ pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) ->
     let mut count = levels_wanted(&problem.accuracy);
     loop {
         let outcome = steady_on(problem, velocity, count, monitor)?;
-        if outcome.accuracy.met || !crate::target::may_add_level(&problem.accuracy, count) {
+        if outcome.accuracy.met || !may_add_level(&problem.accuracy, count, MOST_LEVELS) {
             return Ok(outcome);
         }
         count += 1;
@@ -247,9 +246,8 @@ fn three_forces(problem: &Problem, levels: &mut Levels<'_>, velocity: f64, point
     for level in &mut levels.levels {
         let (psi, _, _) = level.reaction(velocity)?;
         let grid = &level.operators.grid;
-        let source = band_source(grid, problem, &levels.placement);
         on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0, levels.placement.gap_m));
-        stress_levels.push(sign * by_stress(grid, &psi, &source, &levels.placement.stress_bands));
+        stress_levels.push(sign * by_stress(grid, &psi, problem, &levels.placement, 0.0));
     }
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
@@ -257,19 +255,6 @@ fn three_forces(problem: &Problem, levels: &mut Levels<'_>, velocity: f64, point
     let band_newton = point.drag_band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
     let apart = (mover_newton - wall_newton).abs().max((stress_newton - wall_newton).abs());
     Ok(Forces { wall_newton, mover_newton, stress_newton, band_newton, agree: apart <= band_newton, time_s: 0.0 })
-}
-
-/// psi of the mover at the nodes of the stress bands, zero elsewhere.
-fn band_source(grid: &Grid, problem: &Problem, placement: &Placement) -> Vec<f64> {
-    let mut psi = vec![0.0; grid.nodes()];
-    for band in &placement.stress_bands {
-        for i in grid.r.nearest(band.inner_m)..=grid.r.nearest(band.outer_m) {
-            for (j, &z) in grid.z.nodes().iter().enumerate() {
-                psi[grid.node(i, j)] = problem.mover.psi(grid.r.nodes()[i], z);
-            }
-        }
-    }
-    psi
 }
 
 fn wanted_fields(problem: &Problem, levels: &mut Levels<'_>, velocity: f64) -> Result<Option<Fields>, SolveFault> {
@@ -305,7 +290,7 @@ pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) ->
     let mut count = levels_wanted(&problem.accuracy);
     loop {
         let outcome = curve_on(problem, speeds, count, monitor)?;
-        if outcome.accuracy.met || !crate::target::may_add_level(&problem.accuracy, count) {
+        if outcome.accuracy.met || !may_add_level(&problem.accuracy, count, MOST_LEVELS) {
             return Ok(outcome);
         }
         count += 1;
