@@ -70,7 +70,8 @@ fn encoded(map: &Pixmap, dots_per_inch: f32) -> Result<Vec<u8>, png::EncodingErr
     let mut encoder = png::Encoder::new(&mut file, map.width(), map.height());
     encoder.set_color(png::ColorType::Rgb);
     encoder.set_depth(png::BitDepth::Eight);
-    encoder.set_compression(png::Compression::High);
+    encoder.set_compression(png::Compression::Balanced);
+    encoder.set_filter(png::Filter::NoFilter);
     encoder.set_pixel_dims(Some(dots_per_metre(dots_per_inch)));
     encoder.write_header()?.write_image_data(&opaque)?;
     Ok(file)
