@@ -1,5 +1,6 @@
 //! What can be wrong with a question put to the independent methods.
 
+use lenzbore_solver::fault::SolveFault;
 use thiserror::Error;
 
 /// Faults of the independent methods.
@@ -95,10 +96,10 @@ pub enum Error {
         /// Time allowed, s.
         time_s: f64,
     },
-    /// The solver refused or failed.
+    /// The field solver refused or failed.
     #[error("the field solver: {0}")]
-    Solver(String),
-    /// A published value that a check needs is missing.
-    #[error("no reference value named {0:?}")]
-    MissingReference(&'static str),
+    Solver(#[from] SolveFault),
+    /// The field solver gave an answer without a figure that it owes.
+    #[error("the field solver gave no figure {0:?}")]
+    MissingFigure(&'static str),
 }

@@ -1,7 +1,8 @@
 //! Published checks, each beside its source, and independent semi-analytic paths.
 //!
 //! The independent paths share no code with the field solver beyond the statement of the problem:
-//! [`endless`] solves a layered wall without ends by its Fourier-Bessel integral.
+//! [`endless`] solves a layered wall without ends by its Fourier-Bessel integral, [`rings`] a wall with ends as coupled circuits.
+//! [`references`] holds values with their sources, [`checks`] what is held against what.
 
 pub mod cases;
 pub mod checks;
@@ -10,5 +11,6 @@ pub mod endless;
 mod error;
 pub mod quadrature;
 pub mod references;
+pub mod rings;
 
 pub use error::Error;

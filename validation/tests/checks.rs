@@ -25,6 +25,9 @@ macro_rules! checks {
 
 checks! {
     val_loops: "loops",
+    val_self_inductance: "self-inductance",
+    val_source_solenoid: "source-solenoid",
+    val_source_force: "source-force",
     val_integral_dipole: "integral-dipole",
     val_integral_cylinders: "integral-cylinders",
     val_integral_dipole_coefficient: "integral-dipole-coefficient",
@@ -33,4 +36,13 @@ checks! {
     val_integral_permeable: "integral-permeable",
     val_integral_thin_wall: "integral-thin-wall",
     val_integral_moving_loop: "integral-moving-loop",
+    val_rings_long_wall: "rings-long-wall",
+    val_rings_fall: "rings-fall",
+    val_field_dipole: "field-dipole",
+    val_field_cylinders: "field-cylinders",
+    val_field_stacks: "field-stacks",
+    val_field_speeds: "field-speeds",
+    val_field_permeable: "field-permeable",
+    val_field_thin_wall: "field-thin-wall",
+    val_field_fall: "field-fall",
 }

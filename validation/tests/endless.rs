@@ -101,8 +101,8 @@ fn parallelogram_law_over_groups() {
     assert!((sum - difference).abs() > 1e-3 * alone);
 }
 
-/// A loop outside a sheet of radius a: with X = mu0 sigma w v k a the sheet's current follows from its own reaction alone, and
-/// drag = (2 mu0 I^2 R^2 / a) integral k K1(kR)^2 X I1(ka)^2 / (1 + X^2 I1^2 K1^2) dk... taken here from J and the loop's field.
+/// A loop of radius R outside a sheet of radius a: its free field A = (mu0 I R/pi) K1(kR) I1(ka) is reduced by the sheet's own to
+/// |A|^2 / (1 + X^2 I1^2 K1^2) with X = mu0 sigma w v k a, and drag = 2 pi^2 v sigma w a integral k^2 |A|^2 dk.
 #[test]
 fn loop_around_a_sheet() {
     let (a, radius, current, loss, speed) = (10e-3, 12e-3, 40.0, 2.0, 3.0);
@@ -149,7 +149,7 @@ fn an_idle_tube_changes_nothing() {
             assert_relative_eq!(b.axial.value, axial, max_relative = 1e-5, epsilon = 1e-11);
         }
     }
-    assert_eq!(idle.drag(5.0).unwrap().value, 0.0);
+    assert!(idle.drag(5.0).unwrap().value.abs() <= 0.0);
 }
 
 /// Work done against drag = heat of the current density in space.

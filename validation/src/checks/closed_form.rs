@@ -1,16 +1,43 @@
 //! Closed forms of coaxial loops, on which the ring circuit rests.
 
+use std::f64::consts::PI;
+
+use lenzbore_solver::constants::MU0;
+
 use super::{Check, Kind, Verdict};
-use crate::references::{half_decimal, half_figure, loops};
+use crate::references::{half_decimal, half_figure, loops, nagaoka};
+use crate::rings::self_inductance;
 use crate::{Error, elliptic};
 
-pub(super) const CHECKS: &[Check] = &[Check {
-    name: "loops",
-    about: "mutual inductance of coaxial loops and its gradient",
-    kind: Kind::CodeVerification,
-    source: &loops::SOURCE,
-    run: pairs,
-}];
+pub(super) const CHECKS: &[Check] = &[
+    Check {
+        name: "loops",
+        about: "mutual inductance of coaxial loops and its gradient",
+        kind: Kind::CodeVerification,
+        source: &loops::SOURCE,
+        run: pairs,
+    },
+    Check {
+        name: "self-inductance",
+        about: "self-inductance of ever thinner rings against that of a current sheet",
+        kind: Kind::CodeVerification,
+        source: &nagaoka::SOURCE,
+        run: thin_rings,
+    },
+];
+
+/// The thickness of the ring comes in at first order: taken out over two thicknesses.
+fn thin_rings() -> Result<Verdict, Error> {
+    let mut verdict = Verdict::default();
+    for (ratio, coefficient) in nagaoka::TABLE {
+        let length = 2.0 / ratio;
+        let of = |thickness: f64| self_inductance((1.0 - 0.5 * thickness, 1.0 + 0.5 * thickness), length);
+        let thin = 1e-4 * length.min(1.0);
+        let found = (2.0 * of(thin) - of(2.0 * thin)) * length / (MU0 * PI);
+        verdict.compare(format!("K at diameter/length {ratio}"), found, coefficient, 1e-7, "1");
+    }
+    Ok(verdict)
+}
 
 fn pairs() -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();

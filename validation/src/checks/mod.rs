@@ -5,9 +5,13 @@
 
 mod closed_form;
 mod endless;
+mod field;
+mod field_fall;
+mod rings;
+mod sources;
 mod verdict;
 
-pub use verdict::{Comparison, Verdict};
+pub use verdict::{Banded, Comparison, Limits, Verdict};
 
 use crate::Error;
 use crate::references::Source;
@@ -53,7 +57,7 @@ pub struct Check {
 /// All checks, those of the independent methods first.
 #[must_use]
 pub fn all() -> Vec<Check> {
-    [closed_form::CHECKS, endless::CHECKS].concat()
+    [closed_form::CHECKS, sources::CHECKS, endless::CHECKS, rings::CHECKS, field::CHECKS, field_fall::CHECKS].concat()
 }
 
 /// The check of that name.

@@ -13,6 +13,8 @@ pub struct Comparison {
     pub band: Option<f64>,
     /// Reference value.
     pub expected: f64,
+    /// How well the reference itself is known, where a band must hold it.
+    pub known_within: f64,
     /// Greatest difference allowed.
     pub allowed: f64,
     /// Unit of all four.
@@ -26,11 +28,11 @@ impl Comparison {
         self.found - self.expected
     }
 
-    /// Within tolerance, and the reference (known to half of nothing better than `allowed`) inside the band where there is one.
+    /// Within tolerance, and the reference inside the band where there is one.
     #[must_use]
     pub fn passes(&self) -> bool {
-        let within = self.difference().abs() <= self.allowed;
-        within && self.found.is_finite()
+        let off = self.difference().abs();
+        off <= self.allowed && self.band.is_none_or(|band| off <= band + self.known_within)
     }
 }
 
@@ -62,8 +64,47 @@ impl Verdict {
 
     /// Adds a comparison without a band.
     pub fn compare(&mut self, what: impl Into<String>, found: f64, expected: f64, allowed: f64, unit: &'static str) {
-        self.comparisons.push(Comparison { what: what.into(), found, band: None, expected, allowed, unit });
+        let (what, band, known_within) = (what.into(), None, 0.0);
+        self.comparisons.push(Comparison { what, found, band, expected, known_within, allowed, unit });
     }
+
+    /// Adds a comparison whose band must hold a reference known within `known_within`.
+    pub fn compare_banded(
+        &mut self,
+        what: impl Into<String>,
+        figure: Banded,
+        expected: f64,
+        limits: Limits,
+        unit: &'static str,
+    ) {
+        self.comparisons.push(Comparison {
+            what: what.into(),
+            found: figure.value,
+            band: Some(figure.band),
+            expected,
+            known_within: limits.known_within,
+            allowed: limits.allowed,
+            unit,
+        });
+    }
+}
+
+/// A value with the half-width of its band.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Banded {
+    /// The value.
+    pub value: f64,
+    /// Half-width of its band.
+    pub band: f64,
+}
+
+/// What a comparison may differ by.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Limits {
+    /// Greatest difference allowed.
+    pub allowed: f64,
+    /// How well the reference itself is known.
+    pub known_within: f64,
 }
 
 impl fmt::Display for Verdict {

@@ -7,7 +7,7 @@ pub const SOURCE: Source = Source {
     citation: "H. Nagaoka, \"The inductance coefficients of solenoids\", Journal of the College of Science, Tokyo 27(6) (1909); E. B. Rosa, \
                F. W. Grover, Bulletin of the Bureau of Standards 8 (1912), table 20. Printed values at 0.5, 1, 2, 5, 10 agree, from memory",
     obtained: Obtained::ComputedIndependently,
-    tolerance: "the last of ten printed decimals",
+    tolerance: "1e-7: sections of two small thicknesses stand in for the sheet",
 };
 
 /// Diameter over length, and K.

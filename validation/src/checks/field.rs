@@ -1,0 +1,177 @@
+//! The field solver's drag against published tables, at default settings.
+//!
+//! Each figure is held against its table twice: within the tolerance, and its band against the Fourier-Bessel integral, which
+//! knows the truth to ten digits.
+
+use lenzbore_solver::constants::MU0;
+use lenzbore_solver::monitor::Unwatched;
+use lenzbore_solver::outcome::Outcome;
+use lenzbore_solver::problem::{Mover, Travel, Wall};
+
+use super::{Banded, Check, Kind, Limits, Verdict};
+use crate::references::{
+    Source, cylinder_damping, dipole_drag, half_decimal, half_figure, magnet_speed, permeable_tube, stacks, thin_wall,
+};
+use crate::{Error, cases, endless};
+
+const fn check(
+    name: &'static str,
+    about: &'static str,
+    source: &'static Source,
+    run: fn() -> Result<Verdict, Error>,
+) -> Check {
+    Check { name, about, kind: Kind::CodeVerification, source, run }
+}
+
+pub(super) const CHECKS: &[Check] = &[
+    check("field-dipole", "drag of a dipole in a copper wall at four speeds", &dipole_drag::SOURCE, dipole),
+    check("field-cylinders", "damping coefficients of cylinder magnets", &cylinder_damping::SOURCE, cylinders),
+    check("field-stacks", "damping coefficients of magnet stacks", &stacks::SOURCE, stack_coefficients),
+    check("field-speeds", "drag of a magnet from 0.01 to 100 m/s", &magnet_speed::SOURCE, speeds),
+    check("field-permeable", "drag in tubes of permeability 1, 50 and 200", &permeable_tube::SOURCE, permeable),
+    check(
+        "field-thin-wall",
+        "drag of a dipole in a thin wall against the universal curve",
+        &thin_wall::SOURCE,
+        universal,
+    ),
+];
+
+/// Settled drag at several speeds.
+fn curve(wall: &Wall, mover: &Mover, speeds: &[f64]) -> Result<Outcome, Error> {
+    let travel = Travel::Steady { velocity_m_per_s: speeds[0] };
+    let problem = cases::question(wall.clone(), mover.clone(), travel);
+    Ok(lenzbore_solver::drag_curve(&problem, speeds, &Unwatched)?)
+}
+
+/// Drag with bands at several speeds.
+fn drags(wall: &Wall, mover: &Mover, speeds: &[f64]) -> Result<Vec<Banded>, Error> {
+    let curve = curve(wall, mover, speeds)?.curve.ok_or(Error::MissingFigure("curve"))?;
+    Ok(curve.points.iter().map(|p| Banded { value: p.drag_newton, band: p.band_newton }).collect())
+}
+
+/// Damping coefficient at zero speed with its band.
+fn coefficient(wall: &Wall, mover: &Mover) -> Result<Banded, Error> {
+    const NAME: &str = "damping_coefficient_zero_speed";
+    let outcome = curve(wall, mover, &[0.1, 1.0])?;
+    let figure = outcome.figures.iter().find(|f| f.name == NAME).ok_or(Error::MissingFigure(NAME))?;
+    Ok(Banded { value: figure.value, band: figure.band })
+}
+
+/// A table's value and how well it is printed, the integral's value, and the relative tolerance.
+struct Truth {
+    table: f64,
+    printed: f64,
+    integral: f64,
+    relative: f64,
+}
+
+/// Holds a figure against its table, and its band against the integral.
+fn hold(verdict: &mut Verdict, what: &str, figure: Banded, truth: &Truth, unit: &'static str) {
+    let allowed = (truth.relative * truth.table.abs()).max(truth.printed);
+    verdict.compare(what, figure.value, truth.table, allowed, unit);
+    let limits = Limits { allowed, known_within: 1e-10 * truth.integral.abs() };
+    verdict.compare_banded(format!("{what}, band"), figure, truth.integral, limits, unit);
+}
+
+fn dipole() -> Result<Verdict, Error> {
+    let wall = cases::endless_tube(dipole_drag::WALL_M, dipole_drag::CONDUCTIVITY_S_PER_M, 1.0);
+    let mover = cases::dipole(dipole_drag::MOMENT_A_M2);
+    let mut verdict = Verdict::default();
+    for (speed, table) in dipole_drag::DRAG {
+        let travel = Travel::Steady { velocity_m_per_s: speed };
+        let problem = cases::question(wall.clone(), mover.clone(), travel);
+        let outcome = lenzbore_solver::solve(&problem, &Unwatched)?;
+        let figure = outcome.figures.iter().find(|f| f.name == "drag").ok_or(Error::MissingFigure("drag"))?;
+        let figure = Banded { value: figure.value, band: figure.band };
+        let integral = endless::drag(&wall, &mover, speed)?.value;
+        let truth = Truth { table, printed: half_decimal(9), integral, relative: 2e-5 };
+        hold(&mut verdict, &format!("drag at {speed} m/s"), figure, &truth, "N");
+    }
+    Ok(verdict)
+}
+
+fn cylinders() -> Result<Verdict, Error> {
+    let mut verdict = Verdict::default();
+    for line in cylinder_damping::TABLE {
+        let radii = (1e-3 * line.wall_mm.0, 1e-3 * line.wall_mm.1);
+        let wall = cases::endless_tube(radii, cylinder_damping::CONDUCTIVITY_S_PER_M, 1.0);
+        let mover = cases::cylinder(cylinder_damping::RADIUS_M, 1e-3 * line.length_mm, cylinder_damping::REMANENCE_T);
+        let what = format!("damping, length {} mm, wall {} to {} mm", line.length_mm, line.wall_mm.0, line.wall_mm.1);
+        let integral = endless::damping_coefficient(&wall, &mover)?.value;
+        let printed = half_decimal(cylinder_damping::DECIMALS);
+        let truth = Truth { table: line.damping, printed, integral, relative: 5e-5 };
+        hold(&mut verdict, &what, coefficient(&wall, &mover)?, &truth, "N s/m");
+    }
+    Ok(verdict)
+}
+
+fn stack_coefficients() -> Result<Verdict, Error> {
+    let wall = cases::endless_tube(magnet_speed::WALL_M, magnet_speed::CONDUCTIVITY_S_PER_M, 1.0);
+    let mut verdict = Verdict::default();
+    for stack in stacks::TABLE {
+        let mover = cases::stack(
+            magnet_speed::RADIUS_M,
+            magnet_speed::LENGTH_M,
+            magnet_speed::REMANENCE_T,
+            stack.signs,
+            1e-3 * stack.spacer_mm,
+        );
+        let integral = endless::damping_coefficient(&wall, &mover)?.value;
+        let printed = half_decimal(stacks::DECIMALS);
+        let truth = Truth { table: stack.damping, printed, integral, relative: 5e-5 };
+        hold(&mut verdict, stack.name, coefficient(&wall, &mover)?, &truth, "N s/m");
+    }
+    Ok(verdict)
+}
+
+fn speeds() -> Result<Verdict, Error> {
+    let wall = cases::endless_tube(magnet_speed::WALL_M, magnet_speed::CONDUCTIVITY_S_PER_M, 1.0);
+    let mover = cases::cylinder(magnet_speed::RADIUS_M, magnet_speed::LENGTH_M, magnet_speed::REMANENCE_T);
+    let found = drags(&wall, &mover, &magnet_speed::DRAG.map(|(speed, _)| speed))?;
+    let mut verdict = Verdict::default();
+    for ((speed, table), figure) in magnet_speed::DRAG.into_iter().zip(found) {
+        let integral = endless::drag(&wall, &mover, speed)?.value;
+        let truth = Truth { table, printed: half_decimal(magnet_speed::DECIMALS), integral, relative: 5e-5 };
+        hold(&mut verdict, &format!("drag at {speed} m/s"), figure, &truth, "N");
+    }
+    Ok(verdict)
+}
+
+fn permeable() -> Result<Verdict, Error> {
+    let mover = cases::cylinder(permeable_tube::RADIUS_M, permeable_tube::LENGTH_M, permeable_tube::REMANENCE_T);
+    let mut verdict = Verdict::default();
+    for (column, mu) in permeable_tube::PERMEABILITIES.into_iter().enumerate() {
+        let wall = cases::endless_tube(permeable_tube::WALL_M, permeable_tube::CONDUCTIVITY_S_PER_M, mu);
+        let found = drags(&wall, &mover, &permeable_tube::DRAG.map(|(speed, _)| speed))?;
+        let relative = if mu > 1.0 { 2e-4 } else { 5e-5 };
+        for ((speed, drag), figure) in permeable_tube::DRAG.into_iter().zip(found) {
+            let table = drag[column];
+            let integral = endless::drag(&wall, &mover, speed)?.value;
+            let printed = 2.0 * half_figure(table, permeable_tube::FIGURES);
+            let truth = Truth { table, printed, integral, relative };
+            hold(&mut verdict, &format!("drag at {speed} m/s, permeability {mu}"), figure, &truth, "N");
+        }
+    }
+    Ok(verdict)
+}
+
+/// The wall's thickness over its mean radius: thin enough that the sheet is meant to 1e-5 up to V = 100.
+const THINNESS: f64 = 1e-5;
+
+fn universal() -> Result<Verdict, Error> {
+    let (a, sigma, moment) = (10e-3, 58e6, 1.0);
+    let wall = cases::endless_tube((a * (1.0 - 0.5 * THINNESS), a * (1.0 + 0.5 * THINNESS)), sigma, 1.0);
+    let mover = cases::dipole(moment);
+    let speed = |loss: f64| loss / (MU0 * sigma * a * THINNESS);
+    let scale = a.powi(4) / (MU0 * moment * moment);
+    let found = drags(&wall, &mover, &thin_wall::CURVE.map(|(loss, _)| speed(loss)))?;
+    let mut verdict = Verdict::default();
+    for ((loss, table), figure) in thin_wall::CURVE.into_iter().zip(found) {
+        let integral = scale * endless::drag(&wall, &mover, speed(loss))?.value;
+        let figure = Banded { value: scale * figure.value, band: scale * figure.band };
+        let truth = Truth { table, printed: half_figure(table, thin_wall::FIGURES), integral, relative: 5e-5 };
+        hold(&mut verdict, &format!("drag a^4/(mu0 m^2) at V = {loss}"), figure, &truth, "1");
+    }
+    Ok(verdict)
+}
