@@ -102,7 +102,7 @@ fn small_ticks(scale: &Scale, apart: f64) -> Vec<f64> {
 
 /// A linear axis that holds `low` to `high` with a little air, and zero where it is near.
 pub(super) fn linear(low: f64, high: f64, start: f64, end: f64) -> Scale {
-    if !(high > low) {
+    if high <= low {
         let (low, high) =
             if high.abs() > 0.0 { (high - 0.5 * high.abs(), high + 0.5 * high.abs()) } else { (0.0, 1.0) };
         return Scale { kind: Kind::Linear, low, high, start, end };

@@ -118,7 +118,7 @@ impl Plot {
         let visible = banded.is_visible(&self.y.scale);
         let line = if visible { Swatch::Ribbon(CURVE) } else { Swatch::Line(CURVE) };
         let dots = if points.len() <= 80 { " (dots: computed speeds)" } else { "" };
-        entries.insert(0, (line, format!("drag{dots}; {}", banded.remark(&self.y.scale))));
+        entries.insert(0, (line, format!("drag{dots}; {}", banded.remark_on_each(&self.y.scale))));
     }
 
     /// Rings the greatest drag and drops a line to its speed.

@@ -61,17 +61,32 @@ impl Banded {
         })
     }
 
-    /// What the key says of the band.
-    pub(super) fn remark(&self, y: &Scale) -> String {
-        let top = self.y.iter().fold(0.0_f64, |m, v| m.max(v.abs()));
+    /// What the key says of the band: its half-width over the value, each at its own place.
+    pub(super) fn remark_on_each(&self, y: &Scale) -> String {
+        let top = self.largest();
         let relative = |i: usize| self.band[i] / self.y[i].abs();
-        let over_all = (0..self.y.len()).filter(|i| self.y[*i].abs() > 1e-3 * top).map(relative).fold(0.0, f64::max);
-        let worst = format!("{} %", significant(round_up(100.0 * over_all), 2));
+        let worst = (0..self.y.len()).filter(|i| self.y[*i].abs() > 1e-3 * top).map(relative).fold(0.0, f64::max);
+        self.remark(y, &format!("{} %", significant(round_up(100.0 * worst), 2)))
+    }
+
+    /// The same over the greatest value, for a series that passes through zero.
+    pub(super) fn remark_on_greatest(&self, y: &Scale, name: &str) -> String {
+        let top = self.largest();
+        let widest = self.band.iter().copied().fold(0.0, f64::max);
+        let worst = if top > 0.0 { widest / top } else { 0.0 };
+        self.remark(y, &format!("{} % of the greatest {name}", significant(round_up(100.0 * worst), 2)))
+    }
+
+    fn remark(&self, y: &Scale, worst: &str) -> String {
         if self.is_visible(y) {
             format!("numerical band, at most ± {worst}")
         } else {
             format!("numerical band narrower than the line: ≤ {worst}")
         }
+    }
+
+    fn largest(&self) -> f64 {
+        self.y.iter().fold(0.0_f64, |m, v| m.max(v.abs()))
     }
 }
 

@@ -308,7 +308,7 @@ mod tests {
     fn numbers_are_short() {
         assert_eq!(short(12.0), "12");
         assert_eq!(short(-0.001), "0");
-        assert_eq!(short(3.14159), "3.14");
+        assert_eq!(short(3.14259), "3.14");
         assert_eq!(short(0.1), "0.1");
     }
 

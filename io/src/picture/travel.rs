@@ -91,6 +91,7 @@ impl View {
         let left = MARGIN + room_left(&drag_axis).max(room_left(&speed_axis));
         let right = COLUMN - MARGIN - 8.0;
         let (low, high) = range(&self.along);
+        let low = if self.by_time && low < 0.02 * high { 0.0 } else { low };
         let x = Axis { scale: tight(low, high, left, right), title: self.axis_title.clone() };
         let upper_frame = Frame { edge: MARGIN, left, right, top, bottom: top + PANEL };
         let lower_frame = Frame { edge: MARGIN, left, right, top: lower, bottom: lower + PANEL };
@@ -184,7 +185,7 @@ impl View {
 
     fn entries(&self, drag: &Banded, scale: &Scale, peak: Option<String>) -> Vec<(Swatch, String)> {
         let swatch = if drag.is_visible(scale) { Swatch::Ribbon(CURVE) } else { Swatch::Line(CURVE) };
-        let mut entries = vec![(swatch, format!("drag; {}", drag.remark(scale)))];
+        let mut entries = vec![(swatch, format!("drag; {}", drag.remark_on_greatest(scale, "drag")))];
         entries.extend(peak.map(|text| (Swatch::Ring(ORANGE), text)));
         if !self.in_wall.is_empty() {
             entries.push((Swatch::Patch(WALL), "reference point within the length of the wall".to_owned()));

@@ -59,7 +59,8 @@ fn it_reads_back_to_the_same_numbers() {
 #[test]
 fn a_non_number_anywhere_is_a_fault_that_names_it() {
     let header = demo::header("x");
-    let spoil: [(&str, fn(&mut Outcome)); 7] = [
+    type Spoil = fn(&mut Outcome);
+    let spoil: [(&str, Spoil); 7] = [
         ("drag_peak", |o| o.figures.iter_mut().find(|f| f.name == "drag_peak").unwrap().value = f64::NAN),
         ("band of entry_time", |o| {
             o.figures.iter_mut().find(|f| f.name == "entry_time").unwrap().band = f64::INFINITY;
