@@ -8,7 +8,7 @@
 //! together against exact integrals, and change together. A figure with one route only takes the whole first
 //! difference that extrapolation leaves, by its own factor; a local figure (peak current density) five of it.
 
-use crate::extrapolate::extrapolate;
+use crate::extrapolate::{even_powers, weights};
 
 /// c of the rule.
 const CAUTION: f64 = 0.75;
@@ -34,8 +34,16 @@ pub(crate) struct Ladder {
 impl Ladder {
     /// Extrapolates `levels` at refinement `factors`, at least two.
     pub(crate) fn new(factors: &[f64], levels: Vec<f64>) -> Self {
-        let value = extrapolate(factors, &levels);
-        let without = |coarse: usize| extrapolate(&factors[coarse..], &levels[coarse..]);
+        Self::with_powers(factors, levels, &even_powers(factors.len()))
+    }
+
+    /// The same where the error runs in other powers of the cell size.
+    pub(crate) fn with_powers(factors: &[f64], levels: Vec<f64>, powers: &[f64]) -> Self {
+        let without = |coarse: usize| -> f64 {
+            let w = weights(&factors[coarse..], &powers[..factors.len() - coarse - 1]);
+            w.iter().zip(&levels[coarse..]).map(|(w, v)| w * v).sum()
+        };
+        let value = without(0);
         let mut step = (value - without(1)).abs();
         if levels.len() > 3 {
             // Two high orders may agree by accident: an earlier step, less what a level usually gains, counts too.

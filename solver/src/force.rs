@@ -80,8 +80,8 @@ const STRESS_REACH: f64 = 16.0;
 /// Axial force on the mover by the Maxwell stress on the wall's faces, its reference point at `position`, N.
 ///
 /// F = (2 pi R / mu0) integral of (B_sr B_rz + B_rr B_sz) dz over a cylinder around the mover (with the other sign inside
-/// it), by the trapezoidal rule over the nodes: the mover's own field s exact, the reaction field r from one-sided
-/// high-order stencils in the air at the face. Products of either field with itself carry no net force.
+/// it), by the trapezoidal rule over the nodes: the mover's own field s exact, the reaction field r from
+/// high-order stencils on the air side of the face. Products of either field with itself carry no net force.
 pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], problem: &Problem, placement: &Placement, position: f64) -> f64 {
     let (r, z) = (grid.r.nodes(), grid.z.nodes());
     let reach = STRESS_REACH * placement.scale_m;
@@ -89,20 +89,20 @@ pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], problem: &Problem, pl
     let last = grid.z.nearest(position + placement.highest_m + reach);
     let mut force = 0.0;
     for face in &placement.stress_faces {
-        let i = grid.r.nearest(face.radius_m);
+        let i = grid.r.nearest(face.face_m);
         let (from, sign) = match face.mover {
             MoverSide::Inside => (i.saturating_sub(POINTS - 1), 1.0),
             MoverSide::Outside => (i, -1.0),
         };
-        let across = Stencil::<POINTS>::over(&r[from..from + POINTS], r[i]);
+        let across = Stencil::<POINTS>::over(&r[from..from + POINTS], face.radius_m);
+        let at_row = |j: usize| across.value_of(&psi_reaction[grid.node(from, j)..]);
         let mut sum = 0.0;
         for j in first..=last {
             let slope_r = across.slope_of(&psi_reaction[grid.node(from, j)..]);
             let along = Stencil::<POINTS>::at(z, z[j]);
-            let slope_z: f64 =
-                along.slope.iter().enumerate().map(|(n, w)| w * psi_reaction[grid.node(i, along.first + n)]).sum();
-            let own_r = problem.mover.flux_density_r(r[i], z[j] - position);
-            let own_z = problem.mover.flux_density_z(r[i], z[j] - position);
+            let slope_z: f64 = along.slope.iter().enumerate().map(|(n, w)| w * at_row(along.first + n)).sum();
+            let own_r = problem.mover.flux_density_r(face.radius_m, z[j] - position);
+            let own_z = problem.mover.flux_density_z(face.radius_m, z[j] - position);
             sum += grid.z.dual(j) * (own_r * slope_r - slope_z * own_z);
         }
         force += sign * 2.0 * PI / MU0 * sum;

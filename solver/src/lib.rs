@@ -21,6 +21,7 @@ pub mod problem;
 pub mod sources;
 
 mod band;
+mod corner;
 mod fields;
 mod force;
 mod grid_report;

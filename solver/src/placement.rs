@@ -12,9 +12,11 @@ pub(crate) enum MoverSide {
     Outside,
 }
 
-/// A wall face across a running gap, on which the Maxwell stress is taken: there the mover's field is at its smoothest.
+/// A wall face across a running gap, and the radius at which the Maxwell stress is taken: the face itself, where the mover's
+/// field is at its smoothest; mid-gap before a permeable wall, whose corners make the field at the face singular.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(crate) struct StressFace {
+    pub(crate) face_m: f64,
     pub(crate) radius_m: f64,
     pub(crate) mover: MoverSide,
 }
@@ -120,11 +122,9 @@ fn stress_faces(problem: &Problem) -> Vec<StressFace> {
     for (inner, outer, wall) in spans {
         reach = match reach {
             Some((edge, was_wall)) if was_wall != wall => {
-                faces.push(if wall {
-                    StressFace { radius_m: inner, mover: MoverSide::Inside }
-                } else {
-                    StressFace { radius_m: edge, mover: MoverSide::Outside }
-                });
+                let (face_m, mover) = if wall { (inner, MoverSide::Inside) } else { (edge, MoverSide::Outside) };
+                let radius_m = if problem.wall.is_permeable() { 0.5 * (edge + inner) } else { face_m };
+                faces.push(StressFace { face_m, radius_m, mover });
                 Some((outer, wall))
             }
             Some((edge, _)) => Some((edge.max(outer), wall)),

@@ -10,6 +10,7 @@ use super::schedule::Schedule;
 use super::series::Series;
 use super::snapshots::instants;
 use crate::band::{self, Ladder};
+use crate::corner::corner_powers;
 use crate::extrapolate::extrapolate;
 use crate::fault::SolveFault;
 use crate::fields::empty_fields;
@@ -214,7 +215,8 @@ impl<'p> Journey<'p> {
             records.levels.iter().map(|l| level_figures(self.problem, &l.series, &self.course)).collect();
         let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &self.course));
         let residual = records.levels.iter().map(|l| l.report.residual).fold(0.0, f64::max);
-        let figures = combine(&factors, &by_level, cut.as_deref(), residual);
+        let corners = corner_powers(&self.problem.wall, factors.len());
+        let figures = combine(&factors, &by_level, cut.as_deref(), residual, corners.as_deref());
         let trace = self.trace(records, &factors);
         let forces = self.forces(records, &factors, &figures);
         let ledger = self.ledger(records, &factors);
@@ -347,8 +349,15 @@ impl<'p> Journey<'p> {
     }
 }
 
-/// Figures that all levels have, extrapolated, with bands.
-fn combine(factors: &[f64], by_level: &[Vec<LevelFigure>], cut: Option<&[LevelFigure]>, residual: f64) -> Vec<Figure> {
+/// Figures that all levels have, extrapolated, with bands. The corners of a permeable wall dominate its static pull, which
+/// then takes their powers.
+fn combine(
+    factors: &[f64],
+    by_level: &[Vec<LevelFigure>],
+    cut: Option<&[LevelFigure]>,
+    residual: f64,
+    corners: Option<&[f64]>,
+) -> Vec<Figure> {
     let Some(finest) = by_level.last() else { return Vec::new() };
     let mut figures = Vec::new();
     for figure in finest {
@@ -356,7 +365,10 @@ fn combine(factors: &[f64], by_level: &[Vec<LevelFigure>], cut: Option<&[LevelFi
         let values: Option<Vec<f64>> = by_level.iter().map(|list| find(list)).collect();
         let Some(values) = values else { continue };
         let coarsest = values[0];
-        let ladder = Ladder::new(factors, values);
+        let ladder = match corners {
+            Some(powers) if figure.name == "static_pull_peak" => Ladder::with_powers(factors, values, powers),
+            _ => Ladder::new(factors, values),
+        };
         let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
         let rule = if is_local(figure.name) { band::local } else { band::one_route };
         let half_width = rule(&ladder, change, residual * ladder.value.abs());

@@ -20,7 +20,7 @@ use crate::sources::AxialField;
 const SPEED_CHANGE: f64 = 0.15;
 /// Nodes on either side of the greatest current density that its peak is read from.
 const PEAK_REACH: usize = 8;
-/// Share of the greatest force so far above which the stress is taken too.
+/// Share of the greatest drag so far above which the stress is taken too.
 const NEAR_GREATEST: f64 = 0.8;
 /// Pairs at most.
 const MOST_PAIRS: usize = 2_000_000;
@@ -64,7 +64,7 @@ pub(crate) struct Run<'a, 'p> {
     currents: Vec<f64>,
     near: [f64; 2 * PEAK_REACH + 1],
     psi_nodes: Vec<f64>,
-    greatest_force: f64,
+    greatest_drag: f64,
     heat: f64,
     work: f64,
     losses: f64,
@@ -104,7 +104,7 @@ impl<'a, 'p> Run<'a, 'p> {
             currents: vec![0.0; wall],
             near: [0.0; 2 * PEAK_REACH + 1],
             psi_nodes: vec![0.0; nodes],
-            greatest_force: 0.0,
+            greatest_drag: 0.0,
             heat: 0.0,
             work: 0.0,
             losses: 0.0,
@@ -286,10 +286,11 @@ impl<'a, 'p> Run<'a, 'p> {
         }
         let (problem, placement) = (self.level.problem, self.level.placement);
         self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, &problem.mover, middle, placement.gap_m));
-        // The stress is wanted at the greatest drag alone: it is taken where the force is near its greatest so far.
-        let force = self.series.force_mid.last().map_or(0.0, |f| f.abs());
-        self.greatest_force = self.greatest_force.max(force);
-        if force >= NEAR_GREATEST * self.greatest_force {
+        // The stress is wanted at the greatest drag alone: it is taken where the drag is near its greatest so far.
+        let last = |values: &[f64]| values.last().copied().unwrap_or(0.0);
+        let drag = (last(&self.series.force_mid) - last(&self.series.pull_mid)).abs();
+        self.greatest_drag = self.greatest_drag.max(drag);
+        if drag >= NEAR_GREATEST * self.greatest_drag {
             self.series.time_stress.push(time_mid);
             self.series.force_by_stress.push(by_stress(grid, &self.psi_nodes, problem, placement, middle));
         }
