@@ -1,0 +1,62 @@
+//! The equation of motion: a magnet let go above a copper tube 150 mm long, timed between the tube's ends.
+
+#![expect(clippy::print_stdout, reason = "a program that says its result")]
+
+use std::error::Error;
+
+use lenzbore_solver::monitor::Unwatched;
+use lenzbore_solver::problem::{
+    Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall,
+};
+use lenzbore_solver::solve;
+use lenzbore_solver::sources::Source;
+
+fn main() -> Result<(), Box<dyn Error>> {
+    let (radius, length, tube_length) = (9e-3, 12e-3, 0.15);
+    let tube = Layer {
+        name: "tube".into(),
+        inner_radius_m: 11e-3,
+        outer_radius_m: 13e-3,
+        from_m: 0.0,
+        to_m: tube_length,
+        conductivity_s_per_m: 58e6,
+        relative_permeability: 1.0,
+    };
+    let magnet = Part {
+        name: "M".into(),
+        centre_m: 0.0,
+        source: Source::Magnet { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length, remanence_tesla: 1.25 },
+        outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
+    };
+    // m dv/dt = -m g + F(z, v, history): F is the force of the wall's currents on the magnet.
+    let fall = Free {
+        release_m: tube_length + 30e-3,
+        entry_velocity_m_per_s: 0.0,
+        until_m: -30e-3,
+        time_limit_s: 60.0,
+        gravity_m_per_s2: 9.80665,
+        tilt_rad: 0.0,
+        push_newton: 0.0,
+        friction_newton: 0.0,
+        friction_coefficient: 0.0,
+        air_drag_n_s2_per_m2: 0.0,
+        spring_rate_n_per_m: 0.0,
+        spring_free_at_m: 0.0,
+        gates_m: [tube_length, 0.0],
+    };
+    let problem = Problem {
+        wall: Wall { extent: Extent::Finite { length_m: tube_length }, layers: vec![tube] },
+        mover: Mover { parts: vec![magnet], mass_kg: Some(0.06) },
+        travel: Travel::Free(fall),
+        accuracy: Accuracy::default(),
+        snapshots: SnapshotPlan::None,
+    };
+
+    let outcome = solve(&problem, &Unwatched)?;
+    for name in ["transit_time", "exit_speed"] {
+        if let Some(figure) = outcome.figures.iter().find(|f| f.name == name) {
+            println!("{name} = {:.6} {} +/- {:.1e}", figure.value, figure.unit, figure.band);
+        }
+    }
+    Ok(())
+}
