@@ -99,7 +99,7 @@ pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], problem: &Problem, pl
         let mut sum = 0.0;
         for j in first..=last {
             let slope_r = across.slope_of(&psi_reaction[grid.node(from, j)..]);
-            let along = Stencil::<POINTS>::at(z, z[j]);
+            let along = Stencil::<ALONG_POINTS>::at(z, z[j]);
             let slope_z: f64 = along.slope.iter().enumerate().map(|(n, w)| w * at_row(along.first + n)).sum();
             let own_r = problem.mover.flux_density_r(face.radius_m, z[j] - position);
             let own_z = problem.mover.flux_density_z(face.radius_m, z[j] - position);

@@ -5,7 +5,7 @@
 //! lambda = min(a, 2 gap), delta = sqrt(2 lambda / (mu sigma v)), b = outer radius of everything:
 //!
 //! - across: h(face) = min(w/4, delta/4, lambda/8), capped at w/4 inside a layer and a/6 in the bore,
-//!   growing by 0.26 per distance from the faces;
+//!   growing by 0.26 per distance from the faces (0.4 in the wall's frame);
 //! - along, in the mover's frame: breakpoints at magnet ends with h = gap/2 there (gap/4 for permeable
 //!   walls), at most a/8 (a/16 for permeable) to a distance a beyond them, growing likewise from there;
 //! - along, in the wall's frame: min(3/4 gap, a/8) all over the swept part of the wall (half for permeable);
@@ -17,8 +17,10 @@ use crate::constants::MU0;
 use crate::placement::Placement;
 use crate::problem::{Layer, Problem, Wall};
 
-/// Growth of the cell size per distance.
+/// Growth of the cell size per distance, in the mover's frame.
 const GROWTH: f64 = 0.26;
+/// The same in the wall's frame, where steps in time cost more than they gain from it.
+const SWEPT_GROWTH: f64 = 0.4;
 /// Distance of the boundary in outer radii.
 const BOUNDARY: f64 = 40.0;
 /// Wake behind the mover in bore radii a magnetic Reynolds number.
@@ -78,7 +80,8 @@ impl GridPlan {
             Frame::Mover { velocity } => velocity.abs(),
             Frame::Wall { speed, .. } => speed,
         };
-        let r = plan_r(problem, placement, speed, r_max)?;
+        let growth = if let Frame::Mover { .. } = frame { GROWTH } else { SWEPT_GROWTH };
+        let r = plan_r(problem, placement, speed, growth, r_max)?;
         let (z, rectangles, half, cell) = match frame {
             Frame::Mover { velocity } => plan_z_mover(problem, placement, velocity, outer)?,
             Frame::Wall { low, high, .. } => plan_z_wall(problem, placement, (low, high), outer)?,
@@ -110,9 +113,15 @@ impl GridPlan {
     }
 }
 
-fn plan_r(problem: &Problem, placement: &Placement, speed: f64, r_max: f64) -> Result<PlannedLine, MeshFault> {
+fn plan_r(
+    problem: &Problem,
+    placement: &Placement,
+    speed: f64,
+    growth: f64,
+    r_max: f64,
+) -> Result<PlannedLine, MeshFault> {
     let lambda = placement.wavelength_m;
-    let mut law = SizeLaw { growth: GROWTH, ..SizeLaw::default() };
+    let mut law = SizeLaw { growth, ..SizeLaw::default() };
     let mut points = vec![0.0, r_max];
     for layer in &problem.wall.layers {
         let quarter = match problem.accuracy.cells_across_wall {
@@ -199,7 +208,7 @@ fn plan_z_wall(
 ) -> Result<AxialPlan, MeshFault> {
     let size = swept_size(problem, placement);
     let length = problem.wall.length_m().unwrap_or(0.0);
-    let mut law = SizeLaw { growth: GROWTH, ..SizeLaw::default() };
+    let mut law = SizeLaw { growth: SWEPT_GROWTH, ..SizeLaw::default() };
     let reach = 6.0 * placement.scale_m;
     let swept = ((low + placement.lowest_m - reach).max(0.0), (high + placement.highest_m + reach).min(length));
     let mut points = Vec::new();

@@ -154,20 +154,23 @@ impl Factor {
 /// Not finite, or too large.
 pub(crate) fn check_residual(matrix: &CsMat<f64>, added: Option<&[f64]>, x: &[f64], b: &[f64], limit: f64) -> Result<f64, SolveFault> {
     let (mut worst, mut scale) = (0.0_f64, 0.0_f64);
-    for (row, entries) in matrix.outer_iterator().enumerate() {
-        let mut ax = added.map_or(0.0, |a| a[row] * x[row]);
-        let mut size = ax.abs();
-        for (column, value) in entries.iter() {
+    let starts = matrix.indptr();
+    let (starts, columns, values) = (starts.raw_storage(), matrix.indices(), matrix.data());
+    for (row, ends) in starts.windows(2).enumerate() {
+        let diagonal = added.map_or(0.0, |a| a[row] * x[row]);
+        let (mut ax, mut size) = (diagonal, diagonal.abs());
+        for (&column, value) in columns[ends[0]..ends[1]].iter().zip(&values[ends[0]..ends[1]]) {
             let term = value * x[column];
             ax += term;
             size += term.abs();
         }
         let off = (b[row] - ax).abs();
-        if !off.is_finite() {
-            return Err(SolveFault::NotFinite { what: "the solution of a linear system" });
-        }
-        worst = worst.max(off);
-        scale = scale.max(size).max(b[row].abs());
+        // A NaN fails both comparisons of max: it must not slip through.
+        worst = if off > worst || off.is_nan() { off } else { worst };
+        scale = scale.max(size);
+    }
+    if !worst.is_finite() {
+        return Err(SolveFault::NotFinite { what: "the solution of a linear system" });
     }
     let residual = if scale > 0.0 { worst / scale } else { 0.0 };
     if residual > limit { Err(SolveFault::Residual { residual, limit }) } else { Ok(residual) }

@@ -5,16 +5,20 @@ use super::run::Course;
 use super::series::Series;
 use crate::problem::SnapshotPlan;
 
-/// Instants of a plan, read off the coarsest level's series, increasing, s.
+/// Instants of a plan and that of the greatest drag, read off the coarsest level's series, increasing, s.
 pub(crate) fn instants(plan: &SnapshotPlan, series: &Series, course: &Course) -> Vec<f64> {
     let end = end_of(series, course).1;
-    match plan {
-        SnapshotPlan::None => Vec::new(),
-        SnapshotPlan::Automatic => vec![drag_peak(series, course).0],
+    let mut instants = match plan {
+        SnapshotPlan::None => return Vec::new(),
+        SnapshotPlan::Automatic => Vec::new(),
         SnapshotPlan::EveryTravel { step_m } => by_travel(series, *step_m, end),
         SnapshotPlan::EveryTime { step_s } => multiples(*step_s, end),
         SnapshotPlan::Instants { times_s } => times_s.iter().copied().filter(|&t| t <= end).collect(),
-    }
+    };
+    instants.push(drag_peak(series, course).0);
+    instants.sort_by(f64::total_cmp);
+    instants.dedup();
+    instants
 }
 
 fn multiples(step: f64, end: f64) -> Vec<f64> {

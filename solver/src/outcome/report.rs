@@ -162,11 +162,11 @@ pub struct DragCurve {
 /// Whether the wanted accuracy was met.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Accuracies {
-    /// Wanted relative half-width; ten times as wide for a local figure (`current_density_peak`).
+    /// Wanted relative half-width; a hundred times as wide for a local figure (`current_density_peak`).
     pub target_relative: f64,
     /// Whether every headline figure meets it.
     pub met: bool,
-    /// Figure furthest from it, with its relative half-width (a local figure's divided by ten).
+    /// Figure furthest from it, with its relative half-width (a local figure's divided by a hundred).
     pub worst: Option<(String, f64)>,
     /// What would meet it, in the user's words, where it was missed.
     pub advice: Option<String>,

@@ -17,7 +17,7 @@ impl Default for Accuracy {
     }
 }
 
-/// When field snapshots are kept.
+/// When field snapshots are kept; unless none are, the instant of the greatest drag is among them.
 #[derive(Debug, Clone, PartialEq, Default)]
 pub enum SnapshotPlan {
     /// Never.
