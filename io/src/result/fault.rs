@@ -97,6 +97,18 @@ impl IoFault {
         matches!(self, Self::Exists { .. } | Self::IsAFile { .. } | Self::NotAResult { .. } | Self::NoName { .. })
     }
 
+    /// The same fault of another path, where it names one.
+    #[must_use]
+    pub(super) fn with_path(self, rename: impl Fn(&PathBuf) -> PathBuf) -> Self {
+        match self {
+            Self::NoPermission { path } => Self::NoPermission { path: rename(&path) },
+            Self::DiskFull { path } => Self::DiskFull { path: rename(&path) },
+            Self::File { path, source } => Self::File { path: rename(&path), source },
+            Self::FieldFile { path, source } => Self::FieldFile { path: rename(&path), source },
+            other => other,
+        }
+    }
+
     /// Sorts an error of the file system by what the user can do about it.
     #[must_use]
     pub fn from_file(path: &Path, source: io::Error) -> Self {

@@ -22,16 +22,25 @@ pub struct PendingFolder {
     partial: Option<TempDir>,
 }
 
-/// Says whether a result may be written to `target`, and touches nothing.
+/// Says whether a result can be written to `target`, before anything is computed; nothing of it stays.
 ///
 /// # Errors
-/// [`IoFault::Exists`], [`IoFault::IsAFile`], [`IoFault::NotAResult`], [`IoFault::NoName`] or what the system says.
+/// [`IoFault::Exists`], [`IoFault::IsAFile`], [`IoFault::NotAResult`], [`IoFault::NoName`], [`IoFault::NoPermission`] or
+/// what else the system says.
 pub fn vet(target: &Path, replace: bool) -> Result<(), IoFault> {
+    vet_place(target, replace)?;
+    let target = resolve(target)?;
+    let parent = target.ancestors().skip(1).find(|p| p.exists()).unwrap_or(Path::new("/"));
+    hidden_folder(&OsString::from(".lenzbore-trial-"), parent).map(drop)
+}
+
+/// Whether the place is free, or holds an old result that may go.
+fn vet_place(target: &Path, replace: bool) -> Result<(), IoFault> {
     match fs::metadata(target) {
         Ok(meta) if !meta.is_dir() => Err(IoFault::IsAFile { path: target.to_path_buf() }),
         Ok(_) if !replace => Err(IoFault::Exists { folder: target.to_path_buf() }),
         Ok(_) => vet_replaced(target),
-        Err(error) if error.kind() == ErrorKind::NotFound => vet_parents(target),
+        Err(error) if matches!(error.kind(), ErrorKind::NotFound | ErrorKind::NotADirectory) => vet_parents(target),
         Err(error) => Err(IoFault::from_file(target, error)),
     }
 }
@@ -67,7 +76,7 @@ impl PendingFolder {
     /// # Errors
     /// As [`vet`].
     pub fn begin(target: &Path, replace: bool) -> Result<Self, IoFault> {
-        vet(target, replace)?;
+        vet_place(target, replace)?;
         let target = resolve(target)?;
         let mut prefix = OsString::from(".");
         prefix.push(file_name(&target)?);
@@ -93,13 +102,20 @@ impl PendingFolder {
         write_file(&self.path().join(name), bytes)
     }
 
+    /// The fault with the hidden folder's name replaced by the one that the user gave.
+    #[must_use]
+    pub fn in_users_words(&self, fault: IoFault) -> IoFault {
+        let partial = self.path().to_path_buf();
+        fault.with_path(|path| path.strip_prefix(&partial).map_or_else(|_| path.clone(), |name| self.target.join(name)))
+    }
+
     /// Moves the complete folder into its place; an old result is set aside first and deleted last.
     ///
     /// # Errors
     /// As [`vet`], or what the system says; the old result is then where it was.
     pub fn commit(mut self) -> Result<PathBuf, IoFault> {
         settle_on_disk(self.path())?;
-        vet(&self.target, self.replace)?;
+        vet_place(&self.target, self.replace)?;
         let old = self.set_old_aside()?;
         if let Err(error) = fs::rename(self.path(), &self.target) {
             if let Some(aside) = &old {

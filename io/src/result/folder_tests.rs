@@ -105,6 +105,7 @@ fn files_in_the_way_are_named() {
     fs::write(&file, "mine").unwrap();
     assert!(matches!(vet(&file, true).unwrap_err(), IoFault::IsAFile { path } if path == file));
     assert!(matches!(PendingFolder::begin(&file.join("case"), false).unwrap_err(), IoFault::IsAFile { .. }));
+    assert!(matches!(vet(&file.join("case"), false).unwrap_err(), IoFault::IsAFile { path } if path == file));
     assert!(matches!(vet(Path::new(""), false).unwrap_err(), IoFault::NoName { .. }));
     assert_eq!(fs::read_to_string(&file).unwrap(), "mine");
 }
@@ -141,4 +142,22 @@ fn a_link_to_a_result_stays_a_link() {
     pending.commit().unwrap();
     assert!(fs::symlink_metadata(&link).unwrap().is_symlink());
     assert_eq!(fs::read_to_string(real.join(names::SUMMARY)).unwrap(), "new");
+}
+
+#[test]
+fn a_trial_leaves_nothing() {
+    let root = tempfile::tempdir().unwrap();
+    vet(&root.path().join("out/deep/case"), false).unwrap();
+    assert!(names_in(root.path()).is_empty());
+}
+
+#[test]
+fn faults_name_the_folder_that_the_user_gave() {
+    let root = tempfile::tempdir().unwrap();
+    let target = root.path().join("case");
+    let pending = PendingFolder::begin(&target, false).unwrap();
+    let fault = IoFault::from_file(&pending.path().join("run.h5"), std::io::Error::from_raw_os_error(28));
+    let text = pending.in_users_words(fault).to_string();
+    let named = fs::canonicalize(root.path()).unwrap().join("case/run.h5").display().to_string();
+    assert!(text.contains(&named) || text.contains(&target.join("run.h5").display().to_string()), "{text}");
 }

@@ -59,20 +59,33 @@ pub fn write(
 ) -> Result<Written, IoFault> {
     let pending = PendingFolder::begin(folder, options.replace)?;
     let mut sheaf = Sheaf { pending, files: Vec::new(), monitor };
+    if let Err(fault) = fill(&mut sheaf, options, header, problem, outcome) {
+        return Err(sheaf.pending.in_users_words(fault));
+    }
+    Ok(Written { folder: sheaf.pending.commit()?, files: sheaf.files })
+}
+
+/// Writes every file that was asked for.
+fn fill(
+    sheaf: &mut Sheaf<'_>,
+    options: &WriteOptions,
+    header: &ResultHeader,
+    problem: &Problem,
+    outcome: &Outcome,
+) -> Result<(), IoFault> {
     if options.summary {
         sheaf.put(names::SUMMARY, summary_text(header, outcome)?.as_bytes())?;
     }
     if options.trace {
-        tables(&mut sheaf, outcome)?;
+        tables(sheaf, outcome)?;
     }
     if options.fields {
-        fields(&mut sheaf, header, outcome)?;
+        fields(sheaf, header, outcome)?;
     }
     if options.pictures {
-        pictures(&mut sheaf, header, problem, outcome)?;
+        pictures(sheaf, header, problem, outcome)?;
     }
-    sheaf.pause()?;
-    Ok(Written { folder: sheaf.pending.commit()?, files: sheaf.files })
+    sheaf.pause()
 }
 
 /// The pictures that apply to a run: drag against speed, travel, section where there is something new to see in it.
