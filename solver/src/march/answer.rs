@@ -106,6 +106,40 @@ fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault> {
     }
 }
 
+/// Drag by the three routes at its peak.
+struct Routes {
+    wall: Ladder,
+    mover: Ladder,
+    stress: Ladder,
+}
+
+impl Routes {
+    /// The forces with the band within which they must agree: each route's own.
+    fn forces(&self, time_s: f64) -> Forces {
+        let own = |l: &Ladder| band::one_route(l, 0.0, 0.0);
+        let band_newton = own(&self.wall) + own(&self.mover).max(own(&self.stress));
+        let off = |l: &Ladder| (l.value - self.wall.value).abs();
+        Forces {
+            wall_newton: self.wall.value,
+            mover_newton: self.mover.value,
+            stress_newton: self.stress.value,
+            band_newton,
+            agree: off(&self.mover).max(off(&self.stress)) <= band_newton,
+            time_s,
+        }
+    }
+
+    /// How far the wall and mover routes lie apart, relative.
+    fn apart(&self) -> f64 {
+        if self.wall.value.abs() > 0.0 { (self.mover.value / self.wall.value - 1.0).abs() } else { 0.0 }
+    }
+}
+
+/// Figures that are a peak of the force in time: their band takes the second route in.
+fn is_force_peak(name: &str) -> bool {
+    matches!(name, "drag_peak" | "deceleration_peak" | "felt_acceleration_peak")
+}
+
 /// The schedule, the levels so far, the coarsest level on half the domain.
 struct Records {
     schedule: Schedule,
@@ -216,9 +250,11 @@ impl<'p> Journey<'p> {
         let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &self.course));
         let residual = records.levels.iter().map(|l| l.report.residual).fold(0.0, f64::max);
         let corners = corner_powers(&self.problem.wall, factors.len());
-        let figures = combine(&factors, &by_level, cut.as_deref(), residual, corners.as_deref());
+        let routes = self.routes(records, &factors);
+        let margins = Margins { residual, apart: routes.apart(), corners };
+        let figures = combine(&factors, &by_level, cut.as_deref(), &margins);
         let trace = self.trace(records, &factors);
-        let forces = self.forces(records, &factors, &figures);
+        let peak_time = figures.iter().find(|f| f.name == "drag_peak").and_then(|f| f.location?.t_s);
         let ledger = self.ledger(records, &factors);
         let accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
         let mut counters = WorkCounters::default();
@@ -236,7 +272,7 @@ impl<'p> Journey<'p> {
             accuracy,
             trace,
             curve: None,
-            forces,
+            forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),
             figures,
@@ -272,10 +308,8 @@ impl<'p> Journey<'p> {
         trace
     }
 
-    /// The three routes at the instant of the greatest drag.
-    fn forces(&self, records: &Records, factors: &[f64], figures: &[Figure]) -> Option<Forces> {
-        let drag = figures.iter().find(|f| f.name == "drag_peak")?;
-        let time_s = drag.location.and_then(|l| l.t_s)?;
+    /// The three routes at the instant of the greatest drag, extrapolated.
+    fn routes(&self, records: &Records, factors: &[f64]) -> Routes {
         let at = |l: &LevelRecord, of: fn(&Series, f64) -> f64| {
             let series = &l.series;
             let t = super::figures::drag_peak(series, &self.course).0;
@@ -285,19 +319,11 @@ impl<'p> Journey<'p> {
         let ladder = |of: fn(&Series, f64) -> f64| {
             Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect())
         };
-        let wall = ladder(|s, t| s.mid_at(&s.force_mid, t));
-        let mover = ladder(|s, t| s.mid_at(&s.force_on_mover_mid, t));
-        let stress = ladder(|s, t| sampled(&s.time_stress, &s.force_by_stress, t));
-        let band_newton = drag.band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
-        let apart = (mover.value - wall.value).abs().max((stress.value - wall.value).abs());
-        Some(Forces {
-            wall_newton: wall.value,
-            mover_newton: mover.value,
-            stress_newton: stress.value,
-            band_newton,
-            agree: apart <= band_newton,
-            time_s,
-        })
+        Routes {
+            wall: ladder(|s, t| s.mid_at(&s.force_mid, t)),
+            mover: ladder(|s, t| s.mid_at(&s.force_on_mover_mid, t)),
+            stress: ladder(|s, t| sampled(&s.time_stress, &s.force_by_stress, t)),
+        }
     }
 
     fn ledger(&self, records: &Records, factors: &[f64]) -> Ledger {
@@ -349,14 +375,23 @@ impl<'p> Journey<'p> {
     }
 }
 
+/// What else goes into the bands of a march.
+struct Margins {
+    /// Largest relative residual of a linear solve.
+    residual: f64,
+    /// Relative distance of two force routes at the peak.
+    apart: f64,
+    /// Powers of the cell size at a permeable wall's corners.
+    corners: Option<Vec<f64>>,
+}
+
 /// Figures that all levels have, extrapolated, with bands. The corners of a permeable wall dominate its static pull, which
 /// then takes their powers.
 fn combine(
     factors: &[f64],
     by_level: &[Vec<LevelFigure>],
     cut: Option<&[LevelFigure]>,
-    residual: f64,
-    corners: Option<&[f64]>,
+    margins: &Margins,
 ) -> Vec<Figure> {
     let Some(finest) = by_level.last() else { return Vec::new() };
     let mut figures = Vec::new();
@@ -365,13 +400,14 @@ fn combine(
         let values: Option<Vec<f64>> = by_level.iter().map(|list| find(list)).collect();
         let Some(values) = values else { continue };
         let coarsest = values[0];
-        let ladder = match corners {
+        let ladder = match &margins.corners {
             Some(powers) if figure.name == "static_pull_peak" => Ladder::with_powers(factors, values, powers),
             _ => Ladder::new(factors, values),
         };
         let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
         let rule = if is_local(figure.name) { band::local } else { band::one_route };
-        let half_width = rule(&ladder, change, residual * ladder.value.abs());
+        let apart = if is_force_peak(figure.name) { margins.apart } else { 0.0 };
+        let half_width = rule(&ladder, change, (margins.residual + apart) * ladder.value.abs());
         figures.push(Figure {
             name: figure.name.to_owned(),
             value: ladder.value,
