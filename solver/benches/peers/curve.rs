@@ -8,16 +8,14 @@ use lenzbore_solver::problem::Problem;
 use serde_json::Value;
 
 use crate::cases::{curve_speeds, cylinder, dipole};
+use crate::duel::{Duel, Rounds};
 use crate::fault::BenchFault;
-use crate::machine::processor_seconds;
-use crate::python::{number, numbers, peer, require, same_grids};
-use crate::sample::{count, median, range, times, verdict};
+use crate::python::{numbers, peer, require, same_grids};
+use crate::sample::{count, median, range, verdict};
 
 /// Wanted: so many times faster than a bare speed-by-speed solve.
 const WANTED: f64 = 40.0;
-const ROUNDS: usize = 5;
-/// Our own runs in each round; their median counts.
-const RUNS: usize = 5;
+const ROUNDS: Rounds = Rounds { rounds: 5, runs: 5 };
 const SCRIPT: &str = "curve_scipy.py";
 
 /// Both cases, both settings of the peer.
@@ -80,7 +78,7 @@ impl Compared {
         let bands: Vec<f64> = points(&self.outcome).iter().map(|p| p.band_newton / p.drag_newton).collect();
         let held = errors.iter().zip(&bands).filter(|(e, b)| e <= b).count();
         println!(
-            "{}: {} levels, {:?} back-solves, {} vectors; error against the exact integral median {:.1e}, worst {:.1e}; band median {:.1e}, holds the truth at {held} of {}",
+            "{}: {} levels, {} back-solves, {} vectors; error against the exact integral median {:.1e}, worst {:.1e}; band median {:.1e}, holds the truth at {held} of {}",
             self.name,
             self.outcome.grids.len(),
             self.outcome.counters.solves,
@@ -97,40 +95,19 @@ impl Compared {
         let (file, mut arguments) = same_grids(&self.problem, Some(curve_speeds()[59]), &self.outcome)?;
         arguments.extend(["--case", self.name, "--ordering", ordering, "--at"].map(str::to_owned));
         arguments.extend(curve_speeds().iter().map(f64::to_string));
-        let (mut mine, mut theirs, mut ratios, mut shares) = (Vec::new(), Vec::new(), Vec::new(), Vec::new());
-        let mut answer = Value::Null;
-        for _ in 0..ROUNDS {
-            let before = processor_seconds();
-            let (_, seconds) = times(RUNS, || ours(&self.problem))?;
-            if let (Some(a), Some(b)) = (before, processor_seconds()) {
-                shares.push((b - a) / seconds.iter().sum::<f64>());
-            }
-            answer = peer(SCRIPT, &arguments)?;
-            mine.push(median(&seconds));
-            theirs.push(number(&answer, SCRIPT, "seconds")?);
-            ratios.push(theirs[theirs.len() - 1] / mine[mine.len() - 1]);
-        }
+        let duel = Duel::run(ROUNDS, || ours(&self.problem), SCRIPT, &arguments)?;
         drop(file);
-        let ratio = median(&ratios);
         let wanted = if ordering == "default" {
-            format!(", at least {WANTED}: {}", verdict(ratio >= WANTED))
+            format!("; at least {WANTED}: {}", verdict(duel.ratio() >= WANTED))
         } else {
             String::new()
         };
-        println!(
-            "{} against {about}: ratio {ratio:.1} ({:.1} to {:.1}){wanted}; ours {:.1} ms with bands on {:.2} processors, theirs {:.3} s on one",
-            self.name,
-            range(&ratios).0,
-            range(&ratios).1,
-            1e3 * median(&mine),
-            median(&shares),
-            median(&theirs)
-        );
+        println!("{} with bands against {about}: {}{wanted}", self.name, duel.text());
         println!(
             "{:8} on the same unknowns {}; largest difference between the two {:.1e}",
             "",
-            unknowns(&answer)?,
-            self.apart(&answer)?
+            unknowns(&duel.answer)?,
+            self.apart(&duel.answer)?
         );
         Ok(())
     }

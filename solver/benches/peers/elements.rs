@@ -4,12 +4,12 @@ use serde_json::Value;
 
 use crate::cases::{cylinder, dipole};
 use crate::curve::{ours, true_errors};
+use crate::duel::{Duel, Rounds};
 use crate::fault::BenchFault;
-use crate::python::{number, peer, require};
-use crate::sample::{median, range, times, verdict};
+use crate::python::{number, require};
+use crate::sample::{median, range, verdict};
 
-const ROUNDS: usize = 3;
-const RUNS: usize = 5;
+const ROUNDS: Rounds = Rounds { rounds: 3, runs: 5 };
 const SCRIPT: &str = "steady_fem.py";
 /// Speed of the single solve: the peer's own default.
 const SPEED: &str = "5 m/s";
@@ -27,35 +27,29 @@ pub(crate) fn run() -> Result<(), BenchFault> {
             "{name}: quadratic elements at {SPEED} to the median error of our curve, {target:.1e} (also to its worst, {:.1e})",
             range(&errors).1
         );
-        for (target, rounds) in [(target, ROUNDS), (range(&errors).1, ROUNDS)] {
+        for target in [target, range(&errors).1] {
             for element in ["triangle", "quadrilateral"] {
                 let arguments = [&target.to_string(), "--case", name, "--element", element].map(str::to_owned);
-                let (mut mine, mut theirs, mut ratios) = (Vec::new(), Vec::new(), Vec::new());
-                let mut answer = Value::Null;
-                for _ in 0..rounds {
-                    mine.push(median(&times(RUNS, || ours(&problem))?.1));
-                    answer = peer(SCRIPT, &arguments)?;
-                    theirs.push(number(&answer, SCRIPT, "seconds")?);
-                    ratios.push(theirs[theirs.len() - 1] / mine[mine.len() - 1]);
-                }
-                print(element, target, &answer, [&mine, &theirs, &ratios])?;
+                let duel = Duel::run(ROUNDS, || ours(&problem), SCRIPT, &arguments)?;
+                print(element, target, &duel)?;
             }
         }
     }
     Ok(())
 }
 
-fn print(element: &str, target: f64, answer: &Value, [mine, theirs, ratios]: [&[f64]; 3]) -> Result<(), BenchFault> {
-    let ratio = median(ratios);
+fn print(element: &str, target: f64, duel: &Duel) -> Result<(), BenchFault> {
+    let answer = &duel.answer;
     let reached = answer.get("reached").and_then(Value::as_bool).unwrap_or(false);
-    let note = if reached { String::new() } else { " (not reached on its finest mesh, which is timed)".to_owned() };
+    let note = if reached { "" } else { " (not reached on its finest mesh, which is timed)" };
     println!(
-        "  {element:13} to {target:.1e}{note}: ratio {ratio:.2} ({:.2} to {:.2}), above 1: {}; our whole curve {:.1} ms, their one speed {:.3} s ({} unknowns, error {:.1e}; search for the mesh {:.2} s)",
-        range(ratios).0,
-        range(ratios).1,
-        verdict(ratio > 1.0),
-        1e3 * median(mine),
-        median(theirs),
+        "  {element} to {target:.1e}{note}: whole curve against one speed, {}; above 1: {}",
+        duel.text(),
+        verdict(duel.ratio() > 1.0)
+    );
+    println!(
+        "  {:13} {} unknowns, error {:.1e}; the search for that mesh took {:.2} s",
+        "",
         number(answer, SCRIPT, "unknowns")?,
         number(answer, SCRIPT, "relative_error")?,
         number(answer, SCRIPT, "seconds_with_coarser_meshes")?

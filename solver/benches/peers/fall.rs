@@ -6,10 +6,10 @@ use lenzbore_solver::solve;
 use serde_json::Value;
 
 use crate::cases::fall;
+use crate::duel::{Duel, Rounds};
 use crate::fault::BenchFault;
-use crate::machine::processor_seconds;
-use crate::python::{number, peer, require, same_grids};
-use crate::sample::{median, range, times, verdict};
+use crate::python::{number, require, same_grids};
+use crate::sample::{times, verdict};
 
 /// Wanted: so many times faster than the plain prototype.
 const WANTED: f64 = 10.0;
@@ -22,7 +22,18 @@ const SCRIPT: &str = "free_scipy.py";
 /// A solve or a peer that fails.
 pub(crate) fn run() -> Result<(), BenchFault> {
     require(&["numpy", "scipy"])?;
-    let problem = fall(0.3);
+    let mut problem = fall(0.3);
+    let (outcome, seconds) = times(1, || solve(&problem, &Unwatched))?;
+    let worst = outcome.accuracy.worst.unwrap_or_default();
+    println!(
+        "at default settings: {} levels, {:.3} s; worst figure {}, {:.1e}",
+        outcome.grids.len(),
+        seconds[0],
+        worst.0,
+        worst.1
+    );
+    // On the levels of the peers.
+    problem.accuracy.levels = Some(3);
     let outcome = solve(&problem, &Unwatched)?;
     let steps: Vec<String> = outcome.grids.iter().map(|g| g.steps.to_string()).collect();
     let transit = figure(&outcome, "transit_time")?;
@@ -42,35 +53,15 @@ pub(crate) fn run() -> Result<(), BenchFault> {
     ] {
         let mut arguments = grids.clone();
         arguments.extend(["--flux", flux, "--ordering", ordering].map(str::to_owned));
-        let (mut mine, mut theirs, mut ratios, mut shares) = (Vec::new(), Vec::new(), Vec::new(), Vec::new());
-        let mut answer = Value::Null;
-        for _ in 0..rounds {
-            let before = processor_seconds();
-            let (_, seconds) = times(RUNS, || solve(&problem, &Unwatched))?;
-            if let (Some(a), Some(b)) = (before, processor_seconds()) {
-                shares.push((b - a) / seconds.iter().sum::<f64>());
-            }
-            answer = peer(SCRIPT, &arguments)?;
-            mine.push(median(&seconds));
-            theirs.push(number(&answer, SCRIPT, "seconds")?);
-            ratios.push(theirs[theirs.len() - 1] / mine[mine.len() - 1]);
-        }
-        let ratio = median(&ratios);
+        let duel = Duel::run(Rounds { rounds, runs: RUNS }, || solve(&problem, &Unwatched), SCRIPT, &arguments)?;
         let wanted = if flux == "closed-form" {
-            format!(", at least {WANTED}: {}", verdict(ratio >= WANTED))
+            format!("; at least {WANTED}: {}", verdict(duel.ratio() >= WANTED))
         } else {
             String::new()
         };
-        println!(
-            "against {about}: ratio {ratio:.1} ({:.1} to {:.1}){wanted}; ours {:.3} s with bands on {:.2} processors, theirs {:.2} s",
-            range(&ratios).0,
-            range(&ratios).1,
-            median(&mine),
-            median(&shares),
-            median(&theirs)
-        );
-        let apart = transit.0 - number(&answer, SCRIPT, "transit_time_s")?;
-        println!("  their steps {}; transit times differ by {apart:.1e} s", their_steps(&answer));
+        println!("with bands against {about}: {}{wanted}", duel.text());
+        let apart = transit.0 - number(&duel.answer, SCRIPT, "transit_time_s")?;
+        println!("  their steps {}; transit times differ by {apart:.1e} s", their_steps(&duel.answer));
     }
     drop(file);
     Ok(())

@@ -8,6 +8,7 @@ mod back_solve;
 mod cases;
 mod child;
 mod curve;
+mod duel;
 mod elements;
 mod fall;
 mod fault;
