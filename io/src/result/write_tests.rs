@@ -106,6 +106,24 @@ fn a_stop_at_any_moment_leaves_nothing_and_keeps_the_old_result() {
     assert_ne!(fs::read(target.join("summary.json")).unwrap(), before);
 }
 
+#[test]
+fn the_index_names_data_sets_that_exist_with_the_shape_it_says() {
+    let root = tempfile::tempdir().unwrap();
+    let target = root.path().join("free");
+    write_free(&target, &WriteOptions { pictures: false, ..WriteOptions::default() }).unwrap();
+    let file = ::hdf5::File::open(target.join("run.h5")).unwrap();
+    let index = fs::read_to_string(target.join("run.xdmf")).unwrap();
+    let mut seen = 0;
+    for line in index.lines().filter(|l| l.contains("run.h5:")) {
+        let name = line.split("run.h5:").nth(1).and_then(|t| t.split('<').next()).unwrap();
+        let stated = line.split("Dimensions=\"").nth(1).and_then(|t| t.split('"').next()).unwrap();
+        let stated: Vec<usize> = stated.split(' ').map(|n| n.parse().unwrap()).collect();
+        assert_eq!(file.dataset(name).unwrap().shape(), stated, "{name}");
+        seen += 1;
+    }
+    assert_eq!(seen, 2 * (2 + 3 + 6), "two instants of two coordinates, three regions, six fields");
+}
+
 /// What a colleague with Python sees; where Python or its HDF5 package is not installed, the tests beside `hdf5.rs` read
 /// the same file back without it.
 #[test]

@@ -188,7 +188,12 @@ impl Sheet<'_> {
                 String::new()
             };
             let conductivity = significant(1e-6 * layer.conductivity_s_per_m, 4);
-            format!("{}: {} thick, {conductivity} MS/m{iron}", layer.name, millimetres(layer.thickness_m()))
+            let body = if layer.inner_radius_m > 0.0 {
+                format!("{} thick", millimetres(layer.thickness_m()))
+            } else {
+                "solid".to_owned()
+            };
+            format!("{}: {body}, {conductivity} MS/m{iron}", layer.name)
         };
         layers.iter().map(one).collect::<Vec<_>>().join("; ")
     }

@@ -54,6 +54,7 @@ fn rings_around_a_rod_and_long_stacks_fit_too() {
     picture.name = "section_rod";
     look::keep(&picture);
     assert!(look::words(&picture).contains("gap 0.9"), "{}", look::words(&picture));
+    assert!(look::words(&picture).contains("rod: solid, 58 MS/m"));
 
     let (mut problem, mut outcome) = demo::free();
     let parts = (0..7).map(|i| {
