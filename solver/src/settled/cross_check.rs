@@ -85,21 +85,27 @@ fn drag_by_lu(problem: &Problem, level: &SettledLevel, velocity: f64) -> f64 {
     2.0 * PI * slope.iter().enumerate().map(|(w, q)| current(w) * q).sum::<f64>()
 }
 
-/// The same drag on the same grid by recurrence and by LU, at speeds below, at and above that of greatest drag. The recurrence ends at a
-/// residual of 1e-8 and the drag errs by its square, so that round-off is what remains.
+/// The same drag on the same grid by recurrence and by LU, at speeds below, at and above that of greatest drag. The
+/// recurrence ends at a residual of 1e-8 for the speed that it is made for, which bounds the drag's error there; at lower
+/// speeds it has long converged.
 #[test]
 fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
-    for (jacket, limit) in [(None, 1e-10), (Some(100.0), 1e-8)] {
+    const FASTEST: f64 = 60.0;
+    for jacket in [None, Some(100.0)] {
         let problem = problem(jacket);
         for refinement in [Refinement::COARSEST, Refinement::first(3)[2]] {
-            let level = level(&problem, 60.0, refinement);
-            for velocity in [0.1, 15.0, 60.0, -15.0] {
-                let (found, wanted) =
-                    (level.figures(&problem.mover, velocity).drag, drag_by_lu(&problem, &level, velocity));
-                let off = (found / wanted - 1.0).abs();
-                println!("{jacket:?} {velocity} m/s, f = {}: {found:.9} N, off {off:.1e}", refinement.factor());
+            let level = level(&problem, FASTEST, refinement);
+            for (velocity, limit) in [(0.1, 1e-10), (15.0, 1e-10), (-15.0, 1e-10), (FASTEST, 1e-8)] {
+                let found = level.figures(&problem.mover, velocity).drag;
+                let wanted = drag_by_lu(&problem, &level, velocity);
+                let (off, left) = ((found / wanted - 1.0).abs(), level.recurrence.residual(velocity));
+                println!(
+                    "{jacket:?} {velocity} m/s, f = {}: {found:.9} N, off {off:.1e}, residual {left:.1e}, {} vectors",
+                    refinement.factor(),
+                    level.recurrence.len()
+                );
                 assert!(off < limit, "{found} and {wanted}");
-                approx::assert_relative_eq!(level.drag(velocity), found, max_relative = limit);
+                approx::assert_relative_eq!(level.drag(velocity), found, max_relative = 1e-12);
             }
         }
     }

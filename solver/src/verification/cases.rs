@@ -1,1 +1,123 @@
+//! Problems that several tests share, and the reading of their answers.
 
+use crate::monitor::Unwatched;
+use crate::outcome::{Figure, Outcome};
+use crate::placement::source_sizes;
+use crate::problem::{
+    Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Traverse, Wall,
+};
+use crate::sources::Source;
+
+/// A layer over the whole length of its wall, radii in mm, conductivity in MS/m.
+pub(super) fn layer(inner_mm: f64, outer_mm: f64, sigma_ms: f64, mu_r: f64) -> Layer {
+    Layer {
+        name: format!("{inner_mm} to {outer_mm}"),
+        inner_radius_m: inner_mm * 1e-3,
+        outer_radius_m: outer_mm * 1e-3,
+        from_m: 0.0,
+        to_m: 0.0,
+        conductivity_s_per_m: sigma_ms * 1e6,
+        relative_permeability: mu_r,
+    }
+}
+
+/// The wall without thick or thin ends of it.
+pub(super) fn endless(layers: Vec<Layer>) -> Wall {
+    Wall { extent: Extent::Endless, layers }
+}
+
+/// The same layers from z = 0 to `length_m`.
+pub(super) fn finite(length_m: f64, mut layers: Vec<Layer>) -> Wall {
+    layers.iter_mut().for_each(|l| l.to_m = length_m);
+    Wall { extent: Extent::Finite { length_m }, layers }
+}
+
+/// A part without coating at `centre_mm`.
+pub(super) fn part(source: Source, centre_mm: f64) -> Part {
+    let (inner_radius_m, outer_radius_m, half) = source_sizes(&source);
+    let outline = Outline { inner_radius_m, outer_radius_m, length_m: 2.0 * half };
+    Part { name: format!("at {centre_mm} mm"), centre_m: centre_mm * 1e-3, source, outline }
+}
+
+/// A dipole of 1 A m2.
+pub(super) fn dipole() -> Part {
+    part(Source::Dipole { moment_a_m2: 1.0 }, 0.0)
+}
+
+/// A cylinder (`inner_mm` = 0) or ring magnet, radii and length in mm.
+pub(super) fn magnet(inner_mm: f64, outer_mm: f64, length_mm: f64, remanence_tesla: f64, centre_mm: f64) -> Part {
+    let source = Source::Magnet {
+        inner_radius_m: inner_mm * 1e-3,
+        outer_radius_m: outer_mm * 1e-3,
+        length_m: length_mm * 1e-3,
+        remanence_tesla,
+    };
+    part(source, centre_mm)
+}
+
+/// A coil, radii and length in mm.
+pub(super) fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, ampere_turns: f64) -> Part {
+    let source = Source::Coil {
+        inner_radius_m: inner_mm * 1e-3,
+        outer_radius_m: outer_mm * 1e-3,
+        length_m: length_mm * 1e-3,
+        ampere_turns,
+    };
+    part(source, 0.0)
+}
+
+/// A problem with no snapshots, on `levels` grids.
+pub(super) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usize) -> Problem {
+    Problem {
+        wall,
+        mover: Mover { parts, mass_kg: Some(0.02) },
+        travel,
+        accuracy: Accuracy { levels: Some(levels), ..Accuracy::default() },
+        snapshots: SnapshotPlan::None,
+    }
+}
+
+/// Settled fields at a signed velocity, on three levels.
+pub(super) fn steady(wall: Wall, parts: Vec<Part>, velocity_m_per_s: f64) -> Problem {
+    problem(wall, parts, Travel::Steady { velocity_m_per_s }, 3)
+}
+
+/// Uniform speed through a finite wall, from and to in mm.
+pub(super) fn traverse(speed_m_per_s: f64, from_mm: f64, to_mm: f64) -> Travel {
+    Travel::Traverse(Traverse { speed_m_per_s, from_m: from_mm * 1e-3, to_m: to_mm * 1e-3 })
+}
+
+/// A fall from rest under standard gravity, with nothing but the wall to slow it; gates at both ends of the wall.
+pub(super) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
+    Free {
+        release_m: release_mm * 1e-3,
+        entry_velocity_m_per_s: 0.0,
+        until_m: until_mm * 1e-3,
+        time_limit_s: 60.0,
+        gravity_m_per_s2: crate::constants::STANDARD_GRAVITY,
+        tilt_rad: 0.0,
+        push_newton: 0.0,
+        friction_newton: 0.0,
+        friction_coefficient: 0.0,
+        air_drag_n_s2_per_m2: 0.0,
+        spring_rate_n_per_m: 0.0,
+        spring_free_at_m: 0.0,
+        gates_m: [wall_mm * 1e-3, 0.0],
+    }
+}
+
+/// The answer to a sound problem.
+pub(super) fn answer(problem: &Problem) -> Outcome {
+    assert_eq!(problem.faults(), []);
+    crate::solve(problem, &Unwatched).unwrap()
+}
+
+/// A figure by its name.
+pub(super) fn figure<'o>(outcome: &'o Outcome, name: &str) -> &'o Figure {
+    outcome.figures.iter().find(|f| f.name == name).unwrap_or_else(|| panic!("no figure {name}"))
+}
+
+/// A figure's value by its name.
+pub(super) fn value(outcome: &Outcome, name: &str) -> f64 {
+    figure(outcome, name).value
+}

@@ -54,7 +54,7 @@ fn a_fast_medium_converges_with_orders_2_4_6() {
     check(20.0, &[4e-3, 2.4e-5, 6e-7]);
 }
 
-/// The same, moving the other way: mirror image about the middle, to the solver's accuracy, on a grid that is no mirror image.
+/// The same, moving the other way, so that layer and wake change ends; the grid is no mirror image of itself.
 #[test]
 fn a_medium_moving_backwards_converges_with_orders_2_4_6() {
     check(-20.0, &[4e-3, 2.4e-5, 6e-7]);

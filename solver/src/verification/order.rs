@@ -32,11 +32,22 @@ pub(super) fn errors(levels: &[f64], exact: f64, run: usize) -> Vec<f64> {
     field_errors(&levels, &[exact], run)
 }
 
+/// Logarithm of the geometric mean of the refinement in each of `count` runs of `run` levels.
+fn finenesses(count: usize, run: usize) -> Vec<f64> {
+    let mean = |window: &[f64]| window.iter().map(|f| f.ln()).sum::<f64>() / run as f64;
+    factors(count + run - 1).windows(run).map(mean).collect()
+}
+
 /// Orders between neighbouring runs of `run` levels.
 pub(super) fn orders(errors: &[f64], run: usize) -> Vec<f64> {
-    let factors = factors(errors.len() + run - 1);
-    let mean = |first: usize| factors[first..first + run].iter().map(|f| f.ln()).sum::<f64>() / run as f64;
-    errors.windows(2).enumerate().map(|(k, e)| (e[0] / e[1]).ln() / (mean(k + 1) - mean(k))).collect()
+    let finer = finenesses(errors.len(), run);
+    errors.windows(2).zip(finer.windows(2)).map(|(e, f)| (e[0] / e[1]).ln() / (f[1] - f[0])).collect()
+}
+
+/// Order from the first run of `run` levels to the last.
+pub(super) fn overall_order(errors: &[f64], run: usize) -> f64 {
+    let (finer, last) = (finenesses(errors.len(), run), errors.len() - 1);
+    (errors[0] / errors[last]).ln() / (finer[last] - finer[0])
 }
 
 /// What must hold after extrapolating runs of `run` levels: the last order within `order`, the last error below `bound`.
@@ -51,6 +62,14 @@ impl Wanted {
     pub(super) fn even(bounds: &[f64]) -> Vec<Self> {
         let ranges = [1.9..=2.1, 3.6..=4.4, 5.2..=6.8];
         bounds.iter().zip(ranges).enumerate().map(|(k, (&bound, order))| Self { run: k + 1, order, bound }).collect()
+    }
+
+    /// Orders 2 and 4 for runs of 1 and 2 levels, and after runs of 3 a bound alone: where the error is so small that its next
+    /// terms, or the boundary, hide the order 6.
+    pub(super) fn even_to_four(bounds: &[f64; 3]) -> Vec<Self> {
+        let mut wanted = Self::even(bounds);
+        wanted[2].order = f64::NEG_INFINITY..=f64::INFINITY;
+        wanted
     }
 }
 
