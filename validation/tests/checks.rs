@@ -44,5 +44,7 @@ checks! {
     val_field_speeds: "field-speeds",
     val_field_permeable: "field-permeable",
     val_field_thin_wall: "field-thin-wall",
+    val_field_coverage: "field-coverage",
+    val_field_passage: "field-passage",
     val_field_fall: "field-fall",
 }

@@ -35,7 +35,8 @@ fn fall() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn figure(outcome: &Outcome, name: &'static str) -> Result<Banded, Error> {
+/// The figure of that name with its band.
+pub(super) fn figure(outcome: &Outcome, name: &'static str) -> Result<Banded, Error> {
     let figure = outcome.figures.iter().find(|f| f.name == name).ok_or(Error::MissingFigure(name))?;
     Ok(Banded { value: figure.value, band: figure.band })
 }

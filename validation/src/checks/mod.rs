@@ -6,11 +6,14 @@
 mod closed_form;
 mod endless;
 mod field;
+mod field_coverage;
 mod field_fall;
+mod field_passage;
 mod rings;
 mod sources;
 mod verdict;
 
+pub use field_coverage::Coverage;
 pub use verdict::{Banded, Comparison, Limits, Verdict};
 
 use crate::Error;
@@ -57,7 +60,17 @@ pub struct Check {
 /// All checks, those of the independent methods first.
 #[must_use]
 pub fn all() -> Vec<Check> {
-    [closed_form::CHECKS, sources::CHECKS, endless::CHECKS, rings::CHECKS, field::CHECKS, field_fall::CHECKS].concat()
+    let groups = [
+        closed_form::CHECKS,
+        sources::CHECKS,
+        endless::CHECKS,
+        rings::CHECKS,
+        field::CHECKS,
+        field_coverage::CHECKS,
+        field_passage::CHECKS,
+        field_fall::CHECKS,
+    ];
+    groups.concat()
 }
 
 /// The check of that name.

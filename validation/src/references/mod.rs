@@ -6,11 +6,13 @@
 pub mod cylinder_damping;
 pub mod dipole_drag;
 pub mod fall;
+pub mod integral;
 pub mod loops;
 pub mod magnet_force;
 pub mod magnet_speed;
 pub mod moving_loop;
 pub mod nagaoka;
+pub mod passage;
 pub mod permeable_tube;
 pub mod solenoid;
 pub mod stacks;
