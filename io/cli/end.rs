@@ -8,7 +8,17 @@ use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
 const LATER: [&str; 11] = [
-    "ladder", "compare", "rerun", "report", "export", "sweep", "identify", "validate", "schema", "explain", "completions",
+    "ladder",
+    "compare",
+    "rerun",
+    "report",
+    "export",
+    "sweep",
+    "identify",
+    "validate",
+    "schema",
+    "explain",
+    "completions",
 ];
 /// Commands that are.
 const BUILT: [&str; 5] = ["new", "check", "run", "curve", "materials"];

@@ -79,7 +79,10 @@ fn as_json(conductors: &[&Conductor], magnets: &[&MagnetGrade]) -> Value {
         let entry = |s: &Shown<'_>| {
             let n = s.number;
             let range = n.range.map(|[a, b]| json!([a * s.scale, b * s.scale]));
-            (s.name.to_owned(), json!({"typical": n.typical * s.scale, "range": range, "unit": s.unit, "source": n.source}))
+            (
+                s.name.to_owned(),
+                json!({"typical": n.typical * s.scale, "range": range, "unit": s.unit, "source": n.source}),
+            )
         };
         list.iter().map(entry).collect::<serde_json::Map<_, _>>().into()
     };

@@ -20,7 +20,8 @@ pub fn half_section(problem: &Problem) -> String {
     let line = outer / f64::from(LINES);
     let column = (line / LETTER).max((high - low) / f64::from(COLUMNS - 8));
     let middle = 0.5 * (low + high);
-    let mut text = format!("half section to scale, {:.2} mm a letter along, {:.2} mm a line across:\n", 1e3 * column, 1e3 * line);
+    let mut text =
+        format!("half section to scale, {:.2} mm a letter along, {:.2} mm a line across:\n", 1e3 * column, 1e3 * line);
     for k in (0..LINES).rev() {
         let r = (f64::from(k) + 0.5) * line;
         let row: String = (0..COLUMNS)
@@ -45,7 +46,11 @@ fn letter(problem: &Problem, r: f64, z: f64, column: f64) -> char {
     if let Some(part) = problem.mover.parts.iter().find(inside) {
         return match part.source {
             Source::Magnet { remanence_tesla, .. } => {
-                if (z - part.centre_m) * remanence_tesla > 0.0 { 'N' } else { 'S' }
+                if (z - part.centre_m) * remanence_tesla > 0.0 {
+                    'N'
+                } else {
+                    'S'
+                }
             }
             Source::Coil { .. } => 'o',
             Source::Dipole { .. } => 'x',

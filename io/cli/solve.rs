@@ -51,7 +51,11 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     missed(&outcome)
 }
 
-fn answer(case: &ResolvedCase, question: Question, terminal: &Terminal) -> Result<(Problem, Outcome, Vec<String>), End> {
+fn answer(
+    case: &ResolvedCase,
+    question: Question,
+    terminal: &Terminal,
+) -> Result<(Problem, Outcome, Vec<String>), End> {
     match question {
         Question::Travel => {
             if !case.travel_given {
@@ -64,7 +68,8 @@ fn answer(case: &ResolvedCase, question: Question, terminal: &Terminal) -> Resul
         Question::Curve => {
             let (Some(problem), Some(plan)) = (case.curve_problem(), case.curve.as_ref()) else {
                 return Err(End::Input(
-                    "the case has no [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40".to_owned(),
+                    "the case has no [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40"
+                        .to_owned(),
                 ));
             };
             memory::require(&problem, plan.speeds_m_per_s.last().copied())?;

@@ -7,8 +7,8 @@
 mod fault;
 mod grid;
 mod line;
-mod quality;
 mod quadrature;
+mod quality;
 mod refinement;
 mod region;
 mod size;

@@ -242,10 +242,7 @@ mod tests {
 
     #[test]
     fn unordered_breakpoints_are_refused() {
-        assert!(matches!(
-            PlannedLine::new(&[0.0, 2.0, 1.0], &law()),
-            Err(MeshFault::Breakpoints { index: 2, .. })
-        ));
+        assert!(matches!(PlannedLine::new(&[0.0, 2.0, 1.0], &law()), Err(MeshFault::Breakpoints { index: 2, .. })));
         assert!(PlannedLine::new(&[0.0, f64::NAN], &law()).is_err());
     }
 

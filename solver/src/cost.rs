@@ -107,7 +107,8 @@ pub fn forecast(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<F
     let mut level_seconds = Vec::new();
     for (size, refinement) in sizes.iter().zip(&refinements) {
         let f = refinement.factor();
-        let (steps, solves) = if settled { (0.0, vectors(problem, speed) + 2.0) } else { march_work(problem, &plan, f) };
+        let (steps, solves) =
+            if settled { (0.0, vectors(problem, speed) + 2.0) } else { march_work(problem, &plan, f) };
         let overhead = if settled { 1.2 } else { STEP_OVERHEAD };
         level_seconds.push(solves * size.seconds_per_solve * overhead + set_up(size));
         forecast.steps += steps;

@@ -47,8 +47,9 @@ fn eliminate(mut rows: Vec<Vec<f64>>) -> Vec<f64> {
         rows.swap(k, pivot);
         for i in k + 1..n {
             let factor = rows[i][k] / rows[k][k];
-            for j in k..=n {
-                rows[i][j] -= factor * rows[k][j];
+            let (upper, lower) = rows.split_at_mut(i);
+            for (below, above) in lower[0].iter_mut().zip(&upper[k]).skip(k) {
+                *below -= factor * above;
             }
         }
     }

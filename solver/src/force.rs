@@ -82,7 +82,13 @@ const STRESS_REACH: f64 = 16.0;
 /// F = (2 pi R / mu0) integral of (B_sr B_rz + B_rr B_sz) dz over a cylinder around the mover (with the other sign inside
 /// it), by the trapezoidal rule over the nodes: the mover's own field s exact, the reaction field r from
 /// high-order stencils on the air side of the face. Products of either field with itself carry no net force.
-pub(crate) fn by_stress(grid: &Grid, psi_reaction: &[f64], problem: &Problem, placement: &Placement, position: f64) -> f64 {
+pub(crate) fn by_stress(
+    grid: &Grid,
+    psi_reaction: &[f64],
+    problem: &Problem,
+    placement: &Placement,
+    position: f64,
+) -> f64 {
     let (r, z) = (grid.r.nodes(), grid.z.nodes());
     let reach = STRESS_REACH * placement.scale_m;
     let first = grid.z.nearest(position + placement.lowest_m - reach);

@@ -86,13 +86,7 @@ impl GridPlan {
             Frame::Mover { velocity } => plan_z_mover(problem, placement, velocity, outer)?,
             Frame::Wall { low, high, .. } => plan_z_wall(problem, placement, (low, high), outer)?,
         };
-        Ok(Self {
-            r,
-            z,
-            rectangles,
-            half_extent: (outer + 0.5 * BOUNDARY * outer, half.0, half.1),
-            axial_cell_m: cell,
-        })
+        Ok(Self { r, z, rectangles, half_extent: (outer + 0.5 * BOUNDARY * outer, half.0, half.1), axial_cell_m: cell })
     }
 
     /// Nodes of the coarsest level.

@@ -72,7 +72,9 @@ pub fn drag_curve(problem: &Problem, speeds_m_per_s: &[f64], monitor: &dyn Monit
 fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
     match problem.wall.extent {
         Extent::Endless => Ok(()),
-        Extent::Finite { .. } => Err(SolveFault::Unsuited("settled fields need an endless wall; use traverse for a finite one")),
+        Extent::Finite { .. } => {
+            Err(SolveFault::Unsuited("settled fields need an endless wall; use traverse for a finite one"))
+        }
     }
 }
 

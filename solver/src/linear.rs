@@ -58,8 +58,8 @@ impl Pattern {
             supernodal_flop_ratio_threshold: SupernodalThreshold::FORCE_SIMPLICIAL,
             ..Default::default()
         };
-        let symbolic = factorize_symbolic_cholesky(pattern, Side::Lower, SymmetricOrdering::Amd, params)
-            .map_err(|_| fail())?;
+        let symbolic =
+            factorize_symbolic_cholesky(pattern, Side::Lower, SymmetricOrdering::Amd, params).map_err(|_| fail())?;
         Ok(Arc::new(Self { unknowns, column_starts, rows, source, diagonal, symbolic }))
     }
 
@@ -108,13 +108,11 @@ impl Factor {
             return Err(SolveFault::NotFinite { what: "an entry of the system matrix" });
         }
         let n = pattern.unknowns;
-        let structure =
-            SymbolicSparseColMatRef::new_checked(n, n, &pattern.column_starts, None, &pattern.rows);
+        let structure = SymbolicSparseColMatRef::new_checked(n, n, &pattern.column_starts, None, &pattern.rows);
         let lower = SparseColMatRef::new(structure, entries.as_slice());
         let symbolic = &pattern.symbolic;
         let mut values = vec![0.0; symbolic.len_val()];
-        let mut memory =
-            MemBuffer::new(symbolic.factorize_numeric_llt_scratch::<f64>(Par::Seq, Spec::default()));
+        let mut memory = MemBuffer::new(symbolic.factorize_numeric_llt_scratch::<f64>(Par::Seq, Spec::default()));
         symbolic
             .factorize_numeric_llt(
                 &mut values,
@@ -152,7 +150,13 @@ impl Factor {
 ///
 /// # Errors
 /// Not finite, or too large.
-pub(crate) fn check_residual(matrix: &CsMat<f64>, added: Option<&[f64]>, x: &[f64], b: &[f64], limit: f64) -> Result<f64, SolveFault> {
+pub(crate) fn check_residual(
+    matrix: &CsMat<f64>,
+    added: Option<&[f64]>,
+    x: &[f64],
+    b: &[f64],
+    limit: f64,
+) -> Result<f64, SolveFault> {
     let (mut worst, mut scale) = (0.0_f64, 0.0_f64);
     let starts = matrix.indptr();
     let (starts, columns, values) = (starts.raw_storage(), matrix.indices(), matrix.data());

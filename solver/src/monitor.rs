@@ -18,3 +18,15 @@ impl Monitor for Unwatched {
         false
     }
 }
+
+/// Passes the request to stop on, but reports no progress: for work beside the level that does.
+pub(crate) struct Quiet<'m> {
+    pub(crate) inner: &'m dyn Monitor,
+}
+
+impl Monitor for Quiet<'_> {
+    fn progress(&self, _fraction: f64, _doing: &str) {}
+    fn cancelled(&self) -> bool {
+        self.inner.cancelled()
+    }
+}

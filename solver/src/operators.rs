@@ -110,9 +110,9 @@ fn edges(grid: &Grid, nu: impl Fn(usize) -> f64) -> Vec<Edge> {
         }
     }
     for j in 0..nz - 1 {
-        for i in 1..nr - 1 {
+        for (i, &radius) in r.iter().enumerate().take(nr - 1).skip(1) {
             let dual = 0.5 * (nu(grid.cell(i - 1, j)) * grid.r.cell(i - 1) + nu(grid.cell(i, j)) * grid.r.cell(i));
-            edges.push(Edge { a: (i, j), b: (i, j + 1), weight: dual / (r[i] * (z[j + 1] - z[j])) });
+            edges.push(Edge { a: (i, j), b: (i, j + 1), weight: dual / (radius * (z[j + 1] - z[j])) });
         }
     }
     edges.retain(|e| e.weight.abs() > 0.0);
@@ -120,7 +120,12 @@ fn edges(grid: &Grid, nu: impl Fn(usize) -> f64) -> Vec<Edge> {
 }
 
 /// D on the unknowns: one row an edge, -1 at its start and +1 at its end.
-fn difference(grid: &Grid, edges: &[Edge], columns: usize, column_of: impl Fn(&Grid, (usize, usize)) -> Option<usize>) -> CsMat<f64> {
+fn difference(
+    grid: &Grid,
+    edges: &[Edge],
+    columns: usize,
+    column_of: impl Fn(&Grid, (usize, usize)) -> Option<usize>,
+) -> CsMat<f64> {
     let mut d = TriMat::with_capacity((edges.len(), columns), 2 * edges.len());
     for (row, edge) in edges.iter().enumerate() {
         if let Some(column) = column_of(grid, edge.a) {

@@ -43,7 +43,10 @@ fn advice(target: f64, worst: Option<&(String, f64)>, levels: usize) -> String {
     let miss = worst.map_or(1.0, |(_, r)| r / target);
     let name = worst.map_or("a figure", |(n, _)| n.as_str());
     if levels < MOST_LEVELS {
-        format!("{name} misses the target by a factor of {miss:.1}: accuracy.levels = {} would meet it or come closer", levels + 1)
+        format!(
+            "{name} misses the target by a factor of {miss:.1}: accuracy.levels = {} would meet it or come closer",
+            levels + 1
+        )
     } else {
         format!(
             "{name} misses the target by a factor of {miss:.1} on the finest levels: raise accuracy.cells_across_wall or accept a target of {:.1e}",

@@ -2,10 +2,13 @@
 
 use lenzbore_mesh::Refinement;
 
+use super::combine::{Margins, combine};
+use super::course::{Course, plan, reach, set_out};
 use super::figures::{LevelFigure, end_of, level_figures};
 use super::level::MarchLevel;
-use super::motion::{Motion, friction, frictionless, potential_energy};
-use super::run::{Course, Run, Share};
+use super::motion::{Motion, potential_energy};
+use super::routes::Routes;
+use super::run::{Run, Share};
 use super::schedule::Schedule;
 use super::series::Series;
 use super::snapshots::instants;
@@ -15,16 +18,14 @@ use crate::extrapolate::extrapolate;
 use crate::fault::SolveFault;
 use crate::fields::empty_fields;
 use crate::grid_report::grid_report;
-use crate::grid_rules::{Frame, GridPlan};
+use crate::grid_rules::GridPlan;
 use crate::interpolate::sampled;
-use crate::monitor::Monitor;
-use crate::outcome::{
-    Basis, Caution, Fields, Figure, Forces, GridReport, Ledger, Location, Outcome, Snapshot, Stop, Trace, WorkCounters,
-};
+use crate::monitor::{Monitor, Quiet};
+use crate::outcome::{Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Trace, WorkCounters};
 use crate::placement::Placement;
-use crate::problem::{Free, Problem, SnapshotPlan, Travel};
+use crate::problem::{Problem, SnapshotPlan};
 use crate::regime::regime;
-use crate::target::{is_local, levels_wanted, may_add_level, verdict};
+use crate::target::{levels_wanted, may_add_level, verdict};
 
 /// Levels added at most on our own: a march costs the cube of the refinement.
 const MOST_MARCH_LEVELS: usize = 4;
@@ -65,79 +66,6 @@ pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome,
         }
         records.wanted += 1;
     }
-}
-
-/// The grids of a march, and the speed that they are made for.
-///
-/// # Errors
-/// See [`SolveFault`].
-pub(crate) fn plan(problem: &Problem, placement: &Placement) -> Result<(GridPlan, f64), SolveFault> {
-    let (motion, course) = set_out(problem)?;
-    let reach = reach(problem, course.from, course.until);
-    let speed = fastest(&motion, course.velocity, reach);
-    if !(speed > 0.0 && speed.is_finite()) {
-        return Err(SolveFault::Unsuited("the mover does not move: nothing drives it, or friction holds it at release"));
-    }
-    let plan = GridPlan::new(problem, placement, Frame::Wall { low: reach.0, high: reach.1, speed })?;
-    Ok((plan, speed))
-}
-
-/// The motion, and its course but for the stride.
-fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault> {
-    match &problem.travel {
-        Travel::Traverse(t) => {
-            let velocity = (t.to_m - t.from_m).signum() * t.speed_m_per_s;
-            let time_limit = (t.to_m - t.from_m).abs() / t.speed_m_per_s;
-            let course = Course { from: t.from_m, velocity, until: t.to_m, time_limit, stride: 0.0 };
-            Ok((Motion::Uniform { velocity }, course))
-        }
-        Travel::Free(law) => {
-            let mass = problem.mover.mass_kg.ok_or(SolveFault::Unsuited("free travel needs the mover's mass"))?;
-            let course = Course {
-                from: law.release_m,
-                velocity: law.entry_velocity_m_per_s,
-                until: law.until_m,
-                time_limit: law.time_limit_s,
-                stride: 0.0,
-            };
-            Ok((Motion::Free { law: law.clone(), mass }, course))
-        }
-        Travel::Steady { .. } => Err(SolveFault::Unsuited("settled fields are no march")),
-    }
-}
-
-/// Drag by the three routes at its peak.
-struct Routes {
-    wall: Ladder,
-    mover: Ladder,
-    stress: Ladder,
-}
-
-impl Routes {
-    /// The forces with the band within which they must agree: each route's own.
-    fn forces(&self, time_s: f64) -> Forces {
-        let own = |l: &Ladder| band::one_route(l, 0.0, 0.0);
-        let band_newton = own(&self.wall) + own(&self.mover).max(own(&self.stress));
-        let off = |l: &Ladder| (l.value - self.wall.value).abs();
-        Forces {
-            wall_newton: self.wall.value,
-            mover_newton: self.mover.value,
-            stress_newton: self.stress.value,
-            band_newton,
-            agree: off(&self.mover).max(off(&self.stress)) <= band_newton,
-            time_s,
-        }
-    }
-
-    /// How far the wall and mover routes lie apart, relative.
-    fn apart(&self) -> f64 {
-        if self.wall.value.abs() > 0.0 { (self.mover.value / self.wall.value - 1.0).abs() } else { 0.0 }
-    }
-}
-
-/// Figures that are a peak of the force in time: their band takes the second route in.
-fn is_force_peak(name: &str) -> bool {
-    matches!(name, "drag_peak" | "deceleration_peak" | "felt_acceleration_peak")
 }
 
 /// The schedule, the levels so far, the coarsest level on half the domain.
@@ -181,7 +109,7 @@ impl<'p> Journey<'p> {
         let wanted = instants(&self.problem.snapshots, &records.levels[0].series, &self.course);
         let keep = self.problem.snapshots != SnapshotPlan::None;
         let schedule = &records.schedule;
-        let quiet = QuietMonitor { inner: monitor };
+        let quiet = Quiet { inner: monitor };
         let need_cut = records.cut.is_none();
         let (fine, coarse) = std::thread::scope(|scope| {
             let beside = scope.spawn(|| {
@@ -230,8 +158,7 @@ impl<'p> Journey<'p> {
         snapshots: Option<Vec<Snapshot>>,
     ) -> LevelRecord {
         let operators = &level.operators;
-        let mut report =
-            grid_report(self.problem, &self.placement, &operators.grid, refinement.factor(), self.speed);
+        let mut report = grid_report(self.problem, &self.placement, &operators.grid, refinement.factor(), self.speed);
         report.steps = series.time_mid.len();
         report.residual = level.worst_residual;
         let fields = snapshots.map(|snapshots| {
@@ -280,7 +207,8 @@ impl<'p> Journey<'p> {
     }
 
     fn regime_speed(&self, trace: &Trace) -> f64 {
-        let largest = (0..trace.drag_newton.len()).max_by(|&a, &b| trace.drag_newton[a].total_cmp(&trace.drag_newton[b]));
+        let largest =
+            (0..trace.drag_newton.len()).max_by(|&a, &b| trace.drag_newton[a].total_cmp(&trace.drag_newton[b]));
         largest.map_or(self.speed, |k| trace.velocity_m_per_s[k].abs())
     }
 
@@ -316,9 +244,8 @@ impl<'p> Journey<'p> {
             let sign = -series.at(&series.velocity, t).signum();
             sign * (of(series, t) - series.mid_at(&series.pull_mid, t))
         };
-        let ladder = |of: fn(&Series, f64) -> f64| {
-            Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect())
-        };
+        let ladder =
+            |of: fn(&Series, f64) -> f64| Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect());
         Routes {
             wall: ladder(|s, t| s.mid_at(&s.force_mid, t)),
             mover: ladder(|s, t| s.mid_at(&s.force_on_mover_mid, t)),
@@ -372,103 +299,5 @@ impl<'p> Journey<'p> {
             }
         }
         texts.into_iter().map(|text| Caution { text }).collect()
-    }
-}
-
-/// What else goes into the bands of a march.
-struct Margins {
-    /// Largest relative residual of a linear solve.
-    residual: f64,
-    /// Relative distance of two force routes at the peak.
-    apart: f64,
-    /// Powers of the cell size at a permeable wall's corners.
-    corners: Option<Vec<f64>>,
-}
-
-/// Figures that all levels have, extrapolated, with bands. The corners of a permeable wall dominate its static pull, which
-/// then takes their powers.
-fn combine(
-    factors: &[f64],
-    by_level: &[Vec<LevelFigure>],
-    cut: Option<&[LevelFigure]>,
-    margins: &Margins,
-) -> Vec<Figure> {
-    let Some(finest) = by_level.last() else { return Vec::new() };
-    let mut figures = Vec::new();
-    for figure in finest {
-        let find = |list: &[LevelFigure]| list.iter().find(|f| f.name == figure.name).map(|f| f.value);
-        let values: Option<Vec<f64>> = by_level.iter().map(|list| find(list)).collect();
-        let Some(values) = values else { continue };
-        let coarsest = values[0];
-        let ladder = match &margins.corners {
-            Some(powers) if figure.name == "static_pull_peak" => Ladder::with_powers(factors, values, powers),
-            _ => Ladder::new(factors, values),
-        };
-        let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
-        let rule = if is_local(figure.name) { band::local } else { band::one_route };
-        let apart = if is_force_peak(figure.name) { margins.apart } else { 0.0 };
-        let half_width = rule(&ladder, change, (margins.residual + apart) * ladder.value.abs());
-        figures.push(Figure {
-            name: figure.name.to_owned(),
-            value: ladder.value,
-            unit: figure.unit,
-            band: half_width,
-            basis: Basis::Extrapolated,
-            location: figure.location,
-            levels: ladder.levels,
-        });
-    }
-    figures
-}
-
-/// Positions that the reference point may take, with a little room beyond the end.
-fn reach(problem: &Problem, from: f64, to: f64) -> (f64, f64) {
-    let room = 0.02 * (to - from).abs();
-    let (mut low, mut high) = (from.min(to) - room, from.max(to) + room);
-    if let Travel::Free(law) = &problem.travel
-        && law.spring_rate_n_per_m > 0.0
-    {
-        low = low.min(law.spring_free_at_m);
-        high = high.max(law.spring_free_at_m);
-    }
-    (low, high)
-}
-
-/// Greatest speed that the motion can reach without drag, m/s; 0 where it cannot start.
-fn fastest(motion: &Motion, velocity: f64, reach: (f64, f64)) -> f64 {
-    match motion {
-        Motion::Uniform { velocity } => velocity.abs(),
-        Motion::Free { law, mass } => {
-            if velocity.abs() <= 0.0 && frictionless(law, *mass, law.release_m).abs() <= friction(law, *mass) {
-                return 0.0;
-            }
-            free_speed(law, *mass, velocity, reach)
-        }
-    }
-}
-
-fn free_speed(law: &Free, mass: f64, velocity: f64, reach: (f64, f64)) -> f64 {
-    let start = potential_energy(law, mass, law.release_m);
-    let lowest = [reach.0, reach.1, law.spring_free_at_m.clamp(reach.0, reach.1)]
-        .into_iter()
-        .map(|z| potential_energy(law, mass, z))
-        .fold(f64::INFINITY, f64::min);
-    (velocity * velocity + 2.0 * (start - lowest).max(0.0) / mass).sqrt()
-}
-
-/// Location of an event at `t`.
-pub(super) fn at_time(series: &Series, t: f64) -> Location {
-    Location { r_m: None, z_m: Some(series.at(&series.position, t)), t_s: Some(t) }
-}
-
-/// Passes the request to stop on, but reports no progress: for work beside the level that does.
-struct QuietMonitor<'m> {
-    inner: &'m dyn Monitor,
-}
-
-impl Monitor for QuietMonitor<'_> {
-    fn progress(&self, _fraction: f64, _doing: &str) {}
-    fn cancelled(&self) -> bool {
-        self.inner.cancelled()
     }
 }

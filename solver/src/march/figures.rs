@@ -1,7 +1,6 @@
 //! The figures that one level's series give.
 
-use super::answer::at_time;
-use super::run::Course;
+use super::course::Course;
 use super::series::Series;
 use crate::constants::STANDARD_GRAVITY;
 use crate::outcome::{Location, Stop};
@@ -127,9 +126,7 @@ fn acceleration_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec
     let slowing: Vec<f64> = series.acceleration_mid.iter().zip(moves).map(|(a, s)| -a * s).collect();
     let weight = law.gravity_m_per_s2 * law.tilt_rad.cos();
     let felt: Vec<f64> = series.acceleration_mid.iter().map(|a| (a + weight).abs() / STANDARD_GRAVITY).collect();
-    for (name, unit, values) in
-        [("deceleration_peak", "m/s2", slowing), ("felt_acceleration_peak", "1", felt)]
-    {
+    for (name, unit, values) in [("deceleration_peak", "m/s2", slowing), ("felt_acceleration_peak", "1", felt)] {
         let (t, value) = series.greatest(&values, end);
         figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
     }
@@ -141,4 +138,9 @@ fn current_peak(series: &Series, end: f64) -> LevelFigure {
     let read = |values: &[f64]| values.get(k).copied();
     let location = Location { r_m: read(&series.peak_r_mid), z_m: read(&series.peak_z_mid), t_s: Some(t) };
     LevelFigure { name: "current_density_peak", unit: "A/m2", value, location: Some(location) }
+}
+
+/// Location of an event at `t`.
+fn at_time(series: &Series, t: f64) -> Location {
+    Location { r_m: None, z_m: Some(series.at(&series.position, t)), t_s: Some(t) }
 }

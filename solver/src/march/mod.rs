@@ -6,13 +6,17 @@
 //! F dz = 2 pi sum (K0 psi_mid) . (psi_s(z_(n+1)) - psi_s(z_n)), so that work = heat + change of field energy holds step by step.
 
 mod answer;
+mod combine;
+mod course;
 mod figures;
 mod level;
 mod motion;
+mod routes;
 mod run;
 mod schedule;
 mod series;
 mod snapshots;
 mod step;
 
-pub(crate) use answer::{march, plan};
+pub(crate) use answer::march;
+pub(crate) use course::plan;

@@ -2,6 +2,7 @@
 
 use lenzbore_mesh::Refinement;
 
+use super::course::Course;
 use super::level::MarchLevel;
 use super::motion::{Motion, friction, frictionless, losses, other_force};
 use super::schedule::Schedule;
@@ -26,25 +27,6 @@ const NEAR_GREATEST: f64 = 0.8;
 const MOST_PAIRS: usize = 2_000_000;
 /// Pairs run on beyond the end, so that the end itself is read between steps.
 const PAIRS_BEYOND: usize = 2;
-
-/// Where a run begins and ends.
-#[derive(Debug, Clone)]
-pub(crate) struct Course {
-    pub(crate) from: f64,
-    pub(crate) velocity: f64,
-    /// The run ends at this position ...
-    pub(crate) until: f64,
-    /// ... or at this instant.
-    pub(crate) time_limit: f64,
-    /// Travel in a step at most, m, on the coarsest level.
-    pub(crate) stride: f64,
-}
-
-impl Course {
-    fn passed(&self, position: f64) -> bool {
-        if self.until < self.from { position <= self.until } else { position >= self.until }
-    }
-}
 
 /// How far along a whole job this run's progress counts.
 #[derive(Debug, Clone, Copy)]
@@ -84,9 +66,7 @@ impl<'a, 'p> Run<'a, 'p> {
         let (flux, energy_start) = level.field_at_rest(&source)?;
         let acceleration = match motion {
             Motion::Uniform { .. } => 0.0,
-            Motion::Free { law, mass } => {
-                driving_force(law, *mass, course) / mass
-            }
+            Motion::Free { law, mass } => driving_force(law, *mass, course) / mass,
         };
         let state = State::new(course.from, course.velocity, flux, source, acceleration);
         let mut series = Series { energy_start, ..Series::default() };
@@ -177,7 +157,8 @@ impl<'a, 'p> Run<'a, 'p> {
                     self.keep_snapshot(begin + 0.5 * dt, report.travel);
                 }
             }
-            monitor.progress(share.from + (share.to - share.from) * count(k + 1) / count(schedule.pairs()), "finer level");
+            monitor
+                .progress(share.from + (share.to - share.from) * count(k + 1) / count(schedule.pairs()), "finer level");
             if self.series.stopped_at.is_some() {
                 break;
             }
@@ -307,9 +288,9 @@ impl<'a, 'p> Run<'a, 'p> {
             let own = |z: f64| (mover.psi(r, z - end + travel) - mover.psi(r, z - end)) / (r * dt);
             // Only the nodes around the greatest are read by the interpolation.
             let (from, to) = (k.saturating_sub(PEAK_REACH), (k + PEAK_REACH + 1).min(row.count));
-            for n in from..to {
-                let w = row.start + n;
-                self.near[n - from] = self.currents[w] / (wall.conductance[w] * r) - own(heights[n]);
+            for (n, (near, &z)) in self.near.iter_mut().zip(&heights[from..to]).enumerate() {
+                let w = row.start + from + n;
+                *near = self.currents[w] / (wall.conductance[w] * r) - own(z);
             }
             let (places, near) = (&heights[from..to], &self.near[..to - from]);
             let (at, field) = peak_near(places, k - from, |z| own(z) + along(places, near, z));

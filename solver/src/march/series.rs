@@ -47,7 +47,9 @@ impl Series {
         let kept = self.time_stress.partition_point(|&t| t < time);
         self.time_stress.truncate(kept);
         self.force_by_stress.truncate(kept);
-        for ends in [&mut self.time, &mut self.position, &mut self.velocity, &mut self.heat, &mut self.work, &mut self.losses] {
+        for ends in
+            [&mut self.time, &mut self.position, &mut self.velocity, &mut self.heat, &mut self.work, &mut self.losses]
+        {
             ends.truncate(steps + 1);
         }
         for middles in [

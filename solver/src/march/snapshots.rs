@@ -1,7 +1,7 @@
 //! At which instants the fields are kept.
 
+use super::course::Course;
 use super::figures::{drag_peak, end_of};
-use super::run::Course;
 use super::series::Series;
 use crate::problem::SnapshotPlan;
 

@@ -3,10 +3,11 @@
 use std::f64::consts::PI;
 
 use super::level::{MarchLevel, spread_wall};
-use super::motion::{Motion, friction, frictionless, other_force};
+use super::motion::{Force, Motion, friction, frictionless, other_force};
 use crate::fault::SolveFault;
 use crate::linear::check_residual;
 use crate::operators::add_product;
+use crate::problem::Free;
 
 /// Newton passes a step, at most. One gives the converged digits unless the first guess is poor.
 const MOST_PASSES: usize = 8;
@@ -50,6 +51,20 @@ impl State {
         self.acceleration = other.acceleration;
         self.acceleration_rate = other.acceleration_rate;
         self.last_dt = other.last_dt;
+    }
+}
+
+/// The mechanical side of a step.
+struct Mechanics<'a> {
+    law: &'a Free,
+    mass: f64,
+    /// Sense of sliding, for friction.
+    direction: f64,
+}
+
+impl Mechanics<'_> {
+    fn other_force(&self, position: f64, velocity: f64) -> Force {
+        other_force(self.law, self.mass, position, velocity, self.direction)
     }
 }
 
@@ -135,7 +150,10 @@ impl Stepper {
                 self.field_for(level, state, state.position + travel, dt, false)?;
                 travel
             }
-            Motion::Free { law, mass } => self.travel_of(level, state, law, *mass, time, dt)?,
+            Motion::Free { law, mass } => {
+                let mechanics = Mechanics { law, mass: *mass, direction: sliding(law, *mass, state) };
+                self.travel_of(level, state, &mechanics, time, dt)?
+            }
         };
         self.ring_currents(level, state, dt, currents);
         self.equivalents(level, currents, dt, 1);
@@ -157,30 +175,29 @@ impl Stepper {
         &mut self,
         level: &mut MarchLevel<'_>,
         state: &State,
-        law: &crate::problem::Free,
-        mass: f64,
+        mechanics: &Mechanics<'_>,
         time: f64,
         dt: f64,
     ) -> Result<f64, SolveFault> {
-        let direction = sliding(law, mass, state);
+        let mass = mechanics.mass;
         let expected = state.acceleration + state.acceleration_rate * 0.5 * (state.last_dt + dt);
         let mut travel = dt * (state.velocity + 0.5 * dt * expected);
         for _ in 0..MOST_PASSES {
             self.field_for(level, state, state.position + travel, dt, true)?;
             let (force, slope) = self.force_and_slope(level, state, travel, dt);
             let velocity = travel / dt;
-            let other = other_force(law, mass, state.position + 0.5 * travel, velocity, direction);
+            let other = mechanics.other_force(state.position + 0.5 * travel, velocity);
             let inertia = 2.0 * mass * (velocity - state.velocity) / dt;
             let imbalance = inertia - force - other.value;
             let stiffness = 2.0 * mass / (dt * dt) - slope - 0.5 * other.by_position - other.by_velocity / dt;
             let shift = -imbalance / stiffness;
             self.shift(level, state, travel + shift, shift);
             travel += shift;
-            let size = mass * law.gravity_m_per_s2.abs() + force.abs() + inertia.abs() + other.value.abs();
+            let size = mass * mechanics.law.gravity_m_per_s2.abs() + force.abs() + inertia.abs() + other.value.abs();
             if !shift.is_finite() {
                 return Err(SolveFault::NotFinite { what: "the mover's travel" });
             }
-            if self.imbalance_after(level, state, law, mass, travel, dt, direction) <= MOTION_LIMIT * size {
+            if self.imbalance_after(level, state, mechanics, travel, dt) <= MOTION_LIMIT * size {
                 return Ok(travel);
             }
         }
@@ -192,15 +209,13 @@ impl Stepper {
         &mut self,
         level: &MarchLevel<'_>,
         state: &State,
-        law: &crate::problem::Free,
-        mass: f64,
+        mechanics: &Mechanics<'_>,
         travel: f64,
         dt: f64,
-        direction: f64,
     ) -> f64 {
         self.equivalents_of(level, state, dt, 1);
-        let other = other_force(law, mass, state.position + 0.5 * travel, travel / dt, direction);
-        (2.0 * mass * (travel / dt - state.velocity) / dt - self.force(state, travel) - other.value).abs()
+        let other = mechanics.other_force(state.position + 0.5 * travel, travel / dt);
+        (2.0 * mechanics.mass * (travel / dt - state.velocity) / dt - self.force(state, travel) - other.value).abs()
     }
 
     /// Solves for the reaction at the middle with the mover ending at `position`; with its tangent where asked.
@@ -372,7 +387,7 @@ impl Stepper {
 }
 
 /// Sense of sliding: of the motion, or at rest of the driving force.
-fn sliding(law: &crate::problem::Free, mass: f64, state: &State) -> f64 {
+fn sliding(law: &Free, mass: f64, state: &State) -> f64 {
     if friction(law, mass) <= 0.0 {
         return 0.0;
     }

@@ -86,8 +86,8 @@ fn drag_by_lu(problem: &Problem, level: &SettledLevel, velocity: f64) -> f64 {
 }
 
 /// The same drag on the same grid by recurrence and by LU, at speeds below, at and above that of greatest drag. The
-/// recurrence ends at a residual of 1e-8 for the speed that it is made for, which bounds the drag's error there; at lower
-/// speeds it has long converged.
+/// recurrence ends at a residual of 1e-8 for the speed that it is made for, which bounds the drag's error there; at
+/// lower speeds it has long converged.
 #[test]
 fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
     const FASTEST: f64 = 60.0;
@@ -120,7 +120,8 @@ fn independent(operators: &Operators) -> CscCholesky<f64> {
     CscCholesky::factor(&CscMatrix::from(&entries)).unwrap()
 }
 
-/// The first-order reaction K^-1 C psi_0 by another library's Cholesky factor: its energy is the recurrence's first coefficient.
+/// The first-order reaction K^-1 C psi_0 by another library's Cholesky factor: its energy is the recurrence's first
+/// coefficient.
 #[test]
 fn an_independent_cholesky_gives_the_first_reaction() {
     for jacket in [None, Some(100.0)] {

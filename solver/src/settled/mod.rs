@@ -3,10 +3,16 @@
 //! K^-1 C is skew-adjoint in the inner product of K and its Krylov space does not depend on the speed: one Cholesky
 //! factorisation and one three-term recurrence give the drag at every speed.
 
-mod answer;
+mod balance;
+#[cfg(test)]
 mod cross_check;
+mod curve;
 mod level;
+mod levels;
 mod recurrence;
+mod steady;
 
-pub(crate) use answer::{curve, plan, steady};
+pub(crate) use curve::curve;
 pub(crate) use level::greatest_node;
+pub(crate) use levels::plan;
+pub(crate) use steady::steady;

@@ -1,0 +1,129 @@
+//! Drag against speed: every speed from the same recurrence.
+
+use super::balance::{cautions, three_forces};
+use super::level::SettledLevel;
+use super::levels::{Levels, Point, damping_at_rest, plain};
+use crate::band;
+use crate::fault::SolveFault;
+use crate::interpolate::greatest;
+use crate::monitor::Monitor;
+use crate::outcome::{Caution, DragCurve, DragPoint, Figure, Outcome, Stop, Trace};
+use crate::problem::Problem;
+use crate::regime::regime;
+use crate::target::{MOST_LEVELS, levels_wanted, may_add_level, verdict};
+
+/// How closely the critical speed is searched, relative.
+const SEARCH: f64 = 1.0e-7;
+
+/// Drag against speed.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    let mut count = levels_wanted(&problem.accuracy);
+    loop {
+        let outcome = curve_on(problem, speeds, count, monitor)?;
+        if outcome.accuracy.met || !may_add_level(&problem.accuracy, count, MOST_LEVELS) {
+            return Ok(outcome);
+        }
+        count += 1;
+    }
+}
+
+fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    let fastest = speeds.iter().copied().fold(0.0, f64::max);
+    let mut levels = Levels::new(problem, fastest, count, monitor)?;
+    let mut points = Vec::with_capacity(speeds.len());
+    for &speed in speeds {
+        points.push(curve_point(&levels, speed));
+    }
+    let mut cautions = cautions(problem);
+    let mut figures = vec![damping_at_rest(&levels, "damping_coefficient_zero_speed")];
+    figures.push(lag_time(&levels));
+    let mut forces = None;
+    if let Some(speed) = critical_speed(&levels, speeds) {
+        let at = levels.point(speed);
+        figures.insert(1, critical_figure(&levels, speed, &at));
+        figures.insert(2, plain("drag_max", "N", &at.drag, at.drag_band));
+        forces = Some(three_forces(problem, &mut levels, speed, &at)?);
+    } else {
+        cautions.push(Caution {
+            text:
+                "The greatest drag does not lie inside the range of speeds: critical_speed and drag_max are left out."
+                    .to_owned(),
+        });
+    }
+    let accuracy = verdict(&figures, problem.accuracy.target_relative, count);
+    monitor.progress(1.0, "drag against speed");
+    Ok(Outcome {
+        regime: regime(problem, &levels.placement, fastest),
+        grids: levels.reports(problem),
+        counters: levels.counters(),
+        cautions,
+        stop: Stop::Settled,
+        accuracy,
+        trace: Trace::default(),
+        curve: Some(DragCurve { points }),
+        figures,
+        forces,
+        ledger: None,
+        fields: None,
+    })
+}
+
+fn curve_point(levels: &Levels<'_>, speed: f64) -> DragPoint {
+    if speed <= 0.0 {
+        return DragPoint {
+            speed_m_per_s: 0.0,
+            drag_newton: 0.0,
+            band_newton: 0.0,
+            heat_watt: 0.0,
+            current_density_peak: 0.0,
+            current_density_band: 0.0,
+        };
+    }
+    let point = levels.point(speed);
+    DragPoint {
+        speed_m_per_s: speed,
+        drag_newton: point.drag.value,
+        band_newton: point.drag_band,
+        heat_watt: point.heat.value * speed,
+        current_density_peak: point.peak.value,
+        current_density_band: point.peak_band,
+    }
+}
+
+/// tau in drag ~ c (v - tau dv/dt) at low speed, s.
+fn lag_time(levels: &Levels<'_>) -> Figure {
+    let of = |l: &SettledLevel| l.lag_product() / l.damping_coefficient();
+    let ladder = levels.ladder(of);
+    let cut = levels.cut_change(ladder.value, of);
+    plain("lag_time", "s", &ladder, band::one_route(&ladder, cut, levels.residual(ladder.value)))
+}
+
+/// Speed of the greatest extrapolated drag, where it lies inside the range: golden section on the small problems.
+fn critical_speed(levels: &Levels<'_>, speeds: &[f64]) -> Option<f64> {
+    let mut sorted: Vec<f64> = speeds.iter().copied().filter(|&v| v > 0.0).collect();
+    sorted.sort_by(f64::total_cmp);
+    let drag = |v: f64| levels.ladder(|l| l.drag(v)).value;
+    let best = (0..sorted.len()).max_by(|&a, &b| drag(sorted[a]).total_cmp(&drag(sorted[b])))?;
+    if best + 1 == sorted.len() {
+        return None;
+    }
+    let low = if best > 0 { sorted[best - 1] } else { 0.0 };
+    let high = sorted[best + 1];
+    Some(greatest(drag, low, high, SEARCH * high))
+}
+
+/// The critical speed, with the band that the levels' own maxima leave.
+fn critical_figure(levels: &Levels<'_>, speed: f64, at: &Point) -> Figure {
+    let (low, high) = (0.5 * speed, 1.5 * speed);
+    let ladder = levels.ladder(|l| greatest(|v| l.drag(v), low, high, SEARCH * high));
+    // Near the maximum drag ~ drag_max (1 - ((v - vc) / s)^2): a change of the drag's slope moves the place.
+    let search = SEARCH * speed;
+    let relative = at.drag_band / at.drag.value.abs();
+    Figure {
+        value: speed,
+        ..plain("critical_speed", "m/s", &ladder, band::one_route(&ladder, 0.0, 0.0) + search + 2.0 * relative * speed)
+    }
+}
