@@ -1,9 +1,10 @@
 //! Bessel functions of order 0 and 1 for the exact solutions, by their integral representations.
 //!
 //! J_n(x) = (1/pi) int_0^pi cos(n t - x sin t) dt, I_n(x) = (1/pi) int_0^pi exp(x cos t) cos(n t) dt,
-//! K_n(x) = int_0^inf exp(-x cosh t) cosh(n t) dt (M. Abramowitz and I. A. Stegun, Handbook of Mathematical Functions,
-//! 1964, eqs 9.1.21, 9.6.19, 9.6.24; numbers of the equations from memory). The midpoint rule converges faster than any
-//! power on the periodic integrands, the trapezoidal rule on the one that dies out doubly exponentially.
+//! K_n(x) = int_0^inf exp(-x cosh t) cosh(n t) dt (M. Abramowitz and I. A. Stegun, Handbook of Mathematical
+//! Functions, 1964, eqs 9.1.21, 9.6.19, 9.6.24; numbers of the equations from memory). The midpoint rule converges
+//! faster than any power on the periodic integrands, the trapezoidal rule on the one that dies out doubly
+//! exponentially.
 
 use std::f64::consts::PI;
 

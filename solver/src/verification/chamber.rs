@@ -1,5 +1,5 @@
-//! A closed cylinder, psi = 0 on its axis, mantle and ends, filled at will: where exact solutions are held against the
-//! discrete operators.
+//! A closed cylinder, psi = 0 on its axis, mantle and ends, filled at will: where exact solutions are held against
+//! the discrete operators.
 
 use lenzbore_mesh::{Anchor, Grid, PlannedLine, Refinement, SizeLaw};
 
@@ -47,7 +47,8 @@ impl Chamber {
         Grid { r: self.r.nodes(refinement), z: self.z.nodes(refinement) }
     }
 
-    /// Operators with the filling of each cell by its centre; every cell counts as wall that conducts or is permeable.
+    /// Operators with the filling of each cell by its centre; every cell counts as wall that conducts or is
+    /// permeable.
     pub(super) fn operators(&self, refinement: Refinement, filling: impl Fn(f64) -> Filling) -> Operators {
         let grid = self.grid(refinement);
         let materials = materials(&grid, filling);

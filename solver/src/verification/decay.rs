@@ -1,7 +1,7 @@
 //! Order in time: a mode of a conducting chamber dies out, stepped by the implicit midpoint rule as a march does it.
 //!
-//! A = J1(lambda r) sin(k z) exp(-g t), g = (lambda^2 + k^2)/(mu0 sigma), exact by separation of variables. On a grid the mode is the
-//! eigenvector of K psi = g G psi next to it, and dies out exactly as exp(-g_grid t).
+//! A = J1(lambda r) sin(k z) exp(-g t), g = (lambda^2 + k^2)/(mu0 sigma), exact by separation of variables. On a
+//! grid the mode is the eigenvector of K psi = g G psi next to it, and dies out exactly as exp(-g_grid t).
 
 use std::f64::consts::PI;
 

@@ -1,8 +1,10 @@
 //! Grids must be similar: levels that are each built by themselves break the even powers.
 //!
 //! Dipole in an endless tube at 5 m/s by sparse LU, on similar levels and on two kinds that look alike but aren't:
-//! - planned alone: every size of the size law divided by f, cells counted and rounded to whole numbers on each level anew;
-//! - grown alone: first cells h/f that grow by the f-th root of one ratio until they pass the end, then stretched to fit.
+//! - planned alone: every size of the size law divided by f, cells counted and rounded to whole numbers on each
+//! level anew;
+//! - grown alone: first cells h/f that grow by the f-th root of one ratio until they pass the end, then stretched to
+//! fit.
 
 use std::f64::consts::PI;
 
@@ -44,7 +46,8 @@ fn planned_alone(refinement: Refinement) -> Grid {
     Grid { r, z }
 }
 
-/// Distances of nodes from a segment's fine end, 0 excluded: by the first cell at f = 1, the growth ratio and the length.
+/// Distances of nodes from a segment's fine end, 0 excluded: by the first cell at f = 1, the growth ratio and the
+/// length.
 type Growth = fn(first: f64, ratio: f64, length: f64, refinement: Refinement) -> Vec<f64>;
 
 /// Even count of cells at f = 1, then x(i/f) of one map: (ratio^(i/f) - 1) / (ratio^N - 1).
@@ -126,8 +129,8 @@ impl Levels {
         self.0.iter().map(|l| l.0).collect()
     }
 
-    /// The settled band's half-width over the first `count` levels, without the shares of boundary and solver, which all
-    /// have alike.
+    /// The settled band's half-width over the first `count` levels, without the shares of boundary and solver, which
+    /// all have alike.
     fn band(&self, count: usize) -> f64 {
         let ladder =
             |of: fn(&(f64, f64)) -> f64| Ladder::new(&factors(count), self.0[..count].iter().map(of).collect());

@@ -5,8 +5,8 @@ use crate::constants::MU0;
 use crate::extrapolate::weights;
 
 /// Zero-speed damping coefficient of a dipole m on the axis of a tube from a to b:
-/// (15 mu0^2 m^2 sigma/1024)(1/a^3 - 1/b^3). Derived here from int x^4 K1(x)^2 dx = 45 pi^2/512; its thin-wall limit is
-/// 45 mu0^2 m^2 sigma w/(1024 a^4) (W. M. Saslow, Am. J. Phys. 60, 693-711 (1992); citation from memory).
+/// (15 mu0^2 m^2 sigma/1024)(1/a^3 - 1/b^3). Derived here from int x^4 K1(x)^2 dx = 45 pi^2/512; its thin-wall limit
+/// is 45 mu0^2 m^2 sigma w/(1024 a^4) (W. M. Saslow, Am. J. Phys. 60, 693-711 (1992); citation from memory).
 fn thick_tube(a: f64, b: f64, sigma: f64) -> f64 {
     15.0 * MU0 * MU0 * sigma / 1024.0 * (a.powi(-3) - b.powi(-3))
 }
@@ -37,8 +37,9 @@ fn slow_drag_over_speed_is_the_coefficient_at_rest() {
     assert!((value(&slow, "damping_coefficient") / thick_tube(0.0105, 0.0125, 58e6) - 1.0).abs() < 3e-7);
 }
 
-/// Every thin wall meets the closed form of its own thickness; extrapolated to thickness zero in w/a, w/a squared and cubed,
-/// drag / speed meets the thin-wall law. What extrapolation leaves is 7 (w/a)^4 over the four walls: 2.8e-7.
+/// Every thin wall meets the closed form of its own thickness; extrapolated to thickness zero in w/a, w/a squared
+/// and cubed, drag / speed meets the thin-wall law. What extrapolation leaves is 7 (w/a)^4 over the four walls:
+/// 2.8e-7.
 #[test]
 fn drag_over_speed_goes_to_the_thin_wall_law() {
     let ratios = [0.04, 0.02, 0.01, 0.005];

@@ -1,8 +1,9 @@
 //! Order in space of K - v C: a conductor that fills the chamber and moves through a field.
 //!
 //! A = J1(lambda r) g(z) with g'' + P g' - lambda^2 g = -q, P = mu0 sigma v, g = 0 at both ends:
-//! g = q/lambda^2 + c1 e^(s1 z) + c2 e^(s2 z), s = (-P +- sqrt(P^2 + 4 lambda^2))/2. One exponential is the steep layer upstream, the other
-//! the slow decay of the wake; the source is J = (q/mu0) J1(lambda r). Exact by separation of variables (derived here).
+//! g = q/lambda^2 + c1 e^(s1 z) + c2 e^(s2 z), s = (-P +- sqrt(P^2 + 4 lambda^2))/2. One exponential is the steep
+//! layer upstream, the other the slow decay of the wake; the source is J = (q/mu0) J1(lambda r). Exact by separation
+//! of variables (derived here).
 
 use lenzbore_mesh::Refinement;
 
@@ -16,7 +17,8 @@ use crate::constants::MU0;
 fn profile(peclet_per_m: f64, lambda: f64) -> impl Fn(f64) -> f64 {
     let root = (peclet_per_m * peclet_per_m + 4.0 * lambda * lambda).sqrt();
     let (up, down) = (0.5 * (root - peclet_per_m), 0.5 * (-root - peclet_per_m));
-    // e^(up z) is measured from the far end, so that nothing overflows: c1 e^(up (z - Z)) + c2 e^(down z) = -1 at both ends.
+    // e^(up z) is measured from the far end, so that nothing overflows: c1 e^(up (z - Z)) + c2 e^(down z) = -1 at
+    // both ends.
     let (a, b) = ((-up * LENGTH).exp(), (down * LENGTH).exp());
     let c1 = -(1.0 - b) / (1.0 - a * b);
     let c2 = -(1.0 - a) / (1.0 - a * b);

@@ -5,7 +5,8 @@ use lenzbore_mesh::Refinement;
 use super::chamber::{Chamber, EMPTY, FACES, Filling, at_nodes, at_unknowns};
 use crate::operators::Operators;
 
-/// Largest |K psi| relative to the terms summed, over unknowns whose neighbours are unknowns or lie on the axis (psi = 0).
+/// Largest |K psi| relative to the terms summed, over unknowns whose neighbours are unknowns or lie on the axis (psi
+/// = 0).
 fn rest(operators: &Operators, psi: impl Fn(f64, f64) -> f64) -> f64 {
     let grid = &operators.grid;
     let values = at_unknowns(grid, psi);
@@ -22,8 +23,8 @@ fn rest(operators: &Operators, psi: impl Fn(f64, f64) -> f64) -> f64 {
     worst
 }
 
-/// psi = B0 r^2/2 (uniform axial field) and psi = r^2 z (B_z = 2 z, B_r = -r) make no current: exact identities of the
-/// flux-exact scheme, so only round-off may be left.
+/// psi = B0 r^2/2 (uniform axial field) and psi = r^2 z (B_z = 2 z, B_r = -r) make no current: exact identities of
+/// the flux-exact scheme, so only round-off may be left.
 #[test]
 fn a_uniform_field_and_a_linear_one_leave_round_off() {
     let chamber = Chamber::new();
@@ -35,8 +36,8 @@ fn a_uniform_field_and_a_linear_one_leave_round_off() {
     }
 }
 
-/// H_z uniform through a shell of permeability 100: psi = integral of mu H r dr is exact too, because the scheme keeps
-/// H_z = (1/mu)(1/r) dpsi/dr as one flux across the faces.
+/// H_z uniform through a shell of permeability 100: psi = integral of mu H r dr is exact too, because the scheme
+/// keeps H_z = (1/mu)(1/r) dpsi/dr as one flux across the faces.
 #[test]
 fn a_uniform_field_strength_passes_a_permeable_shell() {
     let [inner, outer] = FACES;

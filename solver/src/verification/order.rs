@@ -1,8 +1,8 @@
 //! Observed orders of convergence, before and after extrapolation.
 //!
 //! Where a level's error is sum c_p h^p over even p, extrapolating a run of n neighbouring levels leaves
-//! +- c_2n (h_1 h_2 ... h_n)^2: the error falls as the 2n-th power of the geometric mean of their cell sizes. Orders are
-//! read between neighbouring runs by that mean.
+//! +- c_2n (h_1 h_2 ... h_n)^2: the error falls as the 2n-th power of the geometric mean of their cell sizes. Orders
+//! are read between neighbouring runs by that mean.
 
 use lenzbore_mesh::Refinement;
 
@@ -13,7 +13,8 @@ pub(super) fn factors(levels: usize) -> Vec<f64> {
     Refinement::first(levels).iter().map(|f| f.factor()).collect()
 }
 
-/// Relative root-mean-square errors of `levels` (values at the same places) after extrapolating every run of `run` levels.
+/// Relative root-mean-square errors of `levels` (values at the same places) after extrapolating every run of `run`
+/// levels.
 pub(super) fn field_errors(levels: &[Vec<f64>], exact: &[f64], run: usize) -> Vec<f64> {
     let factors = factors(levels.len());
     let size = exact.iter().map(|x| x * x).sum::<f64>().sqrt();
@@ -50,7 +51,8 @@ pub(super) fn overall_order(errors: &[f64], run: usize) -> f64 {
     (errors[0] / errors[last]).ln() / (finer[last] - finer[0])
 }
 
-/// What must hold after extrapolating runs of `run` levels: the last order within `order`, the last error below `bound`.
+/// What must hold after extrapolating runs of `run` levels: the last order within `order`, the last error below
+/// `bound`.
 pub(super) struct Wanted {
     pub(super) run: usize,
     pub(super) order: std::ops::RangeInclusive<f64>,
@@ -58,14 +60,15 @@ pub(super) struct Wanted {
 }
 
 impl Wanted {
-    /// Orders 2, 4, 6 for runs of 1, 2, 3 levels, with the margins of the requirement (0.1, 0.4 and, for the last, 0.8).
+    /// Orders 2, 4, 6 for runs of 1, 2, 3 levels, with the margins of the requirement (0.1, 0.4 and, for the last,
+    /// 0.8).
     pub(super) fn even(bounds: &[f64]) -> Vec<Self> {
         let ranges = [1.9..=2.1, 3.6..=4.4, 5.2..=6.8];
         bounds.iter().zip(ranges).enumerate().map(|(k, (&bound, order))| Self { run: k + 1, order, bound }).collect()
     }
 
-    /// Orders 2 and 4 for runs of 1 and 2 levels, and after runs of 3 a bound alone: where the error is so small that its next
-    /// terms, or the boundary, hide the order 6.
+    /// Orders 2 and 4 for runs of 1 and 2 levels, and after runs of 3 a bound alone: where the error is so small
+    /// that its next terms, or the boundary, hide the order 6.
     pub(super) fn even_to_four(bounds: &[f64; 3]) -> Vec<Self> {
         let mut wanted = Self::even(bounds);
         wanted[2].order = f64::NEG_INFINITY..=f64::INFINITY;

@@ -1,7 +1,7 @@
 //! Order of marched figures: a traverse through a short tube on all five levels, steps refined with the grid.
 //!
-//! No closed form exists, so the truth is the extrapolation over all five levels. It is good enough to show orders 2 and 4;
-//! after two extrapolations about as much is left as the truth itself may err.
+//! No closed form exists, so the truth is the extrapolation over all five levels. It is good enough to show orders 2
+//! and 4; after two extrapolations about as much is left as the truth itself may err.
 
 use super::cases::{answer, figure, finite, layer, magnet, problem, traverse};
 use super::order::{Wanted, assert_orders};

@@ -1,9 +1,10 @@
 //! Order in space across jumps of the permeability, by the reaction potential as the solver uses it.
 //!
-//! In a field psi_s = r I1(k r) sin(k z) (no source inside the chamber) a shell of permeability mu_r from r = a to b adds psi_r. In the
-//! bore, the shell and outside, A is a combination of I1(k r) and K1(k r); A and (1/mu)(dA/dr + A/r) are continuous at the faces,
-//! psi_r is zero on the axis and at r = R. Four coefficients follow from a four by four system (derived here). The pitfall that
-//! this guards against is a scheme which splits H_z into two terms and loses the jump of one at the faces: it is right at mu_r = 1 only.
+//! In a field psi_s = r I1(k r) sin(k z) (no source inside the chamber) a shell of permeability mu_r from r = a to b
+//! adds psi_r. In the bore, the shell and outside, A is a combination of I1(k r) and K1(k r); A and (1/mu)(dA/dr +
+//! A/r) are continuous at the faces, psi_r is zero on the axis and at r = R. Four coefficients follow from a four by
+//! four system (derived here). The pitfall that this guards against is a scheme which splits H_z into two terms and
+//! loses the jump of one at the faces: it is right at mu_r = 1 only.
 
 use std::f64::consts::PI;
 

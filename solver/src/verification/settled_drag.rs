@@ -1,9 +1,9 @@
 //! Order of the settled drag through the public interface, against the exact integral.
 //!
-//! Dipole of 1 A m2 in an endless tube, radii 10.5 and 12.5 mm, 58 MS/m. F = (mu0 m^2/2 pi^2) int k^3 Im Gamma dk, Gamma(k) from the
-//! matching of modified Bessel functions at both faces (after M. H. Partovi and E. J. Morris, "Electrodynamics of a magnet moving
-//! through a conducting pipe", Can. J. Phys. 84, 253-271 (2006); matching derived anew). Computed with mpmath 1.3 at 25
-//! digits, independently of this program.
+//! Dipole of 1 A m2 in an endless tube, radii 10.5 and 12.5 mm, 58 MS/m. F = (mu0 m^2/2 pi^2) int k^3 Im Gamma dk,
+//! Gamma(k) from the matching of modified Bessel functions at both faces (after M. H. Partovi and E. J. Morris,
+//! "Electrodynamics of a magnet moving through a conducting pipe", Can. J. Phys. 84, 253-271 (2006); matching
+//! derived anew). Computed with mpmath 1.3 at 25 digits, independently of this program.
 
 use super::cases::{answer, dipole, endless, figure, layer, problem};
 use super::order::{Wanted, assert_orders};

@@ -24,7 +24,8 @@ fn levels(current: impl Fn(f64, f64) -> f64, exact: impl Fn(f64, f64) -> f64) ->
     (levels, truth)
 }
 
-/// A = J1(lambda r) sin(k z) is a mode of the cylinder: J = (lambda^2 + k^2) A / mu0. Exact by separation of variables.
+/// A = J1(lambda r) sin(k z) is a mode of the cylinder: J = (lambda^2 + k^2) A / mu0. Exact by separation of
+/// variables.
 #[test]
 fn a_bessel_mode_converges_with_orders_2_4_6() {
     let (lambda, k) = (FIRST_ZERO_OF_J1 / RADIUS, PI / LENGTH);
@@ -33,8 +34,8 @@ fn a_bessel_mode_converges_with_orders_2_4_6() {
     assert_field_orders("Bessel mode", &found, &exact, &Wanted::even(&[2e-3, 4.5e-6, 2.7e-8]));
 }
 
-/// A = r (R^2 - r^2)(Z^2 - s^2), s from the middle, Z half the length: mu0 J = 8 r (Z^2 - s^2) + 2 r (R^2 - r^2). A polynomial
-/// that behaves as r at the axis, manufactured by applying the differential operator by hand.
+/// A = r (R^2 - r^2)(Z^2 - s^2), s from the middle, Z half the length: mu0 J = 8 r (Z^2 - s^2) + 2 r (R^2 - r^2). A
+/// polynomial that behaves as r at the axis, manufactured by applying the differential operator by hand.
 #[test]
 fn a_polynomial_converges_with_orders_2_4_6() {
     let half = 0.5 * LENGTH;

@@ -1,8 +1,9 @@
 //! Steps must be chosen once and replayed: a ladder of step sizes chosen anew on each level breaks the even powers.
 //!
-//! A magnet passes a short tube at uniform speed on one grid; steps are long outside and short inside. The work against the
-//! drag on levels dt/f is extrapolated, once with the coarsest level's pairs of steps replayed, once with pairs chosen on each level by the
-//! same rule. The truth is the extrapolation over five much finer replayed levels.
+//! A magnet passes a short tube at uniform speed on one grid; steps are long outside and short inside. The work
+//! against the drag on levels dt/f is extrapolated, once with the coarsest level's pairs of steps replayed, once
+//! with pairs chosen on each level by the same rule. The truth is the extrapolation over five much finer replayed
+//! levels.
 
 use std::f64::consts::PI;
 
@@ -31,8 +32,8 @@ fn passage() -> Problem {
     problem(wall, vec![magnet(0.0, 5.0, 6.0, 1.2, 0.0)], traverse(SPEED, FROM * 1e3, UNTIL * 1e3), 3)
 }
 
-/// Lengths of the pairs of steps that cover the passage, as fractions 2^-k of it: each the longest that begins at a whole multiple of
-/// itself and keeps its two steps within the stride, which grows with the distance from the tube.
+/// Lengths of the pairs of steps that cover the passage, as fractions 2^-k of it: each the longest that begins at a
+/// whole multiple of itself and keeps its two steps within the stride, which grows with the distance from the tube.
 fn pairs(finer: f64) -> Vec<f64> {
     let travel = FROM - UNTIL;
     let (mut gone, mut pairs) = (0.0_f64, Vec::new());
@@ -76,7 +77,8 @@ impl Tube {
     }
 
     /// Work against the drag, J, where each of `pairs` is passed in `steps` equal steps:
-    /// (2 G/dt + K) psi_mid = (2 G/dt)(y - mean psi_s), y <- 2 (psi_mid + mean psi_s) - y, W = -2 pi sum I . (psi_s after - before).
+    /// (2 G/dt + K) psi_mid = (2 G/dt)(y - mean psi_s), y <- 2 (psi_mid + mean psi_s) - y, W = -2 pi sum I . (psi_s
+    /// after - before).
     fn work(&self, pairs: &[f64], steps: usize) -> f64 {
         let (wall, n) = (&self.operators.wall, self.operators.unknowns());
         let pattern = Pattern::new(&self.operators.stiffness).unwrap();

@@ -34,8 +34,8 @@ fn drag_is_even_in_north_and_scales_as_remanence_squared() {
     }
 }
 
-/// The force turns with the velocity: drag, positive against the motion, stays. The mover is no mirror image of itself: in an endless wall
-/// the drag depends on the square of its field's axial spectrum alone, which has no sense.
+/// The force turns with the velocity: drag, positive against the motion, stays. The mover is no mirror image of
+/// itself: in an endless wall the drag depends on the square of its field's axial spectrum alone, which has no sense.
 #[test]
 fn drag_is_odd_in_speed_even_for_a_lopsided_mover() {
     let (up, down) = (answer(&base(4.0)), answer(&base(-4.0)));
@@ -70,7 +70,8 @@ fn drag_depends_on_conductivity_times_speed() {
     }
 }
 
-/// All lengths times c at the same remanence, speed divided by c: the flux density stays, the force goes with the area.
+/// All lengths times c at the same remanence, speed divided by c: the flux density stays, the force goes with the
+/// area.
 #[test]
 fn drag_scales_with_the_area_of_similar_assemblies() {
     let (original, c) = (base(4.0), 2.5);

@@ -1,4 +1,5 @@
-//! K - v C by sparse LU, with its own C: the way to settled fields that shares nothing with the recurrence but K and G.
+//! K - v C by sparse LU, with its own C: the way to settled fields that shares nothing with the recurrence but K and
+//! G.
 
 use faer::linalg::solvers::Solve;
 use faer::sparse::linalg::solvers::Lu;
