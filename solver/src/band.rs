@@ -7,8 +7,11 @@
 //! E_(n-1) the extrapolation without the coarsest level. c = 0.75 belongs to the grid rule of this crate: both were fixed
 //! together against exact integrals, and change together. A figure with one route only takes the whole first
 //! difference that extrapolation leaves, by its own factor; a local figure (peak current density) five of it.
+//!
+//! Where the levels converge more slowly than even powers would, the step counts ten times and a caution says so.
 
 use crate::extrapolate::{even_powers, weights};
+use crate::outcome::Caution;
 
 /// c of the rule.
 const CAUTION: f64 = 0.75;
@@ -29,12 +32,60 @@ pub(crate) struct Ladder {
     pub(crate) step: f64,
     /// The levels' own values.
     pub(crate) levels: Vec<f64>,
+    /// Observed order of the levels, where it can be read and is lower than the powers assumed.
+    pub(crate) low_order: Option<f64>,
+}
+
+/// Observed order below which the assumed even powers are in doubt.
+const LEAST_ORDER: f64 = 1.7;
+/// The same for once-extrapolated values (four levels and more).
+const LEAST_SECOND_ORDER: f64 = 3.0;
+/// How much wider the band becomes then.
+const DOUBT: f64 = 10.0;
+
+/// The order p with (F1 - F2) / (F2 - F3) = (f1^-p - f2^-p) / (f2^-p - f3^-p), by bisection in 0.05 .. 12; `None` where
+/// differences change sign or lie in the round-off.
+fn observed_order(factors: &[f64], values: &[f64]) -> Option<f64> {
+    let (f, v) = (factors.last_chunk::<3>()?, values.last_chunk::<3>()?);
+    let (first, second) = (v[0] - v[1], v[1] - v[2]);
+    let noise = 1.0e-10 * v[2].abs();
+    if first * second <= 0.0 || second.abs() <= noise {
+        return None;
+    }
+    let ratio = |p: f64| (f[0].powf(-p) - f[1].powf(-p)) / (f[1].powf(-p) - f[2].powf(-p));
+    let (mut low, mut high) = (0.05, 12.0);
+    for _ in 0..60 {
+        let middle = 0.5 * (low + high);
+        if ratio(middle) < first / second { low = middle } else { high = middle }
+    }
+    Some(0.5 * (low + high))
+}
+
+/// The observed order where it is lower than even powers give: of the levels, or of their once-extrapolated values.
+fn low_order(factors: &[f64], levels: &[f64]) -> Option<f64> {
+    let order = observed_order(factors, levels).filter(|&p| p < LEAST_ORDER);
+    if order.is_some() || levels.len() < 4 {
+        return order;
+    }
+    let once = |k: usize| {
+        let w = weights(&factors[k..k + 2], &[2.0]);
+        w[0] * levels[k] + w[1] * levels[k + 1]
+    };
+    let extrapolated: Vec<f64> = (0..levels.len() - 1).map(once).collect();
+    let means: Vec<f64> = factors.windows(2).map(|f| (f[0] * f[1]).sqrt()).collect();
+    observed_order(&means, &extrapolated).filter(|&p| p < LEAST_SECOND_ORDER)
 }
 
 impl Ladder {
     /// Extrapolates `levels` at refinement `factors`, at least two.
     pub(crate) fn new(factors: &[f64], levels: Vec<f64>) -> Self {
-        Self::with_powers(factors, levels, &even_powers(factors.len()))
+        let low_order = low_order(factors, &levels);
+        Self { low_order, ..Self::with_powers(factors, levels, &even_powers(factors.len())) }
+    }
+
+    /// The step that the bands take: widened where the observed order is off.
+    fn doubted_step(&self) -> f64 {
+        if self.low_order.is_some() { DOUBT * self.step } else { self.step }
     }
 
     /// The same where the error runs in other powers of the cell size.
@@ -49,14 +100,22 @@ impl Ladder {
             // Two high orders may agree by accident: an earlier step, less what a level usually gains, counts too.
             step = step.max(LEVEL_GAIN * (without(1) - without(2)).abs());
         }
-        Self { value, step, levels }
+        Self { value, step, levels, low_order: None }
     }
 }
 
 /// Half-width for a figure with two routes. `cut` is the change by cutting the domain to half, `residual` the solver's, absolute.
 pub(crate) fn two_routes(first: &Ladder, second: &Ladder, cut: f64, residual: f64) -> f64 {
     let apart = (first.value - second.value).abs();
-    CAUTION * (apart + STEP_SHARE * first.step.max(second.step) + cut.abs()) + residual.abs()
+    CAUTION * (apart + STEP_SHARE * first.doubted_step().max(second.doubted_step()) + cut.abs()) + residual.abs()
+}
+
+/// What reading a field between nodes may add to a force route, relative.
+const READING: f64 = 3.0e-6;
+
+/// Half-width for a force route that is compared with the others: its own step, and what reading it between nodes adds.
+pub(crate) fn route(figure: &Ladder) -> f64 {
+    one_route(figure, 0.0, READING * figure.value)
 }
 
 /// Steps that count for a local figure (a peak in space or time).
@@ -69,5 +128,15 @@ pub(crate) fn local(figure: &Ladder, cut: f64, residual: f64) -> f64 {
 
 /// Half-width for a figure with one route.
 pub(crate) fn one_route(figure: &Ladder, cut: f64, residual: f64) -> f64 {
-    LONE_STEP_SHARE * figure.step + CAUTION * cut.abs() + residual.abs()
+    LONE_STEP_SHARE * figure.doubted_step() + CAUTION * cut.abs() + residual.abs()
+}
+
+/// The caution of a figure whose levels converge too slowly.
+pub(crate) fn order_caution(name: &str, ladder: &Ladder) -> Option<Caution> {
+    ladder.low_order.map(|p| Caution {
+        text: format!(
+            "{name}: the grid levels converge with order {p:.1}, lower than the even powers that the extrapolation removes; \
+             its band is widened for that."
+        ),
+    })
 }

@@ -7,7 +7,7 @@ use lenzbore_mesh::Grid;
 
 use crate::constants::MU0;
 use crate::interpolate::{ALONG_POINTS, POINTS, Stencil};
-use crate::placement::{MoverSide, Placement};
+use crate::placement::{MoverSide, Placement, StressFace};
 use crate::problem::{Mover, Problem};
 use crate::sources::{AxialField, Source};
 
@@ -80,8 +80,8 @@ const STRESS_REACH: f64 = 16.0;
 /// Axial force on the mover by the Maxwell stress on the wall's faces, its reference point at `position`, N.
 ///
 /// F = (2 pi R / mu0) integral of (B_sr B_rz + B_rr B_sz) dz over a cylinder around the mover (with the other sign inside
-/// it), by the trapezoidal rule over the nodes: the mover's own field s exact, the reaction field r from
-/// high-order stencils on the air side of the face. Products of either field with itself carry no net force.
+/// it), by the trapezoidal rule over the nodes, the mover's own field s exact. Products of either field with itself carry no
+/// net force.
 pub(crate) fn by_stress(
     grid: &Grid,
     psi_reaction: &[f64],
@@ -89,31 +89,71 @@ pub(crate) fn by_stress(
     placement: &Placement,
     position: f64,
 ) -> f64 {
-    let (r, z) = (grid.r.nodes(), grid.z.nodes());
+    let z = grid.z.nodes();
     let reach = STRESS_REACH * placement.scale_m;
-    let first = grid.z.nearest(position + placement.lowest_m - reach);
-    let last = grid.z.nearest(position + placement.highest_m + reach);
+    let first = grid.z.nearest(position + placement.lowest_m - reach).max(1);
+    let last = grid.z.nearest(position + placement.highest_m + reach).min(grid.nz() - 2);
     let mut force = 0.0;
     for face in &placement.stress_faces {
-        let i = grid.r.nearest(face.face_m);
-        let (from, sign) = match face.mover {
-            MoverSide::Inside => (i.saturating_sub(POINTS - 1), 1.0),
-            MoverSide::Outside => (i, -1.0),
-        };
-        let across = Stencil::<POINTS>::over(&r[from..from + POINTS], face.radius_m);
-        let at_row = |j: usize| across.value_of(&psi_reaction[grid.node(from, j)..]);
+        let reader = FaceReader::new(grid, face);
         let mut sum = 0.0;
         for j in first..=last {
-            let slope_r = across.slope_of(&psi_reaction[grid.node(from, j)..]);
-            let along = Stencil::<ALONG_POINTS>::at(z, z[j]);
-            let slope_z: f64 = along.slope.iter().enumerate().map(|(n, w)| w * at_row(along.first + n)).sum();
+            let (slope_r, slope_z) = reader.slopes(psi_reaction, j);
             let own_r = problem.mover.flux_density_r(face.radius_m, z[j] - position);
             let own_z = problem.mover.flux_density_z(face.radius_m, z[j] - position);
             sum += grid.z.dual(j) * (own_r * slope_r - slope_z * own_z);
         }
+        let sign = if face.mover == MoverSide::Inside { 1.0 } else { -1.0 };
         force += sign * 2.0 * PI / MU0 * sum;
     }
     force
+}
+
+/// Reads d psi/dr and d psi/dz of the reaction on the air side of a wall face.
+struct FaceReader<'g> {
+    grid: &'g Grid,
+    /// Node row of the face, and its neighbour in the air.
+    face: usize,
+    air: usize,
+    /// Off the face: first of the rows in the air, and the stencil across them.
+    across: Option<(usize, Stencil<POINTS>)>,
+}
+
+impl<'g> FaceReader<'g> {
+    fn new(grid: &'g Grid, face: &StressFace) -> Self {
+        let r = grid.r.nodes();
+        let i = grid.r.nearest(face.face_m);
+        let (air, from) = match face.mover {
+            MoverSide::Inside => (i.saturating_sub(1), i.saturating_sub(POINTS - 1)),
+            MoverSide::Outside => (i + 1, i),
+        };
+        let off_face = (face.radius_m - face.face_m).abs() > 0.0;
+        let across = off_face.then(|| (from, Stencil::over(&r[from..from + POINTS], face.radius_m)));
+        Self { grid, face: i, air, across }
+    }
+
+    fn slopes(&self, psi: &[f64], j: usize) -> (f64, f64) {
+        let z = self.grid.z.nodes();
+        let central = |value: &dyn Fn(usize) -> f64| (value(j + 1) - value(j - 1)) / (z[j + 1] - z[j - 1]);
+        if let Some((from, across)) = &self.across {
+            let row = |j: usize| across.value_of(&psi[self.grid.node(*from, j)..]);
+            return (across.slope_of(&psi[self.grid.node(*from, j)..]), central(&row));
+        }
+        let row = |j: usize| psi[self.grid.node(self.face, j)];
+        (self.slope_at_face(psi, j), central(&row))
+    }
+
+    /// d psi/dr on the face's air side as the scheme itself sees it: the flux through the annulus next to the face, carried over
+    /// half a cell by dB_z/dr = dB_r/dz. Its error runs in even powers.
+    fn slope_at_face(&self, psi: &[f64], j: usize) -> f64 {
+        let (r, z) = (self.grid.r.nodes(), self.grid.z.nodes());
+        let (here, there) = (r[self.face], r[self.air]);
+        let at = |i: usize, j: usize| psi[self.grid.node(i, j)];
+        let flux = 2.0 * (at(self.face, j) - at(self.air, j)) / ((here - there) * (here + there));
+        let rise = (at(self.face, j + 1) - at(self.face, j)) / (z[j + 1] - z[j]);
+        let fall = (at(self.face, j) - at(self.face, j - 1)) / (z[j] - z[j - 1]);
+        here * flux - 0.5 * (here - there) * (rise - fall) / self.grid.z.dual(j)
+    }
 }
 
 /// Flux density (B_r, B_z) at the centre of cell (i, j) from differences of psi, T.

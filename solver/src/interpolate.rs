@@ -134,6 +134,7 @@ mod tests {
         let x: Vec<f64> = (0..40).map(|k| f64::from(k) * 0.1).collect();
         let y: Vec<f64> = x.iter().map(|x| -2.0 * (-(x - 1.234) * (x - 1.234)).exp()).collect();
         let (s, v) = peak(&x, &y);
-        assert!((s - 1.234).abs() < 1e-5 && (v - 2.0).abs() < 1e-8, "{s} {v}");
+        // Six points: |f^(6)| h^6 225 / (64 720), f^(6) up to 240 for this bump and h = 0.1, is 1.2e-6.
+        assert!((s - 1.234).abs() < 1e-4 && (v - 2.0).abs() < 1.2e-6, "{s} {v}");
     }
 }

@@ -13,7 +13,7 @@ pub(crate) enum MoverSide {
 }
 
 /// A wall face across a running gap, and the radius at which the Maxwell stress is taken: the face itself, where the mover's
-/// field is at its smoothest; mid-gap before a permeable wall, whose corners make the field at the face singular.
+/// field is at its smoothest; mid-gap before a finite permeable wall, whose corners make the field at the face singular.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(crate) struct StressFace {
     pub(crate) face_m: f64,
@@ -123,7 +123,8 @@ fn stress_faces(problem: &Problem) -> Vec<StressFace> {
         reach = match reach {
             Some((edge, was_wall)) if was_wall != wall => {
                 let (face_m, mover) = if wall { (inner, MoverSide::Inside) } else { (edge, MoverSide::Outside) };
-                let radius_m = if problem.wall.is_permeable() { 0.5 * (edge + inner) } else { face_m };
+                let corners = problem.wall.is_permeable() && problem.wall.length_m().is_some();
+                let radius_m = if corners { 0.5 * (edge + inner) } else { face_m };
                 faces.push(StressFace { face_m, radius_m, mover });
                 Some((outer, wall))
             }

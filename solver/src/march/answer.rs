@@ -179,7 +179,7 @@ impl<'p> Journey<'p> {
         let corners = corner_powers(&self.problem.wall, factors.len());
         let routes = self.routes(records, &factors);
         let margins = Margins { residual, apart: routes.apart(), corners };
-        let figures = combine(&factors, &by_level, cut.as_deref(), &margins);
+        let (figures, slow) = combine(&factors, &by_level, cut.as_deref(), &margins);
         let trace = self.trace(records, &factors);
         let peak_time = figures.iter().find(|f| f.name == "drag_peak").and_then(|f| f.location?.t_s);
         let ledger = self.ledger(records, &factors);
@@ -194,7 +194,7 @@ impl<'p> Journey<'p> {
             regime: regime(self.problem, &self.placement, self.regime_speed(&trace)),
             grids: records.levels.iter().map(|l| l.report.clone()).collect(),
             counters,
-            cautions: self.cautions(stop, &figures),
+            cautions: self.cautions(stop, &figures).into_iter().chain(slow).collect(),
             stop,
             accuracy,
             trace,

@@ -2,7 +2,7 @@
 
 use super::figures::LevelFigure;
 use crate::band::{self, Ladder};
-use crate::outcome::{Basis, Figure};
+use crate::outcome::{Basis, Caution, Figure};
 use crate::target::is_local;
 
 /// What else goes into the bands of a march.
@@ -22,9 +22,9 @@ pub(super) fn combine(
     by_level: &[Vec<LevelFigure>],
     cut: Option<&[LevelFigure]>,
     margins: &Margins,
-) -> Vec<Figure> {
-    let Some(finest) = by_level.last() else { return Vec::new() };
-    let mut figures = Vec::new();
+) -> (Vec<Figure>, Vec<Caution>) {
+    let (mut figures, mut cautions) = (Vec::new(), Vec::new());
+    let Some(finest) = by_level.last() else { return (figures, cautions) };
     for figure in finest {
         let find = |list: &[LevelFigure]| list.iter().find(|f| f.name == figure.name).map(|f| f.value);
         let values: Option<Vec<f64>> = by_level.iter().map(|list| find(list)).collect();
@@ -38,6 +38,9 @@ pub(super) fn combine(
         let rule = if is_local(figure.name) { band::local } else { band::one_route };
         let apart = if is_force_peak(figure.name) { margins.apart } else { 0.0 };
         let half_width = rule(&ladder, change, (margins.residual + apart) * ladder.value.abs());
+        if !is_local(figure.name) {
+            cautions.extend(band::order_caution(figure.name, &ladder));
+        }
         figures.push(Figure {
             name: figure.name.to_owned(),
             value: ladder.value,
@@ -48,7 +51,7 @@ pub(super) fn combine(
             levels: ladder.levels,
         });
     }
-    figures
+    (figures, cautions)
 }
 
 /// Figures that are a peak of the force in time: their band takes the second route in.

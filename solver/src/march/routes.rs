@@ -13,7 +13,7 @@ pub(super) struct Routes {
 impl Routes {
     /// The forces with the band within which they must agree: each route's own.
     pub(super) fn forces(&self, time_s: f64) -> Forces {
-        let own = |l: &Ladder| band::one_route(l, 0.0, 0.0);
+        let own = |l: &Ladder| band::route(l);
         let band_newton = own(&self.wall) + own(&self.mover).max(own(&self.stress));
         let off = |l: &Ladder| (l.value - self.wall.value).abs();
         Forces {

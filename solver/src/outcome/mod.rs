@@ -6,4 +6,6 @@ mod report;
 
 pub use fields::{Fields, Snapshot};
 pub use figure::{Basis, Figure, Location};
-pub use report::{Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters};
+pub use report::{
+    Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
+};

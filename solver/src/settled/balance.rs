@@ -29,7 +29,7 @@ pub(super) fn three_forces(
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
     let (mover_newton, stress_newton) = (mover.value, stress.value);
-    let band_newton = point.drag_band + band::one_route(&mover, 0.0, 0.0).max(band::one_route(&stress, 0.0, 0.0));
+    let band_newton = point.drag_band + band::route(&mover).max(band::route(&stress));
     let apart = (mover_newton - wall_newton).abs().max((stress_newton - wall_newton).abs());
     Ok(Forces { wall_newton, mover_newton, stress_newton, band_newton, agree: apart <= band_newton, time_s: 0.0 })
 }

@@ -2,7 +2,7 @@
 
 use super::balance::{cautions, three_forces, wanted_fields};
 use super::levels::{Levels, Point, damping_at_rest};
-use crate::band::Ladder;
+use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::monitor::Monitor;
 use crate::outcome::{Basis, Figure, Ledger, Location, Outcome, Stop, Trace};
@@ -28,8 +28,10 @@ pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) ->
 fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
     let mut levels = Levels::new(problem, velocity, count, monitor)?;
     let speed = velocity.abs();
+    let mut cautions = cautions(problem);
     let (figures, forces, ledger, fields) = if speed > 0.0 {
         let point = levels.point(velocity);
+        cautions.extend(band::order_caution("drag", &point.drag));
         let forces = three_forces(problem, &mut levels, velocity, &point)?;
         let fields = wanted_fields(problem, &mut levels, velocity)?;
         let power = point.heat.value * velocity;
@@ -50,7 +52,7 @@ fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monit
         regime: regime(problem, &levels.placement, speed),
         grids: levels.reports(problem),
         counters: levels.counters(),
-        cautions: cautions(problem),
+        cautions,
         stop: Stop::Settled,
         accuracy,
         trace: Trace::default(),

@@ -83,7 +83,6 @@ fn resisted_fall() -> Problem {
 
 /// J x B over the wall, the reaction on the mover, the stress in the gap: one force.
 #[test]
-#[ignore = "the stress is read by stencils whose error has odd powers: coil 1.5e-5 off in a band of 1.2e-5, permeable layer 3.4e-5 in 5e-6"]
 fn settled_forces_agree_by_all_routes() {
     assert_routes(settled());
 }

@@ -2,9 +2,9 @@
 //!
 //! Dipole in an endless tube at 5 m/s by sparse LU, on similar levels and on two kinds that look alike but aren't:
 //! - planned alone: every size of the size law divided by f, cells counted and rounded to whole numbers on each
-//! level anew;
+//!   level anew;
 //! - grown alone: first cells h/f that grow by the f-th root of one ratio until they pass the end, then stretched to
-//! fit.
+//!   fit.
 
 use std::f64::consts::PI;
 
