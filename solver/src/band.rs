@@ -4,9 +4,9 @@
 //!
 //!   half = c (|E_n F - E_n P| + max |E_n - E_(n-1)| + |half-domain cut - full|) + solver residual,
 //!
-//! E_(n-1) the extrapolation without the coarsest level. c = 0.75 belongs to the grid rule of this crate: both were fixed
+//! E_(n-1) the extrapolation without the coarsest level. c = 0.5 belongs to the grid rule of this crate: both were fixed
 //! together against exact integrals, and change together. A figure with one route only takes the whole first
-//! difference that extrapolation leaves, by its own factor; a local figure (peak current density) five of it.
+//! difference that extrapolation leaves, by its own factor; a local figure (peak current density) eight of it.
 //!
 //! Where the levels converge more slowly than even powers would, the step counts ten times and a caution says so.
 
@@ -14,7 +14,7 @@ use crate::extrapolate::{even_powers, weights};
 use crate::outcome::Caution;
 
 /// c of the rule.
-const CAUTION: f64 = 0.75;
+const CAUTION: f64 = 0.5;
 /// Share of the last extrapolation step that still counts where a second route exists.
 const STEP_SHARE: f64 = 1.0;
 /// Share of the last extrapolation step for a figure with one route.
@@ -119,7 +119,7 @@ pub(crate) fn route(figure: &Ladder) -> f64 {
 }
 
 /// Steps that count for a local figure (a peak in space or time).
-const LOCAL_STEPS: f64 = 5.0;
+const LOCAL_STEPS: f64 = 8.0;
 
 /// Half-width for a local figure: a peak converges less evenly than an integral.
 pub(crate) fn local(figure: &Ladder, cut: f64, residual: f64) -> f64 {

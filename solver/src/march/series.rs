@@ -1,6 +1,6 @@
 //! What one level records, and its reading at any instant.
 
-use crate::interpolate::{POINTS, Stencil, sampled};
+use crate::interpolate::{ALONG_POINTS, Stencil, sampled};
 
 /// Values at step ends (`time` and the like) and at step middles (`*_mid`).
 #[derive(Debug, Clone, Default)]
@@ -106,10 +106,10 @@ impl Series {
 
     /// Velocity at `t` as the slope of the interpolated position, m/s.
     pub(crate) fn velocity_at(&self, t: f64) -> f64 {
-        if self.time.len() < POINTS {
+        if self.time.len() < ALONG_POINTS {
             return sampled(&self.time, &self.velocity, t);
         }
-        Stencil::<POINTS>::at(&self.time, t).slope_of(&self.position)
+        Stencil::<ALONG_POINTS>::at(&self.time, t).slope_of(&self.position)
     }
 
     /// Greatest value of a quantity of step middles up to `until`, with its instant.
