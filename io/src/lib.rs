@@ -3,6 +3,6 @@
 pub mod case;
 pub mod materials;
 pub mod message;
-pub mod units;
 pub mod picture;
 pub mod result;
+pub mod units;
