@@ -18,7 +18,7 @@ const CAUTION: f64 = 0.5;
 /// Share of the last extrapolation step that still counts where a second route exists.
 const STEP_SHARE: f64 = 1.0;
 /// Share of the last extrapolation step for a figure with one route.
-const LONE_STEP_SHARE: f64 = 0.75;
+const LONE_STEP_SHARE: f64 = 1.0;
 
 /// What one more level usually makes of the extrapolation step, on the cautious side.
 const LEVEL_GAIN: f64 = 0.1;

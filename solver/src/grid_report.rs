@@ -25,7 +25,10 @@ pub(crate) fn grid_report(
         let last = grid.r.nearest(layer.outer_radius_m);
         let smallest = (first..last).map(|i| grid.r.cell(i)).fold(f64::INFINITY, f64::min);
         aspect = aspect.max(z.smallest_m / smallest).max(smallest / z.smallest_m);
-        in_depth = in_depth.min(depth(layer, placement.wavelength_m, speed) / grid.r.cell(first));
+        // The cells at the faces, where currents crowd (a rod has one face).
+        let inner = if layer.inner_radius_m > 0.0 { grid.r.cell(first) } else { f64::INFINITY };
+        let at_face = grid.r.cell(last - 1).min(inner);
+        in_depth = in_depth.min(depth(layer, placement.wavelength_m, speed) / at_face);
     }
     GridReport {
         refinement,
