@@ -29,21 +29,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
     };
     // m dv/dt = -m g + F(z, v, history): F is the force of the wall's currents on the magnet.
-    let fall = Free {
-        release_m: tube_length + 30e-3,
-        entry_velocity_m_per_s: 0.0,
-        until_m: -30e-3,
-        time_limit_s: 60.0,
-        gravity_m_per_s2: 9.80665,
-        tilt_rad: 0.0,
-        push_newton: 0.0,
-        friction_newton: 0.0,
-        friction_coefficient: 0.0,
-        air_drag_n_s2_per_m2: 0.0,
-        spring_rate_n_per_m: 0.0,
-        spring_free_at_m: 0.0,
-        gates_m: [tube_length, 0.0],
-    };
+    let fall = Free::let_go(tube_length + 30e-3, -30e-3, [tube_length, 0.0]);
     let problem = Problem {
         wall: Wall { extent: Extent::Finite { length_m: tube_length }, layers: vec![tube] },
         mover: Mover { parts: vec![magnet], mass_kg: Some(0.06) },

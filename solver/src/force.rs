@@ -97,10 +97,10 @@ pub(crate) fn by_stress(
     for face in &placement.stress_faces {
         let reader = FaceReader::new(grid, face);
         let mut sum = 0.0;
-        for j in first..=last {
+        for (j, &height) in z.iter().enumerate().take(last + 1).skip(first) {
             let (slope_r, slope_z) = reader.slopes(psi_reaction, j);
-            let own_r = problem.mover.flux_density_r(face.radius_m, z[j] - position);
-            let own_z = problem.mover.flux_density_z(face.radius_m, z[j] - position);
+            let own_r = problem.mover.flux_density_r(face.radius_m, height - position);
+            let own_z = problem.mover.flux_density_z(face.radius_m, height - position);
             sum += grid.z.dual(j) * (own_r * slope_r - slope_z * own_z);
         }
         let sign = if face.mover == MoverSide::Inside { 1.0 } else { -1.0 };

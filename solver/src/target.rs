@@ -1,6 +1,6 @@
 //! Whether the wanted accuracy was met, and what would meet it.
 
-use crate::outcome::{Accuracies, Figure};
+use crate::outcome::{Accuracies, Figure, Outcome};
 use crate::problem::Accuracy;
 
 /// Levels to begin with.
@@ -14,8 +14,27 @@ pub(crate) fn levels_wanted(accuracy: &Accuracy) -> usize {
 }
 
 /// Whether a finer level may be added on our own, up to `most`.
-pub(crate) fn may_add_level(accuracy: &Accuracy, count: usize, most: usize) -> bool {
+fn may_add_level(accuracy: &Accuracy, count: usize, most: usize) -> bool {
     accuracy.levels.is_none() && count < most
+}
+
+/// Answers on more and more levels until every band is within the target, or no level may be added.
+///
+/// # Errors
+/// Those of `answer`.
+pub(crate) fn refine<E>(
+    accuracy: &Accuracy,
+    most: usize,
+    mut answer: impl FnMut(usize) -> Result<Outcome, E>,
+) -> Result<Outcome, E> {
+    let mut count = levels_wanted(accuracy);
+    loop {
+        let outcome = answer(count)?;
+        if outcome.accuracy.met || !may_add_level(accuracy, count, most) {
+            return Ok(outcome);
+        }
+        count += 1;
+    }
 }
 
 /// How much wider than the target the band of a local figure may be: a peak at one point of the wall converges less

@@ -1,6 +1,5 @@
 //! Walls and movers of the checks, in a line each.
 
-use lenzbore_solver::constants::STANDARD_GRAVITY;
 use lenzbore_solver::problem::{
     Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall,
 };
@@ -96,19 +95,5 @@ pub fn question(wall: Wall, mover: Mover, travel: Travel) -> Problem {
 /// A fall under standard gravity from rest at `release_m`, ending at `until_m`, timed between two gates.
 #[must_use]
 pub fn free_fall(release_m: f64, until_m: f64, gates_m: [f64; 2]) -> Free {
-    Free {
-        release_m,
-        entry_velocity_m_per_s: 0.0,
-        until_m,
-        time_limit_s: 60.0,
-        gravity_m_per_s2: STANDARD_GRAVITY,
-        tilt_rad: 0.0,
-        push_newton: 0.0,
-        friction_newton: 0.0,
-        friction_coefficient: 0.0,
-        air_drag_n_s2_per_m2: 0.0,
-        spring_rate_n_per_m: 0.0,
-        spring_free_at_m: 0.0,
-        gates_m,
-    }
+    Free::let_go(release_m, until_m, gates_m)
 }

@@ -63,21 +63,7 @@ fn steady(problem: Problem, velocity_m_per_s: f64) -> Problem {
 
 /// A magnet of 18 mm diameter x 12 mm, 1.25 T, 60 g falls through a wall of 11 to 13 mm radius, released at rest 30 mm above it.
 pub(crate) fn fall(length_m: f64) -> Problem {
-    let law = Free {
-        release_m: length_m + BEFORE_M,
-        entry_velocity_m_per_s: 0.0,
-        until_m: -AFTER_M,
-        time_limit_s: 120.0,
-        gravity_m_per_s2: 9.80665,
-        tilt_rad: 0.0,
-        push_newton: 0.0,
-        friction_newton: 0.0,
-        friction_coefficient: 0.0,
-        air_drag_n_s2_per_m2: 0.0,
-        spring_rate_n_per_m: 0.0,
-        spring_free_at_m: 0.0,
-        gates_m: [length_m, 0.0],
-    };
+    let law = Free { time_limit_s: 120.0, ..Free::let_go(length_m + BEFORE_M, -AFTER_M, [length_m, 0.0]) };
     finite(length_m, Travel::Free(law))
 }
 

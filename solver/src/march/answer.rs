@@ -25,7 +25,7 @@ use crate::outcome::{Caution, Fields, Figure, GridReport, Ledger, Outcome, Snaps
 use crate::placement::Placement;
 use crate::problem::{Problem, SnapshotPlan};
 use crate::regime::regime;
-use crate::target::{levels_wanted, may_add_level, verdict};
+use crate::target::{refine, verdict};
 
 /// Levels added at most on our own: a march costs the cube of the refinement.
 const MOST_MARCH_LEVELS: usize = 4;
@@ -55,17 +55,13 @@ struct Journey<'p> {
 /// See [`SolveFault`].
 pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
     let journey = Journey::new(problem)?;
-    let count = levels_wanted(&problem.accuracy);
-    let mut records = journey.first(monitor, count)?;
-    loop {
-        journey.replay_missing(&mut records, monitor)?;
-        let outcome = journey.outcome(&mut records);
-        if outcome.accuracy.met || !may_add_level(&problem.accuracy, records.levels.len(), MOST_MARCH_LEVELS) {
-            monitor.progress(1.0, "done");
-            return Ok(outcome);
-        }
-        records.wanted += 1;
-    }
+    let mut records = journey.first(monitor)?;
+    let outcome = refine(&problem.accuracy, MOST_MARCH_LEVELS, |count| {
+        journey.replay_missing(&mut records, count, monitor)?;
+        Ok::<_, SolveFault>(journey.outcome(&mut records))
+    })?;
+    monitor.progress(1.0, "done");
+    Ok(outcome)
 }
 
 /// The schedule, the levels so far, the coarsest level on half the domain.
@@ -73,7 +69,6 @@ struct Records {
     schedule: Schedule,
     levels: Vec<LevelRecord>,
     cut: Option<LevelRecord>,
-    wanted: usize,
 }
 
 impl<'p> Journey<'p> {
@@ -93,17 +88,17 @@ impl<'p> Journey<'p> {
         MarchLevel::new(self.problem, &self.placement, &self.plan, grid, self.reach)
     }
 
-    fn first(&self, monitor: &dyn Monitor, wanted: usize) -> Result<Records, SolveFault> {
+    fn first(&self, monitor: &dyn Monitor) -> Result<Records, SolveFault> {
         let mut level = self.level(Refinement::COARSEST, false)?;
         let run = Run::new(&mut level, &self.motion, &self.course)?;
         let (series, schedule) = run.choose(&self.course, monitor, Share { from: 0.0, to: 0.08 })?;
         let record = self.record(&level, series, Refinement::COARSEST, None);
-        Ok(Records { schedule, levels: vec![record], cut: None, wanted })
+        Ok(Records { schedule, levels: vec![record], cut: None })
     }
 
     /// Replays the levels not yet there: the finest beside the others, so that two cores are busy.
-    fn replay_missing(&self, records: &mut Records, monitor: &dyn Monitor) -> Result<(), SolveFault> {
-        let refinements = Refinement::first(records.wanted);
+    fn replay_missing(&self, records: &mut Records, count: usize, monitor: &dyn Monitor) -> Result<(), SolveFault> {
+        let refinements = Refinement::first(count);
         let missing = &refinements[records.levels.len()..];
         let Some((&finest, others)) = missing.split_last() else { return Ok(()) };
         let wanted = instants(&self.problem.snapshots, &records.levels[0].series, &self.course);

@@ -1,5 +1,7 @@
 //! How the mover travels.
 
+use crate::constants::STANDARD_GRAVITY;
+
 /// The law of motion.
 #[derive(Debug, Clone, PartialEq)]
 pub enum Travel {
@@ -54,4 +56,33 @@ pub struct Free {
     pub spring_free_at_m: f64,
     /// Gate positions, m: first and second.
     pub gates_m: [f64; 2],
+}
+
+impl Free {
+    /// Released at rest at `release_m` under standard gravity in a vertical tube, with nothing but the wall to slow it; ends
+    /// at `until_m` or after 60 s. Other forces go in by struct update.
+    ///
+    /// ```
+    /// use lenzbore_solver::problem::Free;
+    /// let law = Free { friction_newton: 0.2, ..Free::let_go(0.33, -0.06, [0.3, 0.0]) };
+    /// assert_eq!((law.release_m, law.gravity_m_per_s2, law.friction_newton), (0.33, 9.80665, 0.2));
+    /// ```
+    #[must_use]
+    pub fn let_go(release_m: f64, until_m: f64, gates_m: [f64; 2]) -> Self {
+        Self {
+            release_m,
+            entry_velocity_m_per_s: 0.0,
+            until_m,
+            time_limit_s: 60.0,
+            gravity_m_per_s2: STANDARD_GRAVITY,
+            tilt_rad: 0.0,
+            push_newton: 0.0,
+            friction_newton: 0.0,
+            friction_coefficient: 0.0,
+            air_drag_n_s2_per_m2: 0.0,
+            spring_rate_n_per_m: 0.0,
+            spring_free_at_m: 0.0,
+            gates_m,
+        }
+    }
 }

@@ -10,7 +10,7 @@ use crate::monitor::Monitor;
 use crate::outcome::{Caution, DragCurve, DragPoint, Figure, Outcome, Stop, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
-use crate::target::{MOST_LEVELS, levels_wanted, may_add_level, verdict};
+use crate::target::{MOST_LEVELS, refine, verdict};
 
 /// How closely the critical speed is searched, relative.
 const SEARCH: f64 = 1.0e-7;
@@ -20,14 +20,7 @@ const SEARCH: f64 = 1.0e-7;
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    let mut count = levels_wanted(&problem.accuracy);
-    loop {
-        let outcome = curve_on(problem, speeds, count, monitor)?;
-        if outcome.accuracy.met || !may_add_level(&problem.accuracy, count, MOST_LEVELS) {
-            return Ok(outcome);
-        }
-        count += 1;
-    }
+    refine(&problem.accuracy, MOST_LEVELS, |count| curve_on(problem, speeds, count, monitor))
 }
 
 fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {

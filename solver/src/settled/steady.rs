@@ -8,21 +8,14 @@ use crate::monitor::Monitor;
 use crate::outcome::{Basis, Figure, Ledger, Location, Outcome, Stop, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
-use crate::target::{MOST_LEVELS, levels_wanted, may_add_level, verdict};
+use crate::target::{MOST_LEVELS, refine, verdict};
 
 /// Settled fields at one velocity.
 ///
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    let mut count = levels_wanted(&problem.accuracy);
-    loop {
-        let outcome = steady_on(problem, velocity, count, monitor)?;
-        if outcome.accuracy.met || !may_add_level(&problem.accuracy, count, MOST_LEVELS) {
-            return Ok(outcome);
-        }
-        count += 1;
-    }
+    refine(&problem.accuracy, MOST_LEVELS, |count| steady_on(problem, velocity, count, monitor))
 }
 
 fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {

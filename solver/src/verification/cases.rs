@@ -89,21 +89,7 @@ pub(super) fn traverse(speed_m_per_s: f64, from_mm: f64, to_mm: f64) -> Travel {
 
 /// A fall from rest under standard gravity, with nothing but the wall to slow it; gates at both ends of the wall.
 pub(super) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
-    Free {
-        release_m: release_mm * 1e-3,
-        entry_velocity_m_per_s: 0.0,
-        until_m: until_mm * 1e-3,
-        time_limit_s: 60.0,
-        gravity_m_per_s2: crate::constants::STANDARD_GRAVITY,
-        tilt_rad: 0.0,
-        push_newton: 0.0,
-        friction_newton: 0.0,
-        friction_coefficient: 0.0,
-        air_drag_n_s2_per_m2: 0.0,
-        spring_rate_n_per_m: 0.0,
-        spring_free_at_m: 0.0,
-        gates_m: [wall_mm * 1e-3, 0.0],
-    }
+    Free::let_go(release_mm * 1e-3, until_mm * 1e-3, [wall_mm * 1e-3, 0.0])
 }
 
 /// The answer to a sound problem.
