@@ -1,0 +1,17 @@
+//! The built binary from outside: output, exit status, files.
+
+#![allow(
+    clippy::unwrap_used,
+    clippy::expect_used,
+    clippy::panic,
+    clippy::float_cmp,
+    reason = "a test may stop at the first fault"
+)]
+
+mod bad_input;
+mod commands;
+mod examples;
+mod folders;
+mod interruption;
+mod programs;
+mod rig;

@@ -1,0 +1,163 @@
+//! What every test needs: a folder of its own, cases that solve in a blink, and the binary.
+
+use std::path::{Path, PathBuf};
+use std::process::{Command, Output, Stdio};
+
+use assert_cmd::cargo::cargo_bin;
+use serde_json::Value;
+use tempfile::TempDir;
+
+/// Settled fields in an endless wall: solves in a tenth of a second.
+pub const QUICK: &str = r#"title = "Dipole in a tube"
+
+[wall]
+length = "endless"
+
+[[wall.layer]]
+name = "tube"
+conductivity = "58 MS/m"
+inner_diameter = "21 mm"
+thickness = "2 mm"
+
+[mover]
+
+[[mover.dipole]]
+name = "D"
+moment = "1 A m2"
+
+[travel]
+law = "steady"
+speed = "5 m/s"
+
+[curve]
+speeds = ["0.1 m/s", "100 m/s"]
+points = 5
+"#;
+
+/// A slow fall through a tube 1.5 m long: takes longer than any test waits for.
+pub const SLOW: &str = r#"title = "Long fall"
+
+[wall]
+length = "1.5 m"
+
+[[wall.layer]]
+name = "tube"
+conductivity = "40 MS/m"
+inner_diameter = "20 mm"
+thickness = "3 mm"
+
+[mover]
+mass = "50 g"
+
+[[mover.magnet]]
+name = "M"
+remanence = "1.2 T"
+recoil_permeability = 1
+outer_diameter = "16 mm"
+length = "8 mm"
+
+[travel]
+law = "free"
+release = "1.52 m"
+until = "-20 mm"
+"#;
+
+/// A folder that is removed at the end of a test, and commands that run in it.
+pub struct Bench {
+    folder: TempDir,
+}
+
+impl Bench {
+    pub fn new() -> Self {
+        Self { folder: TempDir::new().unwrap() }
+    }
+
+    /// A bench with one case file.
+    pub fn with(name: &str, text: &str) -> Self {
+        let bench = Self::new();
+        bench.write(name, text);
+        bench
+    }
+
+    pub fn path(&self, name: &str) -> PathBuf {
+        self.folder.path().join(name)
+    }
+
+    pub fn write(&self, name: &str, text: &str) {
+        std::fs::write(self.path(name), text).unwrap();
+    }
+
+    /// The binary, to be run in this folder with nothing on standard input.
+    pub fn command(&self, words: &[&str]) -> Command {
+        let mut command = Command::new(cargo_bin!("lenzbore"));
+        command.args(words).current_dir(self.folder.path()).stdin(Stdio::null());
+        command
+    }
+
+    pub fn run(&self, words: &[&str]) -> Ran {
+        Ran::of(&self.command(words).output().unwrap())
+    }
+
+    /// Runs and wants exit status 0.
+    pub fn succeed(&self, words: &[&str]) -> Ran {
+        let ran = self.run(words);
+        assert_eq!(ran.status, Some(0), "{words:?}: {}", ran.errors);
+        ran
+    }
+
+    /// Names of all that lies in the folder, hidden ones too, sorted.
+    pub fn entries(&self) -> Vec<String> {
+        entries(self.folder.path())
+    }
+}
+
+/// Names of all that lies in a folder, sorted.
+pub fn entries(folder: &Path) -> Vec<String> {
+    let mut names: Vec<String> =
+        std::fs::read_dir(folder).unwrap().map(|e| e.unwrap().file_name().into_string().unwrap()).collect();
+    names.sort();
+    names
+}
+
+/// What a run left on its streams.
+#[derive(Debug)]
+pub struct Ran {
+    pub status: Option<i32>,
+    pub output: String,
+    pub errors: String,
+}
+
+impl Ran {
+    pub fn of(output: &Output) -> Self {
+        Self {
+            status: output.status.code(),
+            output: String::from_utf8(output.stdout.clone()).unwrap(),
+            errors: String::from_utf8(output.stderr.clone()).unwrap(),
+        }
+    }
+
+    /// Standard output as the one JSON object that `--json` promises.
+    pub fn json(&self) -> Value {
+        serde_json::from_str(&self.output).unwrap()
+    }
+}
+
+/// The value of a figure of a summary.
+pub fn figure(summary: &Value, name: &str) -> f64 {
+    summary["figures"][name]["value"].as_f64().unwrap_or_else(|| panic!("no figure {name}"))
+}
+
+/// The half-width of its band.
+pub fn band(summary: &Value, name: &str) -> f64 {
+    summary["figures"][name]["band"].as_f64().unwrap_or_else(|| panic!("no band of {name}"))
+}
+
+/// Reads a JSON file.
+pub fn read_json(path: &Path) -> Value {
+    serde_json::from_str(&std::fs::read_to_string(path).unwrap()).unwrap()
+}
+
+/// The folder of the package.
+pub fn root() -> &'static Path {
+    Path::new(env!("CARGO_MANIFEST_DIR"))
+}
