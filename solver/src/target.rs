@@ -48,19 +48,23 @@ pub(crate) fn is_local(name: &str) -> bool {
 
 /// Compares every figure's band with the target (a local figure's with a hundred times the target: 1 % by default).
 pub(crate) fn verdict(figures: &[Figure], target_relative: f64, levels: usize) -> Accuracies {
-    let relative = |f: &Figure| {
+    let relative = |f: &Figure| if f.band > 0.0 { f.band / f.value.abs() } else { 0.0 };
+    // How many times its own target a band is wide.
+    let miss = |f: &Figure| {
         let allowance = if is_local(&f.name) { LOCAL_ALLOWANCE } else { 1.0 };
-        if f.band > 0.0 { f.band / f.value.abs() / allowance } else { 0.0 }
+        relative(f) / (allowance * target_relative)
     };
-    let worst = figures.iter().map(|f| (f.name.clone(), relative(f))).max_by(|a, b| a.1.total_cmp(&b.1));
-    let met = worst.as_ref().is_none_or(|(_, r)| *r <= target_relative);
-    let advice = (!met).then(|| advice(target_relative, worst.as_ref(), levels));
-    Accuracies { target_relative, met, worst, advice }
+    let worst = figures.iter().max_by(|a, b| miss(a).total_cmp(&miss(b)));
+    let missed = worst.filter(|f| miss(f) > 1.0);
+    Accuracies {
+        target_relative,
+        met: missed.is_none(),
+        worst: worst.map(|f| (f.name.clone(), relative(f))),
+        advice: missed.map(|f| advice(&f.name, miss(f), target_relative, levels)),
+    }
 }
 
-fn advice(target: f64, worst: Option<&(String, f64)>, levels: usize) -> String {
-    let miss = worst.map_or(1.0, |(_, r)| r / target);
-    let name = worst.map_or("a figure", |(n, _)| n.as_str());
+fn advice(name: &str, miss: f64, target: f64, levels: usize) -> String {
     if levels < MOST_LEVELS {
         format!(
             "{name} misses the target by a factor of {miss:.1}: accuracy.levels = {} would meet it or come closer",

@@ -166,7 +166,7 @@ pub struct Accuracies {
     pub target_relative: f64,
     /// Whether every headline figure meets it.
     pub met: bool,
-    /// Figure furthest from it, with its relative half-width (a local figure's divided by a hundred).
+    /// Figure furthest from its target, with its relative half-width.
     pub worst: Option<(String, f64)>,
     /// What would meet it, in the user's words, where it was missed.
     pub advice: Option<String>,
