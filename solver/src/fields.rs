@@ -3,7 +3,8 @@
 use lenzbore_mesh::Grid;
 
 use crate::force::cell_flux_density;
-use crate::operators::{Materials, Operators};
+use crate::materials::Materials;
+use crate::operators::Operators;
 use crate::outcome::{Fields, Snapshot};
 use crate::problem::{Problem, Wall};
 use crate::sources::AxialField;

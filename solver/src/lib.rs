@@ -29,6 +29,8 @@ mod grid_rules;
 mod interpolate;
 mod linear;
 mod march;
+mod materials;
+mod numbering;
 mod operators;
 mod placement;
 mod regime;

@@ -5,38 +5,13 @@
 //! material maps are approximated: N_r = 2 sum(nu dz/2) / (r2^2 - r1^2), N_z = sum(nu dr/2) / (r dz). The magnetic
 //! energy is pi psi^T K psi, J; ring currents are I = -G dpsi/dt, A, with G = sum(sigma dr dz / 4) / r.
 
-use lenzbore_mesh::{Grid, Regions};
+use lenzbore_mesh::Grid;
 use sprs::{CsMat, TriMat};
 
 use crate::constants::MU0;
-use crate::problem::Wall;
+use crate::materials::Materials;
+use crate::numbering::unknown_of;
 use crate::wall_nodes::WallNodes;
-
-/// Material of each cell.
-#[derive(Debug, Clone)]
-pub(crate) struct Materials {
-    /// Conductivity, S/m.
-    pub(crate) sigma: Vec<f64>,
-    /// Relative permeability.
-    pub(crate) mu_r: Vec<f64>,
-    /// Region, 0 for free space, else layer index + 1.
-    pub(crate) region: Vec<usize>,
-}
-
-impl Materials {
-    /// Reads the wall's layers through the regions of a grid.
-    pub(crate) fn new(wall: &Wall, regions: &Regions) -> Self {
-        let region = regions.of_cell().to_vec();
-        let of = |k: usize, free: f64, value: fn(&crate::problem::Layer) -> f64| {
-            if k == 0 { free } else { value(&wall.layers[k - 1]) }
-        };
-        Self {
-            sigma: region.iter().map(|&k| of(k, 0.0, |l| l.conductivity_s_per_m)).collect(),
-            mu_r: region.iter().map(|&k| of(k, 1.0, |l| l.relative_permeability)).collect(),
-            region,
-        }
-    }
-}
 
 /// The discrete operators of one grid. Unknowns are the interior nodes, `[z][r]`.
 #[derive(Debug)]
@@ -83,11 +58,6 @@ impl Operators {
         }
         nodes
     }
-}
-
-/// Index of interior node (i, j) among the unknowns.
-pub(crate) fn unknown_of(grid: &Grid, i: usize, j: usize) -> Option<usize> {
-    (i > 0 && j > 0 && i + 1 < grid.nr() && j + 1 < grid.nz()).then(|| (j - 1) * (grid.nr() - 2) + i - 1)
 }
 
 /// An edge from node `a` to node `b` and its weight in N.

@@ -2,7 +2,8 @@
 
 use lenzbore_mesh::Grid;
 
-use crate::operators::{Materials, unknown_of};
+use crate::materials::Materials;
+use crate::numbering::unknown_of;
 
 /// A run of wall nodes at one radius.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]

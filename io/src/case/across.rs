@@ -1,10 +1,10 @@
 //! Diameters of a layer, read from any two of its three sizes or from its trade size.
 
+use super::measures::{HOLE, LENGTH};
 use super::reader::{Reader, Section};
 use super::resolved::ResolvedValue;
 use super::sizes::{ACROSS, split_trade_size};
 use super::tree::{Node, Value};
-use super::wall::{HOLE, LENGTH};
 use crate::message::CaseFault;
 use crate::units::Kind;
 

@@ -2,10 +2,10 @@
 
 use lenzbore_solver::problem::Quantity as Number;
 
+use super::measures::COEFFICIENT;
 use super::reader::{Reader, Section, wanted};
 use super::resolved::{Origin, ResolvedValue};
 use super::temperature::{ROOM_K, caution_if_far, celsius, conductivity_at, temperature};
-use super::wall::COEFFICIENT;
 use crate::materials::{self, Conductor, GradeValue};
 use crate::message::CaseFault;
 use crate::units::Kind;

@@ -28,6 +28,7 @@ mod conductor;
 mod curve;
 mod geometry;
 mod load;
+mod measures;
 mod mover;
 mod names;
 mod output;

@@ -3,13 +3,13 @@
 use lenzbore_solver::problem::{Mover, Part, Quantity as Number};
 use lenzbore_solver::sources::{North, Stack, StackItem};
 
+use super::measures::{HOLE, POSITION};
 use super::names::{Names, name_of};
 use super::parts::{Body, read_coil, read_dipole, read_magnet, read_spacer};
 use super::reader::{Reader, Section, wanted};
 use super::resolved::ResolvedValue;
 use super::temperature::temperature;
 use super::tree::{Node, Value};
-use super::wall::{HOLE, POSITION};
 use crate::message::{CaseFault, nearest};
 use crate::units::Kind;
 

@@ -3,10 +3,10 @@
 use lenzbore_solver::problem::{Accuracy, Quantity as Number, SnapshotPlan};
 
 use super::OutputPlan;
+use super::measures::LENGTH;
 use super::reader::{Reader, Section, wanted};
 use super::resolved::{Origin, ResolvedValue};
 use super::tree::{Node, Value};
-use super::wall::LENGTH;
 use crate::message::{CaseFault, nearest};
 use crate::units::{Kind, read_quantity};
 

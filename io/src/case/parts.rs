@@ -4,10 +4,10 @@ use lenzbore_solver::problem::{Outline, Quantity as Number, SensibleRange};
 use lenzbore_solver::sources::{North, Source, coated_magnet};
 
 use super::conductor::{grade_value, note_book};
+use super::measures::{COEFFICIENT, HOLE, LENGTH};
 use super::reader::{Reader, Section, Wanted, unit_of, wanted};
 use super::resolved::ResolvedValue;
 use super::temperature::{ROOM_K, caution_if_far, celsius, remanence_at};
-use super::wall::{COEFFICIENT, HOLE, LENGTH};
 use crate::materials::{self, GradeValue, MagnetGrade};
 use crate::message::CaseFault;
 use crate::units::Kind;

@@ -3,9 +3,9 @@
 use lenzbore_solver::constants::STANDARD_GRAVITY;
 use lenzbore_solver::problem::{Extent, Free, Quantity as Number, SensibleRange, Travel, Traverse, Wall};
 
+use super::measures::POSITION;
 use super::reader::{Reader, Section, Wanted, wanted};
 use super::resolved::{Origin, ResolvedValue};
-use super::wall::POSITION;
 use super::words::{LAWS, law_words};
 use crate::message::{CaseFault, nearest};
 use crate::units::Kind;

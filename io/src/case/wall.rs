@@ -1,15 +1,15 @@
 //! `[wall]` and its layers.
 
-use lenzbore_solver::problem::{Extent, Layer, Quantity as Number, SensibleRange, Wall};
+use lenzbore_solver::problem::{Extent, Layer, Wall};
 
 use super::across::diameters;
 use super::conductor::material;
+use super::measures::{LENGTH, POSITION};
 use super::names::{Names, name_of};
-use super::reader::{Reader, Section, Wanted, wanted};
+use super::reader::{Reader, Section};
 use super::temperature::temperature;
 use super::tree::Value;
 use crate::message::CaseFault;
-use crate::units::Kind;
 
 /// What `[wall]` says.
 #[derive(Debug)]
@@ -24,13 +24,6 @@ pub(super) struct WallReading<'t> {
     pub complete: bool,
 }
 
-pub(super) const LENGTH: Wanted = wanted(Kind::Length, Number::Length);
-pub(super) const POSITION: Wanted = wanted(Kind::Length, Number::Position);
-pub(super) const HOLE: Wanted = wanted(Kind::Length, Number::InnerRadius);
-pub(super) const COEFFICIENT: Wanted = Wanted {
-    kind: Kind::TemperatureCoefficient,
-    range: SensibleRange { lowest: 0.0, highest: 1.0, zero: true, signed: true },
-};
 const EXAMPLE: &str = "[[wall.layer]] with name, material and size = \"28 x 1.5 mm\"";
 
 /// Reads the wall; `None` where there is none.

@@ -4,7 +4,8 @@
 use lenzbore_mesh::{Anchor, Grid, PlannedLine, Refinement, SizeLaw};
 
 use crate::linear::{Factor, Pattern};
-use crate::operators::{Materials, Operators};
+use crate::materials::Materials;
+use crate::operators::Operators;
 
 /// Radius of the chamber, m.
 pub(super) const RADIUS: f64 = 0.02;
