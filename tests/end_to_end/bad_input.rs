@@ -46,7 +46,7 @@ const FAULTS: [Fault; 29] = [
     fault("negative speed", SPEED, "speed = \"-5 m/s\"", "20:9", &["a speed is a magnitude"]),
     fault("absurd speed", SPEED, "speed = \"1e9 m/s\"", "20:9", &["impossible"]),
     fault("absurd conductivity", "58 MS/m", "58e9 MS/m", "8:16", &["impossible"]),
-    fault("no conductor", "58 MS/m", "0 S/m", "8:16", &["neither conducts"]),
+    fault("no conductor", "58 MS/m", "0 S/m", "3:2", &["neither conducts"]),
     fault("no field", "1 A m2", "0 A m2", "12:2", &["the mover has no field"]),
     fault("wrong moment", "1 A m2", "1 A", "16:10", &["does not measure a dipole moment"]),
     fault("four sizes", THICK, "thickness = \"2 mm\"\nouter_diameter = \"30 mm\"", "", &["outer_diameter"]),
@@ -111,7 +111,7 @@ fn parts_that_overlap_are_named() {
 
 #[test]
 fn a_case_larger_than_the_machine_is_refused_before_solving() {
-    let errors = refuse("a snapshot every picometre", SLOW, &["--set", "output.fields=\"every 1 pm\""]);
+    let errors = refuse("a snapshot every two nanometres", SLOW, &["--set", "output.fields=\"every 2 nm\""]);
     assert!(errors.contains("MiB are available"), "{errors}");
     let errors =
         refuse("a wall of 9 km", &SLOW.replace("\"1.5 m\"", "\"9 km\"").replace("\"1.52 m\"", "\"9001 m\""), &[]);

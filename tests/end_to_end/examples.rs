@@ -4,9 +4,9 @@
 //! - `ring`: computed independently by an electric circuit. The wall is cut into filament rings with self and mutual
 //!   inductance (Maxwell's formula by complete elliptic integrals; a ring's own by its geometric mean distance, 0.2235 of
 //!   width plus height of its section), the magnets into current sheets; modes of the circuit by a dense eigensolver,
-//!   implicit midpoint in time with the equation of motion; 4 x 192 and 6 x 288 rings (collar: 4 x 48 and 6 x 72),
-//!   extrapolated over the square of the ring's size. Its own error is a few times 1e-5, on the collar, whose rings are as
-//!   large beside the gap, 2e-4.
+//!   implicit midpoint in time with the equation of motion; 4 x 192 and 6 x 288 rings (collar: 4 x 48 and 6 x 72, rod: 8 x 200
+//!   and 12 x 300), extrapolated over the square of the ring's size. The tolerance is about a tenth of what extrapolation
+//!   changed on the finer rings: 2e-4 on the sleeve, 7e-4 on collar and rod.
 //! - `independent`: the Fourier-Bessel integral that every settled result carries; it must lie in the band.
 //! - `reg_`: what this version gave; tells that something changed, not that it was right.
 
@@ -80,11 +80,11 @@ fn arrest_sleeve_runs() {
     let name = "arrest-sleeve";
     let summary = solve("run", name);
     let expected = [
-        ring("drag_peak", 100.35211, 5e-5),
-        ring("exit_time", 0.538823, 5e-5),
-        ring("transit_time", 0.5161095, 5e-5),
-        ring("exit_speed", 0.2577228, 5e-5),
-        ring("dissipated_energy", 8.114015, 1e-4),
+        ring("drag_peak", 100.35211, 2e-4),
+        ring("exit_time", 0.538823, 2e-4),
+        ring("transit_time", 0.5161095, 2e-4),
+        ring("exit_speed", 0.2577228, 2e-4),
+        ring("dissipated_energy", 8.114015, 2e-4),
         reg("deceleration_peak", 81.42305),
     ];
     check(name, &summary, &expected);
@@ -108,10 +108,9 @@ fn latch_damper_runs() {
     let name = "latch-damper";
     let summary = solve("run", name);
     let expected = [
-        ring("drag_peak", 3.0233563, 3e-4),
-        ring("exit_time", 0.034690523, 3e-4),
-        ring("exit_speed", 0.36230775, 3e-4),
-        ring("dissipated_energy", 0.03677528, 2e-3),
+        ring("drag_peak", 3.0233563, 7e-4),
+        ring("exit_time", 0.034690523, 7e-4),
+        ring("exit_speed", 0.36230775, 7e-4),
         reg("drag_peak", 3.023528),
         reg("exit_speed", 0.3622619),
     ];
@@ -123,7 +122,14 @@ fn latch_damper_runs() {
 fn ring_carriage_runs() {
     let name = "ring-carriage";
     let summary = solve("run", name);
-    check(name, &summary, &[reg("transit_time", 0.2475028), reg("exit_speed", 0.759460), reg("drag_peak", 4.865626)]);
+    let expected = [
+        ring("drag_peak", 4.865323, 7e-4),
+        ring("exit_time", 0.3584312, 7e-4),
+        ring("exit_speed", 0.7594509, 7e-4),
+        ring("dissipated_energy", 0.8079911, 7e-4),
+        reg("transit_time", 0.2475028),
+    ];
+    check(name, &summary, &expected);
     check_ledger(name, &summary);
 }
 
