@@ -75,6 +75,23 @@ fn check_ledger(name: &str, summary: &Value) {
     assert!(open.abs() < 1e-5, "{name}: the ledger is open by {open}");
 }
 
+/// The README shows what this version gives: each of its figures lies within the two bands of the one just computed.
+fn check_readme(ended: &str, summary: &Value) {
+    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
+    let (_, block) = text.split_once(ended).unwrap_or_else(|| panic!("README.md shows no result that {ended}"));
+    let mut shown = 0;
+    for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
+        let (left, right) = line.split_once(" +/- ").unwrap();
+        let mut words = left.split_whitespace();
+        let (name, value) = (words.next().unwrap(), words.next().unwrap().parse::<f64>().unwrap());
+        let shown_band: f64 = right.split_whitespace().next().unwrap().parse().unwrap();
+        let apart = (value - figure(summary, name)).abs();
+        assert!(apart <= 1.05 * (shown_band + band(summary, name)), "README.md shows {name} = {value}: {apart} away");
+        shown += 1;
+    }
+    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "README.md shows every figure");
+}
+
 #[test]
 fn arrest_sleeve_runs() {
     let name = "arrest-sleeve";
@@ -88,6 +105,7 @@ fn arrest_sleeve_runs() {
         reg("deceleration_peak", 81.42305),
     ];
     check(name, &summary, &expected);
+    check_readme("ended: end of travel", &summary);
     check_ledger(name, &summary);
 }
 
@@ -97,6 +115,7 @@ fn arrest_sleeve_has_a_curve() {
     let summary = solve("curve", name);
     check_independent(name, &summary);
     check(name, &summary, &[reg("drag_max", 336.9801), reg("critical_speed", 15.65202)]);
+    check_readme("ended: settled", &summary);
     assert_eq!(summary["curve"].as_array().unwrap().len(), 40);
     // The carrier's weight over the slope at low speed is the speed at which it settles, within what 0.24 m/s bends the slope.
     let settled = 1.1 * 9.80665 / figure(&summary, "damping_coefficient_zero_speed");
