@@ -75,7 +75,7 @@ pub struct SolveWords {
     /// The case.
     #[command(flatten)]
     pub case: CaseWords,
-    /// Result folder [default: out/<case file stem>, for a curve out/<case file stem>-curve]
+    /// Result folder [default: out/ and the case file's stem, for a curve with -curve behind it]
     #[arg(long, value_name = "FOLDER")]
     pub out: Option<PathBuf>,
     /// Puts the result in the place of an older one

@@ -27,7 +27,7 @@ pub fn read(words: &CaseWords) -> Result<ResolvedCase, End> {
     Ok(read_case(&source, &words.set)?)
 }
 
-/// The result folder where none was named: out/<stem of the case file>.
+/// The result folder where none was named: out/ and the stem of the case file.
 pub fn default_folder(words: &CaseWords, suffix: &str) -> PathBuf {
     let stem = words.case.file_stem().map_or_else(String::new, |s| s.to_string_lossy().into_owned());
     let stem = if stem.is_empty() || stem == "-" { "case".to_owned() } else { stem };

@@ -258,7 +258,9 @@ impl<'p> Journey<'p> {
         let entries: Vec<(f64, f64, f64)> = records.levels.iter().map(entry).collect();
         let value = |of: fn(&(f64, f64, f64)) -> f64| extrapolate(factors, &entries.iter().map(of).collect::<Vec<_>>());
         let (work, heat, field_energy) = (value(|e| e.0), value(|e| e.1), value(|e| e.2));
-        let imbalance_relative = if work.abs() > 0.0 { (work - heat - field_energy) / work } else { 0.0 };
+        // Of the largest entry: where nothing conducts, the work comes back and sums to nothing.
+        let largest = work.abs().max(heat.abs()).max(field_energy.abs());
+        let imbalance_relative = if largest > 0.0 { (work - heat - field_energy) / largest } else { 0.0 };
         Ledger { work, heat, field_energy, imbalance_relative, unit: "J" }
     }
 

@@ -4,9 +4,10 @@ use super::course::Course;
 use super::series::Series;
 use crate::constants::STANDARD_GRAVITY;
 use crate::outcome::{Location, Stop};
+use crate::placement::Placement;
 use crate::problem::{Free, Problem, Travel};
 
-/// Relative change of speed over a bore radius below which the speed counts as terminal.
+/// Relative change of speed over a scale length below which the speed counts as terminal.
 const TERMINAL_CHANGE: f64 = 1.0e-3;
 
 /// A figure of one level.
@@ -101,20 +102,23 @@ fn gate_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec<LevelFi
     }
 }
 
-/// The speed where it hardly changes any more inside the wall.
+/// The speed where it hardly changes any more: the whole mover well inside the wall, and as fast a scale length before and after.
 fn terminal(problem: &Problem, series: &Series, figures: &mut Vec<LevelFigure>) {
     let length = problem.wall.length_m().unwrap_or(0.0);
-    let scale = problem.wall.inner_radius_m().max(0.2 * problem.wall.outer_radius_m());
+    let placement = Placement::new(problem);
+    let margin = 2.0 * placement.scale_m;
+    let (lowest, highest) = (margin - placement.lowest_m, length - margin - placement.highest_m);
+    let speed_at = |t: f64| series.at(&series.velocity, t).abs();
     let change = |k: usize| {
-        let speed = series.at(&series.velocity, series.time_mid[k]);
-        series.acceleration_mid[k].abs() * scale / (speed * speed)
+        let t = series.time_mid[k];
+        let speed = speed_at(t);
+        let while_passing = placement.scale_m / speed;
+        let off = |t: f64| (speed_at(t.clamp(0.0, series.time.last().copied().unwrap_or(t))) / speed - 1.0).abs();
+        off(t - while_passing).max(off(t + while_passing))
     };
-    let inside = (0..series.time_mid.len()).filter(|&k| {
-        let z = series.position_mid[k];
-        z > 2.0 * scale && z < length - 2.0 * scale
-    });
-    let steadiest = inside.min_by(|&a, &b| change(a).total_cmp(&change(b)));
-    if let Some(k) = steadiest.filter(|&k| change(k) < TERMINAL_CHANGE) {
+    let inside = (0..series.time_mid.len()).filter(|&k| (lowest..highest).contains(&series.position_mid[k]));
+    let steadiest = inside.map(|k| (k, change(k))).min_by(|a, b| a.1.total_cmp(&b.1));
+    if let Some((k, _)) = steadiest.filter(|(_, change)| *change < TERMINAL_CHANGE) {
         let t = series.time_mid[k];
         let value = series.velocity_at(t).abs();
         figures.push(LevelFigure { name: "terminal_speed", unit: "m/s", value, location: Some(at_time(series, t)) });
@@ -122,14 +126,22 @@ fn terminal(problem: &Problem, series: &Series, figures: &mut Vec<LevelFigure>) 
 }
 
 fn acceleration_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec<LevelFigure>) {
-    let moves = series.position.windows(2).map(|z| (z[1] - z[0]).signum());
+    let moves = series.position.windows(2).map(|z| sense(z[1] - z[0]));
     let slowing: Vec<f64> = series.acceleration_mid.iter().zip(moves).map(|(a, s)| -a * s).collect();
     let weight = law.gravity_m_per_s2 * law.tilt_rad.cos();
     let felt: Vec<f64> = series.acceleration_mid.iter().map(|a| (a + weight).abs() / STANDARD_GRAVITY).collect();
     for (name, unit, values) in [("deceleration_peak", "m/s2", slowing), ("felt_acceleration_peak", "1", felt)] {
         let (t, value) = series.greatest(&values, end);
-        figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
+        // Where nothing decelerates there is no such peak.
+        if value > 0.0 {
+            figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
+        }
     }
+}
+
+/// -1, 0 or 1.
+fn sense(travel: f64) -> f64 {
+    if travel.abs() > 0.0 { travel.signum() } else { 0.0 }
 }
 
 fn current_peak(series: &Series, end: f64) -> LevelFigure {

@@ -28,7 +28,7 @@ pub struct Ledger {
     pub heat: f64,
     /// Change of field energy.
     pub field_energy: f64,
-    /// (work - heat - field energy) / work.
+    /// (work - heat - field energy) / the largest of the three.
     pub imbalance_relative: f64,
     /// `J` or, for settled fields, `W`.
     pub unit: &'static str,
