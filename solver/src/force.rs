@@ -88,7 +88,6 @@ pub(crate) fn by_stress(
     problem: &Problem,
     placement: &Placement,
     position: f64,
-    reading: Reading,
 ) -> f64 {
     let z = grid.z.nodes();
     let reach = STRESS_REACH * placement.scale_m;
@@ -96,7 +95,7 @@ pub(crate) fn by_stress(
     let last = grid.z.nearest(position + placement.highest_m + reach).min(grid.nz() - 2);
     let mut force = 0.0;
     for face in &placement.stress_faces {
-        let reader = FaceReader::new(grid, face, reading);
+        let reader = FaceReader::new(grid, face);
         let mut sum = 0.0;
         for (j, &height) in z.iter().enumerate().take(last + 1).skip(first) {
             let (slope_r, slope_z) = reader.slopes(psi_reaction, j);
@@ -110,27 +109,18 @@ pub(crate) fn by_stress(
     force
 }
 
-/// How the reaction is read at a face.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub(crate) enum Reading {
-    /// As the scheme sees it, in even powers: on grids refined around the mover.
-    Scheme,
-    /// By high-order stencils: on the even grids of a march, whose cells are nearly as long as the gap.
-    Stencils,
-}
-
 /// Reads d psi/dr and d psi/dz of the reaction on the air side of a wall face.
 struct FaceReader<'g> {
     grid: &'g Grid,
     /// Node row of the face, and its neighbour in the air.
     face: usize,
     air: usize,
-    /// For stencils: first of the rows in the air, and the stencil across them.
+    /// Off the face: first of the rows in the air, and the stencil across them.
     across: Option<(usize, Stencil<POINTS>)>,
 }
 
 impl<'g> FaceReader<'g> {
-    fn new(grid: &'g Grid, face: &StressFace, reading: Reading) -> Self {
+    fn new(grid: &'g Grid, face: &StressFace) -> Self {
         let r = grid.r.nodes();
         let i = grid.r.nearest(face.face_m);
         let (air, from) = match face.mover {
@@ -138,21 +128,19 @@ impl<'g> FaceReader<'g> {
             MoverSide::Outside => (i + 1, i),
         };
         let off_face = (face.radius_m - face.face_m).abs() > 0.0;
-        let across = (off_face || reading == Reading::Stencils)
-            .then(|| (from, Stencil::over(&r[from..from + POINTS], face.radius_m)));
+        let across = off_face.then(|| (from, Stencil::over(&r[from..from + POINTS], face.radius_m)));
         Self { grid, face: i, air, across }
     }
 
     fn slopes(&self, psi: &[f64], j: usize) -> (f64, f64) {
         let z = self.grid.z.nodes();
+        let central = |value: &dyn Fn(usize) -> f64| (value(j + 1) - value(j - 1)) / (z[j + 1] - z[j - 1]);
         if let Some((from, across)) = &self.across {
             let row = |j: usize| across.value_of(&psi[self.grid.node(*from, j)..]);
-            let along = Stencil::<ALONG_POINTS>::at(z, z[j]);
-            let slope_z = along.slope.iter().enumerate().map(|(n, w)| w * row(along.first + n)).sum();
-            return (across.slope_of(&psi[self.grid.node(*from, j)..]), slope_z);
+            return (across.slope_of(&psi[self.grid.node(*from, j)..]), central(&row));
         }
         let row = |j: usize| psi[self.grid.node(self.face, j)];
-        (self.slope_at_face(psi, j), (row(j + 1) - row(j - 1)) / (z[j + 1] - z[j - 1]))
+        (self.slope_at_face(psi, j), central(&row))
     }
 
     /// d psi/dr on the face's air side as the scheme itself sees it: the flux through the annulus next to the face, carried over

@@ -10,7 +10,7 @@ use super::series::Series;
 use super::step::{State, StepReport, Stepper, heat_rate};
 use crate::fault::SolveFault;
 use crate::fields::snapshot;
-use crate::force::{Reading, by_stress, on_mover};
+use crate::force::{by_stress, on_mover};
 use crate::interpolate::{ALONG_POINTS, Stencil, peak_near, sampled};
 use crate::monitor::Monitor;
 use crate::outcome::Snapshot;
@@ -273,14 +273,7 @@ impl<'a, 'p> Run<'a, 'p> {
         self.greatest_drag = self.greatest_drag.max(drag);
         if drag >= NEAR_GREATEST * self.greatest_drag {
             self.series.time_stress.push(time_mid);
-            self.series.force_by_stress.push(by_stress(
-                grid,
-                &self.psi_nodes,
-                problem,
-                placement,
-                middle,
-                Reading::Stencils,
-            ));
+            self.series.force_by_stress.push(by_stress(grid, &self.psi_nodes, problem, placement, middle));
         }
     }
 

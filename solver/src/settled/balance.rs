@@ -4,7 +4,7 @@ use super::levels::{Levels, Point};
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::fields::{empty_fields, snapshot};
-use crate::force::{Reading, by_stress, on_mover};
+use crate::force::{by_stress, on_mover};
 use crate::outcome::{Caution, Fields, Forces};
 use crate::problem::{Problem, SnapshotPlan};
 
@@ -24,7 +24,7 @@ pub(super) fn three_forces(
         let (psi, _, _) = level.reaction(velocity)?;
         let grid = &level.operators.grid;
         on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0, levels.placement.gap_m));
-        stress_levels.push(sign * by_stress(grid, &psi, problem, &levels.placement, 0.0, Reading::Scheme));
+        stress_levels.push(sign * by_stress(grid, &psi, problem, &levels.placement, 0.0));
     }
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
