@@ -1,16 +1,16 @@
 //! What a solve will take: grids, steps, memory and time, before it starts.
 //!
-//! The grids and factors are sized exactly (symbolic factorisation); a few back-solves on the coarsest level tell this machine's speed.
+//! Every level is assembled and factored, and a few solves on it are timed: that takes as long as a few steps of the solve itself.
 //! Time and memory are meant to hold within a factor of two.
 
 use std::time::Instant;
 
 use lenzbore_mesh::{Grid, Refinement, Regions};
 
+use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_report::grid_report;
 use crate::grid_rules::{GridPlan, reynolds_per_speed};
-use crate::linear::{Factor, Pattern};
 use crate::march;
 use crate::materials::Materials;
 use crate::operators::Operators;
@@ -21,10 +21,23 @@ use crate::regime::regime;
 use crate::settled;
 use crate::target::levels_wanted;
 
-/// Back-solves timed.
-const TIMED_SOLVES: u32 = 6;
-/// Share of a time step that is not back-solves (sources, residual, forces).
-const STEP_OVERHEAD: f64 = 1.35;
+/// Solves timed on each level.
+const TIMED_SOLVES: usize = 5;
+/// Time of a step over that of its solves (sources, currents, forces; measured).
+const STEP_OVERHEAD: f64 = 2.3;
+/// Time of a recurrence vector over that of its solve (measured).
+const VECTOR_OVERHEAD: f64 = 1.5;
+/// Time of a level's set-up over that of assembly and factorisation (grid, sources, figures; measured).
+const SET_UP_OVERHEAD: f64 = 1.5;
+/// Bytes of a node in operators and work arrays (measured), and of the program itself.
+const NODE_BYTES: f64 = 360.0;
+const PROGRAM_BYTES: f64 = 3.0e6;
+/// Bytes of a node in a layered factor; walls of more layers than this may need a sparse one.
+const LAYERED_BYTES: f64 = 40.0;
+const FEW_LAYERS: usize = 4;
+/// Points of a curve, and the time to add one vector into one point's ring current, s.
+const CURVE_POINTS: f64 = 50.0;
+const ADDING_S: f64 = 3.0e-10;
 /// Factors kept by a level of a march.
 const KEPT_FACTORS: f64 = 4.0;
 
@@ -35,8 +48,8 @@ pub struct Forecast {
     pub grids: Vec<GridReport>,
     /// Unknowns on the finest level.
     pub unknowns: usize,
-    /// Stored entries of the finest level's factor.
-    pub factor_entries: usize,
+    /// Bytes of the finest level's factor.
+    pub factor_bytes: usize,
     /// Back-solves on all levels.
     pub solves: f64,
     /// Time steps on all levels (0 for settled fields).
@@ -66,7 +79,9 @@ pub fn rough_memory_bytes(problem: &Problem, curve_speed_m_per_s: Option<f64>) -
     let coarsest = count(plan.coarsest_nodes());
     let level = |f: Refinement| {
         let nodes = coarsest * f.factor() * f.factor();
-        nodes * (factors * 12.0 * nodes.log2() + 8.0 * 60.0 + snapshots(problem) * 48.0)
+        let few = problem.wall.layers.len() <= FEW_LAYERS;
+        let factor = if few { LAYERED_BYTES } else { 12.0 * nodes.log2() };
+        nodes * (factors * factor + NODE_BYTES + snapshots(problem) * 48.0)
     };
     Ok(Refinement::first(levels_wanted(&problem.accuracy)).into_iter().map(level).sum())
 }
@@ -76,8 +91,9 @@ struct LevelSize {
     grid: Grid,
     unknowns: usize,
     wall_nodes: usize,
-    entries: usize,
-    seconds_per_solve: f64,
+    factor_bytes: usize,
+    set_up_seconds: f64,
+    solve_seconds: f64,
 }
 
 /// Forecasts [`crate::solve`] for the problem's own law, or [`crate::drag_curve`] up to `curve_speed_m_per_s` where given.
@@ -97,21 +113,24 @@ pub fn forecast(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<F
     let mut forecast = Forecast {
         grids: Vec::new(),
         unknowns: sizes.last().map_or(0, |s| s.unknowns),
-        factor_entries: sizes.last().map_or(0, |s| s.entries),
+        factor_bytes: sizes.last().map_or(0, |s| s.factor_bytes),
         solves: 0.0,
         steps: 0.0,
-        memory_bytes: 0.0,
+        memory_bytes: PROGRAM_BYTES,
         time_s: 0.0,
         regime: regime(problem, &placement, speed),
         gap_m: placement.gap_m,
     };
-    let mut level_seconds = Vec::new();
+    let (mut level_seconds, mut points_seconds) = (Vec::new(), 0.0);
     for (size, refinement) in sizes.iter().zip(&refinements) {
         let f = refinement.factor();
         let (steps, solves) =
             if settled { (0.0, vectors(problem, speed) + 2.0) } else { march_work(problem, &plan, f) };
-        let overhead = if settled { 1.2 } else { STEP_OVERHEAD };
-        level_seconds.push(solves * size.seconds_per_solve * overhead + set_up(size));
+        let overhead = if settled { VECTOR_OVERHEAD } else { STEP_OVERHEAD };
+        level_seconds.push(solves * size.solve_seconds * overhead + SET_UP_OVERHEAD * size.set_up_seconds);
+        if curve_speed_m_per_s.is_some() {
+            points_seconds += CURVE_POINTS * solves * count(size.wall_nodes) * ADDING_S;
+        }
         forecast.steps += steps;
         forecast.solves += solves;
         forecast.memory_bytes += memory(problem, size, settled, solves);
@@ -119,72 +138,67 @@ pub fn forecast(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<F
         report.steps = rounded(steps);
         forecast.grids.push(report);
     }
-    forecast.time_s = if settled { level_seconds.iter().sum::<f64>() * 1.1 } else { beside(&level_seconds) };
+    forecast.time_s = beside(&level_seconds, settled) + points_seconds;
     Ok(forecast)
 }
 
-/// The coarsest level first, then the finest beside the others (the coarsest once more on half the domain).
-fn beside(level_seconds: &[f64]) -> f64 {
+/// The finest level beside the others (the coarsest once more on half the domain); in a march the coarsest goes before all.
+fn beside(level_seconds: &[f64], settled: bool) -> f64 {
     let first = level_seconds.first().copied().unwrap_or(0.0);
     let finest = level_seconds.last().copied().unwrap_or(0.0);
-    let all: f64 = level_seconds.iter().sum();
-    first + finest.max(all - finest)
+    let others = level_seconds.iter().sum::<f64>() - finest + if settled { first } else { 0.0 };
+    let before = if settled { 0.0 } else { first };
+    let cores = std::thread::available_parallelism().map_or(1, std::num::NonZero::get);
+    before + if cores > 1 { finest.max(others) } else { finest + others }
 }
 
 fn sizes(problem: &Problem, plan: &GridPlan, refinements: &[Refinement]) -> Result<Vec<LevelSize>, SolveFault> {
-    let mut sizes: Vec<LevelSize> = Vec::with_capacity(refinements.len());
-    let mut seconds_per_entry = 0.0;
-    for &refinement in refinements {
-        let grid = plan.grid(refinement);
+    refinements.iter().map(|&refinement| LevelSize::new(problem, plan, plan.grid(refinement))).collect()
+}
+
+impl LevelSize {
+    /// Assembles and factors one level, and times a few solves.
+    fn new(problem: &Problem, plan: &GridPlan, grid: Grid) -> Result<Self, SolveFault> {
+        let begin = Instant::now();
         let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
         let operators = Operators::new(grid, materials);
-        let pattern = Pattern::new(&operators.stiffness)?;
-        let entries = pattern.factor_entries();
-        if sizes.is_empty() {
-            let mut factor = Factor::new(&pattern, &operators.stiffness, None)?;
-            seconds_per_entry = timed(&mut factor, operators.unknowns()) / count(entries);
+        let direct = DirectPlan::new(&operators)?;
+        let mut factor = direct.factor(&operators, 0.0)?;
+        let set_up_seconds = begin.elapsed().as_secs_f64();
+        let mut right = vec![0.0; operators.unknowns()];
+        operators.wall.unknown.iter().for_each(|&u| right[u] = 1.0);
+        let mut psi = right.clone();
+        factor.solve_in_place(&mut psi);
+        let begin = Instant::now();
+        for _ in 0..TIMED_SOLVES {
+            psi.copy_from_slice(&right);
+            factor.solve_in_place(&mut psi);
+            factor.check(&operators, &psi, &right, f64::INFINITY)?;
         }
-        sizes.push(LevelSize {
+        Ok(Self {
             unknowns: operators.unknowns(),
             wall_nodes: operators.wall.len(),
-            entries,
-            seconds_per_solve: seconds_per_entry * count(entries),
+            factor_bytes: direct.factor_bytes(),
+            set_up_seconds,
+            solve_seconds: begin.elapsed().as_secs_f64() / count(TIMED_SOLVES),
             grid: operators.grid,
-        });
+        })
     }
-    Ok(sizes)
 }
 
-/// Seconds of a back-solve.
-fn timed(factor: &mut Factor, unknowns: usize) -> f64 {
-    let mut column = vec![1.0; unknowns];
-    factor.solve_in_place(&mut column);
-    let begin = Instant::now();
-    for _ in 0..TIMED_SOLVES {
-        column.fill(1.0);
-        factor.solve_in_place(&mut column);
-    }
-    begin.elapsed().as_secs_f64() / f64::from(TIMED_SOLVES)
-}
-
-/// Assembly, ordering and factorisation: as long as some tens of back-solves.
-fn set_up(size: &LevelSize) -> f64 {
-    40.0 * size.seconds_per_solve
-}
-
-/// Recurrence vectors for settled fields, from the magnetic Reynolds number and the wall's relative thickness.
+/// Recurrence vectors for settled fields from the magnetic Reynolds number: within 30 % from 0.01 to 100 for walls of 0.05 to 1 bore
+/// radii and gaps of 0.1 to 0.5 of it (measured); permeable walls need fewer.
 fn vectors(problem: &Problem, speed: f64) -> f64 {
-    let wall = &problem.wall;
-    let reynolds = reynolds_per_speed(wall) * speed;
-    let relative = (wall.outer_radius_m() - wall.inner_radius_m()) / wall.outer_radius_m();
-    4.0 + reynolds * (1.0 + 12.0 * relative)
+    let share = if problem.wall.is_permeable() { 6.0 } else { 10.0 };
+    4.0 + share * (reynolds_per_speed(&problem.wall) * speed).powf(0.8)
 }
 
 /// Steps and back-solves of a march on one level.
 fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
+    // Free motion takes v dt <= h and a ladder of powers of two; where the speed is held, v dt = h / 2.
     let (distance, strides_a_cell, columns) = match &problem.travel {
         Travel::Traverse(t) => ((t.to_m - t.from_m).abs(), 2.0, 1.0),
-        Travel::Free(law) => ((law.until_m - law.release_m).abs(), 2.0, 2.0),
+        Travel::Free(law) => ((law.until_m - law.release_m).abs(), 1.45, 2.0),
         Travel::Steady { .. } => (0.0, 0.0, 0.0),
     };
     let pull = if problem.wall.is_permeable() { 1.0 } else { 0.0 };
@@ -195,9 +209,9 @@ fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
 /// Bytes of one level: factors with workspace, operators, stored vectors, snapshots.
 fn memory(problem: &Problem, size: &LevelSize, settled: bool, solves: f64) -> f64 {
     let factors = if settled { 1.0 } else { KEPT_FACTORS };
-    let vectors = if settled { solves * count(size.wall_nodes) * 8.0 } else { 0.0 };
+    let vectors = if settled { solves * count(size.wall_nodes) * 16.0 } else { 0.0 };
     let nodes = count(size.grid.nodes());
-    factors * count(size.entries) * 12.0 + nodes * 8.0 * 60.0 + vectors + snapshots(problem) * nodes * 48.0
+    factors * count(size.factor_bytes) + nodes * NODE_BYTES + vectors + snapshots(problem) * nodes * 48.0
 }
 
 fn snapshots(problem: &Problem) -> f64 {

@@ -22,6 +22,7 @@ pub mod sources;
 
 mod band;
 mod corner;
+mod direct;
 mod fields;
 mod force;
 mod grid_report;

@@ -7,6 +7,7 @@ use std::time::Instant;
 
 use lenzbore_mesh::{Refinement, Regions};
 
+use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
 use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
@@ -80,6 +81,13 @@ pub struct BackSolve {
     pub seconds: f64,
     /// Median time for two right-hand sides at once, as the equation of motion asks, s.
     pub seconds_two_columns: f64,
+    /// Median time for one right-hand side with the solver that [`crate::solve`] takes here, s: by radial modes where the wall has few
+    /// sections, else the same Cholesky factor.
+    pub direct_seconds: f64,
+    /// Bytes of that solver's factor, with its workspace.
+    pub direct_bytes: usize,
+    /// Its factorisation, s.
+    pub direct_factorisation_seconds: f64,
     /// Assembly of the operators, s.
     pub assembly_seconds: f64,
     /// Ordering and symbolic factorisation, s.
@@ -93,7 +101,8 @@ pub struct BackSolve {
 /// Times back-solves, factorisation and assembly on the finest grid that [`node_lines`] gives.
 ///
 /// Each back-solve is timed alone, `repeats` times (at least once); `before_each` runs before every one and isn't timed: it
-/// may clear the caches, or do nothing for the time inside a row of steps.
+/// may clear the caches, or do nothing for the time inside a row of steps. The Cholesky factor is the yardstick against the
+/// bandwidth of memory; [`crate::solve`] itself takes it only where its faster solver doesn't suit the wall.
 ///
 /// # Errors
 /// A grid that cannot be built, or a factorisation or solve that fails.
@@ -118,29 +127,34 @@ pub fn back_solve(
     for (&u, g) in operators.wall.unknown.iter().zip(&operators.wall.conductance) {
         (right[u], right[unknowns + u]) = (*g, -0.5 * g);
     }
+    let mut seconds = [0.0; 2];
     let mut residual = 0.0_f64;
-    let mut median = |columns: usize| {
+    for (columns, seconds) in (1..).zip(&mut seconds) {
         let right = &right[..columns * unknowns];
         let mut solution = right.to_vec();
-        let mut times = Vec::with_capacity(repeats.max(1));
-        for _ in 0..repeats.max(1) {
-            solution.copy_from_slice(right);
-            before_each();
-            times.push(timed(|| factor.solve_in_place(&mut solution)).1);
-        }
+        *seconds = median(repeats, &mut before_each, right, &mut solution, |x| factor.solve_in_place(x));
         for (x, b) in solution.chunks_exact(unknowns).zip(right.chunks_exact(unknowns)) {
             residual = residual.max(check_residual(&operators.stiffness, None, x, b, RESIDUAL_LIMIT)?);
         }
-        times.sort_by(f64::total_cmp);
-        Ok::<f64, SolveFault>(times[times.len() / 2])
-    };
-    let (seconds, seconds_two_columns) = (median(1)?, median(2)?);
+    }
+    let (direct, direct_factorisation_seconds) = timed(|| {
+        let plan = DirectPlan::new(&operators)?;
+        Ok::<_, SolveFault>((plan.factor_bytes(), plan.factor(&operators, 0.0)?))
+    });
+    let (direct_bytes, mut direct) = direct?;
+    let right = &right[..unknowns];
+    let mut solution = right.to_vec();
+    let direct_seconds = median(repeats, &mut before_each, right, &mut solution, |x| direct.solve_in_place(x));
+    residual = residual.max(direct.check(&operators, &solution, right, RESIDUAL_LIMIT)?);
     Ok(BackSolve {
         unknowns,
         factor_entries: pattern.factor_entries(),
         bytes_read: pattern.bytes_per_solve(),
-        seconds,
-        seconds_two_columns,
+        seconds: seconds[0],
+        seconds_two_columns: seconds[1],
+        direct_seconds,
+        direct_bytes,
+        direct_factorisation_seconds,
         assembly_seconds,
         ordering_seconds,
         factorisation_seconds,
@@ -155,6 +169,24 @@ fn plan(problem: &Problem, curve_speed: Option<f64>) -> Result<GridPlan, SolveFa
         (None, Travel::Steady { velocity_m_per_s }) => settled::plan(problem, &placement, *velocity_m_per_s),
         (None, _) => Ok(march::plan(problem, &placement)?.0),
     }
+}
+
+/// Median seconds of `solve` from `right`, timed alone each time; `solution` holds the last one's.
+fn median(
+    repeats: usize,
+    before_each: &mut impl FnMut(),
+    right: &[f64],
+    solution: &mut [f64],
+    mut solve: impl FnMut(&mut [f64]),
+) -> f64 {
+    let mut times = Vec::with_capacity(repeats.max(1));
+    for _ in 0..repeats.max(1) {
+        solution.copy_from_slice(right);
+        before_each();
+        times.push(timed(|| solve(solution)).1);
+    }
+    times.sort_by(f64::total_cmp);
+    times[times.len() / 2]
 }
 
 /// What `work` gives, and the seconds that it took.

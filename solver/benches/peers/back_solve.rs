@@ -143,8 +143,12 @@ impl Row {
             solve.residual
         );
         println!(
-            "{:34} assembly {:.2} ms, ordering {:.2} ms, numeric factorisation {:.2} ms",
+            "{:34} solver in use: {:.3} ms, {:.1} MiB, factored in {:.2} ms; {:.2} of that bound. Assembly {:.2} ms; Cholesky: ordering {:.2} ms, factorisation {:.2} ms",
             "",
+            1e3 * solve.direct_seconds,
+            count(solve.direct_bytes) / 1048576.0,
+            1e3 * solve.direct_factorisation_seconds,
+            self.warm_over_memory * solve.direct_seconds / solve.seconds,
             1e3 * solve.assembly_seconds,
             1e3 * solve.ordering_seconds,
             1e3 * solve.factorisation_seconds

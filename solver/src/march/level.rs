@@ -2,13 +2,13 @@
 
 use std::collections::VecDeque;
 use std::f64::consts::PI;
-use std::sync::Arc;
 
 use lenzbore_mesh::{Grid, Regions};
 
+use crate::direct::{DirectFactor, DirectPlan};
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
-use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
+use crate::linear::RESIDUAL_LIMIT;
 use crate::materials::Materials;
 use crate::operators::{Operators, add_product};
 use crate::outcome::WorkCounters;
@@ -26,8 +26,8 @@ pub(crate) struct MarchLevel<'a> {
     pub(crate) problem: &'a Problem,
     pub(crate) placement: &'a Placement,
     pub(crate) operators: Operators,
-    pattern: Arc<Pattern>,
-    factors: VecDeque<(u64, Factor)>,
+    direct: DirectPlan,
+    factors: VecDeque<(u64, DirectFactor)>,
     at_rest: Option<AtRest>,
     table: SourceTable,
     /// Row of the table for each run of wall nodes.
@@ -50,8 +50,8 @@ impl<'a> MarchLevel<'a> {
     ) -> Result<Self, SolveFault> {
         let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
         let operators = Operators::new(grid, materials);
-        let pattern = Pattern::new(&operators.stiffness)?;
-        let at_rest = AtRest::new(&operators, &pattern)?;
+        let direct = DirectPlan::new(&operators)?;
+        let at_rest = AtRest::new(&operators, &direct)?;
         let grid = &operators.grid;
         let wall_indices: Vec<usize> = operators.wall.rows.iter().map(|row| row.i).collect();
         let mut indices: Vec<usize> = wall_indices.clone();
@@ -66,7 +66,7 @@ impl<'a> MarchLevel<'a> {
             placement,
             table_rows: wall_indices.iter().map(|&i| row_of(i)).collect(),
             table,
-            pattern,
+            direct,
             factors: VecDeque::new(),
             at_rest,
             operators,
@@ -99,12 +99,8 @@ impl<'a> MarchLevel<'a> {
             }
             return Ok(());
         }
-        let mut added = vec![0.0; self.operators.unknowns()];
-        for (&u, g) in self.operators.wall.unknown.iter().zip(&self.operators.wall.conductance) {
-            added[u] = 2.0 * g / dt;
-        }
         self.factors.truncate(KEPT_FACTORS - 1);
-        self.factors.push_front((key, Factor::new(&self.pattern, &self.operators.stiffness, Some(&added))?));
+        self.factors.push_front((key, self.direct.factor(&self.operators, 2.0 / dt)?));
         self.counters.factorisations += 1;
         Ok(())
     }
@@ -117,6 +113,17 @@ impl<'a> MarchLevel<'a> {
         }
     }
 
+    /// Checks a solution of (K + 2 G / dt) x = b with the factor made ready last, and keeps the worst residual.
+    ///
+    /// # Errors
+    /// Not finite, or above `limit`.
+    pub(crate) fn check(&mut self, x: &[f64], b: &[f64], limit: f64) -> Result<(), SolveFault> {
+        if let Some((_, factor)) = self.factors.front_mut() {
+            self.worst_residual = self.worst_residual.max(factor.check(&self.operators, x, b, limit)?);
+        }
+        Ok(())
+    }
+
     /// y at rest: the static field of mover (`psi_source` at the wall nodes) and permeable wall, and the field energy, J.
     ///
     /// # Errors
@@ -126,7 +133,7 @@ impl<'a> MarchLevel<'a> {
         let Some(at_rest) = &mut self.at_rest else { return Ok((flux, 0.0)) };
         at_rest.solve(&self.operators, psi_source);
         self.counters.solves += 1;
-        check_residual(&self.operators.stiffness, None, &at_rest.psi, &at_rest.right, RESIDUAL_LIMIT)?;
+        at_rest.factor.check(&self.operators, &at_rest.psi, &at_rest.right, RESIDUAL_LIMIT)?;
         // pi (psi_r K psi_r + 2 psi_r (K - K0) psi_s + psi_s (K - K0) psi_s), with K psi_r = -(K - K0) psi_s.
         let mut energy = 0.0;
         for (w, &u) in self.operators.wall.unknown.iter().enumerate() {
@@ -157,7 +164,7 @@ impl<'a> MarchLevel<'a> {
 
 /// The static problem of a permeable wall: K psi_r = -(K - K0) psi_s.
 struct AtRest {
-    factor: Factor,
+    factor: DirectFactor,
     nodes: Vec<f64>,
     right: Vec<f64>,
     psi: Vec<f64>,
@@ -166,13 +173,13 @@ struct AtRest {
 }
 
 impl AtRest {
-    fn new(operators: &Operators, pattern: &Arc<Pattern>) -> Result<Option<Self>, SolveFault> {
+    fn new(operators: &Operators, direct: &DirectPlan) -> Result<Option<Self>, SolveFault> {
         if operators.excess.is_none() {
             return Ok(None);
         }
         let (n, w) = (operators.unknowns(), operators.wall.len());
         Ok(Some(Self {
-            factor: Factor::new(pattern, &operators.stiffness, None)?,
+            factor: direct.factor(operators, 0.0)?,
             nodes: vec![0.0; operators.grid.nodes()],
             right: vec![0.0; n],
             psi: vec![0.0; n],

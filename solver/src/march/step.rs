@@ -5,7 +5,6 @@ use std::f64::consts::PI;
 use super::level::{MarchLevel, spread_wall};
 use super::motion::{Force, Motion, friction, frictionless, other_force};
 use crate::fault::SolveFault;
-use crate::linear::check_residual;
 use crate::operators::add_product;
 use crate::problem::Free;
 
@@ -96,7 +95,6 @@ pub(crate) struct Stepper {
     /// Equivalent currents K0 psi of both columns at the wall nodes.
     equivalent: [Vec<f64>; 2],
     nodes: Vec<f64>,
-    added: Vec<f64>,
     rings: Vec<f64>,
 }
 
@@ -112,7 +110,6 @@ impl Stepper {
             mean: vec![0.0; w],
             equivalent: [vec![0.0; w], vec![0.0; w]],
             nodes: vec![0.0; nodes],
-            added: vec![0.0; n],
             rings: vec![0.0; w],
         }
     }
@@ -236,7 +233,6 @@ impl Stepper {
             let (u, g) = (wall.unknown[w], 2.0 * wall.conductance[w] / dt);
             self.right[u] = g * (state.flux[w] - self.mean[w]);
             self.right[n + u] = -0.5 * g * self.source_slope[w];
-            self.added[u] = g;
         }
         if let Some(excess) = &level.operators.excess {
             spread_wall(&level.operators, &self.mean, &mut self.nodes);
@@ -247,14 +243,7 @@ impl Stepper {
         let used = if tangent { 2 * n } else { n };
         self.columns[..used].copy_from_slice(&self.right[..used]);
         level.solve(&mut self.columns[..used]);
-        let residual = check_residual(
-            &level.operators.stiffness,
-            Some(&self.added),
-            &self.columns[..n],
-            &self.right[..n],
-            STEP_RESIDUAL,
-        )?;
-        level.worst_residual = level.worst_residual.max(residual);
+        level.check(&self.columns[..n], &self.right[..n], STEP_RESIDUAL)?;
         Ok(())
     }
 

@@ -26,10 +26,7 @@ pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) ->
 fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
     let fastest = speeds.iter().copied().fold(0.0, f64::max);
     let mut levels = Levels::new(problem, fastest, count, monitor)?;
-    let mut points = Vec::with_capacity(speeds.len());
-    for &speed in speeds {
-        points.push(curve_point(&levels, speed));
-    }
+    let points = curve_points(&levels, speeds)?;
     let mut cautions = cautions(problem);
     let mut figures = vec![damping_at_rest(&levels, "damping_coefficient_zero_speed")];
     figures.push(lag_time(&levels));
@@ -62,6 +59,18 @@ fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monit
         ledger: None,
         fields: None,
     })
+}
+
+/// The points, on two cores.
+fn curve_points(levels: &Levels<'_>, speeds: &[f64]) -> Result<Vec<DragPoint>, SolveFault> {
+    let points = |speeds: &[f64]| speeds.iter().map(|&speed| curve_point(levels, speed)).collect::<Vec<_>>();
+    let (slower, faster) = speeds.split_at(speeds.len() / 2);
+    let (first, second) = std::thread::scope(|scope| {
+        let beside = scope.spawn(|| points(faster));
+        (points(slower), beside.join())
+    });
+    let second = second.map_err(|_| SolveFault::NotFinite { what: "a level's thread" })?;
+    Ok([first, second].concat())
 }
 
 fn curve_point(levels: &Levels<'_>, speed: f64) -> DragPoint {

@@ -5,10 +5,11 @@ use std::f64::consts::PI;
 use lenzbore_mesh::{Grid, Regions};
 
 use super::recurrence::Recurrence;
+use crate::direct::{DirectFactor, DirectPlan};
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
 use crate::interpolate::{ALONG_POINTS, Stencil, peak_near};
-use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
+use crate::linear::RESIDUAL_LIMIT;
 use crate::materials::Materials;
 use crate::monitor::Monitor;
 use crate::operators::{Operators, add_product};
@@ -17,15 +18,15 @@ use crate::problem::{Mover, Problem};
 use crate::sources::AxialField;
 use crate::wall_nodes::WallRow;
 
-/// Recurrence residual at which the drag has converged to 2e-9 (measured at 100 m/s).
-const RECURRENCE_LIMIT: f64 = 1.0e-8;
+/// Recurrence residual at which the drag has converged to 2e-11 (measured at 100 m/s).
+const RECURRENCE_LIMIT: f64 = 1.0e-10;
 /// More vectors than this is a failure.
 const MOST_VECTORS: usize = 6000;
 
 /// A level: operators, the factor of K, the static field at the wall, the recurrence.
 pub(crate) struct SettledLevel {
     pub(crate) operators: Operators,
-    factor: Factor,
+    factor: DirectFactor,
     /// d psi_0/dz at the wall nodes, psi_0 the static field (mover and permeable wall).
     slope: Vec<f64>,
     /// Static reaction of a permeable wall, all nodes.
@@ -63,8 +64,7 @@ impl SettledLevel {
     ) -> Result<Self, SolveFault> {
         let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
         let operators = Operators::new(grid, materials);
-        let pattern = Pattern::new(&operators.stiffness)?;
-        let mut factor = Factor::new(&pattern, &operators.stiffness, None)?;
+        let mut factor = DirectPlan::new(&operators)?.factor(&operators, 0.0)?;
         let mut counters = WorkCounters { factorisations: 1, ..WorkCounters::default() };
         let (static_reaction, static_residual) = static_reaction(&operators, &mut factor, problem, &mut counters)?;
         let slope = slope(&operators, problem, static_reaction.as_deref());
@@ -146,7 +146,7 @@ impl SettledLevel {
         let mut psi = right.clone();
         self.factor.solve_in_place(&mut psi);
         self.counters.solves += 1;
-        check_residual(&self.operators.stiffness, None, &psi, &right, RESIDUAL_LIMIT)?;
+        self.factor.check(&self.operators, &psi, &right, RESIDUAL_LIMIT)?;
         let mut carried = vec![0.0; currents.len()];
         convect(&self.operators, &psi, &mut carried);
         let (mut off, mut scale) = (0.0_f64, 0.0_f64);
@@ -193,7 +193,7 @@ fn wall_source(operators: &Operators, problem: &Problem) -> Vec<f64> {
 /// K psi = -(K - K0) psi_s: the static reaction of a permeable wall, at all nodes, with its residual.
 fn static_reaction(
     operators: &Operators,
-    factor: &mut Factor,
+    factor: &mut DirectFactor,
     problem: &Problem,
     counters: &mut WorkCounters,
 ) -> Result<(Option<Vec<f64>>, f64), SolveFault> {
@@ -204,7 +204,7 @@ fn static_reaction(
     let mut psi = right.clone();
     factor.solve_in_place(&mut psi);
     counters.solves += 1;
-    let residual = check_residual(&operators.stiffness, None, &psi, &right, RESIDUAL_LIMIT)?;
+    let residual = factor.check(operators, &psi, &right, RESIDUAL_LIMIT)?;
     Ok((Some(operators.spread(&psi)), residual))
 }
 
@@ -243,7 +243,7 @@ pub(crate) fn convect(operators: &Operators, psi: &[f64], out: &mut [f64]) {
 /// Runs the recurrence until the reaction at |velocity| has converged.
 fn recur(
     operators: &Operators,
-    factor: &mut Factor,
+    factor: &mut DirectFactor,
     slope: &[f64],
     velocity: f64,
     monitor: &dyn Monitor,
@@ -267,7 +267,7 @@ fn recur(
         vector.copy_from_slice(&right);
         factor.solve_in_place(&mut vector);
         counters.solves += 1;
-        worst = worst.max(check_residual(&operators.stiffness, None, &vector, &right, RESIDUAL_LIMIT)?);
+        worst = worst.max(factor.check(operators, &vector, &right, RESIDUAL_LIMIT)?);
         let square: f64 = wall.unknown.iter().zip(&current).map(|(&u, c)| c * vector[u]).sum();
         let beta = square.max(0.0).sqrt();
         if k == 0 {

@@ -50,11 +50,19 @@ impl Recurrence {
 
     /// Residual of the reaction at `velocity` in the K norm, relative to the start: v beta_(m+1) |x_m|.
     pub(crate) fn residual(&self, velocity: f64) -> f64 {
-        let x = self.coefficients(velocity);
-        match (x.last(), self.betas.get(x.len() - 1)) {
-            (Some(last), Some(beta)) => (velocity * beta * last).abs(),
-            _ => 0.0,
+        let Some((last, between)) =
+            self.betas.split_at_checked(self.len().saturating_sub(1)).map(|(b, l)| (l.first(), b))
+        else {
+            return 0.0;
+        };
+        // The elimination of `coefficients` alone: it ends at x_m.
+        let (mut pivot, mut right) = (1.0, 1.0);
+        for beta in between {
+            let off = velocity * beta;
+            right *= off / pivot;
+            pivot = 1.0 + off * off / pivot;
         }
+        last.map_or(0.0, |beta| (velocity * beta * right / pivot).abs())
     }
 
     /// Ring currents at the wall nodes at `velocity`, A.
@@ -100,5 +108,6 @@ mod tests {
         for (row, wanted) in rows.iter().zip([1.0, 0.0, 0.0, 0.0]) {
             approx::assert_relative_eq!(*row, wanted, epsilon = 1e-14);
         }
+        approx::assert_relative_eq!(recurrence.residual(v), (t(3) * x[3]).abs(), max_relative = 1e-14);
     }
 }
