@@ -14,11 +14,13 @@ pub mod constants;
 pub mod cost;
 pub mod extrapolate;
 pub mod fault;
+pub mod ladder;
 pub mod monitor;
 pub mod outcome;
 pub mod probe;
 pub mod problem;
 pub mod sources;
+pub mod spread;
 
 mod band;
 mod corner;

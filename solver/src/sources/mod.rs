@@ -6,7 +6,7 @@ mod coil;
 mod current_loop;
 mod dipole;
 pub mod elliptic;
-mod gauss;
+pub(crate) mod gauss;
 mod magnet;
 #[cfg(test)]
 mod quadrature;
