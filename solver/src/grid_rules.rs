@@ -11,7 +11,7 @@
 //! - along, in the wall's frame: min(3/4 gap, a/8) all over the swept part of the wall (half for permeable);
 //! - boundary: 40 b outward and ahead, 40 b + 4 a Re behind the mover.
 
-use lenzbore_mesh::{Anchor, Cap, Grid, MeshFault, PlannedLine, Rectangle, Refinement, SizeLaw};
+use lenzbore_mesh::{Anchor, Cap, Grid, MeshFault, NodeLine, PlannedLine, Rectangle, Refinement, SizeLaw};
 
 use crate::constants::MU0;
 use crate::placement::Placement;
@@ -101,9 +101,18 @@ impl GridPlan {
 
     /// The same grid with the boundary at half the distance.
     pub(crate) fn half_grid(&self, refinement: Refinement) -> Grid {
-        let whole = self.grid(refinement);
+        self.halved(&self.grid(refinement))
+    }
+
+    /// `grid` with the boundary at half the distance.
+    pub(crate) fn halved(&self, grid: &Grid) -> Grid {
         let (r_max, z_min, z_max) = self.half_extent;
-        Grid { r: whole.r.cut(0.0, r_max), z: whole.z.cut(z_min, z_max) }
+        Grid { r: grid.r.cut(0.0, r_max), z: grid.z.cut(z_min, z_max) }
+    }
+
+    /// The line of heights of one level.
+    pub(crate) fn heights(&self, refinement: Refinement) -> NodeLine {
+        self.z.nodes(refinement)
     }
 }
 

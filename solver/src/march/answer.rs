@@ -1,17 +1,19 @@
 //! Levels to figures: the coarsest level chooses the steps, finer ones replay them, all are extrapolated.
 
-use lenzbore_mesh::Refinement;
+use lenzbore_mesh::{Refinement, Regions};
 
 use super::combine::{Margins, combine};
 use super::course::{Course, plan, reach, set_out};
 use super::figures::{LevelFigure, end_of, level_figures};
 use super::level::MarchLevel;
+use super::lines::LevelLines;
 use super::motion::{Motion, potential_energy};
 use super::routes::Routes;
 use super::run::{Run, Share};
 use super::schedule::Schedule;
 use super::series::Series;
 use super::snapshots::instants;
+use super::window::{Window, WindowRule};
 use crate::band::{self, Ladder};
 use crate::corner::corner_powers;
 use crate::extrapolate::extrapolate;
@@ -20,6 +22,7 @@ use crate::fields::empty_fields;
 use crate::grid_report::grid_report;
 use crate::grid_rules::GridPlan;
 use crate::interpolate::sampled;
+use crate::materials::Materials;
 use crate::monitor::{Monitor, Quiet};
 use crate::outcome::{Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Trace, WorkCounters};
 use crate::placement::Placement;
@@ -47,6 +50,7 @@ struct Journey<'p> {
     course: Course,
     reach: (f64, f64),
     speed: f64,
+    windows: Option<WindowRule>,
 }
 
 /// Solves `traverse` or `free`.
@@ -54,14 +58,16 @@ struct Journey<'p> {
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    let journey = Journey::new(problem)?;
-    let mut records = journey.first(monitor)?;
-    let outcome = refine(&problem.accuracy, MOST_MARCH_LEVELS, |count| {
-        journey.replay_missing(&mut records, count, monitor)?;
-        Ok::<_, SolveFault>(journey.outcome(&mut records))
-    })?;
-    monitor.progress(1.0, "done");
-    Ok(outcome)
+    Journey::new(problem)?.solve(monitor)
+}
+
+/// The same without windows.
+///
+/// # Errors
+/// See [`SolveFault`].
+#[cfg(test)]
+pub(crate) fn march_on_whole_grids(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    Journey { windows: None, ..Journey::new(problem)? }.solve(monitor)
 }
 
 /// The schedule, the levels so far, the coarsest level on half the domain.
@@ -80,19 +86,36 @@ impl<'p> Journey<'p> {
         let share = if let Motion::Uniform { .. } = motion { 0.5 } else { 1.0 };
         let course = Course { stride: share * plan.axial_cell_m, ..course };
         let reach = reach(problem, course.from, course.until);
-        Ok(Self { problem, placement, plan, motion, course, reach, speed })
+        let windows = WindowRule::new(problem, &placement, &plan, reach, speed)?;
+        Ok(Self { problem, placement, plan, motion, course, reach, speed, windows })
+    }
+
+    fn solve(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+        let mut records = self.first(monitor)?;
+        let outcome = refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
+            self.replay_missing(&mut records, count, monitor)?;
+            Ok::<_, SolveFault>(self.outcome(&mut records))
+        })?;
+        monitor.progress(1.0, "done");
+        Ok(outcome)
+    }
+
+    /// The window to begin with.
+    fn window(&self) -> Option<Window> {
+        let ahead = (self.course.until - self.course.from).signum();
+        self.windows.as_ref().map(|rule| rule.choose(self.course.from, ahead))
     }
 
     fn level(&self, refinement: Refinement, half: bool) -> Result<MarchLevel<'_>, SolveFault> {
-        let grid = if half { self.plan.half_grid(refinement) } else { self.plan.grid(refinement) };
-        MarchLevel::new(self.problem, &self.placement, &self.plan, grid, self.reach)
+        let lines = LevelLines::new(&self.plan, self.windows.as_ref(), refinement, half);
+        MarchLevel::new(self.problem, &self.placement, lines, self.window(), self.reach)
     }
 
     fn first(&self, monitor: &dyn Monitor) -> Result<Records, SolveFault> {
         let mut level = self.level(Refinement::COARSEST, false)?;
-        let run = Run::new(&mut level, &self.motion, &self.course)?;
+        let run = Run::new(&mut level, &self.motion, &self.course, self.window())?;
         let (series, schedule) = run.choose(&self.course, monitor, Share { from: 0.0, to: 0.08 })?;
-        let record = self.record(&level, series, Refinement::COARSEST, None);
+        let record = self.record(&level, series, Refinement::COARSEST, None)?;
         Ok(Records { schedule, levels: vec![record], cut: None })
     }
 
@@ -140,9 +163,9 @@ impl<'p> Journey<'p> {
         monitor: &dyn Monitor,
     ) -> Result<LevelRecord, SolveFault> {
         let mut level = self.level(refinement, half)?;
-        let run = Run::new(&mut level, &self.motion, &self.course)?;
+        let run = Run::new(&mut level, &self.motion, &self.course, self.window())?;
         let (series, snapshots) = run.replay(schedule, refinement, wanted, monitor, Share { from: 0.08, to: 1.0 })?;
-        Ok(self.record(&level, series, refinement, keep.then_some(snapshots)))
+        self.record(&level, series, refinement, keep.then_some(snapshots))
     }
 
     fn record(
@@ -151,17 +174,20 @@ impl<'p> Journey<'p> {
         series: Series,
         refinement: Refinement,
         snapshots: Option<Vec<Snapshot>>,
-    ) -> LevelRecord {
+    ) -> Result<LevelRecord, SolveFault> {
         let operators = &level.operators;
         let mut report = grid_report(self.problem, &self.placement, &operators.grid, refinement.factor(), self.speed);
         report.steps = series.time_mid.len();
         report.residual = level.worst_residual;
-        let fields = snapshots.map(|snapshots| {
-            let mut fields = empty_fields(&operators.grid, &operators.materials, &self.problem.wall);
-            fields.snapshots = snapshots;
-            fields
-        });
-        LevelRecord { series, report, counters: level.counters, fields }
+        let fields = match snapshots {
+            Some(snapshots) => {
+                let grid = level.lines.grid(None)?;
+                let materials = Materials::new(&self.problem.wall, &Regions::new(&grid, &self.plan.rectangles));
+                Some(Fields { snapshots, ..empty_fields(&grid, &materials, &self.problem.wall) })
+            }
+            None => None,
+        };
+        Ok(LevelRecord { series, report, counters: level.counters, fields })
     }
 
     fn outcome(&self, records: &mut Records) -> Outcome {

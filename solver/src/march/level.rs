@@ -3,11 +3,12 @@
 use std::collections::VecDeque;
 use std::f64::consts::PI;
 
-use lenzbore_mesh::{Grid, Regions};
+use lenzbore_mesh::Regions;
 
+use super::lines::LevelLines;
+use super::window::Window;
 use crate::direct::{DirectFactor, DirectPlan};
 use crate::fault::SolveFault;
-use crate::grid_rules::GridPlan;
 use crate::linear::RESIDUAL_LIMIT;
 use crate::materials::Materials;
 use crate::operators::{Operators, add_product};
@@ -15,6 +16,7 @@ use crate::outcome::WorkCounters;
 use crate::placement::Placement;
 use crate::problem::Problem;
 use crate::sources::SourceTable;
+use crate::wall_nodes::WallNodes;
 
 /// Factors kept at a time, one a step size.
 const KEPT_FACTORS: usize = 4;
@@ -25,6 +27,7 @@ const TABLE_TOLERANCE: f64 = 1.0e-11;
 pub(crate) struct MarchLevel<'a> {
     pub(crate) problem: &'a Problem,
     pub(crate) placement: &'a Placement,
+    pub(crate) lines: LevelLines<'a>,
     pub(crate) operators: Operators,
     direct: DirectPlan,
     factors: VecDeque<(u64, DirectFactor)>,
@@ -37,34 +40,28 @@ pub(crate) struct MarchLevel<'a> {
 }
 
 impl<'a> MarchLevel<'a> {
-    /// Builds the level for positions of the reference point between `low` and `high`.
+    /// Builds the level for positions of the reference point between `low` and `high`, on the grid of `window` or the whole one.
     ///
     /// # Errors
     /// See [`SolveFault`].
     pub(crate) fn new(
         problem: &'a Problem,
         placement: &'a Placement,
-        plan: &GridPlan,
-        grid: Grid,
+        lines: LevelLines<'a>,
+        window: Option<Window>,
         (low, high): (f64, f64),
     ) -> Result<Self, SolveFault> {
-        let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
-        let operators = Operators::new(grid, materials);
+        let operators = assemble(problem, &lines, window)?;
         let direct = DirectPlan::new(&operators)?;
         let at_rest = AtRest::new(&operators, &direct)?;
-        let grid = &operators.grid;
-        let wall_indices: Vec<usize> = operators.wall.rows.iter().map(|row| row.i).collect();
-        let mut indices: Vec<usize> = wall_indices.clone();
-        indices.sort_unstable();
-        indices.dedup();
-        let row_of = |i: usize| indices.partition_point(|&k| k < i);
-        let radii: Vec<f64> = indices.iter().map(|&i| grid.r.nodes()[i]).collect();
+        let radii: Vec<f64> = table_radii(&operators.wall).iter().map(|&i| operators.grid.r.nodes()[i]).collect();
         let (bottom, top) = (0.0, problem.wall.length_m().unwrap_or(0.0));
         let table = SourceTable::new(&problem.mover, &radii, bottom - high, top - low, TABLE_TOLERANCE);
         Ok(Self {
             problem,
             placement,
-            table_rows: wall_indices.iter().map(|&i| row_of(i)).collect(),
+            lines,
+            table_rows: table_rows(&operators.wall),
             table,
             direct,
             factors: VecDeque::new(),
@@ -73,6 +70,19 @@ impl<'a> MarchLevel<'a> {
             counters: WorkCounters::default(),
             worst_residual: 0.0,
         })
+    }
+
+    /// Goes over to the grid of `window`; factors are made anew as they are needed.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn enter(&mut self, window: Window) -> Result<(), SolveFault> {
+        self.operators = assemble(self.problem, &self.lines, Some(window))?;
+        self.direct = DirectPlan::new(&self.operators)?;
+        self.at_rest = AtRest::new(&self.operators, &self.direct)?;
+        self.table_rows = table_rows(&self.operators.wall);
+        self.factors.clear();
+        Ok(())
     }
 
     /// psi_s at the wall nodes with the mover at `position`, and d psi_s / d position.
@@ -160,6 +170,26 @@ impl<'a> MarchLevel<'a> {
         self.at_rest = Some(at_rest);
         force
     }
+}
+
+fn assemble(problem: &Problem, lines: &LevelLines<'_>, window: Option<Window>) -> Result<Operators, SolveFault> {
+    let grid = lines.grid(window)?;
+    let materials = Materials::new(&problem.wall, &Regions::new(&grid, &lines.plan.rectangles));
+    Ok(Operators::new(grid, materials))
+}
+
+/// Radial node indices of the wall, increasing: one row of the table of the mover's field each.
+fn table_radii(wall: &WallNodes) -> Vec<usize> {
+    let mut indices: Vec<usize> = wall.rows.iter().map(|row| row.i).collect();
+    indices.sort_unstable();
+    indices.dedup();
+    indices
+}
+
+/// Row of the table for each run of wall nodes.
+fn table_rows(wall: &WallNodes) -> Vec<usize> {
+    let indices = table_radii(wall);
+    wall.rows.iter().map(|row| indices.partition_point(|&k| k < row.i)).collect()
 }
 
 /// The static problem of a permeable wall: K psi_r = -(K - K0) psi_s.

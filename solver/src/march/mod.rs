@@ -10,13 +10,19 @@ mod combine;
 mod course;
 mod figures;
 mod level;
+mod lines;
 mod motion;
+mod resample;
 mod routes;
 mod run;
 mod schedule;
 mod series;
 mod snapshots;
 mod step;
+mod transfer;
+mod window;
 
 pub(crate) use answer::march;
+#[cfg(test)]
+pub(crate) use answer::march_on_whole_grids;
 pub(crate) use course::plan;

@@ -5,9 +5,12 @@ use lenzbore_mesh::Refinement;
 use super::course::Course;
 use super::level::MarchLevel;
 use super::motion::{Motion, friction, frictionless, losses, other_force};
+use super::resample::{Instant, Resampler};
 use super::schedule::Schedule;
 use super::series::Series;
 use super::step::{State, StepReport, Stepper, heat_rate};
+use super::transfer::{Heights, carry};
+use super::window::Window;
 use crate::fault::SolveFault;
 use crate::fields::snapshot;
 use crate::force::{by_stress, on_mover};
@@ -50,6 +53,8 @@ pub(crate) struct Run<'a, 'p> {
     heat: f64,
     work: f64,
     losses: f64,
+    window: Option<Window>,
+    resampler: Option<Resampler>,
     snapshots: Vec<Snapshot>,
 }
 
@@ -58,7 +63,12 @@ impl<'a, 'p> Run<'a, 'p> {
     ///
     /// # Errors
     /// See [`SolveFault`].
-    pub(crate) fn new(level: &'a mut MarchLevel<'p>, motion: &'a Motion, course: &Course) -> Result<Self, SolveFault> {
+    pub(crate) fn new(
+        level: &'a mut MarchLevel<'p>,
+        motion: &'a Motion,
+        course: &Course,
+        window: Option<Window>,
+    ) -> Result<Self, SolveFault> {
         let (wall, grid) = (level.operators.wall.len(), &level.operators.grid);
         let nodes = grid.nodes();
         let (mut source, mut slope) = (vec![0.0; wall], vec![0.0; wall]);
@@ -88,6 +98,8 @@ impl<'a, 'p> Run<'a, 'p> {
             heat: 0.0,
             work: 0.0,
             losses: 0.0,
+            window,
+            resampler: None,
             snapshots: Vec::new(),
             level,
             motion,
@@ -112,6 +124,7 @@ impl<'a, 'p> Run<'a, 'p> {
             if monitor.cancelled() {
                 return Err(SolveFault::Interrupted);
             }
+            self.follow(&mut schedule)?;
             rung = self.wanted_rung(&schedule, rung, course, floor);
             rung = self.accepted_pair(&mut schedule, rung, course, floor)?;
             let gone = (self.state.position - course.from) / (course.until - course.from);
@@ -144,6 +157,9 @@ impl<'a, 'p> Run<'a, 'p> {
     ) -> Result<(Series, Vec<Snapshot>), SolveFault> {
         let mut wanted = instants.iter().copied().peekable();
         for k in 0..schedule.pairs() {
+            if let Some(window) = schedule.window_from(k) {
+                self.enter(window)?;
+            }
             let (steps, dt) = schedule.steps(k, refinement);
             self.level.prepare(dt)?;
             for n in 0..steps {
@@ -154,7 +170,7 @@ impl<'a, 'p> Run<'a, 'p> {
                 let report = self.step(begin, dt)?;
                 self.record(begin, dt, &report);
                 while wanted.next_if(|&t| t < begin + dt).is_some() {
-                    self.keep_snapshot(begin + 0.5 * dt, report.travel);
+                    self.keep_snapshot(begin + 0.5 * dt, report.travel)?;
                 }
             }
             monitor
@@ -165,6 +181,45 @@ impl<'a, 'p> Run<'a, 'p> {
         }
         self.level.counters.steps += self.series.time_mid.len();
         Ok((self.series, self.snapshots))
+    }
+
+    /// Moves the window where it no longer has fine cells all around the mover.
+    fn follow(&mut self, schedule: &mut Schedule) -> Result<(), SolveFault> {
+        let (Some(rule), Some(window)) = (self.level.lines.rule(), self.window) else { return Ok(()) };
+        let direction = self.direction();
+        if !rule.covers(window, self.state.position, direction) {
+            let window = rule.choose(self.state.position, direction);
+            schedule.move_window(window);
+            self.enter(window)?;
+        }
+        Ok(())
+    }
+
+    /// Sense in which the mover travels, or is about to.
+    fn direction(&self) -> f64 {
+        let velocity = self.state.velocity;
+        if velocity.abs() > 0.0 { velocity.signum() } else { self.state.first_acceleration().signum() }
+    }
+
+    /// Goes over to the grid of `window`: the reaction at the wall is carried along, the mover's own field is exact.
+    fn enter(&mut self, window: Window) -> Result<(), SolveFault> {
+        let Some(rule) = self.level.lines.rule() else { return Ok(()) };
+        let from = Heights { z: self.level.operators.grid.z.nodes().to_vec(), wall: self.level.operators.wall.clone() };
+        let reaction: Vec<f64> = self.state.flux.iter().zip(&self.state.source).map(|(y, s)| y - s).collect();
+        self.level.enter(window)?;
+        let operators = &self.level.operators;
+        let (wall, nodes) = (operators.wall.len(), operators.grid.nodes());
+        let mut flux = carry(&from, &reaction, (operators.grid.z.nodes(), &operators.wall), rule.ends());
+        let (mut source, mut slope) = (vec![0.0; wall], vec![0.0; wall]);
+        self.level.fill_source(self.state.position, &mut source, &mut slope);
+        flux.iter_mut().zip(&source).for_each(|(y, s)| *y += s);
+        self.state = self.state.carried(flux, source);
+        self.saved = self.state.clone();
+        self.stepper = Stepper::new(self.level);
+        self.currents = vec![0.0; wall];
+        self.psi_nodes = vec![0.0; nodes];
+        self.window = Some(window);
+        Ok(())
     }
 
     /// One rung up where the last pair leaves room for it, else as many down as it must.
@@ -301,10 +356,19 @@ impl<'a, 'p> Run<'a, 'p> {
         self.series.peak_z_mid.push(z);
     }
 
-    fn keep_snapshot(&mut self, time: f64, travel: f64) {
+    fn keep_snapshot(&mut self, time: f64, travel: f64) -> Result<(), SolveFault> {
         let position = self.state.position - 0.5 * travel;
-        let operators = &self.level.operators;
-        self.snapshots.push(snapshot(operators, self.level.problem, &self.psi_nodes, &self.currents, time, position));
+        let (operators, problem) = (&self.level.operators, self.level.problem);
+        if self.window.is_some() {
+            if self.resampler.is_none() {
+                self.resampler = Some(Resampler::new(problem, &self.level.lines)?);
+            }
+            let instant = Instant { psi: &self.psi_nodes, currents: &self.currents, time, position };
+            self.snapshots.extend(self.resampler.as_ref().map(|whole| whole.snapshot(operators, problem, &instant)));
+        } else {
+            self.snapshots.push(snapshot(operators, problem, &self.psi_nodes, &self.currents, time, position));
+        }
+        Ok(())
     }
 }
 

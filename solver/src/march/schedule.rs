@@ -4,6 +4,8 @@
 
 use lenzbore_mesh::Refinement;
 
+use super::window::Window;
+
 /// Halvings below the first rung that the clock resolves.
 const FINEST: u32 = 20;
 
@@ -16,13 +18,15 @@ pub(crate) struct Schedule {
     /// Ticks before each pair.
     starts: Vec<u64>,
     now: u64,
+    /// Pairs before which the window moves, and where to.
+    windows: Vec<(usize, Window)>,
 }
 
 impl Schedule {
     /// A schedule whose first rung has the step `first_dt_s`.
     pub(crate) fn new(first_dt_s: f64) -> Self {
         let tick_s = first_dt_s / f64::from(1_u32 << FINEST);
-        Self { tick_s, rungs: Vec::new(), starts: Vec::new(), now: 0 }
+        Self { tick_s, rungs: Vec::new(), starts: Vec::new(), now: 0, windows: Vec::new() }
     }
 
     /// The first rung.
@@ -40,6 +44,17 @@ impl Schedule {
         self.rungs.push(rung);
         self.starts.push(self.now);
         self.now += 2_u64 << rung.min(60);
+    }
+
+    /// From the next pair on, the grid is that of `window`.
+    pub(crate) fn move_window(&mut self, window: Window) {
+        self.windows.push((self.rungs.len(), window));
+    }
+
+    /// The window that begins with pair `k`.
+    pub(crate) fn window_from(&self, k: usize) -> Option<Window> {
+        let at = self.windows.binary_search_by_key(&k, |(pair, _)| *pair).ok()?;
+        Some(self.windows[at].1)
     }
 
     /// Pairs so far.

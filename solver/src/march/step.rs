@@ -41,6 +41,11 @@ impl State {
         self.acceleration
     }
 
+    /// Carries the wall's flux over to another grid: `flux` and the mover's own `source` at its nodes.
+    pub(crate) fn carried(&self, flux: Vec<f64>, source: Vec<f64>) -> Self {
+        Self { flux, source, ..*self }
+    }
+
     /// Copies `other` without allocating.
     pub(crate) fn copy_from(&mut self, other: &Self) {
         self.position = other.position;

@@ -87,6 +87,13 @@ pub(super) fn traverse(speed_m_per_s: f64, from_mm: f64, to_mm: f64) -> Travel {
     Travel::Traverse(Traverse { speed_m_per_s, from_m: from_mm * 1e-3, to_m: to_mm * 1e-3 })
 }
 
+/// A magnet of 18 mm diameter x 12 mm, 1.25 T, down through a tube of 11 to 13 mm radius at uniform speed.
+pub(crate) fn long_passage(length_m: f64, speed_m_per_s: f64) -> Problem {
+    let wall = finite(length_m, vec![layer(11.0, 13.0, 58.0, 1.0)]);
+    let travel = traverse(speed_m_per_s, length_m * 1e3 + 60.0, -60.0);
+    problem(wall, vec![magnet(0.0, 9.0, 12.0, 1.25, 0.0)], travel, 3)
+}
+
 /// A fall from rest under standard gravity, with nothing but the wall to slow it; gates at both ends of the wall.
 pub(super) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
     Free::let_go(release_mm * 1e-3, until_mm * 1e-3, [wall_mm * 1e-3, 0.0])

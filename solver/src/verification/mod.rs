@@ -14,7 +14,7 @@
 
 mod balances;
 mod bessel;
-mod cases;
+pub(crate) mod cases;
 mod chamber;
 mod decay;
 mod dissimilar_levels;
@@ -30,5 +30,6 @@ mod static_fields;
 mod step_ladders;
 mod symmetries;
 mod unsymmetric;
+mod windows;
 
 pub(crate) use unsymmetric::Unsymmetric;
