@@ -75,18 +75,20 @@ impl RingSum {
             if instants.len() % LOOKS == 0 && monitor.cancelled() {
                 return Err(SolveFault::Interrupted);
             }
-            let before = walk.now;
-            if before.v.abs() <= 0.0 && equation.is_held(before.z, 0.0) {
+            let before = (walk.now, walk.dissipated);
+            let Instant { time, z, v, .. } = before.0;
+            if v.abs() <= 0.0 && equation.is_held(z, 0.0) {
                 break Stop::AtRest;
             }
-            walk.step(longest.min(law.time_limit_s - before.time));
-            instants.push(walk.now);
-            if (before.z - law.until_m) * (walk.now.z - law.until_m) <= 0.0 && instants.len() > 2 {
-                let (time, v) = crossing(&before, &walk.now, law.until_m);
-                instants.pop();
-                instants.push(walk.at(time, law.until_m, v));
+            walk.step(longest.min(law.time_limit_s - time));
+            if (z - law.until_m) * (walk.now.z - law.until_m) <= 0.0 && instants.len() > 1 {
+                let (end, _) = crossing(&before.0, &walk.now, law.until_m);
+                (walk.now, walk.dissipated) = before;
+                walk.step(end - time);
+                instants.push(walk.now);
                 break Stop::EndOfTravel;
             }
+            instants.push(walk.now);
             if walk.now.time >= law.time_limit_s * (1.0 - 1e-12) {
                 break Stop::TimeLimit;
             }
