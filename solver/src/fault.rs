@@ -47,6 +47,32 @@ pub enum SolveFault {
     /// The case does not suit the law of travel.
     #[error("{0}")]
     Unsuited(&'static str),
+    /// Coupled rings hold for walls of relative permeability 1.
+    #[error("layer {layer:?} has relative permeability {found}; coupled rings need 1")]
+    PermeableRings {
+        /// Name of the layer.
+        layer: String,
+        /// Relative permeability found.
+        found: f64,
+    },
+    /// A number is out of its range.
+    #[error("{what} is {found}; it must be {legal}")]
+    OutOfRange {
+        /// The quantity.
+        what: &'static str,
+        /// Its value, SI.
+        found: f64,
+        /// What is legal.
+        legal: &'static str,
+    },
+    /// The mover did not reach a gate within the time allowed.
+    #[error("the mover did not pass z = {gate_m} m within {time_s} s")]
+    GateNotReached {
+        /// Position of the gate, m.
+        gate_m: f64,
+        /// Time allowed, s.
+        time_s: f64,
+    },
     /// More memory would be needed than the machine has.
     #[error("the solve would need {needed_mib} MiB of memory; {available_mib} MiB are available")]
     Memory {

@@ -19,6 +19,7 @@ pub mod monitor;
 pub mod outcome;
 pub mod probe;
 pub mod problem;
+pub mod rings;
 pub mod sources;
 pub mod spread;
 

@@ -13,17 +13,6 @@ pub enum Error {
         /// Length found, m.
         length_m: f64,
     },
-    /// The ring circuit needs a wall with ends.
-    #[error("the wall is endless; the ring circuit needs its length")]
-    WallEndless,
-    /// The ring circuit holds for walls of relative permeability 1.
-    #[error("layer {layer:?} has relative permeability {found}; the ring circuit needs 1")]
-    Permeable {
-        /// Name of the layer.
-        layer: String,
-        /// Relative permeability found.
-        found: f64,
-    },
     /// A number is out of its range.
     #[error("{what} is {found}; it must be {legal}")]
     OutOfRange {
@@ -79,22 +68,6 @@ pub enum Error {
         error: f64,
         /// Integral of the absolute value.
         scale: f64,
-    },
-    /// A matrix that must be positive definite is not.
-    #[error("the {what} matrix of {size} rings is not positive definite")]
-    NotPositive {
-        /// Which matrix.
-        what: &'static str,
-        /// Its size.
-        size: usize,
-    },
-    /// The mover did not reach a gate within the time allowed.
-    #[error("the mover did not pass z = {gate_m} m within {time_s} s")]
-    GateNotReached {
-        /// Position of the gate, m.
-        gate_m: f64,
-        /// Time allowed, s.
-        time_s: f64,
     },
     /// The field solver refused or failed.
     #[error("the field solver: {0}")]

@@ -6,11 +6,10 @@
 
 pub mod cases;
 pub mod checks;
-pub mod elliptic;
 pub mod endless;
 mod error;
 pub mod quadrature;
 pub mod references;
-pub mod rings;
 
 pub use error::Error;
+pub use lenzbore_solver::rings::{self, loops as elliptic};

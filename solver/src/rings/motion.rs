@@ -4,14 +4,14 @@
 //! so is the acceleration; positions and velocities follow by integration (Lobatto's three points, order 4). The middle and the
 //! end are found by fixed-point iteration, which contracts as (step) x (damping coefficient) / mass.
 
-use lenzbore_solver::problem::{Free, Mover, Traverse};
+use crate::problem::{Free, Mover, Traverse};
 use nalgebra_sparse::na::DVector;
 
 use super::circuit::RingCircuit;
 use super::events::{Instant, crossing};
 use super::linkage::Linkage;
 use super::modes::{Drive, StepWeights};
-use crate::Error;
+use crate::fault::SolveFault;
 
 /// What came of a passage at uniform speed.
 #[derive(Debug, Clone, PartialEq)]
@@ -83,10 +83,10 @@ impl<'a> Coupling<'a> {
 ///
 /// # Errors
 /// A speed or step that is not greater than 0.
-pub fn pass(circuit: &RingCircuit, mover: &Mover, travel: &Traverse, step_m: f64) -> Result<Passage, Error> {
+pub fn pass(circuit: &RingCircuit, mover: &Mover, travel: &Traverse, step_m: f64) -> Result<Passage, SolveFault> {
     let (speed, distance) = (travel.speed_m_per_s, (travel.to_m - travel.from_m).abs());
     if !(speed > 0.0 && step_m > 0.0 && distance > 0.0) {
-        return Err(Error::OutOfRange { what: "speed of a passage, m/s", found: speed, legal: "greater than 0" });
+        return Err(SolveFault::OutOfRange { what: "speed of a passage, m/s", found: speed, legal: "greater than 0" });
     }
     let (low, high) = (travel.from_m.min(travel.to_m), travel.from_m.max(travel.to_m));
     let mut coupling = Coupling::new(circuit, mover, low, high);
@@ -149,10 +149,10 @@ fn peak(series: &[(f64, f64)]) -> (f64, f64) {
 ///
 /// # Errors
 /// A missing mass, a step that is not greater than 0, or a gate that is not reached in time.
-pub fn fall(circuit: &RingCircuit, mover: &Mover, law: &Free, step_m: f64) -> Result<Fall, Error> {
+pub fn fall(circuit: &RingCircuit, mover: &Mover, law: &Free, step_m: f64) -> Result<Fall, SolveFault> {
     let mass = mover.mass_kg.unwrap_or(0.0);
     if !(mass > 0.0 && step_m > 0.0) {
-        return Err(Error::OutOfRange { what: "mass of the mover, kg", found: mass, legal: "greater than 0" });
+        return Err(SolveFault::OutOfRange { what: "mass of the mover, kg", found: mass, legal: "greater than 0" });
     }
     let low = law.until_m.min(law.release_m).min(law.gates_m[0]).min(law.gates_m[1]) - 10.0 * step_m;
     let high = law.until_m.max(law.release_m).max(law.gates_m[0]).max(law.gates_m[1]) + 10.0 * step_m;
@@ -174,7 +174,7 @@ pub fn fall(circuit: &RingCircuit, mover: &Mover, law: &Free, step_m: f64) -> Re
         time += dt;
     }
     let gate_m = if entry.is_none() { law.gates_m[0] } else { law.gates_m[1] };
-    Err(Error::GateNotReached { gate_m, time_s: law.time_limit_s })
+    Err(SolveFault::GateNotReached { gate_m, time_s: law.time_limit_s })
 }
 
 /// State and workspace of a motion.

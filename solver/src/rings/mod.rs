@@ -1,4 +1,4 @@
-//! A wall with ends, cut into coupled rings: a circuit solution that shares nothing with the field solver.
+//! A wall with ends, cut into coupled rings: a circuit solution that shares nothing with the field solver but Gauss points.
 //!
 //! Each ring carries a current spread evenly over its section. L di/dt + R i = -v df/dz with f_i(z) the flux of the mover at z
 //! through ring i, averaged over its section; L by Maxwell's mutual inductance of coaxial loops averaged over both sections; the
@@ -10,8 +10,10 @@ mod circuit;
 mod events;
 mod inductance;
 mod linkage;
+pub mod loops;
 mod modes;
 mod motion;
+mod points;
 mod richardson;
 
 pub use cell::Cutting;

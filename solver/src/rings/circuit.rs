@@ -1,11 +1,11 @@
 //! Resistances, inductances and the modes of the rings.
 
-use lenzbore_solver::problem::Wall;
+use crate::problem::Wall;
 use nalgebra_sparse::na::{DMatrix, DVector, SymmetricEigen};
 
 use super::cell::{Cutting, Lattice, Span, lattices};
 use super::inductance::Averager;
-use crate::Error;
+use crate::fault::SolveFault;
 
 /// The rings of a wall, in the basis where they decay on their own.
 #[derive(Debug, Clone)]
@@ -24,7 +24,7 @@ impl RingCircuit {
     ///
     /// # Errors
     /// An endless or permeable wall, impossible sizes, or a matrix that is not positive definite.
-    pub fn new(wall: &Wall, cutting: Cutting) -> Result<Self, Error> {
+    pub fn new(wall: &Wall, cutting: Cutting) -> Result<Self, SolveFault> {
         let lattices = lattices(wall, cutting)?;
         let size = lattices.iter().map(Lattice::len).sum();
         let mut matrix = inductances(&lattices, size);
@@ -36,7 +36,7 @@ impl RingCircuit {
         }
         let eigen = SymmetricEigen::new(matrix);
         if !eigen.eigenvalues.iter().all(|tau| *tau > 0.0) {
-            return Err(Error::NotPositive { what: "inductance", size });
+            return Err(SolveFault::Factorisation { unknowns: size });
         }
         let mut to_modes = eigen.eigenvectors;
         for mut column in to_modes.column_iter_mut() {

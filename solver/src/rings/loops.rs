@@ -5,7 +5,7 @@
 
 use std::f64::consts::PI;
 
-use lenzbore_solver::constants::MU0;
+use crate::constants::MU0;
 
 /// K and E of the complementary modulus k' (0 < k' <= 1, k'^2 = 1 - k^2), to round-off.
 #[must_use]

@@ -4,8 +4,8 @@
 //! leave; the logarithm at d = zeta = 0 is met by halving panels towards it. Relative accuracy about 1e-8.
 
 use super::cell::Span;
-use crate::elliptic::mutual_inductance;
-use crate::quadrature::GaussRule;
+use super::loops::mutual_inductance;
+use super::points::GaussRule;
 
 /// Halvings towards the logarithm, of either side in turn: what is left is 2^-36 of the section.
 const DEEPEST: u32 = 36;

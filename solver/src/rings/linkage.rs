@@ -6,13 +6,13 @@
 
 use std::f64::consts::PI;
 
-use lenzbore_solver::constants::MU0;
-use lenzbore_solver::problem::Mover;
-use lenzbore_solver::sources::Source;
+use crate::constants::MU0;
+use crate::problem::Mover;
+use crate::sources::Source;
 
 use super::cell::Lattice;
-use crate::elliptic::mutual_inductance;
-use crate::quadrature::GaussRule;
+use super::loops::mutual_inductance;
+use super::points::GaussRule;
 
 /// Chebyshev points a panel.
 const POINTS: usize = 16;

@@ -1,8 +1,8 @@
 //! The rings: sections of rectangular shape, all of one layer on a common lattice.
 
-use lenzbore_solver::problem::{Extent, Layer, Wall};
+use crate::problem::{Extent, Layer, Wall};
 
-use crate::Error;
+use crate::fault::SolveFault;
 
 /// How finely a wall is cut.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -76,19 +76,23 @@ impl Lattice {
 }
 
 /// Cuts every conducting layer.
-pub(super) fn lattices(wall: &Wall, cutting: Cutting) -> Result<Vec<Lattice>, Error> {
+pub(super) fn lattices(wall: &Wall, cutting: Cutting) -> Result<Vec<Lattice>, SolveFault> {
     if wall.extent == Extent::Endless {
-        return Err(Error::WallEndless);
+        return Err(SolveFault::Unsuited("coupled rings need the wall's length"));
     }
     if cutting.across == 0 || cutting.pitch_m.is_nan() || cutting.pitch_m <= 0.0 {
-        return Err(Error::OutOfRange { what: "length of a ring, m", found: cutting.pitch_m, legal: "greater than 0" });
+        return Err(SolveFault::OutOfRange {
+            what: "length of a ring, m",
+            found: cutting.pitch_m,
+            legal: "greater than 0",
+        });
     }
     for layer in &wall.layers {
         if (layer.relative_permeability - 1.0).abs() > 0.0 {
-            return Err(Error::Permeable { layer: layer.name.clone(), found: layer.relative_permeability });
+            return Err(SolveFault::PermeableRings { layer: layer.name.clone(), found: layer.relative_permeability });
         }
         if !(layer.outer_radius_m > layer.inner_radius_m && layer.inner_radius_m >= 0.0 && layer.to_m > layer.from_m) {
-            return Err(Error::OutOfRange {
+            return Err(SolveFault::OutOfRange {
                 what: "thickness of a layer, m",
                 found: layer.thickness_m(),
                 legal: "greater than 0, as its length",
