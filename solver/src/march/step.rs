@@ -12,6 +12,8 @@ use crate::problem::Free;
 const MOST_PASSES: usize = 8;
 /// Imbalance of the equation of motion that ends the passes, relative to the forces in it.
 const MOTION_LIMIT: f64 = 1.0e-8;
+/// Roundings of the speed that the equation of motion may be off by.
+const ROUNDING: f64 = 16.0;
 /// Residual limit of the step's linear system.
 const STEP_RESIDUAL: f64 = 1.0e-11;
 
@@ -199,7 +201,9 @@ impl Stepper {
             if !shift.is_finite() {
                 return Err(SolveFault::NotFinite { what: "the mover's travel" });
             }
-            if self.imbalance_after(level, state, mechanics, travel, dt) <= MOTION_LIMIT * size {
+            // Speeds are differences of places: what their rounding makes of the inertia is no imbalance.
+            let rounding = ROUNDING * f64::EPSILON * mass * velocity.abs().max(state.velocity.abs()) / dt;
+            if self.imbalance_after(level, state, mechanics, travel, dt) <= MOTION_LIMIT * size + rounding {
                 return Ok(travel);
             }
         }
