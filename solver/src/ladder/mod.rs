@@ -14,7 +14,6 @@ mod assumptions;
 mod dipole_thin_ring;
 mod drive;
 mod effect;
-pub(crate) mod equation;
 mod outcome;
 pub(crate) mod path;
 mod ring_sum;

@@ -4,7 +4,6 @@
 //! v1 = v0 exp(-k dt) + (f/k)(1 - exp(-k dt)), k = c/m (exponential midpoint rule, order 2, stable for any step; M. Hochbruck,
 //! A. Ostermann, Acta Numerica 19, 209-286 (2010), from memory).
 
-use super::equation::Equation;
 use super::path::{Instant, Path, Simulated, crossing};
 use super::ring_sum::RingSum;
 use crate::fault::SolveFault;
@@ -12,6 +11,7 @@ use crate::monitor::Monitor;
 use crate::outcome::Stop;
 use crate::placement::Placement;
 use crate::problem::{Free, Problem, Travel, Traverse};
+use crate::rings::equation::Equation;
 
 /// Travel of a step over the length on which the drag varies.
 const STEP: f64 = 1.0 / 60.0;

@@ -7,7 +7,10 @@
 
 mod cell;
 mod circuit;
+pub(crate) mod equation;
 mod events;
+mod fall;
+mod follow;
 mod inductance;
 mod linkage;
 pub mod loops;
@@ -18,6 +21,8 @@ mod richardson;
 
 pub use cell::Cutting;
 pub use circuit::RingCircuit;
+pub use fall::{Fall, fall};
+pub(crate) use follow::{Moment, follow};
 pub use inductance::self_inductance;
-pub use motion::{Fall, Passage, fall, pass};
+pub use motion::{Passage, pass};
 pub use richardson::{Extrapolated, extrapolate};

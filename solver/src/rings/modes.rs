@@ -23,6 +23,20 @@ impl StepWeights {
         Self { dt, middle: weights(0.5), end: weights(1.0) }
     }
 
+    /// How the currents' force at the middle and at the end answers to the speeds at the middle and at the end, N s/m: rows
+    /// force, columns speed, for the flux slopes `middle` and `end` there.
+    pub fn response(&self, middle: &DVector<f64>, end: &DVector<f64>) -> [[f64; 2]; 2] {
+        let mut response = [[0.0; 2]; 2];
+        for i in 0..middle.len() {
+            let (m, e) = (middle[i], end[i]);
+            response[0][0] -= self.middle[i][2] * m * m;
+            response[0][1] -= self.middle[i][3] * m * e;
+            response[1][0] -= self.end[i][2] * e * m;
+            response[1][1] -= self.end[i][3] * e * e;
+        }
+        response
+    }
+
     /// The step they were made for, s.
     pub fn dt(&self) -> f64 {
         self.dt
