@@ -42,7 +42,7 @@ fn a_fall_through_a_wall_with_a_collar() {
 fn a_permeable_wall() {
     let wall = finite(0.5, vec![layer(11.0, 13.0, 2.0, 10.0)]);
     let mover = vec![magnet(0.0, 9.0, 12.0, 1.25, 0.0)];
-    assert_same(&problem(wall, mover, traverse(3.0, 300.0, 150.0), 3), 0.3);
+    assert_same(&problem(wall, mover, traverse(3.0, 380.0, 120.0), 3), 0.3);
 }
 
 /// Four times the wall, four times the steps, and nodes that grow by no more than a logarithm.
