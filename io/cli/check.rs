@@ -23,9 +23,9 @@ pub fn run(words: &CheckWords) -> Result<(), End> {
         plans.push(("run", case.problem.clone(), forecast(&case.problem, None)?));
     }
     if let (Some(problem), Some(plan)) = (case.curve_problem(), &case.curve) {
-        let fastest = plan.speeds_m_per_s.last().copied();
-        memory::require(&problem, fastest)?;
-        let cost = forecast(&problem, fastest)?;
+        let speeds = Some(plan.speeds_m_per_s.as_slice());
+        memory::require(&problem, plan.speeds_m_per_s.last().copied())?;
+        let cost = forecast(&problem, speeds)?;
         plans.push(("curve", problem, cost));
     }
     if let Some(path) = &words.drawing {

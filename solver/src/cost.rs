@@ -10,7 +10,7 @@ use lenzbore_mesh::{Grid, Refinement, Regions};
 use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_report::grid_report;
-use crate::grid_rules::{GridPlan, reynolds_per_speed};
+use crate::grid_rules::GridPlan;
 use crate::march;
 use crate::materials::Materials;
 use crate::operators::Operators;
@@ -18,7 +18,7 @@ use crate::outcome::{GridReport, Regime};
 use crate::placement::Placement;
 use crate::problem::{Problem, SnapshotPlan, Travel};
 use crate::regime::regime;
-use crate::settled;
+use crate::settled::{self, Share, elimination_bytes, elimination_seconds, share};
 use crate::target::levels_wanted;
 
 /// Solves timed on each level.
@@ -35,8 +35,7 @@ const PROGRAM_BYTES: f64 = 3.0e6;
 /// Bytes of a node in a layered factor; walls of more layers than this may need a sparse one.
 const LAYERED_BYTES: f64 = 40.0;
 const FEW_LAYERS: usize = 4;
-/// Points of a curve, and the time to add one vector into one point's ring current, s.
-const CURVE_POINTS: f64 = 50.0;
+/// Time to add one node of a vector into one point's ring current, s (measured).
 const ADDING_S: f64 = 3.0e-10;
 /// Factors kept by a level of a march.
 const KEPT_FACTORS: f64 = 4.0;
@@ -70,18 +69,21 @@ pub struct Forecast {
 /// A grid that cannot be built.
 pub fn rough_memory_bytes(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<f64, SolveFault> {
     let placement = Placement::new(problem);
-    let (plan, settled) = match (curve_speed_m_per_s, &problem.travel) {
-        (Some(speed), _) => (settled::plan(problem, &placement, speed)?, true),
-        (None, Travel::Steady { velocity_m_per_s: v }) => (settled::plan(problem, &placement, *v)?, true),
-        (None, _) => (march::plan(problem, &placement)?.0, false),
+    let (plan, speed) = match (curve_speed_m_per_s, &problem.travel) {
+        (Some(speed), _) => (settled::plan(problem, &placement, speed)?, Some(speed)),
+        (None, Travel::Steady { velocity_m_per_s: v }) => (settled::plan(problem, &placement, *v)?, Some(*v)),
+        (None, _) => (march::plan(problem, &placement)?.0, None),
     };
-    let factors = if settled { 1.0 } else { KEPT_FACTORS };
+    let factors = if speed.is_some() { 1.0 } else { KEPT_FACTORS };
+    let eliminated = speed.is_some_and(|v| share(&problem.wall, &[v]).eliminated > 0);
     let coarsest = count(plan.coarsest_nodes());
     let level = |f: Refinement| {
         let nodes = coarsest * f.factor() * f.factor();
         let few = problem.wall.layers.len() <= FEW_LAYERS;
         let factor = if few { LAYERED_BYTES } else { 12.0 * nodes.log2() };
-        nodes * (factors * factor + NODE_BYTES + snapshots(problem) * 48.0)
+        // Grids are about twice as high as wide.
+        let elimination = if eliminated { 8.0 * (0.5 * nodes).sqrt() } else { 0.0 };
+        nodes * (factors * factor + elimination + NODE_BYTES + snapshots(problem) * 48.0)
     };
     Ok(Refinement::first(levels_wanted(&problem.accuracy)).into_iter().map(level).sum())
 }
@@ -94,20 +96,27 @@ struct LevelSize {
     factor_bytes: usize,
     set_up_seconds: f64,
     solve_seconds: f64,
+    elimination_seconds: f64,
 }
 
-/// Forecasts [`crate::solve`] for the problem's own law, or [`crate::drag_curve`] up to `curve_speed_m_per_s` where given.
+/// Forecasts [`crate::solve`] for the problem's own law, or [`crate::drag_curve`] over `curve_speeds_m_per_s` where given.
 ///
 /// # Errors
 /// A grid that cannot be built.
-pub fn forecast(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<Forecast, SolveFault> {
+pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Result<Forecast, SolveFault> {
     let placement = Placement::new(problem);
-    let (plan, speed) = match (curve_speed_m_per_s, &problem.travel) {
-        (Some(speed), _) => (settled::plan(problem, &placement, speed)?, speed),
+    let (plan, speed) = match (curve_speeds_m_per_s, &problem.travel) {
+        (Some(speeds), _) => (settled::plan(problem, &placement, fastest(speeds))?, fastest(speeds)),
         (None, Travel::Steady { velocity_m_per_s: v }) => (settled::plan(problem, &placement, *v)?, v.abs()),
         (None, _) => march::plan(problem, &placement)?,
     };
-    let settled = curve_speed_m_per_s.is_some() || matches!(problem.travel, Travel::Steady { .. });
+    let alone = [speed];
+    let settled = match (curve_speeds_m_per_s, &problem.travel) {
+        (Some(speeds), _) => Some(speeds),
+        (None, Travel::Steady { .. }) => Some(alone.as_slice()),
+        (None, _) => None,
+    };
+    let work = settled.map(|speeds| SettledWork { share: share(&problem.wall, speeds), speeds: speeds.len() });
     let refinements = Refinement::first(levels_wanted(&problem.accuracy));
     let sizes = sizes(problem, &plan, &refinements)?;
     let mut forecast = Forecast {
@@ -124,22 +133,65 @@ pub fn forecast(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<F
     let (mut level_seconds, mut points_seconds) = (Vec::new(), 0.0);
     for (size, refinement) in sizes.iter().zip(&refinements) {
         let f = refinement.factor();
-        let (steps, solves) =
-            if settled { (0.0, vectors(problem, speed) + 2.0) } else { march_work(problem, &plan, f) };
-        let overhead = if settled { VECTOR_OVERHEAD } else { STEP_OVERHEAD };
-        level_seconds.push(solves * size.solve_seconds * overhead + SET_UP_OVERHEAD * size.set_up_seconds);
-        if curve_speed_m_per_s.is_some() {
-            points_seconds += CURVE_POINTS * solves * count(size.wall_nodes) * ADDING_S;
-        }
+        let (steps, solves) = work.map_or_else(|| march_work(problem, &plan, f), |w| (0.0, w.share.vectors + 2.0));
+        let own = match work {
+            Some(work) => {
+                points_seconds += work.points_seconds(size);
+                solves * size.solve_seconds * VECTOR_OVERHEAD + work.own_seconds(size)
+            }
+            None => solves * size.solve_seconds * STEP_OVERHEAD,
+        };
+        level_seconds.push(own + SET_UP_OVERHEAD * size.set_up_seconds);
         forecast.steps += steps;
         forecast.solves += solves;
-        forecast.memory_bytes += memory(problem, size, settled, solves);
+        forecast.memory_bytes += memory(problem, size, work, solves);
         let mut report = grid_report(problem, &placement, &size.grid, f, speed);
         report.steps = rounded(steps);
         forecast.grids.push(report);
     }
-    forecast.time_s = beside(&level_seconds, settled) + points_seconds;
+    if let (Some(work), Some(finest)) = (work, sizes.last()) {
+        forecast.memory_bytes += work.elimination_bytes(finest);
+    }
+    forecast.time_s = beside(&level_seconds, work.is_some()) + points_seconds;
     Ok(forecast)
+}
+
+fn fastest(speeds: &[f64]) -> f64 {
+    speeds.iter().copied().fold(0.0, f64::max)
+}
+
+fn cores() -> usize {
+    std::thread::available_parallelism().map_or(1, std::num::NonZero::get)
+}
+
+/// Work for settled fields.
+#[derive(Debug, Clone, Copy)]
+struct SettledWork {
+    share: Share,
+    speeds: usize,
+}
+
+impl SettledWork {
+    /// Seconds of a level beside its recurrence: its one speed, where that is eliminated.
+    fn own_seconds(self, size: &LevelSize) -> f64 {
+        if self.speeds == 1 && self.share.eliminated == 1 { size.elimination_seconds } else { 0.0 }
+    }
+
+    /// Seconds that a level adds to the points of a curve, which both cores share.
+    fn points_seconds(self, size: &LevelSize) -> f64 {
+        if self.speeds < 2 {
+            return 0.0;
+        }
+        let (served, eliminated) = (count(self.speeds - self.share.eliminated), count(self.share.eliminated));
+        let adding = served * self.share.vectors * count(size.wall_nodes) * ADDING_S;
+        adding + eliminated * size.elimination_seconds / count(cores().min(2))
+    }
+
+    /// Bytes of the eliminations under way at once.
+    fn elimination_bytes(self, finest: &LevelSize) -> f64 {
+        let at_once = count(self.share.eliminated.min(2));
+        at_once * count(elimination_bytes(finest.grid.nr() - 2, finest.grid.nz() - 2))
+    }
 }
 
 /// The finest level beside the others (the coarsest once more on half the domain); in a march the coarsest goes before all.
@@ -148,8 +200,7 @@ fn beside(level_seconds: &[f64], settled: bool) -> f64 {
     let finest = level_seconds.last().copied().unwrap_or(0.0);
     let others = level_seconds.iter().sum::<f64>() - finest + if settled { first } else { 0.0 };
     let before = if settled { 0.0 } else { first };
-    let cores = std::thread::available_parallelism().map_or(1, std::num::NonZero::get);
-    before + if cores > 1 { finest.max(others) } else { finest + others }
+    before + if cores() > 1 { finest.max(others) } else { finest + others }
 }
 
 fn sizes(problem: &Problem, plan: &GridPlan, refinements: &[Refinement]) -> Result<Vec<LevelSize>, SolveFault> {
@@ -181,16 +232,10 @@ impl LevelSize {
             factor_bytes: direct.factor_bytes(),
             set_up_seconds,
             solve_seconds: begin.elapsed().as_secs_f64() / count(TIMED_SOLVES),
+            elimination_seconds: elimination_seconds(&operators)?,
             grid: operators.grid,
         })
     }
-}
-
-/// Recurrence vectors for settled fields from the magnetic Reynolds number: within 30 % from 0.01 to 100 for walls of 0.05 to 1 bore
-/// radii and gaps of 0.1 to 0.5 of it (measured); permeable walls need fewer.
-fn vectors(problem: &Problem, speed: f64) -> f64 {
-    let share = if problem.wall.is_permeable() { 6.0 } else { 10.0 };
-    4.0 + share * (reynolds_per_speed(&problem.wall) * speed).powf(0.8)
 }
 
 /// Steps and back-solves of a march on one level.
@@ -207,9 +252,9 @@ fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
 }
 
 /// Bytes of one level: factors with workspace, operators, stored vectors, snapshots.
-fn memory(problem: &Problem, size: &LevelSize, settled: bool, solves: f64) -> f64 {
-    let factors = if settled { 1.0 } else { KEPT_FACTORS };
-    let vectors = if settled { solves * count(size.wall_nodes) * 16.0 } else { 0.0 };
+fn memory(problem: &Problem, size: &LevelSize, work: Option<SettledWork>, solves: f64) -> f64 {
+    let factors = if work.is_some() { 1.0 } else { KEPT_FACTORS };
+    let vectors = work.map_or(0.0, |_| solves * count(size.wall_nodes) * 16.0);
     let nodes = count(size.grid.nodes());
     factors * count(size.factor_bytes) + nodes * NODE_BYTES + vectors + snapshots(problem) * nodes * 48.0
 }

@@ -30,14 +30,6 @@ pub enum SolveFault {
         /// The limit.
         limit: f64,
     },
-    /// The recurrence did not converge.
-    #[error("the drag-speed recurrence did not converge within {steps} vectors (residual {residual:.1e})")]
-    Recurrence {
-        /// Vectors built.
-        steps: usize,
-        /// Residual left.
-        residual: f64,
-    },
     /// The time stepping gave up.
     #[error("the equation of motion did not converge at t = {time_s} s")]
     Motion {

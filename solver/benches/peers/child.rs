@@ -59,12 +59,8 @@ pub(crate) fn run(arguments: &[String]) -> Result<(), BenchFault> {
     Ok(())
 }
 
-fn fastest(case: &Case) -> Option<f64> {
-    case.curve.as_ref().and_then(|speeds| speeds.iter().copied().max_by(f64::total_cmp))
-}
-
 fn forecast_of(case: &Case) -> Result<Value, BenchFault> {
-    let (told, seconds) = times(1, || forecast(&case.problem, fastest(case)))?;
+    let (told, seconds) = times(1, || forecast(&case.problem, case.curve.as_deref()))?;
     Ok(json!({
         "time_s": told.time_s,
         "memory_bytes": told.memory_bytes,

@@ -21,7 +21,7 @@ pub(super) fn three_forces(
     let sign = -velocity.signum();
     let (mut on_mover_levels, mut stress_levels) = (Vec::new(), Vec::new());
     for level in &mut levels.levels {
-        let (psi, _, _) = level.reaction(velocity)?;
+        let (psi, _) = level.reaction(velocity, levels.monitor)?;
         let grid = &level.operators.grid;
         on_mover_levels.push(sign * on_mover(grid, &psi, &problem.mover, 0.0, levels.placement.gap_m));
         stress_levels.push(sign * by_stress(grid, &psi, problem, &levels.placement, 0.0));
@@ -47,7 +47,7 @@ pub(super) fn wanted_fields(
         return Ok(None);
     }
     let Some(finest) = levels.levels.last_mut() else { return Ok(None) };
-    let (mut psi, currents, _) = finest.reaction(velocity)?;
+    let (mut psi, currents) = finest.reaction(velocity, levels.monitor)?;
     if let Some(fixed) = &finest.static_reaction {
         psi.iter_mut().zip(fixed).for_each(|(p, s)| *p += s);
     }

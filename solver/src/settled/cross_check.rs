@@ -12,7 +12,7 @@ use nalgebra_sparse::factorization::CscCholesky;
 use nalgebra_sparse::na::DMatrix;
 use nalgebra_sparse::{CooMatrix, CscMatrix};
 
-use super::level::{SettledLevel, convect};
+use super::level::{SettledLevel, Wanted, convect};
 use super::plan;
 use crate::monitor::Unwatched;
 use crate::operators::Operators;
@@ -46,9 +46,15 @@ fn problem(jacket: Option<f64>) -> Problem {
     }
 }
 
+/// A level for one speed.
 fn level(problem: &Problem, velocity: f64, refinement: Refinement) -> SettledLevel {
+    level_for(problem, &[velocity.abs()], velocity, refinement)
+}
+
+fn level_for(problem: &Problem, speeds: &[f64], velocity: f64, refinement: Refinement) -> SettledLevel {
     let plan = plan(problem, &Placement::new(problem), velocity).unwrap();
-    SettledLevel::new(problem, &plan, plan.grid(refinement), velocity, &Unwatched).unwrap()
+    let wanted = Wanted { velocity, speeds, monitor: &Unwatched };
+    SettledLevel::new(problem, &plan, plan.grid(refinement), wanted).unwrap()
 }
 
 /// d psi_0/dz at the wall nodes, psi_0 the mover's own field and the static reaction of a permeable wall.
@@ -93,9 +99,11 @@ fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
     for jacket in [None, Some(100.0)] {
         let problem = problem(jacket);
         for refinement in [Refinement::COARSEST, Refinement::first(3)[2]] {
-            let level = level(&problem, FASTEST, refinement);
+            // Enough speeds to be worth a recurrence.
+            let level = level_for(&problem, &[0.1, 15.0, 40.0, FASTEST], FASTEST, refinement);
+            assert!(level.recurrence.serves(FASTEST));
             for (velocity, limit) in [(0.1, 1e-10), (15.0, 1e-10), (-15.0, 1e-10), (FASTEST, 1e-8)] {
-                let found = level.figures(&problem.mover, velocity).drag;
+                let found = level.figures(&problem.mover, velocity, &Unwatched).unwrap().drag;
                 let wanted = drag_by_lu(&problem, &level, velocity);
                 let (off, left) = ((found / wanted - 1.0).abs(), level.recurrence.residual(velocity));
                 println!(
@@ -104,8 +112,46 @@ fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
                     level.recurrence.len()
                 );
                 assert!(off < limit, "{found} and {wanted}");
-                approx::assert_relative_eq!(level.drag(velocity), found, max_relative = 1e-12);
+                approx::assert_relative_eq!(level.drag(velocity, &Unwatched).unwrap(), found, max_relative = 1e-12);
             }
+        }
+    }
+}
+
+/// The same drag, heat, peak current density and field by recurrence and by elimination, where either would do; and by
+/// elimination and sparse LU where the recurrence would take thousands of vectors.
+#[test]
+fn an_elimination_gives_what_the_recurrence_gives() {
+    for jacket in [None, Some(100.0)] {
+        let problem = problem(jacket);
+        for speed in [0.3, 15.0, -60.0] {
+            let mut shared = level_for(&problem, &[0.1, 10.0, 40.0, speed.abs()], speed, Refinement::COARSEST);
+            assert!(shared.recurrence.serves(speed));
+            let mut alone = level(&problem, speed, Refinement::COARSEST);
+            alone.forget_recurrence();
+            assert!(!alone.recurrence.serves(speed));
+            let [a, b] = [&shared, &alone].map(|l| l.figures(&problem.mover, speed, &Unwatched).unwrap());
+            println!(
+                "{jacket:?} {speed} m/s: {} {} {} and {} {} {}",
+                a.drag, a.drag_by_heat, a.peak, b.drag, b.drag_by_heat, b.peak
+            );
+            approx::assert_relative_eq!(a.drag, b.drag, max_relative = 1e-9);
+            approx::assert_relative_eq!(a.drag_by_heat, b.drag_by_heat, max_relative = 1e-9);
+            approx::assert_relative_eq!(a.peak, b.peak, max_relative = 1e-8);
+            approx::assert_relative_eq!(alone.drag(speed, &Unwatched).unwrap(), b.drag, max_relative = 1e-12);
+            let (psi, _) = shared.reaction(speed, &Unwatched).unwrap();
+            let (other, _) = alone.reaction(speed, &Unwatched).unwrap();
+            let size = psi.iter().fold(0.0_f64, |m, p| m.max(p.abs()));
+            let off = psi.iter().zip(&other).fold(0.0_f64, |m, (p, o)| m.max((p - o).abs()));
+            assert!(off < 1e-8 * size, "{off} of {size}");
+        }
+        for speed in [1e3, 1e6] {
+            let level = level(&problem, speed, Refinement::COARSEST);
+            assert!(level.recurrence.len() < 3, "the rule must not take the recurrence here");
+            let found = level.drag(speed, &Unwatched).unwrap();
+            let wanted = drag_by_lu(&problem, &level, speed);
+            println!("{jacket:?} {speed} m/s: {found} and {wanted}");
+            approx::assert_relative_eq!(found, wanted, max_relative = 1e-8);
         }
     }
 }

@@ -1,9 +1,11 @@
 //! Drag against speed: every speed from the same recurrence.
 
+use std::cell::RefCell;
+
 use super::balance::{cautions, three_forces};
-use super::level::SettledLevel;
+use super::level::{SettledLevel, Wanted};
 use super::levels::{Levels, Point, damping_at_rest, plain};
-use crate::band;
+use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::interpolate::greatest;
 use crate::monitor::Monitor;
@@ -25,15 +27,15 @@ pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) ->
 
 fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
     let fastest = speeds.iter().copied().fold(0.0, f64::max);
-    let mut levels = Levels::new(problem, fastest, count, monitor)?;
+    let mut levels = Levels::new(problem, Wanted { velocity: fastest, speeds, monitor }, count)?;
     let points = curve_points(&levels, speeds)?;
     let mut cautions = cautions(problem);
     let mut figures = vec![damping_at_rest(&levels, "damping_coefficient_zero_speed")];
     figures.push(lag_time(&levels));
     let mut forces = None;
-    if let Some(speed) = critical_speed(&levels, speeds) {
-        let at = levels.point(speed);
-        figures.insert(1, critical_figure(&levels, speed, &at));
+    if let Some(speed) = critical_speed(&levels, &points)? {
+        let at = levels.point(speed)?;
+        figures.insert(1, critical_figure(&levels, speed, &at)?);
         figures.insert(2, plain("drag_max", "N", &at.drag, at.drag_band));
         forces = Some(three_forces(problem, &mut levels, speed, &at)?);
     } else {
@@ -61,38 +63,43 @@ fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monit
     })
 }
 
-/// The points, on two cores.
+/// The points, on two cores: every other one, for faster ones may take longer.
 fn curve_points(levels: &Levels<'_>, speeds: &[f64]) -> Result<Vec<DragPoint>, SolveFault> {
-    let points = |speeds: &[f64]| speeds.iter().map(|&speed| curve_point(levels, speed)).collect::<Vec<_>>();
-    let (slower, faster) = speeds.split_at(speeds.len() / 2);
-    let (first, second) = std::thread::scope(|scope| {
-        let beside = scope.spawn(|| points(faster));
-        (points(slower), beside.join())
+    let points = |first: usize| -> Result<Vec<DragPoint>, SolveFault> {
+        speeds.iter().skip(first).step_by(2).map(|&speed| curve_point(levels, speed)).collect()
+    };
+    let (even, odd) = std::thread::scope(|scope| {
+        let beside = scope.spawn(|| points(1));
+        (points(0), beside.join())
     });
-    let second = second.map_err(|_| SolveFault::NotFinite { what: "a level's thread" })?;
-    Ok([first, second].concat())
+    let (even, odd) = (even?, odd.map_err(|_| SolveFault::NotFinite { what: "a level's thread" })??);
+    let mut odd = odd.into_iter();
+    Ok(even.into_iter().flat_map(|point| std::iter::once(point).chain(odd.next())).collect())
 }
 
-fn curve_point(levels: &Levels<'_>, speed: f64) -> DragPoint {
+fn curve_point(levels: &Levels<'_>, speed: f64) -> Result<DragPoint, SolveFault> {
+    if levels.monitor.cancelled() {
+        return Err(SolveFault::Interrupted);
+    }
     if speed <= 0.0 {
-        return DragPoint {
+        return Ok(DragPoint {
             speed_m_per_s: 0.0,
             drag_newton: 0.0,
             band_newton: 0.0,
             heat_watt: 0.0,
             current_density_peak: 0.0,
             current_density_band: 0.0,
-        };
+        });
     }
-    let point = levels.point(speed);
-    DragPoint {
+    let point = levels.point(speed)?;
+    Ok(DragPoint {
         speed_m_per_s: speed,
         drag_newton: point.drag.value,
         band_newton: point.drag_band,
         heat_watt: point.heat.value * speed,
         current_density_peak: point.peak.value,
         current_density_band: point.peak_band,
-    }
+    })
 }
 
 /// tau in drag ~ c (v - tau dv/dt) at low speed, s.
@@ -103,29 +110,41 @@ fn lag_time(levels: &Levels<'_>) -> Figure {
     plain("lag_time", "s", &ladder, band::one_route(&ladder, cut, levels.residual(ladder.value)))
 }
 
-/// Speed of the greatest extrapolated drag, where it lies inside the range: golden section on the small problems.
-fn critical_speed(levels: &Levels<'_>, speeds: &[f64]) -> Option<f64> {
-    let mut sorted: Vec<f64> = speeds.iter().copied().filter(|&v| v > 0.0).collect();
-    sorted.sort_by(f64::total_cmp);
-    let drag = |v: f64| levels.ladder(|l| l.drag(v)).value;
-    let best = (0..sorted.len()).max_by(|&a, &b| drag(sorted[a]).total_cmp(&drag(sorted[b])))?;
-    if best + 1 == sorted.len() {
-        return None;
-    }
-    let low = if best > 0 { sorted[best - 1] } else { 0.0 };
-    let high = sorted[best + 1];
-    Some(greatest(drag, low, high, SEARCH * high))
+/// Speed of the greatest extrapolated drag, where it lies inside the range: golden section between the points next to the
+/// greatest.
+fn critical_speed(levels: &Levels<'_>, points: &[DragPoint]) -> Result<Option<f64>, SolveFault> {
+    let mut sorted: Vec<&DragPoint> = points.iter().filter(|p| p.speed_m_per_s > 0.0).collect();
+    sorted.sort_by(|a, b| a.speed_m_per_s.total_cmp(&b.speed_m_per_s));
+    let best = (0..sorted.len()).max_by(|&a, &b| sorted[a].drag_newton.total_cmp(&sorted[b].drag_newton));
+    let Some(best) = best.filter(|best| best + 1 < sorted.len()) else { return Ok(None) };
+    let low = if best > 0 { sorted[best - 1].speed_m_per_s } else { 0.0 };
+    let high = sorted[best + 1].speed_m_per_s;
+    greatest_within(|v| Ok(levels.drag(v)?.value), low, high).map(Some)
+}
+
+/// Where a drag that may fail is greatest.
+fn greatest_within(drag: impl Fn(f64) -> Result<f64, SolveFault>, low: f64, high: f64) -> Result<f64, SolveFault> {
+    let fault = RefCell::new(None);
+    let value = |v: f64| match drag(v) {
+        Ok(drag) => drag,
+        Err(error) => {
+            fault.borrow_mut().get_or_insert(error);
+            f64::NEG_INFINITY
+        }
+    };
+    let at = greatest(value, low, high, SEARCH * high);
+    fault.into_inner().map_or(Ok(at), Err)
 }
 
 /// The critical speed, with the band that the levels' own maxima leave.
-fn critical_figure(levels: &Levels<'_>, speed: f64, at: &Point) -> Figure {
+fn critical_figure(levels: &Levels<'_>, speed: f64, at: &Point) -> Result<Figure, SolveFault> {
     let (low, high) = (0.5 * speed, 1.5 * speed);
-    let ladder = levels.ladder(|l| greatest(|v| l.drag(v), low, high, SEARCH * high));
+    let of = |l: &SettledLevel| greatest_within(|v| l.drag(v, levels.monitor), low, high);
+    let maxima: Result<Vec<f64>, _> = levels.levels.iter().map(of).collect();
+    let ladder = Ladder::new(&levels.factors, maxima?);
     // Near the maximum drag ~ drag_max (1 - ((v - vc) / s)^2): a change of the drag's slope moves the place.
     let search = SEARCH * speed;
     let relative = at.drag_band / at.drag.value.abs();
-    Figure {
-        value: speed,
-        ..plain("critical_speed", "m/s", &ladder, band::one_route(&ladder, 0.0, 0.0) + search + 2.0 * relative * speed)
-    }
+    let band = band::one_route(&ladder, 0.0, 0.0) + search + 2.0 * relative * speed;
+    Ok(Figure { value: speed, ..plain("critical_speed", "m/s", &ladder, band) })
 }

@@ -1,9 +1,14 @@
 //! One grid level of the settled problem.
 
+use std::borrow::Cow;
 use std::f64::consts::PI;
+use std::sync::Arc;
 
 use lenzbore_mesh::{Grid, Regions};
 
+use super::elimination::Elimination;
+use super::lanczos::{Came, Lanczos};
+use super::method::share;
 use super::recurrence::Recurrence;
 use crate::direct::{DirectFactor, DirectPlan};
 use crate::fault::SolveFault;
@@ -18,12 +23,7 @@ use crate::problem::{Mover, Problem};
 use crate::sources::AxialField;
 use crate::wall_nodes::WallRow;
 
-/// Recurrence residual at which the drag has converged to 2e-11 (measured at 100 m/s).
-const RECURRENCE_LIMIT: f64 = 1.0e-10;
-/// More vectors than this is a failure.
-const MOST_VECTORS: usize = 6000;
-
-/// A level: operators, the factor of K, the static field at the wall, the recurrence.
+/// A level: operators, the factor of K, the static field at the wall, the recurrence, and what was solved at one speed alone.
 pub(crate) struct SettledLevel {
     pub(crate) operators: Operators,
     factor: DirectFactor,
@@ -34,8 +34,31 @@ pub(crate) struct SettledLevel {
     pub(crate) recurrence: Recurrence,
     /// 2 pi (K v_k) . slope: the drag of each recurrence vector, N.
     vector_drag: Vec<f64>,
+    /// The reaction at the one speed that was asked for, where the recurrence doesn't serve it.
+    alone: Option<Arc<Alone>>,
     pub(crate) counters: WorkCounters,
-    pub(crate) residual: f64,
+    residual: f64,
+}
+
+/// The moving wall's reaction at one speed, by elimination.
+#[derive(Debug)]
+struct Alone {
+    velocity: f64,
+    /// Reaction at the unknowns, Wb/rad.
+    psi: Vec<f64>,
+    /// Ring currents at the wall nodes, A.
+    currents: Vec<f64>,
+    residual: f64,
+}
+
+/// What is the same for all levels of a solve.
+#[derive(Clone, Copy)]
+pub(super) struct Wanted<'w> {
+    /// Velocity that the grids are made for, m/s.
+    pub(super) velocity: f64,
+    /// Speeds that will be asked for.
+    pub(super) speeds: &'w [f64],
+    pub(super) monitor: &'w dyn Monitor,
 }
 
 /// Figures of one level at one speed.
@@ -48,38 +71,82 @@ pub(crate) struct LevelDrag {
     /// Peak current density, A/m2, and where.
     pub(crate) peak: f64,
     pub(crate) peak_at: (f64, f64),
+    /// Backward error of the solves and rest of the recurrence.
+    pub(crate) residual: f64,
 }
 
 impl SettledLevel {
-    /// Builds the level on `grid` for speeds up to |`velocity`|.
+    /// Builds the level on `grid` for the speeds `wanted`.
     ///
     /// # Errors
     /// See [`SolveFault`].
-    pub(crate) fn new(
-        problem: &Problem,
-        plan: &GridPlan,
-        grid: Grid,
-        velocity: f64,
-        monitor: &dyn Monitor,
-    ) -> Result<Self, SolveFault> {
+    pub(super) fn new(problem: &Problem, plan: &GridPlan, grid: Grid, wanted: Wanted<'_>) -> Result<Self, SolveFault> {
         let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
         let operators = Operators::new(grid, materials);
         let mut factor = DirectPlan::new(&operators)?.factor(&operators, 0.0)?;
         let mut counters = WorkCounters { factorisations: 1, ..WorkCounters::default() };
         let (static_reaction, static_residual) = static_reaction(&operators, &mut factor, problem, &mut counters)?;
         let slope = slope(&operators, problem, static_reaction.as_deref());
-        let (recurrence, residual) = recur(&operators, &mut factor, &slope, velocity, monitor, &mut counters)?;
+        let share = share(&problem.wall, wanted.speeds);
+        let (recurrence, residual) = recur(&operators, &mut factor, &slope, (share.reach, share.most), wanted.monitor)?;
+        counters.recurrence = recurrence.len();
+        counters.solves += recurrence.len() + 1;
         let vector_drag = recurrence.currents.iter().map(|c| drag_of(c, &slope)).collect();
-        Ok(Self {
+        let mut level = Self {
             operators,
             factor,
             slope,
             static_reaction,
             recurrence,
             vector_drag,
+            alone: None,
             counters,
             residual: residual.max(static_residual),
-        })
+        };
+        if let [speed] = wanted.speeds
+            && !level.recurrence.serves(*speed)
+        {
+            level.alone = Some(level.alone(wanted.velocity, wanted.monitor)?);
+            level.counters.factorisations += 1;
+            level.counters.solves += 1;
+        }
+        Ok(level)
+    }
+
+    /// Leaves every speed to elimination.
+    #[cfg(test)]
+    pub(super) fn forget_recurrence(&mut self) {
+        let mut short = Recurrence { betas: vec![1.0], ..Recurrence::new(self.operators.wall.len()) };
+        short.currents.push(self.slope.iter().copied());
+        self.recurrence = short;
+    }
+
+    /// The reaction at `velocity` by elimination.
+    fn alone(&self, velocity: f64, monitor: &dyn Monitor) -> Result<Arc<Alone>, SolveFault> {
+        if let Some(kept) = self.alone.as_ref().filter(|a| (a.velocity - velocity).abs() <= 0.0) {
+            return Ok(Arc::clone(kept));
+        }
+        let wall = &self.operators.wall;
+        let driven: Vec<f64> = wall.conductance.iter().zip(&self.slope).map(|(g, q)| velocity * g * q).collect();
+        let mut right = vec![0.0; self.operators.unknowns()];
+        for (&u, d) in wall.unknown.iter().zip(&driven) {
+            right[u] = *d;
+        }
+        let (psi, residual) = Elimination::new(&self.operators, velocity, monitor)?.solve(&right)?;
+        let mut currents = vec![0.0; wall.len()];
+        convect(&self.operators, &psi, &mut currents);
+        currents.iter_mut().zip(&driven).for_each(|(c, d)| *c = velocity * *c + d);
+        Ok(Arc::new(Alone { velocity, psi, currents, residual }))
+    }
+
+    /// The reaction at `velocity` by elimination, where the recurrence doesn't serve it.
+    fn beyond(&self, velocity: f64, monitor: &dyn Monitor) -> Result<Option<Arc<Alone>>, SolveFault> {
+        if self.recurrence.serves(velocity) { Ok(None) } else { self.alone(velocity, monitor).map(Some) }
+    }
+
+    /// Largest relative residual of the solves that do not depend on the speed.
+    pub(super) fn solve_residual(&self) -> f64 {
+        self.residual
     }
 
     /// Zero-speed damping coefficient, N s/m: 2 pi sum G (d psi_0/dz)^2.
@@ -93,18 +160,32 @@ impl SettledLevel {
         2.0 * PI * self.recurrence.beta_1 * self.recurrence.beta_1
     }
 
-    /// Drag by J x B alone, N (odd in velocity), from the small tridiagonal problem.
-    pub(crate) fn drag(&self, velocity: f64) -> f64 {
+    /// Drag by J x B alone, N (odd in velocity): from the small tridiagonal problem, or by elimination.
+    ///
+    /// # Errors
+    /// Those of an elimination.
+    pub(super) fn drag(&self, velocity: f64, monitor: &dyn Monitor) -> Result<f64, SolveFault> {
+        if let Some(alone) = self.beyond(velocity, monitor)? {
+            return Ok(drag_of(&alone.currents, &self.slope));
+        }
         let x = self.recurrence.coefficients(velocity);
-        velocity * self.recurrence.beta_1 * x.iter().zip(&self.vector_drag).map(|(x, d)| x * d).sum::<f64>()
+        Ok(velocity * self.recurrence.beta_1 * x.iter().zip(&self.vector_drag).map(|(x, d)| x * d).sum::<f64>())
     }
 
     /// Drag by two routes, and the peak current density.
-    pub(crate) fn figures(&self, mover: &Mover, velocity: f64) -> LevelDrag {
-        let currents = self.recurrence.ring_currents(velocity);
+    ///
+    /// # Errors
+    /// Those of an elimination.
+    pub(super) fn figures(&self, mover: &Mover, velocity: f64, monitor: &dyn Monitor) -> Result<LevelDrag, SolveFault> {
+        let alone = self.beyond(velocity, monitor)?;
+        let (currents, solved) = match &alone {
+            Some(alone) => (Cow::Borrowed(&alone.currents), alone.residual),
+            None => (Cow::Owned(self.recurrence.ring_currents(velocity)), self.recurrence.residual(velocity)),
+        };
         let heat = self.heat(&currents);
-        let (peak, peak_at) = self.peak(mover, velocity, &currents);
-        LevelDrag { drag: drag_of(&currents, &self.slope), drag_by_heat: heat / velocity, peak, peak_at }
+        let (peak, peak_at) = self.peak(mover, velocity, &currents, alone.as_deref());
+        let drag = drag_of(&currents, &self.slope);
+        Ok(LevelDrag { drag, drag_by_heat: heat / velocity, peak, peak_at, residual: self.residual + solved })
     }
 
     /// Heat in the wall, W: 2 pi sum I^2 / G.
@@ -116,11 +197,15 @@ impl SettledLevel {
 
     /// The greatest current density and its (r, z): sigma v |d psi/dz| / r, the mover's own part exact, the reaction's
     /// from a high-order stencil along the wall.
-    fn peak(&self, mover: &Mover, velocity: f64, currents: &[f64]) -> (f64, (f64, f64)) {
+    fn peak(&self, mover: &Mover, velocity: f64, currents: &[f64], alone: Option<&Alone>) -> (f64, (f64, f64)) {
         let (grid, wall) = (&self.operators.grid, &self.operators.wall);
         let Some((row, k)) = greatest_node(&self.operators, currents) else { return (0.0, (0.0, 0.0)) };
         let (r, z) = (grid.r.nodes()[row.i], &grid.z.nodes()[row.j..row.j + row.count]);
-        let mut flux = self.recurrence.flux(velocity, row.start..row.start + row.count);
+        let nodes = row.start..row.start + row.count;
+        let mut flux = match alone {
+            Some(alone) => wall.unknown[nodes].iter().map(|&u| alone.psi[u]).collect(),
+            None => self.recurrence.flux(velocity, nodes),
+        };
         if let Some(fixed) = &self.static_reaction {
             flux.iter_mut().enumerate().for_each(|(n, f)| *f += fixed[grid.node(row.i, row.j + n)]);
         }
@@ -132,12 +217,18 @@ impl SettledLevel {
         (wall.sigma_max[row.start + k] * field, (r, at))
     }
 
-    /// The reaction of the moving wall at `velocity` at all nodes (without the static part), with its ring currents and
-    /// the residual of (K - v C) psi = v C psi_0.
+    /// The reaction of the moving wall at `velocity` at all nodes (without the static part), with its ring currents.
     ///
     /// # Errors
     /// Not finite, or too large a residual.
-    pub(crate) fn reaction(&mut self, velocity: f64) -> Result<(Vec<f64>, Vec<f64>, f64), SolveFault> {
+    pub(super) fn reaction(
+        &mut self,
+        velocity: f64,
+        monitor: &dyn Monitor,
+    ) -> Result<(Vec<f64>, Vec<f64>), SolveFault> {
+        if let Some(alone) = self.beyond(velocity, monitor)? {
+            return Ok((self.operators.spread(&alone.psi), alone.currents.clone()));
+        }
         let currents = self.recurrence.ring_currents(velocity);
         let mut right = vec![0.0; self.operators.unknowns()];
         for (&u, &i) in self.operators.wall.unknown.iter().zip(&currents) {
@@ -147,16 +238,7 @@ impl SettledLevel {
         self.factor.solve_in_place(&mut psi);
         self.counters.solves += 1;
         self.factor.check(&self.operators, &psi, &right, RESIDUAL_LIMIT)?;
-        let mut carried = vec![0.0; currents.len()];
-        convect(&self.operators, &psi, &mut carried);
-        let (mut off, mut scale) = (0.0_f64, 0.0_f64);
-        for (w, &current) in currents.iter().enumerate() {
-            let wanted = velocity * (carried[w] + self.operators.wall.conductance[w] * self.slope[w]);
-            off = off.max((current - wanted).abs());
-            scale = scale.max(current.abs());
-        }
-        let residual = if scale > 0.0 { off / scale } else { 0.0 };
-        Ok((self.operators.spread(&psi), currents, residual))
+        Ok((self.operators.spread(&psi), currents))
     }
 }
 
@@ -240,62 +322,23 @@ pub(crate) fn convect(operators: &Operators, psi: &[f64], out: &mut [f64]) {
     }
 }
 
-/// Runs the recurrence until the reaction at |velocity| has converged.
+/// Runs the recurrence until the reaction at `reach` has converged or there are `most` vectors; gives the largest relative
+/// residual of its back-solves too.
 fn recur(
     operators: &Operators,
     factor: &mut DirectFactor,
     slope: &[f64],
-    velocity: f64,
+    (reach, most): (f64, usize),
     monitor: &dyn Monitor,
-    counters: &mut WorkCounters,
 ) -> Result<(Recurrence, f64), SolveFault> {
-    let wall = &operators.wall;
-    let mut current: Vec<f64> = wall.conductance.iter().zip(slope).map(|(g, q)| g * q).collect();
-    let mut vector = vec![0.0; operators.unknowns()];
-    let mut recurrence = Recurrence { beta_1: 0.0, betas: Vec::new(), currents: Vec::new(), fluxes: Vec::new() };
-    let mut right = vec![0.0; operators.unknowns()];
-    let mut worst = 0.0_f64;
-    for k in 0..MOST_VECTORS {
+    let mut lanczos = Lanczos::new(operators, factor, slope);
+    loop {
         if monitor.cancelled() {
             return Err(SolveFault::Interrupted);
         }
-        // next = K^-1 current, where current = C v_k + beta_k K v_(k-1) at the wall.
-        right.fill(0.0);
-        for (&u, &c) in wall.unknown.iter().zip(&current) {
-            right[u] = c;
+        lanczos.recurrence.make_room();
+        if lanczos.step(reach, most)? == Came::ToItsEnd {
+            return Ok((lanczos.recurrence, lanczos.residual));
         }
-        vector.copy_from_slice(&right);
-        factor.solve_in_place(&mut vector);
-        counters.solves += 1;
-        worst = worst.max(factor.check(operators, &vector, &right, RESIDUAL_LIMIT)?);
-        let square: f64 = wall.unknown.iter().zip(&current).map(|(&u, c)| c * vector[u]).sum();
-        let beta = square.max(0.0).sqrt();
-        if k == 0 {
-            recurrence.beta_1 = beta;
-        } else {
-            recurrence.betas.push(beta);
-            let residual = recurrence.residual(velocity);
-            if residual < RECURRENCE_LIMIT {
-                counters.recurrence = recurrence.len();
-                return Ok((recurrence, worst));
-            }
-        }
-        if beta <= f64::MIN_POSITIVE {
-            counters.recurrence = recurrence.len();
-            return Ok((recurrence, worst));
-        }
-        vector.iter_mut().for_each(|x| *x /= beta);
-        current.iter_mut().for_each(|x| *x /= beta);
-        recurrence.currents.push(current.clone());
-        recurrence.fluxes.push(wall.unknown.iter().map(|&u| vector[u]).collect());
-        let mut next = vec![0.0; wall.len()];
-        convect(operators, &vector, &mut next);
-        if k > 0 {
-            // The previous K v is the last but one stored.
-            let previous = &recurrence.currents[k - 1];
-            next.iter_mut().zip(previous).for_each(|(n, p)| *n += beta * p);
-        }
-        current = next;
     }
-    Err(SolveFault::Recurrence { steps: MOST_VECTORS, residual: recurrence.residual(velocity) })
 }

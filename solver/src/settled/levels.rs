@@ -2,7 +2,7 @@
 
 use lenzbore_mesh::Refinement;
 
-use super::level::{LevelDrag, SettledLevel};
+use super::level::{LevelDrag, SettledLevel, Wanted};
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::grid_report::grid_report;
@@ -20,21 +20,17 @@ pub(super) struct Levels<'p> {
     pub(super) levels: Vec<SettledLevel>,
     pub(super) cut: SettledLevel,
     pub(super) velocity: f64,
+    pub(super) monitor: &'p dyn Monitor,
 }
 
 impl<'p> Levels<'p> {
-    pub(super) fn new(
-        problem: &'p Problem,
-        velocity: f64,
-        count: usize,
-        monitor: &dyn Monitor,
-    ) -> Result<Self, SolveFault> {
+    pub(super) fn new(problem: &'p Problem, wanted: Wanted<'p>, count: usize) -> Result<Self, SolveFault> {
         let placement = Placement::new(problem);
+        let Wanted { velocity, monitor, .. } = wanted;
         let plan = plan(problem, &placement, velocity)?;
         let refinements = Refinement::first(count);
-        let level =
-            |refinement: Refinement| SettledLevel::new(problem, &plan, plan.grid(refinement), velocity, monitor);
-        let half = || SettledLevel::new(problem, &plan, plan.half_grid(Refinement::COARSEST), velocity, monitor);
+        let level = |refinement: Refinement| SettledLevel::new(problem, &plan, plan.grid(refinement), wanted);
+        let half = || SettledLevel::new(problem, &plan, plan.half_grid(Refinement::COARSEST), wanted);
         let Some((&finest, others)) = refinements.split_last() else {
             return Err(SolveFault::Unsuited("no grid level was asked for"));
         };
@@ -51,7 +47,7 @@ impl<'p> Levels<'p> {
         levels.push(last?);
         monitor.progress(0.9, "settled fields");
         let factors = refinements.iter().map(|f| f.factor()).collect();
-        Ok(Self { problem, placement, factors, levels, cut, velocity })
+        Ok(Self { problem, placement, factors, levels, cut, velocity, monitor })
     }
 
     pub(super) fn ladder(&self, figure: impl Fn(&SettledLevel) -> f64) -> Ladder {
@@ -60,23 +56,28 @@ impl<'p> Levels<'p> {
 
     /// Relative change by the cut of a figure on the coarsest level, times `value`.
     pub(super) fn cut_change(&self, value: f64, figure: impl Fn(&SettledLevel) -> f64) -> f64 {
-        self.levels.first().map_or(0.0, |full| {
-            let (full, cut) = (figure(full), figure(&self.cut));
-            if full.abs() > 0.0 { (cut - full) / full * value } else { 0.0 }
-        })
+        self.levels.first().map_or(0.0, |full| changed(figure(full), figure(&self.cut), value))
     }
 
+    /// Backward error of the back-solves, of a figure of this value.
     pub(super) fn residual(&self, value: f64) -> f64 {
-        // Backward error of the back-solves and the rest of the recurrence, taken in full.
-        let worst = self.levels.iter().map(|l| l.residual + l.recurrence.residual(self.velocity)).fold(0.0, f64::max);
-        worst * value.abs()
+        self.levels.iter().map(SettledLevel::solve_residual).fold(0.0, f64::max) * value.abs()
+    }
+
+    /// The drag at `velocity` on all levels.
+    ///
+    /// # Errors
+    /// Those of a level.
+    pub(super) fn drag(&self, velocity: f64) -> Result<Ladder, SolveFault> {
+        let drags: Result<Vec<f64>, _> = self.levels.iter().map(|l| l.drag(velocity, self.monitor)).collect();
+        Ok(Ladder::new(&self.factors, drags?))
     }
 
     pub(super) fn reports(&self, problem: &Problem) -> Vec<GridReport> {
         let mut reports = Vec::with_capacity(self.levels.len());
         for (level, &factor) in self.levels.iter().zip(&self.factors) {
             let mut report = grid_report(problem, &self.placement, &level.operators.grid, factor, self.velocity.abs());
-            report.residual = level.residual;
+            report.residual = level.solve_residual();
             reports.push(report);
         }
         reports
@@ -93,18 +94,31 @@ impl<'p> Levels<'p> {
     }
 
     /// Drag, heat and peak at `velocity` with their bands.
-    pub(super) fn point(&self, velocity: f64) -> Point {
-        let at: Vec<LevelDrag> = self.levels.iter().map(|l| l.figures(&self.problem.mover, velocity)).collect();
+    ///
+    /// # Errors
+    /// Those of a level.
+    pub(super) fn point(&self, velocity: f64) -> Result<Point, SolveFault> {
+        let mover = &self.problem.mover;
+        let at: Result<Vec<LevelDrag>, _> =
+            self.levels.iter().map(|l| l.figures(mover, velocity, self.monitor)).collect();
+        let at = at?;
         let ladder = |f: fn(&LevelDrag) -> f64| Ladder::new(&self.factors, at.iter().map(f).collect());
         let (drag, heat, peak) = (ladder(|d| d.drag), ladder(|d| d.drag_by_heat), ladder(|d| d.peak));
-        let cut = self.cut_change(drag.value, |l| l.drag(velocity));
-        let residual = self.residual(drag.value);
-        let drag_band = band::two_routes(&drag, &heat, cut, residual);
+        let coarsest = drag.levels.first().copied().unwrap_or(0.0);
+        let cut = changed(coarsest, self.cut.drag(velocity, self.monitor)?, drag.value);
+        // Backward error of the solves and the rest of the recurrence, taken in full.
+        let worst = at.iter().map(|d| d.residual).fold(0.0, f64::max);
+        let drag_band = band::two_routes(&drag, &heat, cut, worst * drag.value.abs());
         let peak_cut = if drag.value.abs() > 0.0 { cut / drag.value * peak.value } else { 0.0 };
-        let peak_band = band::local(&peak, peak_cut, self.residual(peak.value));
+        let peak_band = band::local(&peak, peak_cut, worst * peak.value.abs());
         let peak_at = at.last().map_or((0.0, 0.0), |d| d.peak_at);
-        Point { drag, heat, peak, drag_band, peak_band, peak_at }
+        Ok(Point { drag, heat, peak, drag_band, peak_band, peak_at })
     }
+}
+
+/// The relative change from `full` to `cut`, times `value`.
+fn changed(full: f64, cut: f64, value: f64) -> f64 {
+    if full.abs() > 0.0 { (cut - full) / full * value } else { 0.0 }
 }
 
 /// The grids for settled fields at up to |`velocity`|.

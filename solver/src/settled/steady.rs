@@ -1,6 +1,7 @@
 //! Settled fields at one speed.
 
 use super::balance::{cautions, three_forces, wanted_fields};
+use super::level::Wanted;
 use super::levels::{Levels, Point, damping_at_rest};
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
@@ -19,11 +20,12 @@ pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) ->
 }
 
 fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    let mut levels = Levels::new(problem, velocity, count, monitor)?;
     let speed = velocity.abs();
+    let speeds = [speed];
+    let mut levels = Levels::new(problem, Wanted { velocity, speeds: &speeds, monitor }, count)?;
     let mut cautions = cautions(problem);
     let (figures, forces, ledger, fields) = if speed > 0.0 {
-        let point = levels.point(velocity);
+        let point = levels.point(velocity)?;
         cautions.extend(band::order_caution("drag", &point.drag));
         let forces = three_forces(problem, &mut levels, velocity, &point)?;
         let fields = wanted_fields(problem, &mut levels, velocity)?;
