@@ -81,6 +81,23 @@ pub struct SolveWords {
     /// Puts the result in the place of an older one
     #[arg(long)]
     pub replace: bool,
+    /// The input spread.
+    #[command(flatten)]
+    pub spread: SpreadWords,
+}
+
+/// What is asked of the input spread of a case with [tolerance].
+#[derive(Debug, Clone, Copy, Args)]
+pub struct SpreadWords {
+    /// Leaves the input spread out, although the case has [tolerance]
+    #[arg(long)]
+    pub no_spread: bool,
+    /// Also draws all toleranced inputs at random, so many times
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u32).range(2..=1_000_000), conflicts_with = "no_spread")]
+    pub monte_carlo: Option<u32>,
+    /// Seed of the random draws: the same gives the same draws
+    #[arg(long, value_name = "S", default_value_t = 1, requires = "monte_carlo")]
+    pub seed: u64,
 }
 
 /// `lenzbore materials`.

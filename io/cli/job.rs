@@ -4,6 +4,7 @@ use std::io::Read;
 use std::path::{Path, PathBuf};
 
 use lenzbore_io::case::{CaseSource, ResolvedCase, read_case};
+use lenzbore_io::message::Diagnostics;
 use lenzbore_io::result::{Program, ResultHeader};
 use serde_json::Value;
 
@@ -13,18 +14,44 @@ use crate::end::End;
 /// Largest case text read from standard input, bytes.
 const LONGEST_INPUT: u64 = 16 << 20;
 
-/// Reads the case that the words name.
-pub fn read(words: &CaseWords) -> Result<ResolvedCase, End> {
-    if words.case.as_os_str() != "-" {
-        return Ok(read_case(&CaseSource::Path(&words.case), &words.set)?);
+/// A case that can be read again with more overrides, also where it came from standard input.
+#[derive(Debug)]
+pub struct CaseInput {
+    path: PathBuf,
+    /// What standard input held, where the case is `-`.
+    text: Option<String>,
+    sets: Vec<String>,
+}
+
+impl CaseInput {
+    /// Takes the case that the words name.
+    pub fn open(words: &CaseWords) -> Result<Self, End> {
+        let text = if words.case.as_os_str() == "-" { Some(standard_input()?) } else { None };
+        Ok(Self { path: words.case.clone(), text, sets: words.set.clone() })
     }
+
+    /// Reads it with the overrides of the command line, and more behind them.
+    pub fn read(&self, more: &[String]) -> Result<ResolvedCase, Diagnostics> {
+        let source = match &self.text {
+            Some(text) => CaseSource::Text { name: "-", text, base_dir: Path::new("") },
+            None => CaseSource::Path(&self.path),
+        };
+        read_case(&source, &[&self.sets, more].concat())
+    }
+}
+
+fn standard_input() -> Result<String, End> {
     let mut text = String::new();
     std::io::stdin()
         .take(LONGEST_INPUT)
         .read_to_string(&mut text)
         .map_err(|e| End::Input(format!("standard input cannot be read as a case: {e}")))?;
-    let source = CaseSource::Text { name: "-", text: &text, base_dir: Path::new("") };
-    Ok(read_case(&source, &words.set)?)
+    Ok(text)
+}
+
+/// Reads the case that the words name.
+pub fn read(words: &CaseWords) -> Result<ResolvedCase, End> {
+    Ok(CaseInput::open(words)?.read(&[])?)
 }
 
 /// The result folder where none was named: out/ and the stem of the case file.
@@ -46,6 +73,7 @@ pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[
         resolved: case.resolved.to_json(),
         not_modelled: case.not_modelled.clone(),
         independent,
+        spread: None,
         cautions,
     }
 }

@@ -14,6 +14,7 @@ mod progress;
 mod say;
 mod sketch;
 mod solve;
+mod spread;
 
 use std::process::ExitCode;
 

@@ -1,16 +1,20 @@
 //! `lenzbore run` and `lenzbore curve`: solve, write, say.
 
 use lenzbore_io::case::ResolvedCase;
-use lenzbore_io::result::{WriteOptions, folder, summary, write};
-use lenzbore_solver::outcome::Outcome;
+use lenzbore_io::result::{ResultHeader, WriteOptions, folder, summary, write};
+use lenzbore_solver::monitor::Monitor;
+use lenzbore_solver::outcome::{Figure, Outcome};
 use lenzbore_solver::problem::{Problem, Travel};
+use lenzbore_solver::spread::{Nominal, Reading, Spread};
 use lenzbore_solver::{drag_curve, solve};
 use lenzbore_validation::endless;
 use serde_json::{Value, json};
 
-use crate::arguments::SolveWords;
+use crate::arguments::{SolveWords, SpreadWords};
 use crate::end::End;
+use crate::job::CaseInput;
 use crate::progress::Terminal;
+use crate::spread::{self, spread_text};
 use crate::{job, memory, say};
 
 /// What is asked of a case.
@@ -24,15 +28,18 @@ pub enum Question {
 
 /// Solves and writes.
 pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
-    let case = job::read(&words.case)?;
+    let input = CaseInput::open(&words.case)?;
+    let case = input.read(&[])?;
+    spread_can_be_asked(&case, &words.spread)?;
     let suffix = if question == Question::Curve { "-curve" } else { "" };
     let target = words.out.clone().unwrap_or_else(|| job::default_folder(&words.case, suffix));
     folder::vet(&target, words.replace)?;
     let terminal = Terminal::new()?;
     let (problem, outcome, cautions) = answer(&case, question, &terminal)?;
     terminal.finish();
+    let spread = input_spread(&input, &case, question, (&problem, &outcome), &words.spread, &terminal)?;
     let independent = independent(&problem, &outcome, question);
-    let header = job::header(&case, independent, &cautions);
+    let header = ResultHeader { spread, ..job::header(&case, independent, &cautions) };
     let options = WriteOptions {
         replace: words.replace,
         summary: true,
@@ -45,16 +52,62 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
         say::to_standard_output(&format!("{:#}\n", summary(&header, &outcome)?));
     } else {
         say::to_standard_output(&say::answer(&header, &outcome));
+        if let Some(spread) = &header.spread {
+            say::to_standard_output(&spread_text(spread));
+        }
         let files = written.files.join(", ");
         say::to_standard_output(&format!("\nwritten to {}: {files}\n", target.display()));
     }
     missed(&outcome)
 }
 
+/// Random draws need something to draw.
+fn spread_can_be_asked(case: &ResolvedCase, words: &SpreadWords) -> Result<(), End> {
+    if words.monte_carlo.is_some() && case.tolerances.is_empty() {
+        let text = "--monte-carlo draws the inputs within their tolerances, and the case has none; add\n  \
+                    [tolerance]\n  \"wall.sleeve.thickness\" = \"10 %\"";
+        return Err(End::Input(text.to_owned()));
+    }
+    Ok(())
+}
+
+/// What the tolerances make of the figures, where the case has any.
+fn input_spread(
+    input: &CaseInput,
+    case: &ResolvedCase,
+    question: Question,
+    (problem, outcome): (&Problem, &Outcome),
+    words: &SpreadWords,
+    terminal: &Terminal,
+) -> Result<Option<Spread>, End> {
+    if case.tolerances.is_empty() || words.no_spread {
+        return Ok(None);
+    }
+    let speeds = case.curve.as_ref().filter(|_| question == Question::Curve).map(|c| c.speeds_m_per_s.as_slice());
+    let varied = spread::Question {
+        input,
+        case,
+        size: (problem, speeds),
+        nominal: &nominal(outcome),
+        answer: &|case, monitor| Ok(nominal(&answer(case, question, monitor)?.1)),
+        monitor: terminal,
+    };
+    let study = spread::study(&varied, words)?;
+    terminal.finish();
+    Ok(Some(study))
+}
+
+/// The figures of an outcome, as the study of the inputs takes them.
+fn nominal(outcome: &Outcome) -> Vec<Nominal> {
+    let of =
+        |f: &Figure| Nominal { name: f.name.clone(), unit: f.unit, reading: Reading { value: f.value, band: f.band } };
+    outcome.figures.iter().map(of).collect()
+}
+
 fn answer(
     case: &ResolvedCase,
     question: Question,
-    terminal: &Terminal,
+    monitor: &dyn Monitor,
 ) -> Result<(Problem, Outcome, Vec<String>), End> {
     match question {
         Question::Travel => {
@@ -62,7 +115,7 @@ fn answer(
                 return Err(End::Input("the case has no [travel]; `lenzbore curve` sweeps its [curve]".to_owned()));
             }
             memory::require(&case.problem, None)?;
-            let outcome = solve(&case.problem, terminal)?;
+            let outcome = solve(&case.problem, monitor)?;
             Ok((case.problem.clone(), outcome, Vec::new()))
         }
         Question::Curve => {
@@ -73,7 +126,7 @@ fn answer(
                 ));
             };
             memory::require(&problem, plan.speeds_m_per_s.last().copied())?;
-            let outcome = drag_curve(&problem, &plan.speeds_m_per_s, terminal)?;
+            let outcome = drag_curve(&problem, &plan.speeds_m_per_s, monitor)?;
             Ok((problem, outcome, plan.cautions.clone()))
         }
     }

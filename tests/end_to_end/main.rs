@@ -15,3 +15,4 @@ mod folders;
 mod interruption;
 mod programs;
 mod rig;
+mod tolerance;

@@ -13,6 +13,8 @@
 //! - `mover.reference` is `"middle"`, `"lower end"`, `"upper end"` or a height above the lower end, and serves a stack;
 //!   parts placed by `at` count from the reference point.
 //! - A given conductivity holds at 20 degC where `conductivity_at` does not say otherwise, a remanence at 20 degC.
+//! - Where two sizes across of a layer have tolerances, these two are taken as given and the third follows; a tolerance of
+//!   one size moves it as `--set` would.
 //! - `[curve]` with two speeds spreads `points` between them; with more it takes them as they are.
 //!
 //! ```
@@ -41,6 +43,7 @@ mod resolve;
 mod resolved;
 mod sizes;
 mod temperature;
+mod tolerance;
 mod travel;
 mod tree;
 mod values;
@@ -53,6 +56,7 @@ use lenzbore_solver::problem::{Extent, Problem, Travel};
 
 use crate::message::Diagnostics;
 pub use resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
+pub use tolerance::Tolerance;
 pub use words::{LAWS, LawWords, TABLES, TableWords, law_words, table_words};
 
 #[cfg(test)]
@@ -112,6 +116,8 @@ pub struct ResolvedCase {
     pub curve: Option<CurvePlan>,
     /// `[output]`; when fields are kept stands in [`Problem::snapshots`].
     pub output: OutputPlan,
+    /// `[tolerance]`, in the order in which it was read.
+    pub tolerances: Vec<Tolerance>,
     /// Every word with its value in SI and its origin.
     pub resolved: Resolved,
     /// What the user should know about the input.

@@ -23,6 +23,12 @@ pub(super) fn overrides_tree(
     tree
 }
 
+/// What is wrong with a path as `--set` writes it, told at `place`.
+pub(super) fn path_fault(path: &str, place: &Place, case: &Table) -> Option<Diagnostic> {
+    let fault = one(&format!("{path}=0"), place.source, case).err()?;
+    Some(Diagnostic { place: Some(place.clone()), ..fault })
+}
+
 /// A piece of a path and its place.
 #[derive(Debug, Clone)]
 struct Segment {

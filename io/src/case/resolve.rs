@@ -9,6 +9,7 @@ use super::load::Loaded;
 use super::mover::read_mover;
 use super::output::{read_accuracy, read_output};
 use super::reader::{Reader, Section};
+use super::tolerance::{Tolerance, read_tolerances};
 use super::travel::{Surroundings, read_travel};
 use super::tree::Table;
 use super::wall::read_wall;
@@ -34,6 +35,7 @@ pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<Resolve
             travel_given: read.travel_given,
             curve: read.curve,
             output: read.output,
+            tolerances: read.tolerances,
             digest: resolved.digest(),
             files: sources.files().map(str::to_owned).collect(),
             resolved,
@@ -51,19 +53,13 @@ struct Read {
     travel_given: bool,
     curve: Option<CurvePlan>,
     output: OutputPlan,
+    tolerances: Vec<Tolerance>,
 }
 
 fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -> Option<Read> {
     reader.check_words(root);
     let title = title(reader, root, source);
     let record = record(reader, root);
-    if let Some(entry) = root.table.entry("tolerance") {
-        reader.not_modelled_yet(
-            entry,
-            "[tolerance], the spread of inputs",
-            Some("without it, bands are of the numbers alone"),
-        );
-    }
     let wall = read_wall(reader, root);
     let mover = read_mover(reader, root);
     let around = Surroundings::new(wall.as_ref().map(|w| &w.wall), mover.as_ref().map(|m| m.ends_m));
@@ -79,6 +75,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     let accuracy = read_accuracy(reader, &accuracy_section);
     let output_section = optional(reader, root, "output");
     let (output, snapshots) = read_output(reader, &output_section);
+    let tolerances = read_tolerances(reader, root);
     let (wall, mover) = (wall?, mover?);
     let problem = problem(&wall.wall, &mover.mover, travel.as_ref(), curve.as_ref(), (accuracy, snapshots));
     let parts = Parts {
@@ -98,7 +95,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
             "currents in the mover's own conducting parts (a sintered magnet conducts about 1 % as well as copper)";
         reader.not_modelled.push(text.to_owned());
     }
-    Some(Read { title, record, problem, travel_given: travel_section.is_some(), curve, output })
+    Some(Read { title, record, problem, travel_given: travel_section.is_some(), curve, output, tolerances })
 }
 
 /// A table that may be absent: then an empty one, whose defaults are filled in.

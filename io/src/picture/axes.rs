@@ -52,6 +52,20 @@ pub(super) fn grid(svg: &mut Svg, frame: &Frame, x: &Axis, y: &Axis) {
     }
 }
 
+/// Grid lines of a level axis alone, for a plot whose lines have names instead of an upright axis.
+pub(super) fn level_grid(svg: &mut Svg, frame: &Frame, x: &Axis) {
+    for tick in x.scale.ticks(APART_X) {
+        let at = x.scale.at(tick.value);
+        svg.line((at, frame.top), (at, frame.bottom), GRID);
+    }
+}
+
+/// Frame with ticks, labels and title of a level axis alone.
+pub(super) fn level_frame(svg: &mut Svg, frame: &Frame, x: &Axis) {
+    svg.rectangle(frame.left, frame.top, frame.right, frame.bottom, "none", Some(FRAME));
+    level_axis(svg, frame, x);
+}
+
 /// Frame, ticks, labels and titles; an x axis without a title keeps its ticks only.
 pub(super) fn frame(svg: &mut Svg, frame: &Frame, x: &Axis, y: &Axis) {
     svg.rectangle(frame.left, frame.top, frame.right, frame.bottom, "none", Some(FRAME));

@@ -16,6 +16,7 @@ use lenzbore_solver::problem::{
     Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall,
 };
 use lenzbore_solver::sources::Source;
+use lenzbore_solver::spread::{FigureSpread, Input, Nominal, Reading, Response, Spread, plan_offsets, rank};
 use serde_json::{Map, json};
 
 pub(crate) use super::demo_fields::fields;
@@ -38,6 +39,7 @@ pub(crate) fn header(title: &str) -> ResultHeader {
         resolved: json!({"wall": {"length": {"value": 0.12, "source": "case file"}}}),
         not_modelled: vec!["heating of the wall during the run".into()],
         independent: None,
+        spread: None,
         cautions: vec!["Strong magnets pinch.".into()],
     }
 }
@@ -230,4 +232,43 @@ fn grid(refinement: f64, settled: bool) -> GridReport {
         steps: if settled { 0 } else { (400.0 * refinement) as usize },
         residual: 3e-13,
     }
+}
+
+/// A made-up study of tolerances: powers of two inputs, with a speed that answers the other way.
+pub(crate) fn study() -> Spread {
+    let input = |path: &str, written: &str, value: f64, half: f64| Input {
+        path: path.to_owned(),
+        unit: "m",
+        value,
+        minus: half,
+        plus: half,
+        written: written.to_owned(),
+        stays: vec!["outer_diameter".to_owned()],
+        follows: vec!["inner_diameter".to_owned()],
+    };
+    let inputs = vec![
+        input("wall.sleeve.thickness", "10 %", 1.5e-3, 1.5e-4),
+        input("mover.M.outer_diameter", "0.1 mm", 0.022, 1e-4),
+    ];
+    let powers = [
+        ("drag", "N", 33.0, 1.4, 4.0),
+        ("damping_coefficient", "N s/m", 11.0, 1.4, 4.0),
+        ("exit_speed", "m/s", 0.25, -1.1, -3.6),
+    ];
+    let figures: Vec<FigureSpread> = powers
+        .into_iter()
+        .map(|(name, unit, value, first, second)| {
+            let reading = |x: f64| Reading { value: x, band: 1e-6 * value };
+            let response = |input: &Input, power: f64| {
+                let plan = plan_offsets(input);
+                let found: Vec<(f64, Reading)> =
+                    plan.stencil.iter().map(|x| (*x, reading(value * (1.0 + x / input.value).powf(power)))).collect();
+                Response::new(input, reading(value), plan.step, &found)
+            };
+            let nominal = Nominal { name: name.to_owned(), unit, reading: reading(value) };
+            FigureSpread::new(&nominal, &inputs, vec![response(&inputs[0], first), response(&inputs[1], second)])
+        })
+        .collect();
+    let ranking = rank(&figures, 2);
+    Spread { inputs, figures, ranking, monte_carlo: None, solutions: 12, cautions: Vec::new() }
 }

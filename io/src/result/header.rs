@@ -1,5 +1,6 @@
 //! What a result says of itself besides the outcome: filled in from the resolved case.
 
+use lenzbore_solver::spread::Spread;
 use serde_json::{Map, Value};
 
 /// The program that computed a result.
@@ -28,6 +29,8 @@ pub struct ResultHeader {
     pub not_modelled: Vec<String>,
     /// A semi-analytic value to hold the figures against, where the case allows one.
     pub independent: Option<Value>,
+    /// What the tolerances of the inputs make of the figures, where the case has any.
+    pub spread: Option<Spread>,
     /// Cautions that come from the case itself; those of the computation follow them.
     pub cautions: Vec<String>,
 }

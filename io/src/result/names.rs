@@ -6,6 +6,8 @@ pub const SUMMARY: &str = "summary.json";
 pub const TRACE: &str = "trace.csv";
 /// Drag against speed.
 pub const CURVE: &str = "curve.csv";
+/// What each input makes of each figure.
+pub const SENSITIVITIES: &str = "sensitivities.csv";
 /// Grid, regions, snapshots, traces, figures of every level.
 pub const FIELDS: &str = "run.h5";
 /// Opens `run.h5` in a visualisation program.

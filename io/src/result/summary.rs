@@ -3,12 +3,14 @@
 use lenzbore_solver::outcome::{
     Accuracies, DragCurve, Figure, Forces, GridReport, Ledger, Location, Outcome, Regime, WorkCounters,
 };
+use lenzbore_solver::spread::{FigureSpread, Spread};
 use serde_json::{Map, Value, json};
 
 use super::fault::IoFault;
 use super::finite::number;
 use super::header::ResultHeader;
 use super::series::curve_columns;
+use super::spread::{input_spread, spread_object};
 
 /// The summary of a run.
 ///
@@ -24,7 +26,10 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     put("program", json!({"name": header.program.name, "version": header.program.version}));
     put("record", Value::Object(header.record.clone()));
     put("digest", json!(header.digest));
-    put("figures", figures(&outcome.figures)?);
+    put("figures", figures(&outcome.figures, header.spread.as_ref())?);
+    if let Some(spread) = &header.spread {
+        put("spread", spread_object(spread)?);
+    }
     put("forces", optional(outcome.forces.as_ref(), forces)?);
     put("ledger", optional(outcome.ledger.as_ref(), ledger)?);
     put("regime", regime(&outcome.regime)?);
@@ -55,20 +60,24 @@ fn optional<T>(part: Option<&T>, write: impl Fn(&T) -> Result<Value, IoFault>) -
     part.map_or(Ok(Value::Null), write)
 }
 
-fn figures(figures: &[Figure]) -> Result<Value, IoFault> {
+fn figures(figures: &[Figure], spread: Option<&Spread>) -> Result<Value, IoFault> {
     let mut all = Map::new();
     for figure in figures {
-        all.insert(figure.name.clone(), self::figure(figure)?);
+        let of_inputs = spread.and_then(|s| s.figure(&figure.name));
+        all.insert(figure.name.clone(), self::figure(figure, of_inputs)?);
     }
     Ok(Value::Object(all))
 }
 
-fn figure(figure: &Figure) -> Result<Value, IoFault> {
+fn figure(figure: &Figure, spread: Option<&FigureSpread>) -> Result<Value, IoFault> {
     let name = &figure.name;
     let mut entry = Map::new();
     entry.insert("value".into(), number(name, figure.value)?);
     entry.insert("unit".into(), json!(figure.unit));
     entry.insert("band".into(), number(&format!("the band of {name}"), figure.band)?);
+    if let Some(spread) = spread {
+        entry.insert("input_spread".into(), input_spread(spread)?);
+    }
     entry.insert("basis".into(), json!(figure.basis.word()));
     if let Some(location) = &figure.location {
         entry.insert("where".into(), place(name, location)?);

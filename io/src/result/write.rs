@@ -9,7 +9,7 @@ use lenzbore_solver::problem::Problem;
 use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
-use super::{csv, curve_columns, hdf5, names, summary_text, trace_columns, xdmf};
+use super::{csv, curve_columns, hdf5, names, sensitivities_csv, summary_text, trace_columns, xdmf};
 use crate::picture::{self, Picture};
 
 /// What to write; what does not apply to a run (no series, no fields, no curve) is left out without a word.
@@ -78,6 +78,9 @@ fn fill(
     }
     if options.trace {
         tables(sheaf, outcome)?;
+        if let Some(spread) = &header.spread {
+            sheaf.put(names::SENSITIVITIES, sensitivities_csv(spread)?.as_bytes())?;
+        }
     }
     if options.fields {
         fields(sheaf, header, outcome)?;
@@ -95,6 +98,7 @@ fn fill(
 pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<Vec<Picture>, IoFault> {
     let mut all: Vec<Picture> = picture::curve(&header.title, outcome).into_iter().collect();
     all.extend(picture::travel(&header.title, problem, outcome));
+    all.extend(header.spread.as_ref().and_then(|s| picture::spread(&header.title, s)));
     all.push(picture::section(&header.title, problem, outcome)?);
     Ok(all)
 }

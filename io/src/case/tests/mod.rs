@@ -14,6 +14,7 @@ mod layering;
 mod overrides;
 mod random;
 mod resolved;
+mod tolerance;
 mod values;
 
 use std::path::Path;
