@@ -70,6 +70,25 @@ pub(crate) fn march_on_whole_grids(problem: &Problem, monitor: &dyn Monitor) -> 
     Journey { windows: None, ..Journey::new(problem)? }.solve(monitor)
 }
 
+/// Names and values of the figures of the coarsest level alone, through windows and without.
+///
+/// # Errors
+/// See [`SolveFault`].
+#[cfg(test)]
+pub(crate) fn coarsest_both_ways(
+    problem: &Problem,
+    monitor: &dyn Monitor,
+) -> Result<Vec<(&'static str, [f64; 2])>, SolveFault> {
+    let figures = |journey: Journey<'_>| {
+        let records = journey.first(monitor)?;
+        Ok::<_, SolveFault>(level_figures(problem, &records.levels[0].series, &journey.course))
+    };
+    let windows = Journey::new(problem)?;
+    assert!(windows.windows.is_some(), "the wall is too short for windows");
+    let (windows, whole) = (figures(windows)?, figures(Journey { windows: None, ..Journey::new(problem)? })?);
+    Ok(windows.iter().zip(&whole).map(|(a, b)| (a.name, [a.value, b.value])).collect())
+}
+
 /// The schedule, the levels so far, the coarsest level on half the domain.
 struct Records {
     schedule: Schedule,

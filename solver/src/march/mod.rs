@@ -24,5 +24,5 @@ mod window;
 
 pub(crate) use answer::march;
 #[cfg(test)]
-pub(crate) use answer::march_on_whole_grids;
+pub(crate) use answer::{coarsest_both_ways, march_on_whole_grids};
 pub(crate) use course::plan;
