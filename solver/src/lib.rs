@@ -22,6 +22,7 @@ pub mod problem;
 pub mod rings;
 pub mod sources;
 pub mod spread;
+pub mod step_field;
 
 mod band;
 mod corner;
