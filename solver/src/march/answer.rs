@@ -42,12 +42,12 @@ struct LevelRecord {
 }
 
 /// A march set up: where it goes, on which grids.
-struct Journey<'p> {
+pub(super) struct Journey<'p> {
     problem: &'p Problem,
     placement: Placement,
     plan: GridPlan,
-    motion: Motion,
-    course: Course,
+    pub(super) motion: Motion,
+    pub(super) course: Course,
     reach: (f64, f64),
     speed: f64,
     windows: Option<WindowRule>,
@@ -97,7 +97,7 @@ struct Records {
 }
 
 impl<'p> Journey<'p> {
-    fn new(problem: &'p Problem) -> Result<Self, SolveFault> {
+    pub(super) fn new(problem: &'p Problem) -> Result<Self, SolveFault> {
         let placement = Placement::new(problem);
         let (plan, speed) = plan(problem, &placement)?;
         let (motion, course) = set_out(problem)?;
@@ -120,12 +120,12 @@ impl<'p> Journey<'p> {
     }
 
     /// The window to begin with.
-    fn window(&self) -> Option<Window> {
+    pub(super) fn window(&self) -> Option<Window> {
         let ahead = (self.course.until - self.course.from).signum();
         self.windows.as_ref().map(|rule| rule.choose(self.course.from, ahead))
     }
 
-    fn level(&self, refinement: Refinement, half: bool) -> Result<MarchLevel<'_>, SolveFault> {
+    pub(super) fn level(&self, refinement: Refinement, half: bool) -> Result<MarchLevel<'_>, SolveFault> {
         let lines = LevelLines::new(&self.plan, self.windows.as_ref(), refinement, half);
         MarchLevel::new(self.problem, &self.placement, lines, self.window(), self.reach)
     }

@@ -5,6 +5,8 @@
 //! mean psi_s the mean of the mover's own field at both ends of the step. The force is a discrete gradient,
 //! F dz = 2 pi sum (K0 psi_mid) . (psi_s(z_(n+1)) - psi_s(z_n)), so that work = heat + change of field energy holds step by step.
 
+#[cfg(test)]
+mod allocation_tests;
 mod answer;
 mod combine;
 mod course;

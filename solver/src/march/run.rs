@@ -161,14 +161,14 @@ impl<'a, 'p> Run<'a, 'p> {
                 self.enter(window)?;
             }
             let (steps, dt) = schedule.steps(k, refinement);
+            self.series.reserve(steps);
             self.level.prepare(dt)?;
             for n in 0..steps {
                 if monitor.cancelled() {
                     return Err(SolveFault::Interrupted);
                 }
                 let begin = schedule.start(k) + count(n) * dt;
-                let report = self.step(begin, dt)?;
-                self.record(begin, dt, &report);
+                let report = self.step_and_record(begin, dt)?;
                 while wanted.next_if(|&t| t < begin + dt).is_some() {
                     self.keep_snapshot(begin + 0.5 * dt, report.travel)?;
                 }
@@ -222,6 +222,13 @@ impl<'a, 'p> Run<'a, 'p> {
         Ok(())
     }
 
+    /// Makes room for `steps` more, and the factor of `dt` ready.
+    #[cfg(test)]
+    pub(super) fn make_ready(&mut self, steps: usize, dt: f64) -> Result<(), SolveFault> {
+        self.series.reserve(steps);
+        self.level.prepare(dt)
+    }
+
     /// One rung up where the last pair leaves room for it, else as many down as it must.
     fn wanted_rung(&self, schedule: &Schedule, rung: u32, course: &Course, floor: f64) -> u32 {
         let Motion::Free { .. } = self.motion else { return rung };
@@ -250,6 +257,7 @@ impl<'a, 'p> Run<'a, 'p> {
         floor: f64,
     ) -> Result<u32, SolveFault> {
         let begin = schedule.start(schedule.pairs());
+        self.series.reserve(2);
         loop {
             let dt = schedule.dt(rung);
             self.level.prepare(dt)?;
@@ -257,8 +265,7 @@ impl<'a, 'p> Run<'a, 'p> {
             let keep = (self.heat, self.work, self.losses, self.series.time_mid.len());
             for n in 0..2 {
                 let start = begin + count(n) * dt;
-                let report = self.step(start, dt)?;
-                self.record(start, dt, &report);
+                self.step_and_record(start, dt)?;
                 if self.series.stopped_at.is_some() {
                     break;
                 }
@@ -279,8 +286,11 @@ impl<'a, 'p> Run<'a, 'p> {
         }
     }
 
-    fn step(&mut self, time: f64, dt: f64) -> Result<StepReport, SolveFault> {
-        self.stepper.step(self.level, self.motion, &mut self.state, &mut self.currents, time, dt)
+    /// One step with its record, the level being ready for `dt`. Allocates nothing while the series has room.
+    pub(super) fn step_and_record(&mut self, begin: f64, dt: f64) -> Result<StepReport, SolveFault> {
+        let report = self.stepper.step(self.level, self.motion, &mut self.state, &mut self.currents, begin, dt)?;
+        self.record(begin, dt, &report);
+        Ok(report)
     }
 
     fn record(&mut self, begin: f64, dt: f64, report: &StepReport) {

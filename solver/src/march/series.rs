@@ -45,14 +45,35 @@ impl Series {
     /// Forgets all steps after the first `steps`, which end at `time`.
     pub(crate) fn truncate(&mut self, steps: usize, time: f64) {
         let kept = self.time_stress.partition_point(|&t| t < time);
-        self.time_stress.truncate(kept);
-        self.force_by_stress.truncate(kept);
-        for ends in
-            [&mut self.time, &mut self.position, &mut self.velocity, &mut self.heat, &mut self.work, &mut self.losses]
-        {
-            ends.truncate(steps + 1);
-        }
-        for middles in [
+        self.at_stress().into_iter().for_each(|values| values.truncate(kept));
+        self.at_ends().into_iter().for_each(|values| values.truncate(steps + 1));
+        self.at_middles().into_iter().for_each(|values| values.truncate(steps));
+    }
+
+    /// Makes room for `steps` more, so that recording them allocates nothing.
+    pub(crate) fn reserve(&mut self, steps: usize) {
+        self.at_stress().into_iter().for_each(|values| values.reserve(steps));
+        self.at_ends().into_iter().for_each(|values| values.reserve(steps));
+        self.at_middles().into_iter().for_each(|values| values.reserve(steps));
+    }
+
+    fn at_stress(&mut self) -> [&mut Vec<f64>; 2] {
+        [&mut self.time_stress, &mut self.force_by_stress]
+    }
+
+    fn at_ends(&mut self) -> [&mut Vec<f64>; 6] {
+        [
+            &mut self.time,
+            &mut self.position,
+            &mut self.velocity,
+            &mut self.heat,
+            &mut self.work,
+            &mut self.losses,
+        ]
+    }
+
+    fn at_middles(&mut self) -> [&mut Vec<f64>; 11] {
+        [
             &mut self.time_mid,
             &mut self.position_mid,
             &mut self.force_mid,
@@ -64,9 +85,7 @@ impl Series {
             &mut self.peak_mid,
             &mut self.peak_r_mid,
             &mut self.peak_z_mid,
-        ] {
-            middles.truncate(steps);
-        }
+        ]
     }
 
     /// A quantity of step ends at `t`.

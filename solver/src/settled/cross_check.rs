@@ -124,7 +124,7 @@ fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
 fn an_elimination_gives_what_the_recurrence_gives() {
     for jacket in [None, Some(100.0)] {
         let problem = problem(jacket);
-        for speed in [0.3, 15.0, -60.0] {
+        for speed in [0.3_f64, 15.0, -60.0] {
             let mut shared = level_for(&problem, &[0.1, 10.0, 40.0, speed.abs()], speed, Refinement::COARSEST);
             assert!(shared.recurrence.serves(speed));
             let mut alone = level(&problem, speed, Refinement::COARSEST);

@@ -9,7 +9,7 @@ use crate::problem::{
 use crate::sources::Source;
 
 /// A layer over the whole length of its wall, radii in mm, conductivity in MS/m.
-pub(super) fn layer(inner_mm: f64, outer_mm: f64, sigma_ms: f64, mu_r: f64) -> Layer {
+pub(crate) fn layer(inner_mm: f64, outer_mm: f64, sigma_ms: f64, mu_r: f64) -> Layer {
     Layer {
         name: format!("{inner_mm} to {outer_mm}"),
         inner_radius_m: inner_mm * 1e-3,
@@ -27,7 +27,7 @@ pub(super) fn endless(layers: Vec<Layer>) -> Wall {
 }
 
 /// The same layers from z = 0 to `length_m`.
-pub(super) fn finite(length_m: f64, mut layers: Vec<Layer>) -> Wall {
+pub(crate) fn finite(length_m: f64, mut layers: Vec<Layer>) -> Wall {
     layers.iter_mut().for_each(|l| l.to_m = length_m);
     Wall { extent: Extent::Finite { length_m }, layers }
 }
@@ -45,7 +45,7 @@ pub(super) fn dipole() -> Part {
 }
 
 /// A cylinder (`inner_mm` = 0) or ring magnet, radii and length in mm.
-pub(super) fn magnet(inner_mm: f64, outer_mm: f64, length_mm: f64, remanence_tesla: f64, centre_mm: f64) -> Part {
+pub(crate) fn magnet(inner_mm: f64, outer_mm: f64, length_mm: f64, remanence_tesla: f64, centre_mm: f64) -> Part {
     let source = Source::Magnet {
         inner_radius_m: inner_mm * 1e-3,
         outer_radius_m: outer_mm * 1e-3,
@@ -67,7 +67,7 @@ pub(super) fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, ampere_turns: f
 }
 
 /// A problem with no snapshots, on `levels` grids.
-pub(super) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usize) -> Problem {
+pub(crate) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usize) -> Problem {
     Problem {
         wall,
         mover: Mover { parts, mass_kg: Some(0.02) },
@@ -95,7 +95,7 @@ pub(crate) fn long_passage(length_m: f64, speed_m_per_s: f64) -> Problem {
 }
 
 /// A fall from rest under standard gravity, with nothing but the wall to slow it; gates at both ends of the wall.
-pub(super) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
+pub(crate) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
     Free::let_go(release_mm * 1e-3, until_mm * 1e-3, [wall_mm * 1e-3, 0.0])
 }
 
