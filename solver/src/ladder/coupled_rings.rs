@@ -47,7 +47,7 @@ pub(super) fn coupled(problem: &Problem, monitor: &dyn Monitor) -> Result<Couple
 fn limit(fine: &ModelFigure, coarse: Option<&Simulated>) -> ModelFigure {
     let coarse = coarse.and_then(|s| s.figures.iter().find(|f| f.name == fine.name));
     let value = coarse.map_or(fine.value, |c| extrapolate(&[1.0, 1.0 / FINER], &[c.value, fine.value]).value);
-    ModelFigure { value, ..*fine }
+    ModelFigure { value, ..fine.clone() }
 }
 
 /// The same wall with relative permeability 1.
@@ -73,19 +73,14 @@ fn cutting(wall: &Wall, placement: &Placement) -> Result<(usize, f64), SolveFaul
     Ok((across, pitch))
 }
 
-fn travel(
-    problem: &Problem,
-    circuit: &RingCircuit,
-    step: f64,
-    monitor: &dyn Monitor,
-) -> Result<Path, SolveFault> {
+fn travel(problem: &Problem, circuit: &RingCircuit, step: f64, monitor: &dyn Monitor) -> Result<Path, SolveFault> {
     match &problem.travel {
         Travel::Traverse(law) => Ok(passage(law, &pass(circuit, &problem.mover, law, step)?)),
         Travel::Free(law) => {
             let (moments, stop, dissipated) = follow(circuit, &problem.mover, law, step, monitor)?;
             Ok(Path { instants: moments.iter().map(instant).collect(), stop, dissipated })
         }
-        Travel::Steady { .. } => Err(SolveFault::Unsuited("coupled rings need a passage")),
+        Travel::Steady { .. } | Travel::Alternating(_) => Err(SolveFault::Unsuited("coupled rings need a passage")),
     }
 }
 

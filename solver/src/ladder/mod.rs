@@ -11,16 +11,26 @@
 //!   for the series and figures of `traverse` and `free`.
 
 mod assumptions;
+mod causes;
+mod climb;
+mod coupled_rings;
+mod design;
 mod dipole_thin_ring;
 mod drive;
 mod effect;
+mod models;
 mod outcome;
-pub(crate) mod path;
+mod path;
+mod range;
 mod ring_sum;
 mod ring_travel;
 mod rows;
+mod share;
+mod sources;
+mod sweeps;
 
 pub use assumptions::{Assumptions, EndModel, MagnetModel, WallModel};
+pub use climb::{Question, climb, ladder};
 pub use dipole_thin_ring::{moment, thick_wall_coefficient, thin_wall_coefficient};
 pub use effect::Effect;
 pub use outcome::{
@@ -30,5 +40,7 @@ pub use outcome::{
 pub use path::{ModelFigure, Simulated};
 pub use ring_sum::{RingSum, takes_dipoles};
 
+#[cfg(test)]
+mod climb_tests;
 #[cfg(test)]
 mod ring_tests;

@@ -65,10 +65,14 @@ pub struct FigureLadder {
 /// Two large errors that nearly cancel in a small one.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Cancelling {
-    /// Effects left out that make the figure too high, together, relative to the top.
-    pub high: (Vec<Effect>, f64),
-    /// Effects left out that make it too low (negative).
-    pub low: (Vec<Effect>, f64),
+    /// Effects whose absence makes the figure too high.
+    pub high_effects: Vec<Effect>,
+    /// By how much together, relative to the top, > 0.
+    pub high: f64,
+    /// Effects whose absence makes it too low.
+    pub low_effects: Vec<Effect>,
+    /// By how much together, relative to the top, < 0.
+    pub low: f64,
 }
 
 /// How far a quick model is off in one figure, and why.
@@ -82,8 +86,8 @@ pub struct QuickError {
     pub value: f64,
     /// (value - top) / |top|: positive where the model says too much.
     pub error: f64,
-    /// What leaving each effect out adds to `error`, in the order in which they are restored; they sum to it.
-    pub causes: Vec<(Effect, f64)>,
+    /// What restoring each effect that it leaves out is worth, from this model to the top: `error` is minus the sum of `worth`.
+    pub causes: Vec<Step>,
     /// Set where a small error is two large ones cancelling.
     pub cancelling: Option<Cancelling>,
 }

@@ -9,14 +9,20 @@ use crate::problem::{Free, Problem, Travel};
 const TERMINAL_CHANGE: f64 = 1.0e-3;
 
 /// A figure by a simplified model; names and units as in a run's summary.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, PartialEq)]
 pub struct ModelFigure {
     /// Name, for example `drag_peak`.
-    pub name: &'static str,
+    pub name: String,
     /// SI unit.
     pub unit: &'static str,
     /// Value.
     pub value: f64,
+}
+
+impl ModelFigure {
+    pub(super) fn new(name: &str, unit: &'static str, value: f64) -> Self {
+        Self { name: name.to_owned(), unit, value }
+    }
 }
 
 /// What a simplified model makes of the case's travel.
@@ -58,8 +64,8 @@ impl Path {
     /// The path's series and figures.
     pub fn simulated(self, problem: &Problem) -> Simulated {
         let mut figures = Vec::new();
-        let mut add = |name, unit, value: Option<f64>| {
-            figures.extend(value.map(|value| ModelFigure { name, unit, value }));
+        let mut add = |name: &str, unit, value: Option<f64>| {
+            figures.extend(value.map(|value| ModelFigure::new(name, unit, value)));
         };
         let peak = |of: &dyn Fn(&Instant) -> f64| self.greatest(of);
         match &problem.travel {
@@ -74,7 +80,7 @@ impl Path {
                 add("deceleration_peak", "m/s2", peak(&|i| -i.acceleration * sense(i.v)).filter(|a| *a > 0.0));
                 add("felt_acceleration_peak", "1", peak(&|i| felt(law, i)));
             }
-            Travel::Traverse(_) | Travel::Steady { .. } => {
+            Travel::Traverse(_) | Travel::Steady { .. } | Travel::Alternating(_) => {
                 add("drag_peak", "N", peak(&|i| i.drag));
                 add("impulse", "N s", Some(self.impulse()));
             }
