@@ -118,6 +118,15 @@ pub(crate) fn route(figure: &Ladder) -> f64 {
     one_route(figure, 0.0, READING * figure.value)
 }
 
+/// What the shielding by the wall adds to [`READING`], and where that ends (errors of 1e-5 to 6e-5 measured from 10 to 10000): a field
+/// that the wall all but shuts out is the small difference of two.
+const MOST_SHIELDING: f64 = 25.0;
+
+/// The same for settled fields at this shielding, mu0 sigma w v.
+pub(crate) fn settled_route(figure: &Ladder, shielding: f64) -> f64 {
+    one_route(figure, 0.0, (1.0 + shielding.min(MOST_SHIELDING)) * READING * figure.value)
+}
+
 /// Steps that count for a local figure (a peak in space or time).
 const LOCAL_STEPS: f64 = 8.0;
 

@@ -11,6 +11,7 @@ use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_report::grid_report;
 use crate::grid_rules::GridPlan;
+use crate::harmonic;
 use crate::march;
 use crate::materials::Materials;
 use crate::operators::Operators;
@@ -18,7 +19,7 @@ use crate::outcome::{GridReport, Regime};
 use crate::placement::Placement;
 use crate::problem::{Problem, SnapshotPlan, Travel};
 use crate::regime::regime;
-use crate::settled::{self, Share, elimination_bytes, elimination_seconds, share};
+use crate::settled::{self, Share, elimination_bytes, elimination_seconds, share, shielding};
 use crate::target::levels_wanted;
 
 /// Solves timed on each level.
@@ -28,15 +29,22 @@ const STEP_OVERHEAD: f64 = 2.3;
 /// Time of a recurrence vector over that of its solve (measured).
 const VECTOR_OVERHEAD: f64 = 1.5;
 /// Time of a level's set-up over that of assembly and factorisation (grid, sources, figures; measured).
-const SET_UP_OVERHEAD: f64 = 1.5;
-/// Bytes of a node in operators and work arrays (measured), and of the program itself.
+const SET_UP_OVERHEAD: f64 = 2.0;
+/// Time of the program itself (start, reading, writing; measured), s.
+const PROGRAM_S: f64 = 0.02;
+/// Bytes of a node in operators and work arrays (measured), and of the program itself with its libraries.
 const NODE_BYTES: f64 = 360.0;
-const PROGRAM_BYTES: f64 = 3.0e6;
+const PROGRAM_BYTES: f64 = 14.0e6;
 /// Bytes of a node in a layered factor; walls of more layers than this may need a sparse one.
 const LAYERED_BYTES: f64 = 40.0;
 const FEW_LAYERS: usize = 4;
-/// Time to add one node of a vector into one point's ring current, s (measured).
-const ADDING_S: f64 = 3.0e-10;
+/// How the number of vectors grows with the refinement (measured: a third more at f = 2).
+const FINER_VECTORS: f64 = 0.4;
+/// Time to add one node of a vector into one point's ring current, s (measured, from memory).
+const ADDING_S: f64 = 8.0e-10;
+/// Shielding above which the peak current density usually asks for a level more than three (at 100 and 1000 in every wall tried, at
+/// 10 in none).
+const LEVEL_MORE: f64 = 40.0;
 /// Factors kept by a level of a march.
 const KEPT_FACTORS: f64 = 4.0;
 
@@ -72,6 +80,7 @@ pub fn rough_memory_bytes(problem: &Problem, curve_speed_m_per_s: Option<f64>) -
     let (plan, speed) = match (curve_speed_m_per_s, &problem.travel) {
         (Some(speed), _) => (settled::plan(problem, &placement, speed)?, Some(speed)),
         (None, Travel::Steady { velocity_m_per_s: v }) => (settled::plan(problem, &placement, *v)?, Some(*v)),
+        (None, Travel::Alternating(law)) => (harmonic::plan(problem, law)?.0, Some(0.0)),
         (None, _) => (march::plan(problem, &placement)?.0, None),
     };
     let factors = if speed.is_some() { 1.0 } else { KEPT_FACTORS };
@@ -108,6 +117,7 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
     let (plan, speed) = match (curve_speeds_m_per_s, &problem.travel) {
         (Some(speeds), _) => (settled::plan(problem, &placement, fastest(speeds))?, fastest(speeds)),
         (None, Travel::Steady { velocity_m_per_s: v }) => (settled::plan(problem, &placement, *v)?, v.abs()),
+        (None, Travel::Alternating(law)) => harmonic::plan(problem, law)?,
         (None, _) => march::plan(problem, &placement)?,
     };
     let alone = [speed];
@@ -116,8 +126,11 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
         (None, Travel::Steady { .. }) => Some(alone.as_slice()),
         (None, _) => None,
     };
-    let work = settled.map(|speeds| SettledWork { share: share(&problem.wall, speeds), speeds: speeds.len() });
-    let refinements = Refinement::first(levels_wanted(&problem.accuracy));
+    let work = settled
+        .map(|speeds| SettledWork { share: share(&problem.wall, speeds), speeds: speeds.len() })
+        .or_else(|| alternating_work(problem));
+    let refinements =
+        Refinement::first(levels_expected(problem, work.is_some() && curve_speeds_m_per_s.is_none(), speed));
     let sizes = sizes(problem, &plan, &refinements)?;
     let mut forecast = Forecast {
         grids: Vec::new(),
@@ -133,10 +146,11 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
     let (mut level_seconds, mut points_seconds) = (Vec::new(), 0.0);
     for (size, refinement) in sizes.iter().zip(&refinements) {
         let f = refinement.factor();
-        let (steps, solves) = work.map_or_else(|| march_work(problem, &plan, f), |w| (0.0, w.share.vectors + 2.0));
+        let (steps, solves) = work
+            .map_or_else(|| march_work(problem, &plan, f), |w| (0.0, w.share.vectors * f.powf(FINER_VECTORS) + 2.0));
         let own = match work {
             Some(work) => {
-                points_seconds += work.points_seconds(size);
+                points_seconds += work.points_seconds(size, solves);
                 solves * size.solve_seconds * VECTOR_OVERHEAD + work.own_seconds(size)
             }
             None => solves * size.solve_seconds * STEP_OVERHEAD,
@@ -152,8 +166,25 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
     if let (Some(work), Some(finest)) = (work, sizes.last()) {
         forecast.memory_bytes += work.elimination_bytes(finest);
     }
-    forecast.time_s = beside(&level_seconds, work.is_some()) + points_seconds;
+    // Levels that the target asks for come after the first, one by one.
+    let (at_first, later) = level_seconds.split_at(levels_wanted(&problem.accuracy).min(level_seconds.len()));
+    let later: f64 = later.iter().sum();
+    forecast.time_s = beside(at_first, work.is_some()) + later + points_seconds + PROGRAM_S;
     Ok(forecast)
+}
+
+/// Levels that the target will probably take.
+fn levels_expected(problem: &Problem, steady: bool, speed: f64) -> usize {
+    let first = levels_wanted(&problem.accuracy);
+    let more = steady && problem.accuracy.levels.is_none() && shielding(&problem.wall, speed) > LEVEL_MORE;
+    if more { first + 1 } else { first }
+}
+
+/// Vectors of the recurrences of an alternating current, and the two solves of each frequency.
+fn alternating_work(problem: &Problem) -> Option<SettledWork> {
+    let Travel::Alternating(law) = &problem.travel else { return None };
+    let vectors = harmonic::vectors(law) + 2.0 * count(law.frequencies_hz.len());
+    Some(SettledWork { share: Share { reach: 0.0, most: 0, vectors, eliminated: 0 }, speeds: 1 })
 }
 
 fn fastest(speeds: &[f64]) -> f64 {
@@ -178,18 +209,18 @@ impl SettledWork {
     }
 
     /// Seconds that a level adds to the points of a curve, which both cores share.
-    fn points_seconds(self, size: &LevelSize) -> f64 {
+    fn points_seconds(self, size: &LevelSize, vectors: f64) -> f64 {
         if self.speeds < 2 {
             return 0.0;
         }
         let (served, eliminated) = (count(self.speeds - self.share.eliminated), count(self.share.eliminated));
-        let adding = served * self.share.vectors * count(size.wall_nodes) * ADDING_S;
+        let adding = served * vectors * count(size.wall_nodes) * ADDING_S;
         adding + eliminated * size.elimination_seconds / count(cores().min(2))
     }
 
     /// Bytes of the eliminations under way at once.
     fn elimination_bytes(self, finest: &LevelSize) -> f64 {
-        let at_once = count(self.share.eliminated.min(2));
+        let at_once = if self.share.eliminated > 0 { 2.0 } else { 0.0 };
         at_once * count(elimination_bytes(finest.grid.nr() - 2, finest.grid.nz() - 2))
     }
 }
@@ -244,7 +275,7 @@ fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
     let (distance, strides_a_cell, columns) = match &problem.travel {
         Travel::Traverse(t) => ((t.to_m - t.from_m).abs(), 2.0, 1.0),
         Travel::Free(law) => ((law.until_m - law.release_m).abs(), 1.45, 2.0),
-        Travel::Steady { .. } => (0.0, 0.0, 0.0),
+        Travel::Steady { .. } | Travel::Alternating(_) => (0.0, 0.0, 0.0),
     };
     let pull = if problem.wall.is_permeable() { 1.0 } else { 0.0 };
     let steps = f * strides_a_cell * distance / plan.axial_cell_m;
@@ -263,12 +294,12 @@ fn snapshots(problem: &Problem) -> f64 {
     let distance = match &problem.travel {
         Travel::Traverse(t) => (t.to_m - t.from_m).abs(),
         Travel::Free(law) => (law.until_m - law.release_m).abs(),
-        Travel::Steady { .. } => 0.0,
+        Travel::Steady { .. } | Travel::Alternating(_) => 0.0,
     };
     let time = match &problem.travel {
         Travel::Traverse(t) => distance / t.speed_m_per_s,
         Travel::Free(law) => law.time_limit_s,
-        Travel::Steady { .. } => 0.0,
+        Travel::Steady { .. } | Travel::Alternating(_) => 0.0,
     };
     match &problem.snapshots {
         SnapshotPlan::None => 0.0,

@@ -1,6 +1,7 @@
 //! What goes with a settled figure: forces by three routes, fields, cautions.
 
 use super::levels::{Levels, Point};
+use super::method::shielding;
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::fields::{empty_fields, snapshot};
@@ -19,6 +20,7 @@ pub(super) fn three_forces(
     point: &Point,
 ) -> Result<Forces, SolveFault> {
     let sign = -velocity.signum();
+    let shielding = shielding(&problem.wall, velocity);
     let (mut on_mover_levels, mut stress_levels) = (Vec::new(), Vec::new());
     for level in &mut levels.levels {
         let (psi, _) = level.reaction(velocity, levels.monitor)?;
@@ -29,7 +31,8 @@ pub(super) fn three_forces(
     let (mover, stress) = (Ladder::new(&levels.factors, on_mover_levels), Ladder::new(&levels.factors, stress_levels));
     let wall_newton = velocity.signum() * point.drag.value;
     let (mover_newton, stress_newton) = (mover.value, stress.value);
-    let band_newton = point.drag_band + band::route(&mover).max(band::route(&stress));
+    let band_newton =
+        point.drag_band + band::settled_route(&mover, shielding).max(band::settled_route(&stress, shielding));
     let apart = (mover_newton - wall_newton).abs().max((stress_newton - wall_newton).abs());
     Ok(Forces { wall_newton, mover_newton, stress_newton, band_newton, agree: apart <= band_newton, time_s: 0.0 })
 }

@@ -12,7 +12,7 @@ use crate::monitor::Monitor;
 use crate::outcome::{Caution, DragCurve, DragPoint, Figure, Outcome, Stop, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
-use crate::target::{MOST_LEVELS, refine, verdict};
+use crate::target::{MOST_LEVELS, levels_wanted, refine, verdict};
 
 /// How closely the critical speed is searched, relative.
 const SEARCH: f64 = 1.0e-7;
@@ -22,22 +22,27 @@ const SEARCH: f64 = 1.0e-7;
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn curve(problem: &Problem, speeds: &[f64], monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    refine(&problem.accuracy, MOST_LEVELS, |count| curve_on(problem, speeds, count, monitor))
+    let fastest = speeds.iter().copied().fold(0.0, f64::max);
+    let wanted = Wanted { velocity: fastest, speeds, monitor };
+    let mut levels = Levels::new(problem, wanted, levels_wanted(&problem.accuracy))?;
+    refine(&problem.accuracy, MOST_LEVELS, |count| {
+        levels.grow(wanted, count)?;
+        curve_on(problem, speeds, &mut levels)
+    })
 }
 
-fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    let fastest = speeds.iter().copied().fold(0.0, f64::max);
-    let mut levels = Levels::new(problem, Wanted { velocity: fastest, speeds, monitor }, count)?;
-    let points = curve_points(&levels, speeds)?;
+fn curve_on(problem: &Problem, speeds: &[f64], levels: &mut Levels<'_>) -> Result<Outcome, SolveFault> {
+    let fastest = levels.velocity;
+    let points = curve_points(levels, speeds)?;
     let mut cautions = cautions(problem);
-    let mut figures = vec![damping_at_rest(&levels, "damping_coefficient_zero_speed")];
-    figures.push(lag_time(&levels));
+    let mut figures = vec![damping_at_rest(levels, "damping_coefficient_zero_speed")];
+    figures.push(lag_time(levels));
     let mut forces = None;
-    if let Some(speed) = critical_speed(&levels, &points)? {
+    if let Some(speed) = critical_speed(levels, &points)? {
         let at = levels.point(speed)?;
-        figures.insert(1, critical_figure(&levels, speed, &at)?);
+        figures.insert(1, critical_figure(levels, speed, &at)?);
         figures.insert(2, plain("drag_max", "N", &at.drag, at.drag_band));
-        forces = Some(three_forces(problem, &mut levels, speed, &at)?);
+        forces = Some(three_forces(problem, levels, speed, &at)?);
     } else {
         cautions.push(Caution {
             text:
@@ -45,8 +50,8 @@ fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monit
                     .to_owned(),
         });
     }
-    let accuracy = verdict(&figures, problem.accuracy.target_relative, count);
-    monitor.progress(1.0, "drag against speed");
+    let accuracy = verdict(&figures, problem.accuracy.target_relative, levels.levels.len());
+    levels.monitor.progress(1.0, "drag against speed");
     Ok(Outcome {
         regime: regime(problem, &levels.placement, fastest),
         grids: levels.reports(problem),
@@ -56,6 +61,7 @@ fn curve_on(problem: &Problem, speeds: &[f64], count: usize, monitor: &dyn Monit
         accuracy,
         trace: Trace::default(),
         curve: Some(DragCurve { points }),
+        frequency: None,
         figures,
         forces,
         ledger: None,

@@ -16,6 +16,7 @@ use crate::problem::Problem;
 pub(super) struct Levels<'p> {
     pub(super) problem: &'p Problem,
     pub(super) placement: Placement,
+    plan: GridPlan,
     pub(super) factors: Vec<f64>,
     pub(super) levels: Vec<SettledLevel>,
     pub(super) cut: SettledLevel,
@@ -47,7 +48,19 @@ impl<'p> Levels<'p> {
         levels.push(last?);
         monitor.progress(0.9, "settled fields");
         let factors = refinements.iter().map(|f| f.factor()).collect();
-        Ok(Self { problem, placement, factors, levels, cut, velocity, monitor })
+        Ok(Self { problem, placement, plan, factors, levels, cut, velocity, monitor })
+    }
+
+    /// Adds finer levels until there are `count`, for what was `wanted` of the others.
+    ///
+    /// # Errors
+    /// Those of a level.
+    pub(super) fn grow(&mut self, wanted: Wanted<'p>, count: usize) -> Result<(), SolveFault> {
+        for refinement in Refinement::first(count).into_iter().skip(self.levels.len()) {
+            self.levels.push(SettledLevel::new(self.problem, &self.plan, self.plan.grid(refinement), wanted)?);
+            self.factors.push(refinement.factor());
+        }
+        Ok(())
     }
 
     pub(super) fn ladder(&self, figure: impl Fn(&SettledLevel) -> f64) -> Ladder {

@@ -4,6 +4,7 @@
 //! unknowns, walls of 0.05 to 1 bore radii, relative permeability 1 and 50 (measured by `timing.rs`). How many vectors a speed
 //! needs follows from its magnetic Reynolds number.
 
+use crate::constants::MU0;
 use crate::grid_rules::reynolds_per_speed;
 use crate::problem::Wall;
 
@@ -19,6 +20,12 @@ const FEW: usize = 60;
 pub(crate) fn vectors(wall: &Wall, speed: f64) -> f64 {
     let share = if wall.is_permeable() { 6.0 } else { 10.0 };
     4.0 + share * (reynolds_per_speed(wall) * speed.abs()).powf(0.8)
+}
+
+/// Ratio of the field that the wall's currents make to that of the mover, as far as they oppose it by induction alone:
+/// mu0 sigma w v, without the permeability. Far above 1 the wall shuts the field out, and what is left is a small difference.
+pub(crate) fn shielding(wall: &Wall, speed: f64) -> f64 {
+    wall.layers.iter().map(|l| MU0 * l.conductivity_s_per_m * l.thickness_m()).sum::<f64>() * speed.abs()
 }
 
 /// How speeds are shared between the two ways.

@@ -23,5 +23,5 @@ pub(crate) use curve::curve;
 pub(crate) use elimination::{elimination_bytes, elimination_seconds};
 pub(crate) use level::greatest_node;
 pub(crate) use levels::plan;
-pub(crate) use method::{Share, share};
+pub(crate) use method::{Share, share, shielding};
 pub(crate) use steady::steady;

@@ -9,26 +9,30 @@ use crate::monitor::Monitor;
 use crate::outcome::{Basis, Figure, Ledger, Location, Outcome, Stop, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
-use crate::target::{MOST_LEVELS, refine, verdict};
+use crate::target::{MOST_LEVELS, levels_wanted, refine, verdict};
 
 /// Settled fields at one velocity.
 ///
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    refine(&problem.accuracy, MOST_LEVELS, |count| steady_on(problem, velocity, count, monitor))
+    let speeds = [velocity.abs()];
+    let wanted = Wanted { velocity, speeds: &speeds, monitor };
+    let mut levels = Levels::new(problem, wanted, levels_wanted(&problem.accuracy))?;
+    refine(&problem.accuracy, MOST_LEVELS, |count| {
+        levels.grow(wanted, count)?;
+        steady_on(problem, velocity, &mut levels)
+    })
 }
 
-fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Result<Outcome, SolveFault> {
     let speed = velocity.abs();
-    let speeds = [speed];
-    let mut levels = Levels::new(problem, Wanted { velocity, speeds: &speeds, monitor }, count)?;
     let mut cautions = cautions(problem);
     let (figures, forces, ledger, fields) = if speed > 0.0 {
         let point = levels.point(velocity)?;
         cautions.extend(band::order_caution("drag", &point.drag));
-        let forces = three_forces(problem, &mut levels, velocity, &point)?;
-        let fields = wanted_fields(problem, &mut levels, velocity)?;
+        let forces = three_forces(problem, levels, velocity, &point)?;
+        let fields = wanted_fields(problem, levels, velocity)?;
         let power = point.heat.value * velocity;
         let ledger = Ledger {
             work: point.drag.value * velocity,
@@ -39,10 +43,10 @@ fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monit
         };
         (moving_figures(&point, velocity), Some(forces), Some(ledger), fields)
     } else {
-        (resting_figures(&levels), None, None, None)
+        (resting_figures(levels), None, None, None)
     };
-    let accuracy = verdict(&figures, problem.accuracy.target_relative, count);
-    monitor.progress(1.0, "settled fields");
+    let accuracy = verdict(&figures, problem.accuracy.target_relative, levels.levels.len());
+    levels.monitor.progress(1.0, "settled fields");
     Ok(Outcome {
         regime: regime(problem, &levels.placement, speed),
         grids: levels.reports(problem),
@@ -52,6 +56,7 @@ fn steady_on(problem: &Problem, velocity: f64, count: usize, monitor: &dyn Monit
         accuracy,
         trace: Trace::default(),
         curve: None,
+        frequency: None,
         figures,
         forces,
         ledger,
