@@ -77,6 +77,7 @@ pub fn climb(question: &Question<'_>, monitor: &dyn Monitor) -> Result<LadderOut
     Ok(LadderOutcome {
         figures: figures.iter().map(|f| figure_ladder(f, &rungs)).collect(),
         skipped: skipped(question, features, sweeps.is_some()),
+        falls_below: sweeps.as_ref().map(|s| s.falls_below.clone()).unwrap_or_default(),
         map: sweeps.and_then(|s| s.map),
         rungs,
         quick: models,

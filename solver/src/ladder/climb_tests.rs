@@ -33,9 +33,9 @@ fn assert_climbs(problem: &Problem, outcome: &LadderOutcome) {
     }
 }
 
-/// V = mu0 sigma w v at which the law of low speed is high by 1, 2, 5, 10 %, dipole in a thin wall: computed independently from
-/// the thin sheet's integral (M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271 (2006)). Tolerance: 0.3 % for a
-/// wall of 1/500 of its radius instead of none.
+/// V = mu0 sigma w v at which the law of low speed is high by 1, 2, 5, 10 % of itself (drag = 0.99 c v, ...), dipole in a thin wall:
+/// computed independently from the thin sheet's integral (M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271
+/// (2006)). Tolerance: 0.3 % for a wall of 1/500 of its radius instead of none.
 const LINEAR_LAW: [(f64, f64); 4] = [(0.01, 0.2465), (0.02, 0.3505), (0.05, 0.5639), (0.10, 0.8219)];
 
 #[test]
@@ -48,13 +48,16 @@ fn val_the_low_speed_law_is_high_at_the_published_speeds() {
     };
     let case = problem(a, a * 1.002, None, vec![dipole], Travel::Steady { velocity_m_per_s: 100.0 });
     let outcome = ladder(&case, &Unwatched).unwrap();
-    let resistive = quick(&outcome, Assumptions::RESISTIVE);
-    for (tolerance, expected) in LINEAR_LAW {
-        let found = inside(resistive, Swept::Speed, tolerance);
-        assert_eq!(found.len(), 1, "{tolerance}: {found:?}");
-        assert!(found[0].open_below);
-        assert_relative_eq!(MU0 * SIGMA * 0.002 * a * found[0].to, expected, max_relative = 3e-3);
+    assert_eq!(outcome.falls_below.len(), LINEAR_LAW.len());
+    for (found, (share, expected)) in outcome.falls_below.iter().zip(LINEAR_LAW) {
+        assert_relative_eq!(found.share, share);
+        assert_relative_eq!(found.magnetic_reynolds, expected, max_relative = 3e-3);
+        assert_relative_eq!(MU0 * SIGMA * 0.002 * a * found.speed_m_per_s, expected, max_relative = 3e-3);
     }
+    // Relative to the truth the law is 10 % high a little earlier: 0.77926 (computed independently from the same integral).
+    let found = inside(quick(&outcome, Assumptions::RESISTIVE), Swept::Speed, 0.10);
+    assert!(found.len() == 1 && found[0].open_below, "{found:?}");
+    assert_relative_eq!(MU0 * SIGMA * 0.002 * a * found[0].to, 0.77926, max_relative = 3e-3);
 }
 
 /// A magnet of 0.8 of the bore in a thick wall: the ring sum at the mean radius is far too low when slow, too high when fast, and
@@ -64,7 +67,7 @@ fn the_mean_radius_and_the_missing_inductance_cancel() {
     let a = 10e-3;
     let speed = 3.0 / (MU0 * SIGMA * a);
     let parts = vec![cylinder(8e-3, 16e-3, 1.2, 0.0)];
-    let case = problem(a, 15e-3, None, parts, Travel::Steady { velocity_m_per_s: speed });
+    let case = problem(a, 20e-3, None, parts, Travel::Steady { velocity_m_per_s: speed });
     let outcome = ladder(&case, &Unwatched).unwrap();
     assert_climbs(&case, &outcome);
     let mean = quick(&outcome, Assumptions::RINGS_MEAN);

@@ -34,8 +34,8 @@ pub use climb::{Question, climb, ladder};
 pub use dipole_thin_ring::{moment, thick_wall_coefficient, thin_wall_coefficient};
 pub use effect::Effect;
 pub use outcome::{
-    Cancelling, ErrorMap, FigureLadder, Inside, Interval, LadderOutcome, QuickError, QuickModel, Range, Rung, Skipped,
-    Step, Swept,
+    Cancelling, ErrorMap, FallsBelow, FigureLadder, Inside, Interval, LadderOutcome, QuickError, QuickModel, Range,
+    Rung, Skipped, Step, Swept,
 };
 pub use path::{ModelFigure, Simulated};
 pub use ring_sum::{RingSum, takes_dipoles};

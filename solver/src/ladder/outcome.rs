@@ -166,6 +166,17 @@ pub struct Interval {
     pub by_cancellation: bool,
 }
 
+/// A speed at which the field solution's drag has fallen below the law of low speed, c v with c from resistance alone.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct FallsBelow {
+    /// By this share of what the law says: drag = (1 - share) c v.
+    pub share: f64,
+    /// The speed, m/s.
+    pub speed_m_per_s: f64,
+    /// mu0 sum(sigma mu_r w) times it.
+    pub magnetic_reynolds: f64,
+}
+
 /// Error of the ring sums over speed and wall thickness, endless wall.
 #[derive(Debug, Clone, PartialEq)]
 pub struct ErrorMap {
@@ -197,7 +208,9 @@ pub struct LadderOutcome {
     pub figures: Vec<FigureLadder>,
     /// Quick models beside the ladder.
     pub quick: Vec<QuickModel>,
-    /// Error of the ring sums over speed and wall thickness.
+    /// Speeds at which the drag has fallen 1, 2, 5 and 10 % below the law of low speed, in an endless wall.
+    pub falls_below: Vec<FallsBelow>,
+    /// Error of the quick models over speed and wall thickness.
     pub map: Option<ErrorMap>,
     /// Effects that are not on this ladder.
     pub skipped: Vec<Skipped>,

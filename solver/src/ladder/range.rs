@@ -12,6 +12,14 @@ pub(super) fn range(swept: Swept, here: f64, errors: Vec<(f64, f64)>) -> Range {
     Range { swept, here, errors, inside: inside.to_vec() }
 }
 
+/// The first value at which the error rises through `level`.
+pub(super) fn first_reaching(errors: &[(f64, f64)], level: f64) -> Option<f64> {
+    let places: Vec<f64> = errors.iter().map(|e| e.0.ln()).collect();
+    let values: Vec<f64> = errors.iter().map(|e| e.1).collect();
+    let k = (1..values.len()).find(|&k| values[k - 1] < level && values[k] >= level)?;
+    Some(crossing(&places, &values, k, level).exp())
+}
+
 /// Intervals with |error| <= tolerance; the error is interpolated over the logarithm of the swept value.
 fn intervals(errors: &[(f64, f64)], tolerance: f64) -> Vec<Interval> {
     let places: Vec<f64> = errors.iter().map(|e| e.0.ln()).collect();

@@ -33,7 +33,9 @@ impl RingSum {
         match &problem.travel {
             Travel::Traverse(law) => Ok(self.traverse(law, step).simulated(problem)),
             Travel::Free(law) => Ok(self.free(problem, law, step, monitor)?.simulated(problem)),
-            Travel::Steady { .. } | Travel::Alternating(_) => Err(SolveFault::Unsuited("uniform speed in an endless wall has no passage")),
+            Travel::Steady { .. } | Travel::Alternating(_) => {
+                Err(SolveFault::Unsuited("uniform speed in an endless wall has no passage"))
+            }
         }
     }
 

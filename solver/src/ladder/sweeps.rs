@@ -2,13 +2,13 @@
 
 use super::assumptions::Assumptions;
 use super::design::{face, magnet_scales, reference_speed, side, thickness_ratio, with_magnets, with_thickness};
-use super::outcome::{ErrorMap, Range, Swept};
-use super::range::range;
+use super::outcome::{ErrorMap, FallsBelow, Range, Swept};
+use super::range::{TOLERANCES, first_reaching, range};
 use super::ring_sum::RingSum;
 use crate::fault::SolveFault;
 use crate::monitor::Monitor;
 use crate::outcome::Outcome;
-use crate::problem::Problem;
+use crate::problem::{Accuracy, Problem};
 
 /// Points of the sweep over speed.
 const SPEEDS: usize = 61;
@@ -16,9 +16,11 @@ const SPEEDS: usize = 61;
 const SPEED_SPAN: (f64, f64) = (3.0e-3, 30.0);
 /// Every so many of these speeds is a column of the map.
 const MAP_STRIDE: usize = 2;
-/// Wall thickness over bore radius.
-const THICKNESS_SPAN: (f64, f64) = (0.02, 1.25);
+/// Thinnest and thickest wall swept, in units of the design's.
+const THICKNESS_SPAN: (f64, f64) = (1.0 / 8.0, 8.0);
 const THICKNESSES: usize = 13;
+/// The thickest wall, over the bore radius; a thicker design is its own limit.
+const THICKEST: f64 = 1.25;
 /// The thickest wall of a rod, over its radius.
 const THICKEST_ROD: f64 = 0.98;
 /// Points of the sweep over the size of the magnets.
@@ -31,6 +33,8 @@ pub(super) struct Sweeps {
     pub map: Option<ErrorMap>,
     /// Damping coefficient of the field solution at zero speed, N s/m, and its band.
     pub at_rest: (f64, f64),
+    /// Where the field solution's drag falls below the law of low speed.
+    pub falls_below: Vec<FallsBelow>,
 }
 
 /// The problems swept: the truth's and what the quick models take for it (permeability 1, 20 degC).
@@ -54,7 +58,9 @@ impl Designs<'_> {
     pub fn sweep(&self, quick: &[Assumptions], monitor: &dyn Monitor) -> Result<Option<Sweeps>, SolveFault> {
         let Some(reference) = reference_speed(self.truth) else { return Ok(None) };
         let speeds = self.speeds(reference);
-        let along = errors(self.truth, self.seen, quick, &speeds, monitor)?;
+        // The speeds come almost free once the levels are there: 1 % is read well only from a drag good to far less.
+        let fine = Problem { accuracy: Accuracy::default(), ..self.truth.clone() };
+        let along = errors(&fine, self.seen, quick, &speeds, monitor)?;
         let at_rest = along.outcome.figures.iter().find(|f| f.name == super::models::AT_REST);
         let at_rest = at_rest.map_or((0.0, 0.0), |f| (f.value, f.band));
         monitor.progress(0.1, "");
@@ -63,12 +69,13 @@ impl Designs<'_> {
             let pairs = speeds.iter().copied().zip(by_speed).collect();
             ranges.push(vec![range(Swept::Speed, self.here, pairs)]);
         }
+        let falls_below = falls_below(&ranges, quick, reference);
         let mut map = None;
         if let Some(inside) = side(self.truth) {
             map = Some(self.thicknesses(inside, &speeds, quick, &mut ranges, monitor)?);
             self.magnets(inside, quick, &mut ranges, monitor)?;
         }
-        Ok(Some(Sweeps { ranges, map, at_rest }))
+        Ok(Some(Sweeps { ranges, map, at_rest, falls_below }))
     }
 
     fn speeds(&self, reference: f64) -> Vec<f64> {
@@ -86,8 +93,8 @@ impl Designs<'_> {
         monitor: &dyn Monitor,
     ) -> Result<ErrorMap, SolveFault> {
         let design = thickness_ratio(self.truth, inside);
-        let thickest = if inside { THICKNESS_SPAN.1 } else { THICKEST_ROD };
-        let ratios = logarithmic(THICKNESS_SPAN.0, thickest.max(THICKNESS_SPAN.0 * 2.0), THICKNESSES);
+        let limit = if inside { THICKEST.max(design) } else { THICKEST_ROD };
+        let ratios = logarithmic(THICKNESS_SPAN.0 * design, limit.min(THICKNESS_SPAN.1 * design), THICKNESSES);
         let columns: Vec<f64> = speeds.iter().copied().step_by(MAP_STRIDE).collect();
         let mut asked = columns.clone();
         asked.push(self.here);
@@ -136,6 +143,18 @@ impl Designs<'_> {
         }
         Ok(())
     }
+}
+
+/// Where the truth falls short of the law of low speed by each tolerance, in units of that law.
+fn falls_below(ranges: &[Vec<Range>], quick: &[Assumptions], reference: f64) -> Vec<FallsBelow> {
+    let law = quick.iter().position(|a| *a == Assumptions::RESISTIVE);
+    let Some(errors) = law.and_then(|k| ranges.get(k)).and_then(|r| r.first()).map(|r| &r.errors) else {
+        return Vec::new();
+    };
+    // Relative to the truth the law is e too high; relative to itself, e / (1 + e).
+    let place = |share: f64| first_reaching(errors, share / (1.0 - share));
+    let at = |share: f64, v: f64| FallsBelow { share, speed_m_per_s: v, magnetic_reynolds: v / reference };
+    TOLERANCES.iter().filter_map(|&share| place(share).map(|v| at(share, v))).collect()
 }
 
 /// Relative errors of the models' drags at `speeds` against settled fields.
