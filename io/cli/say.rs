@@ -1,5 +1,6 @@
 //! What is said on the terminal.
 
+use std::borrow::Cow;
 use std::fmt::Write as _;
 use std::io::Write as _;
 
@@ -11,13 +12,31 @@ const SHOWN_POINTS: usize = 12;
 
 /// Writes to standard output; a closed pipe is no fault.
 pub fn to_standard_output(text: &str) {
-    let _ = std::io::stdout().lock().write_all(text.as_bytes());
+    let _ = std::io::stdout().lock().write_all(harmless(text).as_bytes());
+}
+
+/// Text without characters that a terminal obeys: they come out as JSON writes them, so that JSON stays what it is.
+fn harmless(text: &str) -> Cow<'_, str> {
+    let obeyed = |c: char| c.is_control() && c != '\n' && c != '\t';
+    if !text.contains(obeyed) {
+        return Cow::Borrowed(text);
+    }
+    let mut shown = String::with_capacity(text.len());
+    for c in text.chars() {
+        if obeyed(c) {
+            // Writing into a string cannot fail.
+            let _ = write!(shown, "\\u{:04x}", u32::from(c));
+        } else {
+            shown.push(c);
+        }
+    }
+    Cow::Owned(shown)
 }
 
 /// Writes a line to standard error.
 pub fn to_standard_error(text: &str) {
     let mut stream = std::io::stderr().lock();
-    let _ = writeln!(stream, "{}", text.trim_end());
+    let _ = writeln!(stream, "{}", harmless(text.trim_end()));
 }
 
 /// The answer in text: figures with bands, forces, ledger, cautions.
@@ -54,7 +73,8 @@ fn list(text: &mut String, heading: &str, items: &[&str]) {
 fn figure_line(figure: &Figure) -> String {
     let (value, band) = with_band(figure.value, figure.band);
     let place = figure.location.map_or(String::new(), |l| {
-        let millimetres = |x: f64| format!("{:.2} mm", 1e3 * x);
+        // A place that rounds to zero has no sign.
+        let millimetres = |x: f64| format!("{:.2} mm", (1e5 * x).round() / 1e2 + 0.0);
         let r = l.r_m.map(|r| format!("r = {}", millimetres(r)));
         let z = l.z_m.map(|z| format!("z = {}", millimetres(z)));
         let t = l.t_s.filter(|_| figure.unit != "s").map(|t| format!("t = {t:.4} s"));
@@ -84,6 +104,19 @@ pub fn with_band(value: f64, band: f64) -> (String, String) {
     (format!("{value:.*}", whole(digits)), band)
 }
 
+/// Significant digits of forces and energies.
+const DIGITS: f64 = 8.0;
+
+/// A number to eight significant digits.
+fn significant(value: f64) -> String {
+    let size = value.abs();
+    if size > 0.0 && !(1.0e-3..1.0e7).contains(&size) {
+        return format!("{value:.*e}", whole(DIGITS - 1.0));
+    }
+    let before = if size > 0.0 { size.log10().floor() } else { 0.0 };
+    format!("{value:.*}", whole((DIGITS - 1.0 - before).clamp(0.0, 15.0)))
+}
+
 #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "clamped to 0 .. 16 by the callers")]
 fn whole(digits: f64) -> usize {
     digits as usize
@@ -106,16 +139,19 @@ fn balance(text: &mut String, outcome: &Outcome) {
         let verdict = if f.agree { "agree" } else { "DO NOT AGREE" };
         let _ = writeln!(
             text,
-            "\nthree forces at the greatest drag: wall {:.7} N, mover {:.7} N, stress in the gap {:.7} N: {verdict} within {:.1e} N",
-            f.wall_newton, f.mover_newton, f.stress_newton, f.band_newton
+            "\nthree forces at the greatest drag: wall {} N, mover {} N, stress in the gap {} N: {verdict} within {:.1e} N",
+            significant(f.wall_newton),
+            significant(f.mover_newton),
+            significant(f.stress_newton),
+            f.band_newton
         );
     }
     if let Some(l) = outcome.ledger {
         let _ = writeln!(
             text,
-            "ledger: work {:.7} {u} = heat {:.7} {u} + field energy {:.2e} {u}; open by {:.1e} of the work",
-            l.work,
-            l.heat,
+            "ledger: work {} {u} = heat {} {u} + field energy {:.2e} {u}; open by {:.1e} of the work",
+            significant(l.work),
+            significant(l.heat),
             l.field_energy,
             l.imbalance_relative.abs(),
             u = l.unit
@@ -137,4 +173,23 @@ fn regime(text: &mut String, outcome: &Outcome) {
         "regime at {:.4} m/s: wall/bore {:.3}, gap/bore {:.3}, mu0 sigma w v {:.4}, {depth}",
         r.speed_m_per_s, r.thickness_ratio, r.gap_ratio, r.magnetic_reynolds
     );
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn what_a_terminal_obeys_is_shown_instead() {
+        assert_eq!(harmless("a\u{1b}[2J\u{9b}31m\r\n\tb\u{7f}"), "a\\u001b[2J\\u009b31m\\u000d\n\tb\\u007f");
+        assert!(matches!(harmless("plain\n"), Cow::Borrowed(_)));
+    }
+
+    #[test]
+    fn numbers_keep_their_digits_whatever_their_size() {
+        assert_eq!(significant(2.212_929_281), "2.2129293");
+        assert_eq!(significant(-1_234.567_89), "-1234.5679");
+        assert_eq!(significant(3.5e-9), "3.5000000e-9");
+        assert_eq!(significant(0.0), "0.0000000");
+    }
 }

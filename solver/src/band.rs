@@ -32,8 +32,17 @@ pub(crate) struct Ladder {
     pub(crate) step: f64,
     /// The levels' own values.
     pub(crate) levels: Vec<f64>,
-    /// Observed order of the levels, where it can be read and is lower than the powers assumed.
-    pub(crate) low_order: Option<f64>,
+    /// Observed order, where it can be read and is lower than the powers assumed.
+    pub(crate) low_order: Option<LowOrder>,
+}
+
+/// An observed order that is too low.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(crate) struct LowOrder {
+    /// The order.
+    pub(crate) found: f64,
+    /// The order that even powers give: 2 for the levels themselves, 4 once they are extrapolated.
+    pub(crate) wanted: u8,
 }
 
 /// Observed order below which the assumed even powers are in doubt.
@@ -62,8 +71,9 @@ fn observed_order(factors: &[f64], values: &[f64]) -> Option<f64> {
 }
 
 /// The observed order where it is lower than even powers give: of the levels, or of their once-extrapolated values.
-fn low_order(factors: &[f64], levels: &[f64]) -> Option<f64> {
+fn low_order(factors: &[f64], levels: &[f64]) -> Option<LowOrder> {
     let order = observed_order(factors, levels).filter(|&p| p < LEAST_ORDER);
+    let order = order.map(|found| LowOrder { found, wanted: 2 });
     if order.is_some() || levels.len() < 4 {
         return order;
     }
@@ -73,7 +83,8 @@ fn low_order(factors: &[f64], levels: &[f64]) -> Option<f64> {
     };
     let extrapolated: Vec<f64> = (0..levels.len() - 1).map(once).collect();
     let means: Vec<f64> = factors.windows(2).map(|f| (f[0] * f[1]).sqrt()).collect();
-    observed_order(&means, &extrapolated).filter(|&p| p < LEAST_SECOND_ORDER)
+    let order = observed_order(&means, &extrapolated).filter(|&p| p < LEAST_SECOND_ORDER);
+    order.map(|found| LowOrder { found, wanted: 4 })
 }
 
 impl Ladder {
@@ -142,10 +153,12 @@ pub(crate) fn one_route(figure: &Ladder, cut: f64, residual: f64) -> f64 {
 
 /// The caution of a figure whose levels converge too slowly.
 pub(crate) fn order_caution(name: &str, ladder: &Ladder) -> Option<Caution> {
-    ladder.low_order.map(|p| Caution {
-        text: format!(
-            "{name}: the grid levels converge with order {p:.1}, lower than the even powers that the extrapolation removes; \
-             its band is widened for that."
-        ),
+    ladder.low_order.map(|LowOrder { found, wanted }| {
+        let of = if wanted > 2 { "pairs of grid levels, extrapolated once," } else { "grid levels" };
+        Caution {
+            text: format!(
+                "{name}: the {of} converge with order {found:.1} instead of {wanted}; its band is widened for that."
+            ),
+        }
     })
 }

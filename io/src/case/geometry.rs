@@ -49,6 +49,7 @@ fn is_of_what_is_missing(fault: &ProblemFault, parts: &Parts<'_, '_>) -> bool {
         }
         ProblemFault::SteadyNeedsEndlessWall { .. }
         | ProblemFault::TravelNeedsEnds { .. }
+        | ProblemFault::OutOfReach { .. }
         | ProblemFault::NoTravel { .. } => !parts.whole_travel || parts.wall.extent.is_none(),
         // Gates that nobody wrote stand at the ends of the wall, and an endless wall has none.
         ProblemFault::GatesCoincide { .. } => !parts.travel.is_some_and(|t| parts.whole_travel && t.table.has("gates")),
@@ -94,6 +95,9 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
             (parts.mover.section.place.clone(), Some((travel(&["law"]), "the law that needs it")))
         }
         ProblemFault::NoTravel { .. } => (travel(&["to", "until", "from", "release"]), None),
+        ProblemFault::OutOfReach { .. } => {
+            (travel(&["until", "law"]), Some((travel(&["release"]), "where it is let go")))
+        }
         ProblemFault::GatesCoincide { .. } => (travel(&["gates"]), None),
         ProblemFault::Levels { .. } => (parts.accuracy.map_or_else(root, |s| s.place_of("levels")), None),
         ProblemFault::CellsAcrossWall { .. } => {

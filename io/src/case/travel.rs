@@ -121,15 +121,22 @@ fn check_law_words(reader: &mut Reader, section: &Section<'_>, law: &'static str
 /// A speed is a magnitude; `mend` says how the other direction is asked for.
 fn speed(reader: &mut Reader, section: &Section<'_>, mend: &str) -> Option<f64> {
     let why = "how fast the mover travels";
-    let speed = reader.required(section, "speed", signed_speed(), why, "speed = \"2 m/s\"")?;
-    if speed < 0.0 {
-        let place = section.place_of("speed");
-        let found = reader.sources.written(&place);
-        let (word, legal) = ("speed".to_owned(), "a speed is a magnitude, 0 or greater".to_owned());
-        reader.fault(place, CaseFault::Impossible { word, found, legal, mend: Some(mend.to_owned()) });
-        return None;
-    }
-    Some(speed)
+    let any = SensibleRange { highest: f64::MAX, ..signed_speed().range };
+    let wanted = Wanted { kind: Kind::Speed, range: any };
+    let speed = reader.required(section, "speed", wanted, why, "speed = \"2 m/s\"")?;
+    let fastest = signed_speed().range.highest;
+    let (legal, mend) = if speed < 0.0 {
+        ("a speed is a magnitude, 0 or greater".to_owned(), mend)
+    } else if speed > fastest {
+        let legal = format!("at most {fastest} m/s, a hundredth of the speed of light");
+        (legal, "nearer to it the displacement current counts, which is left out of the equations")
+    } else {
+        return Some(speed);
+    };
+    let place = section.place_of("speed");
+    let found = reader.sources.written(&place);
+    reader.fault(place, CaseFault::Impossible { word: "speed".to_owned(), found, legal, mend: Some(mend.to_owned()) });
+    None
 }
 
 fn traverse(reader: &mut Reader, section: &Section<'_>, around: Surroundings) -> Option<Travel> {
@@ -267,4 +274,4 @@ fn until(
 
 /// A speed of a curve: a magnitude above 0.
 pub(super) const CURVE_SPEED: Wanted =
-    Wanted { kind: Kind::Speed, range: SensibleRange { lowest: 1e-9, highest: 1e7, zero: false, signed: false } };
+    Wanted { kind: Kind::Speed, range: SensibleRange { lowest: 1e-9, highest: 3e6, zero: false, signed: false } };

@@ -162,6 +162,15 @@ pub enum ProblemFault {
     /// Motion under forces without a mass.
     #[error("law 'free' solves the equation of motion, which needs the mass of all that travels")]
     FreeNeedsMass,
+    /// Alternating current asked of a part that is no coil.
+    #[error("law 'alternating' drives coils, and part {part} is none")]
+    NoCoil {
+        /// The part.
+        part: Named,
+    },
+    /// Frequencies that do not increase, or none.
+    #[error("the frequencies of law 'alternating' do not increase")]
+    Frequencies,
     /// Travel that starts where it ends.
     #[error("the travel ends where it starts, at {}", mm(*at_m))]
     NoTravel {
@@ -173,6 +182,19 @@ pub enum ProblemFault {
     GatesCoincide {
         /// The position, m.
         at_m: f64,
+    },
+    /// An end of travel that a free mover never gets to.
+    #[error("a mover let go at {} never gets to {}: weight and push come to {force_newton:.4} N along the axis (up positive){}",
+        mm(*release_m), mm(*until_m), short_of(*short_joule))]
+    OutOfReach {
+        /// Position at release, m.
+        release_m: f64,
+        /// End of travel, m.
+        until_m: f64,
+        /// Weight along the axis and push, upward positive, N.
+        force_newton: f64,
+        /// Energy that is missing on the way, J; `None` where it moves away from the start.
+        short_joule: Option<f64>,
     },
     /// Fewer or more grid levels than extrapolation can use.
     #[error("{found} grid levels: extrapolation and its band need 3 to 5")]
@@ -229,10 +251,22 @@ impl ProblemFault {
             Self::LayerBeyondWall { .. } => "'from' and 'to' count from the wall's lower end",
             Self::PartsOverlap { .. } => "parts may touch: move one ('at'), or place them by 'stack'",
             Self::InertWall => "give a layer a conductivity",
+            Self::OutOfReach { .. } => {
+                "put 'until' where it travels to, or change 'push', 'entry_velocity' or 'tilt_from_vertical'"
+            }
+            Self::NoCoil { .. } => "a steady field takes no part in it: leave magnets and dipoles out",
             _ => return None,
         };
         Some(text.to_owned())
     }
+}
+
+/// What keeps a mover from its end of travel.
+fn short_of(short_joule: Option<f64>) -> String {
+    short_joule.map_or_else(
+        || ", and it starts the other way".to_owned(),
+        |short| format!(", and its energy at release is {short:.3e} J too little"),
+    )
 }
 
 /// A length in mm with as many digits as it takes.

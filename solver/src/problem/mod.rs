@@ -5,6 +5,7 @@ mod faces;
 mod fault;
 mod mover;
 mod quantity;
+mod reach;
 mod travel;
 mod validity;
 mod wall;
@@ -13,7 +14,7 @@ pub use accuracy::{Accuracy, SnapshotPlan};
 pub use fault::{Named, ProblemFault, Subject};
 pub use mover::{Mover, Outline, Part};
 pub use quantity::{Quantity, SensibleRange};
-pub use travel::{Free, Travel, Traverse};
+pub use travel::{Alternating, Free, Travel, Traverse};
 pub use wall::{Extent, Layer, Wall};
 
 #[cfg(test)]

@@ -2,7 +2,8 @@
 
 use super::fault::{Named, ProblemFault, Subject};
 use super::quantity::Quantity;
-use super::{Extent, Layer, Mover, Part, Problem, SnapshotPlan, Travel, Wall};
+use super::reach::out_of_reach;
+use super::{Alternating, Extent, Layer, Mover, Part, Problem, SnapshotPlan, Travel, Wall};
 use crate::sources::Source;
 
 /// Faces closer than this part of their radius or height count as touching, not as overlapping.
@@ -223,6 +224,24 @@ fn travel_faults(problem: &Problem, faults: &mut Vec<ProblemFault>) {
             }
         }
         Travel::Free(_) => free_faults(problem, &mut numbers),
+        Travel::Alternating(law) => alternating_faults(problem, law, &mut numbers),
+    }
+}
+
+fn alternating_faults(problem: &Problem, law: &Alternating, numbers: &mut Numbers<'_>) {
+    for &frequency in &law.frequencies_hz {
+        numbers.check(Quantity::Frequency, frequency);
+    }
+    numbers.check(Quantity::Current, law.current_ampere);
+    numbers.check(Quantity::Position, law.position_m);
+    numbers.check(Quantity::Resistance, law.winding_resistance_ohm);
+    if law.frequencies_hz.is_empty() || law.frequencies_hz.windows(2).any(|w| w[0] >= w[1]) {
+        numbers.faults.push(ProblemFault::Frequencies);
+    }
+    for (index, part) in problem.mover.parts.iter().enumerate() {
+        if !matches!(part.source, Source::Coil { .. }) {
+            numbers.faults.push(ProblemFault::NoCoil { part: named(index, &part.name) });
+        }
     }
 }
 
@@ -261,6 +280,11 @@ fn free_faults(problem: &Problem, numbers: &mut Numbers<'_>) {
     }
     if problem.mover.mass_kg.is_none() {
         numbers.faults.push(ProblemFault::FreeNeedsMass);
+    }
+    if let Some(why) = out_of_reach(problem) {
+        let (release_m, until_m) = (free.release_m, free.until_m);
+        let (force_newton, short_joule) = (why.force_newton, why.short_joule);
+        numbers.faults.push(ProblemFault::OutOfReach { release_m, until_m, force_newton, short_joule });
     }
 }
 

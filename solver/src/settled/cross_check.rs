@@ -12,6 +12,7 @@ use nalgebra_sparse::factorization::CscCholesky;
 use nalgebra_sparse::na::DMatrix;
 use nalgebra_sparse::{CooMatrix, CscMatrix};
 
+use super::lanczos::Came;
 use super::level::{SettledLevel, Wanted, convect};
 use super::plan;
 use crate::monitor::Unwatched;
@@ -115,6 +116,25 @@ fn the_recurrence_gives_the_drag_of_a_sparse_lu() {
                 approx::assert_relative_eq!(level.drag(velocity, &Unwatched).unwrap(), found, max_relative = 1e-12);
             }
         }
+    }
+}
+
+/// A vector of the recurrence allocates nothing where there is room for it; making room allocates once in a block.
+#[test]
+fn a_recurrence_vector_allocates_nothing() {
+    for jacket in [None, Some(100.0)] {
+        let problem = problem(jacket);
+        let mut level = level(&problem, 60.0, Refinement::COARSEST);
+        let mut lanczos = level.lanczos();
+        let (mut inside, mut room) = (0, 0);
+        for _ in 0..100 {
+            room += allocation_counter::measure(|| lanczos.recurrence.make_room()).count_total;
+            let step = allocation_counter::measure(|| assert_eq!(lanczos.step(1e9, 1000).unwrap(), Came::On));
+            inside += step.count_total;
+        }
+        println!("{jacket:?}: {inside} allocations in 100 vectors, {room} to make room for them");
+        assert_eq!(inside, 0);
+        assert!((1..30).contains(&room));
     }
 }
 

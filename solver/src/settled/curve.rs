@@ -87,9 +87,10 @@ fn curve_point(levels: &Levels<'_>, speed: f64) -> Result<DragPoint, SolveFault>
     if levels.monitor.cancelled() {
         return Err(SolveFault::Interrupted);
     }
-    if speed <= 0.0 {
+    let conducts = levels.problem.wall.layers.iter().any(|l| l.conductivity_s_per_m > 0.0);
+    if speed <= 0.0 || !conducts {
         return Ok(DragPoint {
-            speed_m_per_s: 0.0,
+            speed_m_per_s: speed,
             drag_newton: 0.0,
             band_newton: 0.0,
             heat_watt: 0.0,
@@ -110,7 +111,10 @@ fn curve_point(levels: &Levels<'_>, speed: f64) -> Result<DragPoint, SolveFault>
 
 /// tau in drag ~ c (v - tau dv/dt) at low speed, s.
 fn lag_time(levels: &Levels<'_>) -> Figure {
-    let of = |l: &SettledLevel| l.lag_product() / l.damping_coefficient();
+    let of = |l: &SettledLevel| {
+        let damping = l.damping_coefficient();
+        if damping > 0.0 { l.lag_product() / damping } else { 0.0 }
+    };
     let ladder = levels.ladder(of);
     let cut = levels.cut_change(ladder.value, of);
     plain("lag_time", "s", &ladder, band::one_route(&ladder, cut, levels.residual(ladder.value)))

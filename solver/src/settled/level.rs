@@ -120,6 +120,12 @@ impl SettledLevel {
         Ok(level)
     }
 
+    /// Its recurrence from the start.
+    #[cfg(test)]
+    pub(super) fn lanczos(&mut self) -> Lanczos<'_> {
+        Lanczos::new(&self.operators, &mut self.factor, &self.slope)
+    }
+
     /// Leaves every speed to elimination.
     #[cfg(test)]
     pub(super) fn forget_recurrence(&mut self) {

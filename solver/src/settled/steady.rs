@@ -28,7 +28,8 @@ pub(crate) fn steady(problem: &Problem, velocity: f64, monitor: &dyn Monitor) ->
 fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Result<Outcome, SolveFault> {
     let speed = velocity.abs();
     let mut cautions = cautions(problem);
-    let (figures, forces, ledger, fields) = if speed > 0.0 {
+    let conducts = problem.wall.layers.iter().any(|l| l.conductivity_s_per_m > 0.0);
+    let (figures, forces, ledger, fields) = if speed > 0.0 && conducts {
         let point = levels.point(velocity)?;
         cautions.extend(band::order_caution("drag", &point.drag));
         let forces = three_forces(problem, levels, velocity, &point)?;
@@ -43,7 +44,8 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
         };
         (moving_figures(&point, velocity), Some(forces), Some(ledger), fields)
     } else {
-        (resting_figures(levels), None, None, None)
+        let fields = if speed > 0.0 { wanted_fields(problem, levels, velocity)? } else { None };
+        (resting_figures(levels), None, None, fields)
     };
     let accuracy = verdict(&figures, problem.accuracy.target_relative, levels.levels.len());
     levels.monitor.progress(1.0, "settled fields");
