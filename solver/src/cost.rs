@@ -131,7 +131,12 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
         .or_else(|| alternating_work(problem));
     let refinements =
         Refinement::first(levels_expected(problem, work.is_some() && curve_speeds_m_per_s.is_none(), speed));
-    let sizes = sizes(problem, &plan, &refinements)?;
+    let (grids, windows) = if work.is_some() {
+        (refinements.iter().map(|&f| plan.grid(f)).collect(), 1)
+    } else {
+        march::grids_on_the_way(problem, &placement, (&plan, speed), &refinements)?
+    };
+    let sizes = sizes(problem, &plan, grids)?;
     let mut forecast = Forecast {
         grids: Vec::new(),
         unknowns: sizes.last().map_or(0, |s| s.unknowns),
@@ -155,10 +160,12 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
             }
             None => solves * size.solve_seconds * STEP_OVERHEAD,
         };
-        level_seconds.push(own + SET_UP_OVERHEAD * size.set_up_seconds);
+        level_seconds.push(own + SET_UP_OVERHEAD * count(windows) * size.set_up_seconds);
         forecast.steps += steps;
         forecast.solves += solves;
-        forecast.memory_bytes += memory(problem, size, work, solves);
+        // Snapshots stand on the whole grid.
+        let kept = snapshots(problem) * count(plan.coarsest_nodes()) * f * f * 48.0;
+        forecast.memory_bytes += memory(size, work, solves) + kept;
         let mut report = grid_report(problem, &placement, &size.grid, f, speed);
         report.steps = rounded(steps);
         forecast.grids.push(report);
@@ -234,8 +241,8 @@ fn beside(level_seconds: &[f64], settled: bool) -> f64 {
     before + if cores() > 1 { finest.max(others) } else { finest + others }
 }
 
-fn sizes(problem: &Problem, plan: &GridPlan, refinements: &[Refinement]) -> Result<Vec<LevelSize>, SolveFault> {
-    refinements.iter().map(|&refinement| LevelSize::new(problem, plan, plan.grid(refinement))).collect()
+fn sizes(problem: &Problem, plan: &GridPlan, grids: Vec<Grid>) -> Result<Vec<LevelSize>, SolveFault> {
+    grids.into_iter().map(|grid| LevelSize::new(problem, plan, grid)).collect()
 }
 
 impl LevelSize {
@@ -282,12 +289,12 @@ fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
     (steps, steps * (columns + pull))
 }
 
-/// Bytes of one level: factors with workspace, operators, stored vectors, snapshots.
-fn memory(problem: &Problem, size: &LevelSize, work: Option<SettledWork>, solves: f64) -> f64 {
+/// Bytes of one level: factors with workspace, operators, stored vectors.
+fn memory(size: &LevelSize, work: Option<SettledWork>, solves: f64) -> f64 {
     let factors = if work.is_some() { 1.0 } else { KEPT_FACTORS };
     let vectors = work.map_or(0.0, |_| solves * count(size.wall_nodes) * 16.0);
     let nodes = count(size.grid.nodes());
-    factors * count(size.factor_bytes) + nodes * NODE_BYTES + vectors + snapshots(problem) * nodes * 48.0
+    factors * count(size.factor_bytes) + nodes * NODE_BYTES + vectors
 }
 
 fn snapshots(problem: &Problem) -> f64 {

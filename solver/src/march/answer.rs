@@ -239,6 +239,7 @@ impl<'p> Journey<'p> {
             accuracy,
             trace,
             curve: None,
+            frequency: None,
             forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),

@@ -1,6 +1,10 @@
 //! Where a march goes: motion, start and end, the grids made for it.
 
+use lenzbore_mesh::{Grid, Refinement};
+
+use super::lines::LevelLines;
 use super::motion::{Motion, friction, frictionless, potential_energy};
+use super::window::WindowRule;
 use crate::fault::SolveFault;
 use crate::grid_rules::{Frame, GridPlan};
 use crate::placement::Placement;
@@ -43,6 +47,25 @@ pub(crate) fn plan(problem: &Problem, placement: &Placement) -> Result<(GridPlan
     Ok((plan, speed))
 }
 
+/// The grids that a march goes through: one that is typical for each of `refinements`, and how many there are.
+///
+/// # Errors
+/// A line that cannot be built.
+pub(crate) fn grids_on_the_way(
+    problem: &Problem,
+    placement: &Placement,
+    (plan, speed): (&GridPlan, f64),
+    refinements: &[Refinement],
+) -> Result<(Vec<Grid>, usize), SolveFault> {
+    let (_, course) = set_out(problem)?;
+    let reach = reach(problem, course.from, course.until);
+    let rule = WindowRule::new(problem, placement, plan, reach, speed)?;
+    let window = rule.as_ref().map(|rule| rule.typical(reach));
+    let grids = refinements.iter().map(|&f| LevelLines::new(plan, rule.as_ref(), f, false).grid(window));
+    let number = rule.as_ref().map_or(1, |rule| rule.windows_along(reach));
+    Ok((grids.collect::<Result<_, _>>()?, number))
+}
+
 /// The motion, and its course but for the stride.
 pub(super) fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault> {
     match &problem.travel {
@@ -63,7 +86,7 @@ pub(super) fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault>
             };
             Ok((Motion::Free { law: law.clone(), mass }, course))
         }
-        Travel::Steady { .. } => Err(SolveFault::Unsuited("settled fields are no march")),
+        Travel::Steady { .. } | Travel::Alternating(_) => Err(SolveFault::Unsuited("settled fields are no march")),
     }
 }
 

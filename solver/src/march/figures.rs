@@ -63,7 +63,7 @@ pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course)
             acceleration_figures(law, series, end, &mut figures);
             figures.push(energy);
         }
-        Travel::Traverse(_) | Travel::Steady { .. } => {
+        Travel::Traverse(_) | Travel::Steady { .. } | Travel::Alternating(_) => {
             figures.push(drag);
             figures.push(LevelFigure { name: "impulse", unit: "N s", value: impulse(series, end), location: None });
             figures.push(energy);

@@ -27,4 +27,4 @@ mod window;
 pub(crate) use answer::march;
 #[cfg(test)]
 pub(crate) use answer::{coarsest_both_ways, march_on_whole_grids};
-pub(crate) use course::plan;
+pub(crate) use course::{grids_on_the_way, plan};

@@ -62,14 +62,7 @@ impl Series {
     }
 
     fn at_ends(&mut self) -> [&mut Vec<f64>; 6] {
-        [
-            &mut self.time,
-            &mut self.position,
-            &mut self.velocity,
-            &mut self.heat,
-            &mut self.work,
-            &mut self.losses,
-        ]
+        [&mut self.time, &mut self.position, &mut self.velocity, &mut self.heat, &mut self.work, &mut self.losses]
     }
 
     fn at_middles(&mut self) -> [&mut Vec<f64>; 11] {

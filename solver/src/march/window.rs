@@ -75,8 +75,7 @@ impl WindowRule {
             pitch_m: PITCH * a,
             near_m: a,
         };
-        let middle = 0.5 * (reach.0 + reach.1);
-        let typical = rule.line(rule.choose(middle, 1.0), &rule.whole, Refinement::COARSEST)?;
+        let typical = rule.line(rule.typical(reach), &rule.whole, Refinement::COARSEST)?;
         #[expect(clippy::cast_precision_loss, reason = "cell counts are far below 2^52")]
         let share = typical.len() as f64 / rule.whole.len() as f64;
         Ok((share < WORTH).then_some(rule))
@@ -92,6 +91,17 @@ impl WindowRule {
         let first = nodes.partition_point(|&z| z <= low).saturating_sub(1) / 2 * 2;
         let last = nodes.partition_point(|&z| z < high).div_ceil(2) * 2;
         Window { first, last: last.min(nodes.len() - 1) }
+    }
+
+    /// The window half way along `reach`.
+    pub(crate) fn typical(&self, reach: (f64, f64)) -> Window {
+        self.choose(0.5 * (reach.0 + reach.1), 1.0)
+    }
+
+    /// How many windows there are along `reach`, about.
+    #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "a small number above 0")]
+    pub(crate) fn windows_along(&self, reach: (f64, f64)) -> usize {
+        1 + ((reach.1 - reach.0) / self.pitch_m) as usize
     }
 
     /// Whether `window` still has fine cells all around the mover at `position`.
