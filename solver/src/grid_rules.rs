@@ -18,7 +18,7 @@ use crate::placement::Placement;
 use crate::problem::{Layer, Problem, Wall};
 
 /// Growth of the cell size per distance, in the mover's frame.
-const GROWTH: f64 = 0.26;
+pub(crate) const GROWTH: f64 = 0.26;
 /// The same in the wall's frame, where steps in time cost more than they gain from it.
 const SWEPT_GROWTH: f64 = 0.4;
 /// Distance of the boundary in outer radii.
@@ -89,6 +89,17 @@ impl GridPlan {
         Ok(Self { r, z, rectangles, half_extent: (outer + 0.5 * BOUNDARY * outer, half.0, half.1), axial_cell_m: cell })
     }
 
+    /// A plan of lines made elsewhere: coils at rest have their own.
+    pub(crate) fn of_lines(
+        r: PlannedLine,
+        z: PlannedLine,
+        rectangles: Vec<Rectangle>,
+        half_extent: (f64, f64, f64),
+        axial_cell_m: f64,
+    ) -> Self {
+        Self { r, z, rectangles, half_extent, axial_cell_m }
+    }
+
     /// Nodes of the coarsest level.
     pub(crate) fn coarsest_nodes(&self) -> usize {
         (self.r.cells() + 1) * (self.z.cells() + 1)
@@ -116,7 +127,11 @@ impl GridPlan {
     }
 }
 
-fn plan_r(
+/// The line of radii for depths at `speed`, m/s.
+///
+/// # Errors
+/// A line that cannot be built.
+pub(crate) fn plan_r(
     problem: &Problem,
     placement: &Placement,
     speed: f64,
@@ -165,12 +180,12 @@ fn swept_size(problem: &Problem, placement: &Placement) -> f64 {
 }
 
 /// Axial size at the magnet's ends in the mover's frame.
-fn axial_size(problem: &Problem, placement: &Placement) -> f64 {
+pub(crate) fn axial_size(problem: &Problem, placement: &Placement) -> f64 {
     (placement.gap_m / (2.0 * finer(problem))).min(axial_cap(problem, placement))
 }
 
 /// Greatest axial size near the mover.
-fn axial_cap(problem: &Problem, placement: &Placement) -> f64 {
+pub(crate) fn axial_cap(problem: &Problem, placement: &Placement) -> f64 {
     placement.scale_m / (8.0 * finer(problem))
 }
 
@@ -235,12 +250,12 @@ fn plan_z_wall(
     Ok((line, rectangles, half, size))
 }
 
-fn rectangle(layer: &Layer, z_from_m: f64, z_to_m: f64) -> Rectangle {
+pub(crate) fn rectangle(layer: &Layer, z_from_m: f64, z_to_m: f64) -> Rectangle {
     Rectangle { r_from_m: layer.inner_radius_m, r_to_m: layer.outer_radius_m, z_from_m, z_to_m }
 }
 
 /// Sorted, without values closer than `apart` (or equal up to round-off) to the one before.
-fn sorted_apart(mut points: Vec<f64>, apart: f64) -> Vec<f64> {
+pub(crate) fn sorted_apart(mut points: Vec<f64>, apart: f64) -> Vec<f64> {
     points.sort_by(f64::total_cmp);
     let scale = points.iter().fold(0.0_f64, |m, p| m.max(p.abs()));
     let least = apart.max(1.0e-12 * scale);
@@ -249,7 +264,7 @@ fn sorted_apart(mut points: Vec<f64>, apart: f64) -> Vec<f64> {
 }
 
 /// Inserts `point` into the sorted list unless one stands within `apart`.
-fn insert_apart(points: &mut Vec<f64>, point: f64, apart: f64) {
+pub(crate) fn insert_apart(points: &mut Vec<f64>, point: f64, apart: f64) {
     if points.iter().all(|p| (p - point).abs() > apart) {
         points.push(point);
         points.sort_by(f64::total_cmp);

@@ -31,6 +31,7 @@ mod fields;
 mod force;
 mod grid_report;
 mod grid_rules;
+mod harmonic;
 mod interpolate;
 mod linear;
 mod march;
@@ -64,6 +65,7 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
             require_finite(problem)?;
             march::march(problem, monitor)
         }
+        Travel::Alternating(law) => harmonic::alternating(problem, law, monitor),
     }
 }
 

@@ -10,6 +10,7 @@ use lenzbore_mesh::{Refinement, Regions};
 use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
+use crate::harmonic;
 use crate::linear::{Factor, Pattern, RESIDUAL_LIMIT, check_residual};
 use crate::march;
 use crate::materials::Materials;
@@ -167,6 +168,7 @@ fn plan(problem: &Problem, curve_speed: Option<f64>) -> Result<GridPlan, SolveFa
     match (curve_speed, &problem.travel) {
         (Some(speed), _) => settled::plan(problem, &placement, speed),
         (None, Travel::Steady { velocity_m_per_s }) => settled::plan(problem, &placement, *velocity_m_per_s),
+        (None, Travel::Alternating(law)) => Ok(harmonic::plan(problem, law)?.0),
         (None, _) => Ok(march::plan(problem, &placement)?.0),
     }
 }

@@ -2,10 +2,12 @@
 
 mod fields;
 mod figure;
+mod frequency;
 mod report;
 
 pub use fields::{Fields, Snapshot};
 pub use figure::{Basis, Figure, Location};
+pub use frequency::{CurrentSample, FrequencyPoint, FrequencyResponse, Measured, Shielding};
 pub use report::{
     Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
 };

@@ -1,6 +1,6 @@
 //! Everything around the figures.
 
-use super::{Fields, Figure};
+use super::{Fields, Figure, FrequencyResponse};
 
 /// Drag by three routes at one instant, N, each with the same meaning: positive opposes the motion.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -197,6 +197,8 @@ pub struct Outcome {
     pub trace: Trace,
     /// Drag against speed, where a curve was asked.
     pub curve: Option<DragCurve>,
+    /// What coils at rest see over frequency, where that was asked.
+    pub frequency: Option<FrequencyResponse>,
     /// Fields, where they were asked.
     pub fields: Option<Fields>,
 }

@@ -84,6 +84,12 @@ pub enum Quantity {
     SpringRate,
     /// A time, s.
     Time,
+    /// Frequency of an alternating current, Hz.
+    Frequency,
+    /// Current in a coil, A, zero to peak.
+    Current,
+    /// Resistance of a winding, ohm.
+    Resistance,
     /// Wanted relative half-width of the bands.
     TargetRelative,
 }
@@ -113,6 +119,9 @@ impl Quantity {
             Self::AirDrag => "air drag",
             Self::SpringRate => "spring rate",
             Self::Time => "time",
+            Self::Frequency => "frequency",
+            Self::Current => "current",
+            Self::Resistance => "resistance",
             Self::TargetRelative => "accuracy target",
         }
     }
@@ -135,6 +144,9 @@ impl Quantity {
             Self::AirDrag => "N s2/m2",
             Self::SpringRate => "N/m",
             Self::Time => "s",
+            Self::Frequency => "Hz",
+            Self::Current => "A",
+            Self::Resistance => "ohm",
         }
     }
 
@@ -161,6 +173,9 @@ impl Quantity {
             Self::AirDrag => SensibleRange::with_zero(1e-15, 1e6),
             Self::SpringRate => SensibleRange::with_zero(1e-12, 1e12),
             Self::Time => SensibleRange::positive(1e-12, 1e9),
+            Self::Frequency => SensibleRange::positive(1e-6, 1e9),
+            Self::Current => SensibleRange::positive(1e-12, 1e9),
+            Self::Resistance => SensibleRange::with_zero(1e-12, 1e9),
             Self::TargetRelative => SensibleRange::positive(1e-9, 0.5),
         }
     }

@@ -14,6 +14,8 @@ pub enum Travel {
     Traverse(Traverse),
     /// Equation of motion.
     Free(Free),
+    /// Coils at rest with alternating current.
+    Alternating(Alternating),
 }
 
 /// Uniform speed from one position to another.
@@ -25,6 +27,33 @@ pub struct Traverse {
     pub from_m: f64,
     /// Position of the reference point at the end, m.
     pub to_m: f64,
+}
+
+/// Coils at rest, in series, with alternating current I cos(omega t); all parts of the mover are coils.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Alternating {
+    /// Frequencies, Hz, > 0, increasing.
+    pub frequencies_hz: Vec<f64>,
+    /// Current in every coil, A, zero to peak, > 0: a coil's ampere-turns over it are its turns, negative where it is wound or connected
+    /// the other way.
+    pub current_ampere: f64,
+    /// Position of the reference point, m; 0 in an endless wall.
+    pub position_m: f64,
+    /// Resistance of the winding itself, ohm, >= 0.
+    pub winding_resistance_ohm: f64,
+}
+
+impl Alternating {
+    /// The winding's own resistance left out, the reference point at `position_m`.
+    #[must_use]
+    pub fn at(position_m: f64, current_ampere: f64, frequencies_hz: Vec<f64>) -> Self {
+        Self { frequencies_hz, current_ampere, position_m, winding_resistance_ohm: 0.0 }
+    }
+
+    /// 2 pi times the frequencies, rad/s.
+    pub(crate) fn angular_frequencies(&self) -> Vec<f64> {
+        self.frequencies_hz.iter().map(|f| 2.0 * std::f64::consts::PI * f).collect()
+    }
 }
 
 /// m dv/dt = -m g cos(tilt) + push - friction - air drag - spring + magnetic force.
