@@ -103,9 +103,14 @@ pub struct SpreadWords {
 /// `lenzbore materials`.
 #[derive(Debug, Args)]
 pub struct MaterialsWords {
-    /// Shows only grades that have this in their name, family or description
-    #[arg(long, value_name = "TEXT")]
+    /// Shows this grade with all its numbers and their sources
+    pub name: Option<String>,
+    /// Lists the grades that have this in their names, family, standards or description
+    #[arg(long, value_name = "TEXT", conflicts_with = "name")]
     pub search: Option<String>,
+    /// Also reads own materials from this file
+    #[arg(long, value_name = "FILE")]
+    pub with: Option<PathBuf>,
     /// Prints one JSON object instead of text
     #[arg(long)]
     pub json: bool,

@@ -1,21 +1,25 @@
 //! What a layer is made of: a grade of the material book or values of its own, at the wall's temperature.
 
+use std::sync::Arc;
+
 use lenzbore_solver::problem::Quantity as Number;
 
 use super::measures::COEFFICIENT;
 use super::reader::{Reader, Section, wanted};
 use super::resolved::{Origin, ResolvedValue};
 use super::temperature::{ROOM_K, caution_if_far, celsius, conductivity_at, temperature};
-use crate::materials::{self, Conductor, GradeValue};
+use crate::materials::{Conductor, GradeValue, Permeability, book};
 use crate::message::CaseFault;
 use crate::units::Kind;
 
 /// Conductivity at the wall's temperature and relative permeability.
 pub(super) fn material(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> Option<(f64, f64)> {
     let (grade, named) = grade(reader, section);
+    let grade = grade.as_deref();
     let which = grade_value(reader, section, named);
     let permeability = permeability(reader, section, grade);
-    if let Some(caution) = grade.and_then(|g| g.caution.as_deref()).filter(|_| !section.table.has("conductivity")) {
+    if let Some(caution) = grade.and_then(|g| g.grade.caution.as_deref()).filter(|_| !section.table.has("conductivity"))
+    {
         reader.cautions.push(format!("layer '{name}': {caution}"));
     }
     let given = section.table.has("conductivity");
@@ -62,10 +66,10 @@ pub(super) fn material(reader: &mut Reader, section: &Section<'_>, name: &str, w
 }
 
 /// The grade, and whether a material was named at all.
-fn grade(reader: &mut Reader, section: &Section<'_>) -> (Option<&'static Conductor>, bool) {
+fn grade(reader: &mut Reader, section: &Section<'_>) -> (Option<Arc<Conductor>>, bool) {
     let named = section.table.has("material");
     let Some(text) = reader.text(section, "material", "material = \"copper Cu-DHP\"") else { return (None, named) };
-    match materials::conductor(&text) {
+    match book().with(&reader.own_materials).conductor(&text) {
         Ok(grade) => {
             reader.note_text(section, "material", &grade.grade.full_name());
             (Some(grade), named)
@@ -109,13 +113,18 @@ fn permeability(reader: &mut Reader, section: &Section<'_>, grade: Option<&Condu
     if section.table.has("permeability") {
         return reader.quantity(section, "permeability", wanted(Kind::Ratio, Number::RelativePermeability));
     }
-    match grade {
-        Some(g) => {
-            let number = &g.relative_permeability;
-            note_book(reader, section, ("permeability", number.typical, ""), &g.grade.full_name(), &number.source);
+    match grade.map(|g| (g.grade.full_name(), &g.permeability)) {
+        Some((grade, Permeability::Linear(number))) => {
+            note_book(reader, section, ("permeability", number.typical, ""), &grade, &number.source);
             Some(number.typical)
         }
-        None => {
+        Some((grade, Permeability::NotLinear(why))) => {
+            let words = format!("'{grade}' without 'permeability'");
+            let mend = "give 'permeability' (relative, linear), with the field in mind that the wall sees".to_owned();
+            reader.fault(section.place_of("material"), CaseFault::Clash { words, why: why.clone(), mend });
+            None
+        }
+        Some((_, Permeability::NotGiven)) | None => {
             reader.note_default(section, "permeability", 1.0, Kind::Ratio, "not magnetic");
             Some(1.0)
         }
@@ -149,7 +158,7 @@ fn coefficient(
         return reader.quantity(section, "temperature_coefficient", COEFFICIENT).map(|c| (c, value_at));
     }
     let g = grade?;
-    let number = &g.temperature_coefficient_per_k;
+    let number = g.temperature_coefficient_per_k.as_ref()?;
     note_book(
         reader,
         section,

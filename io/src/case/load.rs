@@ -7,6 +7,7 @@ use super::overlay::overlay;
 use super::overrides::overrides_tree;
 use super::parse::parse_document;
 use super::tree::{Entry, Table, Value};
+use crate::materials::{Book, own_materials};
 use crate::message::{CaseFault, Diagnostic, Place, SourceKind, Sources};
 
 /// So many files may start from one another.
@@ -22,6 +23,8 @@ pub(super) struct Loaded {
     pub faults: Vec<Diagnostic>,
     /// What was pushed out by other sizes or another law.
     pub notes: Vec<String>,
+    /// Grades of the case's own file of materials.
+    pub own_materials: Book,
     /// Whether every file could be read as TOML.
     pub readable: bool,
 }
@@ -35,7 +38,47 @@ pub(super) fn load(source: &CaseSource<'_>, sets: &[String]) -> Loaded {
     };
     let over = overrides_tree(sets, &tree, &mut loaded.sources, &mut loaded.faults);
     loaded.tree = overlay(tree, over, &mut loaded.notes);
+    read_own_materials(source, &mut loaded);
     loaded
+}
+
+/// Reads the file that `materials` names, beside the file that names it.
+fn read_own_materials(source: &CaseSource<'_>, loaded: &mut Loaded) {
+    let Some(entry) = loaded.tree.remove("materials") else { return };
+    let place = entry.node.place.clone();
+    let fault = match &entry.node.value {
+        Value::Text(text) if !text.trim().is_empty() => {
+            let path = tidy(&folder_of(&place, source, &loaded.sources).join(text.trim()));
+            let label = path.display().to_string();
+            match text_of(&path).map(|text| own_materials(&label, &text, &mut loaded.sources)) {
+                Ok(Ok(book)) => {
+                    loaded.own_materials = book;
+                    return;
+                }
+                Ok(Err(faults)) => {
+                    loaded.faults.extend(faults);
+                    loaded.readable = false;
+                    return;
+                }
+                Err(why) => CaseFault::UnreadableFile { path: label, why },
+            }
+        }
+        other => {
+            let found = if matches!(other, Value::Text(_)) { "an empty text" } else { other.shape() };
+            let (word, wanted) = (entry.word.clone(), "the path of a file of materials");
+            CaseFault::WrongShape { word, found, wanted, example: "materials = \"own-materials.toml\"" }
+        }
+    };
+    loaded.faults.push(Diagnostic::at(place, fault));
+    loaded.readable = false;
+}
+
+/// The folder of the file that a place points into.
+fn folder_of(place: &Place, source: &CaseSource<'_>, sources: &Sources) -> PathBuf {
+    match source {
+        CaseSource::Text { base_dir, .. } if place.source == 0 => base_dir.to_path_buf(),
+        _ => sources.text(place).and_then(|t| Path::new(&t.label).parent()).unwrap_or(Path::new("")).to_owned(),
+    }
 }
 
 fn read_file(path: &Path, named_at: Option<Place>, chain: &mut Vec<PathBuf>, loaded: &mut Loaded) -> Table {
@@ -57,7 +100,8 @@ fn read_file(path: &Path, named_at: Option<Place>, chain: &mut Vec<PathBuf>, loa
     }
 }
 
-fn text_of(path: &Path) -> Result<String, String> {
+/// The text of a file, or why it cannot be read.
+pub(crate) fn text_of(path: &Path) -> Result<String, String> {
     let plain = |e: std::io::Error| match e.kind() {
         std::io::ErrorKind::NotFound => "there is no such file".to_owned(),
         std::io::ErrorKind::PermissionDenied => "no permission to read it".to_owned(),

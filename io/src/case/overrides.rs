@@ -52,6 +52,7 @@ fn one(text: &str, source: usize, case: &Table) -> Result<Table, Diagnostic> {
             return match only.word.as_str() {
                 "title" => Ok(leaf(only, value)),
                 "like" => Err(wrong("a base file is named in the case file itself")),
+                "materials" => Err(wrong("a file of own materials is named in the case file itself")),
                 _ => Err(wrong("it names no word below the table")),
             };
         }

@@ -8,7 +8,7 @@ use crate::message::{CaseFault, Diagnostic, Place};
 use crate::units::{Kind, read_quantity};
 
 /// Reads a whole document; `source` is the index of the text in the list of sources.
-pub(super) fn parse_document(text: &str, source: usize) -> Result<Table, Vec<Diagnostic>> {
+pub(crate) fn parse_document(text: &str, source: usize) -> Result<Table, Vec<Diagnostic>> {
     let (document, errors) = DeTable::parse_recoverable(text);
     if errors.is_empty() {
         Ok(table(document.get_ref(), source, 0))

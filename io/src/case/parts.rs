@@ -1,5 +1,7 @@
 //! The parts of the mover: magnets, spacers, dipoles and coils, each read on its own.
 
+use std::sync::Arc;
+
 use lenzbore_solver::problem::{Outline, Quantity as Number, SensibleRange};
 use lenzbore_solver::sources::{North, Source, coated_magnet};
 
@@ -8,7 +10,7 @@ use super::measures::{COEFFICIENT, HOLE, LENGTH};
 use super::reader::{Reader, Section, Wanted, unit_of, wanted};
 use super::resolved::ResolvedValue;
 use super::temperature::{ROOM_K, caution_if_far, celsius, remanence_at};
-use crate::materials::{self, GradeValue, MagnetGrade};
+use crate::materials::{GradeValue, MagnetGrade, book};
 use crate::message::CaseFault;
 use crate::units::Kind;
 
@@ -83,6 +85,7 @@ fn body_sizes(reader: &mut Reader, section: &Section<'_>) -> Option<[f64; 3]> {
 fn remanence(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> Option<f64> {
     let named = section.table.has("material");
     let grade = magnet_grade(reader, section);
+    let grade = grade.as_deref();
     let which = grade_value(reader, section, named);
     recoil(reader, section, name, grade);
     let given = section.table.has("remanence");
@@ -98,21 +101,25 @@ fn remanence(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64
         None => reader.quantity(section, "remanence", REMANENCE),
     };
     let coefficient = remanence_coefficient(reader, section, grade);
-    if let Some(g) = grade.filter(|g| warmth > g.highest_temperature_k.typical) {
+    if let Some(caution) = grade.and_then(|g| g.grade.caution.as_deref()).filter(|_| !given) {
+        reader.cautions.push(format!("magnet '{name}': {caution}"));
+    }
+    let greatest = grade.and_then(|g| Some((g, g.greatest_temperature_k.as_ref()?)));
+    if let Some((g, greatest)) = greatest.filter(|(_, t)| warmth > t.typical) {
         reader.cautions.push(format!(
             "magnet '{name}' at {}: {} is made for at most {} ({}) and may lose strength for good",
             celsius(warmth),
             g.grade.full_name(),
-            celsius(g.highest_temperature_k.typical),
-            g.highest_temperature_k.source
+            celsius(greatest.typical),
+            greatest.source
         ));
     }
     at_temperature(reader, section, name, value?, warmth, coefficient)
 }
 
-fn magnet_grade(reader: &mut Reader, section: &Section<'_>) -> Option<&'static MagnetGrade> {
+fn magnet_grade(reader: &mut Reader, section: &Section<'_>) -> Option<Arc<MagnetGrade>> {
     let text = reader.text(section, "material", "material = \"NdFeB N42SH\"")?;
-    match materials::magnet(&text) {
+    match book().with(&reader.own_materials).magnet(&text) {
         Ok(grade) => {
             reader.note_text(section, "material", &grade.grade.full_name());
             Some(grade)
@@ -136,7 +143,7 @@ fn remanence_coefficient(reader: &mut Reader, section: &Section<'_>, grade: Opti
         return reader.quantity(section, "remanence_coefficient", COEFFICIENT);
     }
     let g = grade?;
-    let number = &g.remanence_coefficient_per_k;
+    let number = g.remanence_coefficient_per_k.as_ref()?;
     note_book(reader, section, ("remanence_coefficient", number.typical, "1/K"), &g.grade.full_name(), &number.source);
     Some(number.typical)
 }
@@ -192,7 +199,7 @@ fn recoil(reader: &mut Reader, section: &Section<'_>, name: &str, grade: Option<
         }
         return;
     }
-    match grade.map(|g| (g.grade.full_name(), g.recoil_permeability.typical)) {
+    match grade.and_then(|g| Some((g.grade.full_name(), g.recoil_permeability.as_ref()?.typical))) {
         Some((grade, recoil)) if (recoil - 1.0).abs() > 1e-12 => {
             let why = format!("taken as 1, not as the material book's {recoil} for {grade}: not modelled yet");
             reader.note_default(section, word, 1.0, Kind::Ratio, &why);
@@ -208,7 +215,7 @@ fn recoil(reader: &mut Reader, section: &Section<'_>, name: &str, grade: Option<
         None => {
             reader.note_default(section, word, 1.0, Kind::Ratio, "no grade says otherwise");
             reader.cautions.push(format!(
-                "magnet '{name}': neither grade nor recoil permeability is given, so it is taken as 1; {RECOIL_COST}"
+                "magnet '{name}': no recoil permeability is given or known of its grade, so it is taken as 1; {RECOIL_COST}"
             ));
         }
     }

@@ -5,6 +5,7 @@ use lenzbore_solver::problem::{Quantity as Number, SensibleRange};
 use super::resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
 use super::tree::{Entry, Table, Value};
 use super::words::{elsewhere, table_words};
+use crate::materials::Book;
 use crate::message::{CaseFault, Diagnostic, Place, SourceKind, Sources, nearest};
 use crate::units::Kind;
 
@@ -16,6 +17,8 @@ pub(super) struct Reader {
     pub cautions: Vec<String>,
     pub not_modelled: Vec<String>,
     pub resolved: Resolved,
+    /// Grades of the case's own file of materials.
+    pub own_materials: Book,
 }
 
 /// A table, what messages call it, and the path of its words.

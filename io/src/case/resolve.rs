@@ -19,14 +19,14 @@ use crate::message::{Diagnostics, Place};
 static NO_TABLE: Table = Table { entries: Vec::new() };
 
 pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<ResolvedCase, Diagnostics> {
-    let Loaded { tree, sources, faults, notes, readable } = loaded;
+    let Loaded { tree, sources, faults, notes, own_materials, readable } = loaded;
     if !readable {
         return Err(Diagnostics::new(sources, faults));
     }
-    let mut reader = Reader { sources, faults, cautions: notes, ..Reader::default() };
+    let mut reader = Reader { sources, faults, cautions: notes, own_materials, ..Reader::default() };
     let root = Section { table: &tree, kind: "", label: "a case file", path: Vec::new(), place: Place::new(0, 0..0) };
     let read = read_root(&mut reader, &root, source);
-    let Reader { sources, faults, cautions, not_modelled, resolved } = reader;
+    let Reader { sources, faults, cautions, not_modelled, resolved, .. } = reader;
     match read {
         Some(read) if faults.is_empty() => Ok(ResolvedCase {
             title: read.title,

@@ -4,14 +4,14 @@ use crate::message::Place;
 
 /// A value and where it stands.
 #[derive(Debug, Clone, PartialEq)]
-pub(super) struct Node {
+pub(crate) struct Node {
     pub value: Value,
     pub place: Place,
 }
 
 /// What a value can be.
 #[derive(Debug, Clone, PartialEq)]
-pub(super) enum Value {
+pub(crate) enum Value {
     Text(String),
     Number(f64),
     Flag(bool),
@@ -36,7 +36,7 @@ impl Value {
 
 /// One word of a table with its value.
 #[derive(Debug, Clone, PartialEq)]
-pub(super) struct Entry {
+pub(crate) struct Entry {
     pub word: String,
     pub word_place: Place,
     pub node: Node,
@@ -44,7 +44,7 @@ pub(super) struct Entry {
 
 /// Words in the order in which they were read.
 #[derive(Debug, Clone, PartialEq, Default)]
-pub(super) struct Table {
+pub(crate) struct Table {
     pub entries: Vec<Entry>,
 }
 

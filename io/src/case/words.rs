@@ -18,7 +18,19 @@ pub const TABLES: [TableWords; 15] = [
     TableWords {
         path: "",
         label: "a case file",
-        words: &["title", "like", "record", "wall", "mover", "travel", "curve", "tolerance", "accuracy", "output"],
+        words: &[
+            "title",
+            "like",
+            "materials",
+            "record",
+            "wall",
+            "mover",
+            "travel",
+            "curve",
+            "tolerance",
+            "accuracy",
+            "output",
+        ],
         lists: &[],
     },
     TableWords {

@@ -26,10 +26,16 @@ pub enum Kind {
     Moment,
     /// A
     Current,
+    /// ohm
+    Resistance,
     /// kg
     Mass,
     /// kg/m3
     Density,
+    /// J/(kg K)
+    SpecificHeat,
+    /// W/(m K)
+    ThermalConductivity,
     /// s
     Time,
     /// Hz
@@ -46,10 +52,18 @@ pub enum Kind {
     SpringRate,
     /// N s/m
     DampingCoefficient,
+    /// W
+    Power,
+    /// J
+    Energy,
+    /// N s
+    Impulse,
+    /// A/m2
+    CurrentDensity,
 }
 
 /// Every kind, in the order in which a unit's dimension is given a name.
-const KINDS: [Kind; 20] = [
+const KINDS: [Kind; 27] = [
     Kind::Length,
     Kind::Speed,
     Kind::Temperature,
@@ -60,8 +74,11 @@ const KINDS: [Kind; 20] = [
     Kind::FieldStrength,
     Kind::Moment,
     Kind::Current,
+    Kind::Resistance,
     Kind::Mass,
     Kind::Density,
+    Kind::SpecificHeat,
+    Kind::ThermalConductivity,
     Kind::Time,
     Kind::Frequency,
     Kind::Acceleration,
@@ -70,6 +87,10 @@ const KINDS: [Kind; 20] = [
     Kind::AirDrag,
     Kind::SpringRate,
     Kind::DampingCoefficient,
+    Kind::Power,
+    Kind::Energy,
+    Kind::Impulse,
+    Kind::CurrentDensity,
 ];
 
 impl Kind {
@@ -96,8 +117,15 @@ impl Kind {
             Self::FieldStrength => ("a field strength", "A/m", d(-1, 0, 0, 1, 0), &["kA/m", "A/m", "Oe", "kOe"]),
             Self::Moment => ("a dipole moment", "A m2", d(2, 0, 0, 1, 0), &["A m2", "mA m2", "J/T"]),
             Self::Current => ("a current", "A", d(0, 0, 0, 1, 0), &["A", "mA"]),
+            Self::Resistance => ("a resistance", "ohm", d(2, 1, -3, -2, 0), &["ohm", "mohm", "kohm"]),
             Self::Mass => ("a mass", "kg", d(0, 1, 0, 0, 0), &["kg", "g"]),
             Self::Density => ("a density", "kg/m3", d(-3, 1, 0, 0, 0), &["kg/m3", "g/cm3"]),
+            Self::SpecificHeat => {
+                ("a specific heat", "J/(kg K)", d(2, 0, -2, 0, -1), &["J/(kg K)", "kJ/(kg K)", "J/(g K)"])
+            }
+            Self::ThermalConductivity => {
+                ("a thermal conductivity", "W/(m K)", d(1, 1, -3, 0, -1), &["W/(m K)", "W/(cm K)"])
+            }
             Self::Time => ("a time", "s", d(0, 0, 1, 0, 0), &["s", "ms", "us", "min", "h"]),
             Self::Frequency => ("a frequency", "Hz", d(0, 0, -1, 0, 0), &["Hz", "kHz", "rpm"]),
             Self::Acceleration => ("an acceleration", "m/s2", d(1, 0, -2, 0, 0), &["m/s2", "mm/s2", "in/s2"]),
@@ -106,6 +134,12 @@ impl Kind {
             Self::AirDrag => ("a quadratic air drag", "N s2/m2", d(-1, 1, 0, 0, 0), &["N s2/m2", "kg/m", "lbf s2/in2"]),
             Self::SpringRate => ("a spring rate", "N/m", d(0, 1, -2, 0, 0), &["N/m", "N/mm", "kgf/mm", "lbf/in"]),
             Self::DampingCoefficient => ("a damping coefficient", "N s/m", d(0, 1, -1, 0, 0), &["N s/m", "lbf s/in"]),
+            Self::Power => ("a power", "W", d(2, 1, -3, 0, 0), &["W", "mW", "kW"]),
+            Self::Energy => ("an energy", "J", d(2, 1, -2, 0, 0), &["J", "mJ", "kJ", "N m"]),
+            Self::Impulse => ("an impulse", "N s", d(1, 1, -1, 0, 0), &["N s", "mN s", "lbf s"]),
+            Self::CurrentDensity => {
+                ("a current density", "A/m2", d(-2, 0, 0, 1, 0), &["A/mm2", "A/m2", "MA/m2"])
+            }
         }
     }
 

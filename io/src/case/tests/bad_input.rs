@@ -36,7 +36,12 @@ fn unknown_words_get_the_nearest_legal_one() {
             &["'thickness' is no word of [[mover.magnet]]", "is a word of [[wall.layer]]"],
         ),
         ("", "[records]\nx = 1\n", "21:2", &["'records' is no word of a case file", "did you mean 'record'?"]),
-        ("", "[zebra]\nx = 1\n", "21:2", &["'zebra' is no word", "words of this table: title, like, record, wall"]),
+        (
+            "",
+            "[zebra]\nx = 1\n",
+            "21:2",
+            &["'zebra' is no word", "words of this table: title, like, materials, record, wall"],
+        ),
         ("", "[record]\nauthor = \"x\"\n", "22:1", &["'author' is no word of [record]", "document, revision, purpose"]),
         ("", "[accuracy]\ntargt = 1\n", "22:1", &["did you mean 'target'?"]),
         ("", "[output]\nfeilds = \"none\"\n", "22:1", &["did you mean 'fields'?"]),

@@ -129,7 +129,7 @@ fn what_is_taken_without_being_given_is_a_caution() {
         assert!(cautions.iter().any(|c| c.contains(words)), "{words}: {cautions:?}");
     };
     has(&with("temperature_coefficient = \"0.004 /K\"\n", ""), "without a temperature coefficient");
-    has(&with("recoil_permeability = 1\n", ""), "neither grade nor recoil permeability");
+    has(&with("recoil_permeability = 1\n", ""), "no recoil permeability is given or known of its grade");
     has(
         &with("mass = \"0.42 kg\"", "mass = \"0.42 kg\"\ntemperature = \"70 degC\""),
         "without a coefficient its remanence",
