@@ -119,6 +119,7 @@ fn plan(text: &mut String, name: &str, problem: &Problem, cost: &Forecast) {
         (_, Travel::Steady { .. }) => "settled fields at uniform speed",
         (_, Travel::Traverse(_)) => "uniform speed through the whole wall",
         (_, Travel::Free(_)) => "equation of motion",
+        (_, Travel::Alternating(_)) => "coils at rest with alternating current",
     };
     let _ = writeln!(text, "\nlenzbore {name}: {law}");
     let _ = writeln!(text, "  running clearance of the magnetic parts {:.3} mm", 1e3 * cost.gap_m);

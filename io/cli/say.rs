@@ -5,7 +5,7 @@ use std::fmt::Write as _;
 use std::io::Write as _;
 
 use lenzbore_io::result::ResultHeader;
-use lenzbore_solver::outcome::{DragCurve, Figure, Outcome};
+use lenzbore_solver::outcome::{DragCurve, Figure, FrequencyResponse, Outcome};
 
 /// Points of a curve shown on the terminal.
 const SHOWN_POINTS: usize = 12;
@@ -50,6 +50,9 @@ pub fn answer(header: &ResultHeader, outcome: &Outcome) -> String {
     }
     if let Some(curve) = &outcome.curve {
         curve_lines(&mut text, curve);
+    }
+    if let Some(response) = &outcome.frequency {
+        frequency_lines(&mut text, response);
     }
     balance(&mut text, outcome);
     regime(&mut text, outcome);
@@ -134,6 +137,34 @@ fn curve_lines(text: &mut String, curve: &DragCurve) {
     }
 }
 
+fn frequency_lines(text: &mut String, response: &FrequencyResponse) {
+    let count = response.points.len();
+    let stride = count.div_ceil(SHOWN_POINTS).max(1);
+    let _ = writeln!(
+        text,
+        "\n{:>14} {:>17} {:>9} {:>17} {:>9} {:>15} {:>11} {:>10}",
+        "frequency Hz", "added R ohm", "band", "added X ohm", "band", "inductance H", "shielding", "skin mm"
+    );
+    let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
+    for (k, p) in response.points.iter().enumerate() {
+        if k % stride == 0 || k + 1 == count {
+            let (r, x) = (p.resistance_change, p.reactance_change);
+            let shielding = or_dash(p.shielding.map(|s| format!("{:.6}", s.magnitude())));
+            let skin = or_dash(p.skin_depth_m.map(|d| format!("{:.4}", 1e3 * d)));
+            let _ = writeln!(
+                text,
+                "{:>14.6} {:>17} {:>9.1e} {:>17} {:>9.1e} {:>15.8e} {shielding:>11} {skin:>10}",
+                p.frequency_hz,
+                with_band(r.value, r.band).0,
+                r.band,
+                with_band(x.value, x.band).0,
+                x.band,
+                p.inductance_henry
+            );
+        }
+    }
+}
+
 fn balance(text: &mut String, outcome: &Outcome) {
     if let Some(f) = outcome.forces {
         let verdict = if f.agree { "agree" } else { "DO NOT AGREE" };
@@ -167,6 +198,15 @@ fn balance(text: &mut String, outcome: &Outcome) {
 
 fn regime(text: &mut String, outcome: &Outcome) {
     let r = &outcome.regime;
+    if outcome.frequency.is_some() {
+        let depth = r.depth_ratio.map_or("none".to_owned(), |d| format!("{d:.3}"));
+        let _ = writeln!(
+            text,
+            "regime at the highest frequency: wall/bore {:.3}, gap/bore {:.3}, least skin depth/wall {depth}",
+            r.thickness_ratio, r.gap_ratio
+        );
+        return;
+    }
     let depth = r.depth_ratio.map_or("at rest".to_owned(), |d| format!("depth/wall {d:.3}"));
     let _ = writeln!(
         text,

@@ -99,6 +99,10 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
             (travel(&["until", "law"]), Some((travel(&["release"]), "where it is let go")))
         }
         ProblemFault::GatesCoincide { .. } => (travel(&["gates"]), None),
+        ProblemFault::NoCoil { part: p } => {
+            (part(p.index, &["name"]), Some((travel(&["law"]), "the law that drives coils")))
+        }
+        ProblemFault::Frequencies => (travel(&["frequencies", "frequency"]), None),
         ProblemFault::Levels { .. } => (parts.accuracy.map_or_else(root, |s| s.place_of("levels")), None),
         ProblemFault::CellsAcrossWall { .. } => {
             (parts.accuracy.map_or_else(root, |s| s.place_of("cells_across_wall")), None)
@@ -122,7 +126,7 @@ fn of_number(subject: Subject, quantity: Quantity, parts: &Parts<'_, '_>) -> Pla
     let words: &[&str] = match quantity {
         Quantity::InnerRadius | Quantity::OuterRadius => &ACROSS,
         Quantity::Length => &["length"],
-        Quantity::Position => &["at", "release", "from", "to", "until", "gates"],
+        Quantity::Position => &["at", "release", "from", "to", "until", "gates", "position"],
         Quantity::Conductivity => &["conductivity", "material"],
         Quantity::RelativePermeability => &["permeability", "material"],
         Quantity::Moment => &["moment"],
@@ -139,6 +143,9 @@ fn of_number(subject: Subject, quantity: Quantity, parts: &Parts<'_, '_>) -> Pla
         Quantity::SpringRate => &["spring_rate"],
         Quantity::Time => &["time_limit", "fields"],
         Quantity::TargetRelative => &["target"],
+        Quantity::Frequency => &["frequency", "frequencies"],
+        Quantity::Current => &["current"],
+        Quantity::Resistance => &["winding_resistance"],
         _ => &[],
     };
     section.map_or_else(|| parts.root.place.clone(), |s| s.place_of_any(words))

@@ -26,6 +26,7 @@
 //! ```
 
 mod across;
+mod alternating;
 mod conductor;
 mod curve;
 mod geometry;

@@ -3,6 +3,7 @@
 use lenzbore_solver::problem::{Accuracy, Extent, Mover, Problem, SnapshotPlan, Travel, Traverse, Wall};
 use serde_json::{Map, Value as Json};
 
+use super::alternating::{is_asked, read_alternating};
 use super::curve::read_curve;
 use super::geometry::{Parts, place_faults};
 use super::load::Loaded;
@@ -64,7 +65,13 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     let mover = read_mover(reader, root);
     let around = Surroundings::new(wall.as_ref().map(|w| &w.wall), mover.as_ref().map(|m| m.ends_m));
     let travel_section = reader.table(root, "travel", "[travel] with law = \"free\"");
-    let travel = travel_section.as_ref().and_then(|s| read_travel(reader, s, around));
+    let travel = travel_section.as_ref().and_then(|s| {
+        if is_asked(s) {
+            read_alternating(reader, s, wall.as_ref().map(|w| &w.wall), mover.as_ref())
+        } else {
+            read_travel(reader, s, around)
+        }
+    });
     let curve_section = reader.table(root, "curve", "[curve] with speeds = [\"0.01 m/s\", \"50 m/s\"]");
     let curve = curve_section.as_ref().and_then(|s| read_curve(reader, s, wall.as_ref()));
     if !root.table.has("travel") && !root.table.has("curve") {

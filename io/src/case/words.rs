@@ -128,7 +128,7 @@ pub const TABLES: [TableWords; 15] = [
 ];
 
 /// Words of `[travel]` under any law.
-const TRAVEL_WORDS: [&str; 24] = [
+const TRAVEL_WORDS: [&str; 26] = [
     "law",
     "speed",
     "from",
@@ -150,6 +150,8 @@ const TRAVEL_WORDS: [&str; 24] = [
     "amplitude",
     "frequency",
     "frequencies",
+    "position",
+    "winding_resistance",
     "cycles",
     "file",
     "points",
@@ -191,7 +193,11 @@ pub const LAWS: [LawWords; 6] = [
     },
     LawWords { law: "sine", words: &["centre", "amplitude", "frequency", "cycles"], modelled: false },
     LawWords { law: "table", words: &["file"], modelled: false },
-    LawWords { law: "alternating", words: &["frequency", "frequencies", "points"], modelled: false },
+    LawWords {
+        law: "alternating",
+        words: &["frequency", "frequencies", "points", "position", "winding_resistance"],
+        modelled: true,
+    },
 ];
 
 /// The law of that name.

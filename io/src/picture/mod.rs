@@ -2,6 +2,8 @@
 //!
 //! Drawn for one column of a page (85 mm) on white; letters are bundled, so a PNG is the same on every machine.
 
+mod alternating;
+mod alternating_across;
 mod axes;
 mod curve;
 mod key;
@@ -20,6 +22,8 @@ mod svg;
 mod travel;
 mod units;
 
+pub use alternating::impedance;
+pub use alternating_across::current_across;
 pub use curve::curve;
 pub use paper::{DOTS_PER_INCH, Picture};
 pub use section::{drawing, section};

@@ -216,6 +216,7 @@ pub(crate) fn outcome(figures: Vec<Figure>, stop: Stop, trace: Trace, curve: Opt
         },
         trace,
         curve,
+        frequency: None,
         fields: None,
     }
 }

@@ -4,6 +4,7 @@
 //! lies on no grid). Arrays over the grid run `[z, r]`, snapshots `[t, z, r]`, one compressed chunk a snapshot.
 
 mod dataset;
+mod frequency;
 mod levels;
 mod regions;
 mod snapshots;
@@ -17,6 +18,7 @@ use lenzbore_solver::outcome::{Fields, Outcome};
 use super::fault::IoFault;
 use super::finite::all_finite;
 use super::header::ResultHeader;
+use super::frequency::frequency_columns;
 use super::series::{Column, curve_columns, trace_columns};
 use dataset::{About, put, text};
 
@@ -49,6 +51,10 @@ pub fn write_fields(
     table(&file, "trace", &trace).map_err(blame)?;
     table(&file, "curve", &curve).map_err(blame)?;
     levels::write(&file, outcome).map_err(blame)?;
+    if let Some(response) = &outcome.frequency {
+        table(&file, "frequency", &frequency_columns(response)?).map_err(blame)?;
+        frequency::write(&file, response, fields).map_err(blame)?;
+    }
     snapshots::write(&file, fields, path, monitor)?;
     file.flush().map_err(blame)?;
     file.close().map_err(blame)

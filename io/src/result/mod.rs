@@ -7,6 +7,7 @@ mod demo_fields;
 mod fault;
 mod finite;
 pub mod folder;
+mod frequency;
 mod hdf5;
 mod header;
 mod names;
@@ -17,6 +18,7 @@ mod write;
 mod xdmf;
 
 pub use fault::IoFault;
+pub use frequency::{across_columns, frequency_columns};
 pub use header::{Program, ResultHeader};
 pub use series::{Column, csv, curve_columns, trace_columns};
 pub use spread::{sensitivities_csv, spread_object};

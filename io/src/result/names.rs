@@ -6,6 +6,10 @@ pub const SUMMARY: &str = "summary.json";
 pub const TRACE: &str = "trace.csv";
 /// Drag against speed.
 pub const CURVE: &str = "curve.csv";
+/// Impedance over frequency.
+pub const FREQUENCY: &str = "frequency.csv";
+/// Current density across the wall.
+pub const ACROSS: &str = "across.csv";
 /// What each input makes of each figure.
 pub const SENSITIVITIES: &str = "sensitivities.csv";
 /// Grid, regions, snapshots, traces, figures of every level.

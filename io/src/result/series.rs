@@ -81,11 +81,11 @@ fn decimal(value: f64) -> String {
     if magnitude > 0.0 && !(1e-4..1e15).contains(&magnitude) { format!("{value:e}") } else { format!("{value}") }
 }
 
-fn column<'a>(name: &'static str, unit: &'static str, description: &'static str, values: Cow<'a, [f64]>) -> Column<'a> {
+pub(super) fn column<'a>(name: &'static str, unit: &'static str, description: &'static str, values: Cow<'a, [f64]>) -> Column<'a> {
     Column { name, unit, description, values }
 }
 
-fn vetted(columns: Vec<Column<'_>>) -> Result<Vec<Column<'_>>, IoFault> {
+pub(super) fn vetted(columns: Vec<Column<'_>>) -> Result<Vec<Column<'_>>, IoFault> {
     let expected = columns.first().map_or(0, |c| c.values.len());
     for column in &columns {
         if column.values.len() != expected {

@@ -8,6 +8,7 @@ use serde_json::{Map, Value, json};
 
 use super::fault::IoFault;
 use super::finite::number;
+use super::frequency::frequency_object;
 use super::header::ResultHeader;
 use super::series::curve_columns;
 use super::spread::{input_spread, spread_object};
@@ -40,6 +41,9 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     put("stop", json!(outcome.stop.word()));
     if let Some(drag) = &outcome.curve {
         put("curve", curve(drag)?);
+    }
+    if let Some(response) = &outcome.frequency {
+        put("frequency", frequency_object(response)?);
     }
     let of_the_run = outcome.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());

@@ -7,6 +7,7 @@
     reason = "tests may stop at the first fault"
 )]
 
+mod alternating;
 mod bad_input;
 mod bad_overrides;
 mod geometry;

@@ -228,6 +228,7 @@ fn strongest(fields: &Fields) -> Option<&Snapshot> {
 fn velocity(problem: &Problem, trace: &Trace, time: f64) -> f64 {
     match &problem.travel {
         Travel::Steady { velocity_m_per_s } => *velocity_m_per_s,
+        Travel::Alternating(_) => 0.0,
         Travel::Traverse(t) => t.speed_m_per_s * (t.to_m - t.from_m).signum(),
         Travel::Free(free) => {
             let at = trace.time_s.partition_point(|t| *t < time).min(trace.velocity_m_per_s.len().saturating_sub(1));
