@@ -1,5 +1,6 @@
 //! How much memory the machine has left, and whether a case fits.
 
+use lenzbore_io::case::{Origin, ResolvedCase};
 use lenzbore_solver::cost::rough_memory_bytes;
 use lenzbore_solver::fault::SolveFault;
 use lenzbore_solver::problem::Problem;
@@ -15,6 +16,36 @@ pub fn require(problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<()
         Some(available) if needed > available => Err(too_large(needed, available)),
         _ => Ok(()),
     }
+}
+
+/// Words that make a case large, the likeliest first.
+const LARGE: [&str; 8] = [
+    "output.fields",
+    "accuracy.levels",
+    "accuracy.cells_across_wall",
+    "curve.speeds",
+    "travel.until",
+    "travel.to",
+    "travel.speed",
+    "travel.law",
+];
+
+/// As [`require`], with the place of the word of the case that most likely makes it too large.
+pub fn require_of(case: &ResolvedCase, problem: &Problem, curve_speed_m_per_s: Option<f64>) -> Result<(), End> {
+    require(problem, curve_speed_m_per_s).map_err(|end| match (end, place(case, curve_speed_m_per_s.is_some())) {
+        (End::Input(text), Some(place)) => End::Input(format!("{place}: {text}")),
+        (end, _) => end,
+    })
+}
+
+/// Where the first such word was written that the question reads.
+fn place(case: &ResolvedCase, curve: bool) -> Option<String> {
+    let of_other = |word: &str| word.starts_with(if curve { "travel." } else { "curve." });
+    LARGE.iter().filter(|word| !of_other(word)).find_map(|word| match &case.resolved.get(word)?.origin {
+        Origin::Given { place, .. } => Some(place.clone()),
+        Origin::Override { text } => Some(format!("--set {word} = {text}")),
+        _ => None,
+    })
 }
 
 fn too_large(needed: f64, available: f64) -> End {

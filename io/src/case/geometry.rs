@@ -1,6 +1,6 @@
 //! Faults of the finished problem, each led back to the words that caused it.
 
-use lenzbore_solver::problem::{ProblemFault, Quantity, Subject};
+use lenzbore_solver::problem::{Part, Problem, ProblemFault, Quantity, Subject};
 
 use super::mover::MoverReading;
 use super::reader::{Reader, Section};
@@ -40,6 +40,21 @@ pub(super) fn place_faults(reader: &mut Reader, faults: Vec<ProblemFault>, parts
     }
 }
 
+/// A part longer than so many bore diameters (around a rod: diameters of the wall) was hardly meant.
+const LONG_PARTS: f64 = 20.0;
+
+/// Sizes that are possible but hardly meant, in words.
+pub(super) fn odd_sizes(problem: &Problem) -> Vec<String> {
+    let (bore, outer) = (2.0 * problem.wall.inner_radius_m(), 2.0 * problem.wall.outer_radius_m());
+    let across = if bore > 0.0 { bore } else { outer };
+    let long = |p: &&Part| across.is_finite() && p.outline.length_m > LONG_PARTS * across;
+    let say = |p: &Part| {
+        let (length, across) = (1e3 * p.outline.length_m, 1e3 * across);
+        format!("part '{}' is {length} mm long where the wall is {across} mm across: was another unit meant?", p.name)
+    };
+    problem.mover.parts.iter().filter(long).map(say).collect()
+}
+
 /// A fault that stems from parts left out because they could not be read.
 fn is_of_what_is_missing(fault: &ProblemFault, parts: &Parts<'_, '_>) -> bool {
     match fault {
@@ -50,6 +65,7 @@ fn is_of_what_is_missing(fault: &ProblemFault, parts: &Parts<'_, '_>) -> bool {
         ProblemFault::SteadyNeedsEndlessWall { .. }
         | ProblemFault::TravelNeedsEnds { .. }
         | ProblemFault::OutOfReach { .. }
+        | ProblemFault::NoTime { .. }
         | ProblemFault::NoTravel { .. } => !parts.whole_travel || parts.wall.extent.is_none(),
         // Gates that nobody wrote stand at the ends of the wall, and an endless wall has none.
         ProblemFault::GatesCoincide { .. } => !parts.travel.is_some_and(|t| parts.whole_travel && t.table.has("gates")),
@@ -95,6 +111,7 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
             (parts.mover.section.place.clone(), Some((travel(&["law"]), "the law that needs it")))
         }
         ProblemFault::NoTravel { .. } => (travel(&["to", "until", "from", "release"]), None),
+        ProblemFault::NoTime { .. } => (travel(&["time_limit", "law"]), None),
         ProblemFault::OutOfReach { .. } => {
             (travel(&["until", "law"]), Some((travel(&["release"]), "where it is let go")))
         }

@@ -171,6 +171,44 @@ pub enum ProblemFault {
     /// Frequencies that do not increase, or none.
     #[error("the frequencies of law 'alternating' do not increase")]
     Frequencies,
+    /// No cycle, or more than can be followed.
+    #[error("{found} cycles: a stroke is followed through 1 to {most}", most = super::MOST_CYCLES)]
+    Cycles {
+        /// The number found.
+        found: u32,
+    },
+    /// A table of positions with too few of them.
+    #[error("a motion from a table needs at least 3 points, each with time and position, and this one has {points}")]
+    TableShort {
+        /// Points found: the shorter of both lists.
+        points: usize,
+    },
+    /// Instants of a table that do not increase, or are not finite.
+    #[error("the times of the motion do not increase: point {} at {time_s} s follows {before_s} s", point + 1)]
+    TableTimes {
+        /// Index of the point.
+        point: usize,
+        /// Its time, s.
+        time_s: f64,
+        /// The time of the point before it, s.
+        before_s: f64,
+    },
+    /// A jump in a table of positions.
+    #[error("the motion jumps from {} to {} between {from_s} s and {to_s} s, at {speed_m_per_s:.3e} m/s", mm(*from_m), mm(*to_m))]
+    TableJump {
+        /// Index of the point jumped to.
+        point: usize,
+        /// Position before, m.
+        from_m: f64,
+        /// Position after, m.
+        to_m: f64,
+        /// Time before, s.
+        from_s: f64,
+        /// Time after, s.
+        to_s: f64,
+        /// Speed in between, m/s.
+        speed_m_per_s: f64,
+    },
     /// Travel that starts where it ends.
     #[error("the travel ends where it starts, at {}", mm(*at_m))]
     NoTravel {
@@ -195,6 +233,16 @@ pub enum ProblemFault {
         force_newton: f64,
         /// Energy that is missing on the way, J; `None` where it moves away from the start.
         short_joule: Option<f64>,
+    },
+    /// A time limit within which a free mover hardly moves.
+    #[error(
+        "within the time limit of {time_limit_s} s the mover travels {travel_m:.1e} m at most: there is nothing to tell of it"
+    )]
+    NoTime {
+        /// The time limit, s.
+        time_limit_s: f64,
+        /// Greatest distance within it, m.
+        travel_m: f64,
     },
     /// Fewer or more grid levels than extrapolation can use.
     #[error("{found} grid levels: extrapolation and its band need 3 to 5")]
@@ -251,9 +299,12 @@ impl ProblemFault {
             Self::LayerBeyondWall { .. } => "'from' and 'to' count from the wall's lower end",
             Self::PartsOverlap { .. } => "parts may touch: move one ('at'), or place them by 'stack'",
             Self::InertWall => "give a layer a conductivity",
+            Self::NoTime { .. } => "leave 'time_limit' out for 60 s, or give a longer one",
             Self::OutOfReach { .. } => {
                 "put 'until' where it travels to, or change 'push', 'entry_velocity' or 'tilt_from_vertical'"
             }
+            Self::TableTimes { .. } => "sort the points by time, and give each instant once",
+            Self::TableJump { .. } => "check the units of time and position, and take stray points out",
             Self::NoCoil { .. } => "a steady field takes no part in it: leave magnets and dipoles out",
             _ => return None,
         };

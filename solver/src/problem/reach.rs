@@ -45,6 +45,21 @@ pub(crate) fn out_of_reach(problem: &Problem) -> Option<OutOfReach> {
     (away && short >= 0.0).then_some(OutOfReach { force_newton: force, short_joule: Some(short) })
 }
 
+/// Share of the way below which a run has nothing to tell.
+const LEAST_SHARE: f64 = 1.0e-6;
+
+/// Greatest distance that a free mover can get within its time limit, m, where that is next to nothing of its way; a permeable wall, which may
+/// pull harder than everything else, is left out.
+pub(crate) fn next_to_nothing(problem: &Problem) -> Option<f64> {
+    let (Travel::Free(free), Some(mass)) = (&problem.travel, problem.mover.mass_kg) else { return None };
+    let spring = free.spring_rate_n_per_m * (free.release_m - free.spring_free_at_m).abs();
+    let force = mass * free.gravity_m_per_s2 + free.push_newton.abs() + spring;
+    let time = free.time_limit_s;
+    let far = free.entry_velocity_m_per_s.abs() * time + 0.5 * force / mass * time * time;
+    let way = (free.until_m - free.release_m).abs();
+    (!problem.wall.is_permeable() && far < LEAST_SHARE * way).then_some(far)
+}
+
 impl Problem {
     /// Whether a free mover at `position_m` with `velocity_m_per_s` has left the wall's field for good: the whole of it is more than 40
     /// outer radii of the wall beyond the wall's end, it moves away from wall and end of travel, and neither force nor friction will
@@ -147,6 +162,18 @@ mod tests {
         };
         assert!(out_of_reach(&level(1.0)).is_some());
         assert!(out_of_reach(&level(-1.0)).is_none());
+    }
+
+    #[test]
+    fn a_nanosecond_is_no_time_to_fall() {
+        let limited = |t: f64| problem(0.33, -0.05, move |f| f.time_limit_s = t);
+        let far = next_to_nothing(&limited(1e-9)).unwrap();
+        approx::assert_relative_eq!(far, 0.5 * 9.80665e-18, max_relative = 1e-12);
+        assert!(next_to_nothing(&limited(1e-3)).is_none());
+        assert!(
+            next_to_nothing(&problem(0.33, -0.05, |f| (f.time_limit_s, f.entry_velocity_m_per_s) = (1e-6, 50.0)))
+                .is_none()
+        );
     }
 
     #[test]

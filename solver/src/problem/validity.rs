@@ -2,8 +2,10 @@
 
 use super::fault::{Named, ProblemFault, Subject};
 use super::quantity::Quantity;
-use super::reach::out_of_reach;
-use super::{Alternating, Extent, Layer, Mover, Part, Problem, SnapshotPlan, Travel, Wall};
+use super::reach::{next_to_nothing, out_of_reach};
+use super::{
+    Alternating, Extent, Layer, MOST_CYCLES, MotionTable, Mover, Part, Problem, Sine, SnapshotPlan, Travel, Wall,
+};
 use crate::sources::Source;
 
 /// Faces closer than this part of their radius or height count as touching, not as overlapping.
@@ -224,7 +226,66 @@ fn travel_faults(problem: &Problem, faults: &mut Vec<ProblemFault>) {
             }
         }
         Travel::Free(_) => free_faults(problem, &mut numbers),
+        Travel::Sine(sine) => {
+            sine_faults(sine, &mut numbers);
+            if length_m.is_none() {
+                numbers.faults.push(ProblemFault::TravelNeedsEnds { law: "sine" });
+            }
+        }
+        Travel::Table(table) => {
+            table_faults(table, &mut numbers);
+            if length_m.is_none() {
+                numbers.faults.push(ProblemFault::TravelNeedsEnds { law: "table" });
+            }
+        }
         Travel::Alternating(law) => alternating_faults(problem, law, &mut numbers),
+    }
+}
+
+fn sine_faults(sine: &Sine, numbers: &mut Numbers<'_>) {
+    numbers.check(Quantity::Position, sine.centre_m);
+    let amplitude = numbers.check(Quantity::Amplitude, sine.amplitude_m);
+    let frequency = numbers.check(Quantity::Frequency, sine.frequency_hz);
+    if amplitude && frequency {
+        numbers.check(Quantity::Speed, sine.greatest_speed());
+    }
+    if let Some(found) = sine.cycles.filter(|c| !(1..=MOST_CYCLES).contains(c)) {
+        numbers.faults.push(ProblemFault::Cycles { found });
+    }
+}
+
+/// Speed between two points of a table above which they are a slip, m/s: no machine moves so fast.
+const FASTEST_CHORD: f64 = 1.0e4;
+
+fn table_faults(table: &MotionTable, numbers: &mut Numbers<'_>) {
+    let points = table.time_s.len().min(table.position_m.len());
+    if points < 3 || table.time_s.len() != table.position_m.len() {
+        numbers.faults.push(ProblemFault::TableShort { points });
+        return;
+    }
+    let (t, z) = (&table.time_s, &table.position_m);
+    let finite = z.iter().all(|&z| numbers.check(Quantity::Position, z));
+    for k in 1..points {
+        let rises = t[k].is_finite() && t[k - 1].is_finite() && t[k] > t[k - 1];
+        if !rises {
+            numbers.faults.push(ProblemFault::TableTimes { point: k, time_s: t[k], before_s: t[k - 1] });
+            return;
+        }
+        let speed = table.chord(k - 1).abs();
+        if finite && speed > FASTEST_CHORD {
+            numbers.faults.push(ProblemFault::TableJump {
+                point: k,
+                from_m: z[k - 1],
+                to_m: z[k],
+                from_s: t[k - 1],
+                to_s: t[k],
+                speed_m_per_s: speed,
+            });
+            return;
+        }
+    }
+    if finite && z.iter().all(|p| (p - z[0]).abs() <= 0.0) {
+        numbers.faults.push(ProblemFault::NoTravel { at_m: z[0] });
     }
 }
 
@@ -280,6 +341,9 @@ fn free_faults(problem: &Problem, numbers: &mut Numbers<'_>) {
     }
     if problem.mover.mass_kg.is_none() {
         numbers.faults.push(ProblemFault::FreeNeedsMass);
+    }
+    if let Some(travel_m) = next_to_nothing(problem) {
+        numbers.faults.push(ProblemFault::NoTime { time_limit_s: free.time_limit_s, travel_m });
     }
     if let Some(why) = out_of_reach(problem) {
         let (release_m, until_m) = (free.release_m, free.until_m);

@@ -63,8 +63,13 @@ impl<'p> Levels<'p> {
         Ok(())
     }
 
+    /// How many times the figures' steps count.
+    fn doubt(&self) -> f64 {
+        band::near_permeable_wall(self.problem, self.placement.gap_m, self.levels.len())
+    }
+
     pub(super) fn ladder(&self, figure: impl Fn(&SettledLevel) -> f64) -> Ladder {
-        Ladder::new(&self.factors, self.levels.iter().map(figure).collect())
+        Ladder::new(&self.factors, self.levels.iter().map(figure).collect()).doubted(self.doubt())
     }
 
     /// Relative change by the cut of a figure on the coarsest level, times `value`.
@@ -83,7 +88,7 @@ impl<'p> Levels<'p> {
     /// Those of a level.
     pub(super) fn drag(&self, velocity: f64) -> Result<Ladder, SolveFault> {
         let drags: Result<Vec<f64>, _> = self.levels.iter().map(|l| l.drag(velocity, self.monitor)).collect();
-        Ok(Ladder::new(&self.factors, drags?))
+        Ok(Ladder::new(&self.factors, drags?).doubted(self.doubt()))
     }
 
     pub(super) fn reports(&self, problem: &Problem) -> Vec<GridReport> {
@@ -115,7 +120,8 @@ impl<'p> Levels<'p> {
         let at: Result<Vec<LevelDrag>, _> =
             self.levels.iter().map(|l| l.figures(mover, velocity, self.monitor)).collect();
         let at = at?;
-        let ladder = |f: fn(&LevelDrag) -> f64| Ladder::new(&self.factors, at.iter().map(f).collect());
+        let doubt = self.doubt();
+        let ladder = |f: fn(&LevelDrag) -> f64| Ladder::new(&self.factors, at.iter().map(f).collect()).doubted(doubt);
         let (drag, heat, peak) = (ladder(|d| d.drag), ladder(|d| d.drag_by_heat), ladder(|d| d.peak));
         let coarsest = drag.levels.first().copied().unwrap_or(0.0);
         let cut = changed(coarsest, self.cut.drag(velocity, self.monitor)?, drag.value);
