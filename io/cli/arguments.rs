@@ -2,7 +2,7 @@
 
 use std::path::PathBuf;
 
-use clap::{Args, Parser, Subcommand};
+use clap::{Args, Parser, Subcommand, ValueEnum};
 
 /// Drag, travel, eddy currents and heat of a magnet carrier in a conducting tube, each figure with a numerical band.
 #[derive(Debug, Parser)]
@@ -30,6 +30,8 @@ pub enum Command {
     Run(SolveWords),
     /// Drag against speed, with settled fields in an endless wall
     Curve(SolveWords),
+    /// Holds a calculator's or a measurement's table against the field solution
+    Compare(CompareWords),
     /// The material book, with the source of every number
     Materials(MaterialsWords),
     /// A command that is not built yet, or none at all
@@ -98,6 +100,43 @@ pub struct SpreadWords {
     /// Seed of the random draws: the same gives the same draws
     #[arg(long, value_name = "S", default_value_t = 1, requires = "monte_carlo")]
     pub seed: u64,
+}
+
+/// `lenzbore compare`.
+#[derive(Debug, Args)]
+pub struct CompareWords {
+    /// The case.
+    #[command(flatten)]
+    pub case: CaseWords,
+    /// The table (CSV): a header with units, as speed [m/s];drag [N]; columns may be words of the case
+    pub table: PathBuf,
+    /// Allowed difference: a share of our value, as "5 %", or in the unit of the table's figure, as "0.2 N"
+    #[arg(long, value_name = "SHARE", default_value = "5 %")]
+    pub tolerance: String,
+    /// Judges one side only: the side on which a difference is dangerous
+    #[arg(long = "unsafe", value_name = "SIDE", value_enum)]
+    pub dangerous: Option<Side>,
+    /// The table is measured: the input spread of [tolerance] counts [default: where it has uncertainties]
+    #[arg(long, conflicts_with = "calculated")]
+    pub measured: bool,
+    /// The table is calculated from the same inputs: their spread does not count [default: where it has no uncertainties]
+    #[arg(long)]
+    pub calculated: bool,
+    /// Result folder [default: out/ and the case file's stem with -compare behind it]
+    #[arg(long, value_name = "FOLDER")]
+    pub out: Option<PathBuf>,
+    /// Puts the result in the place of an older one
+    #[arg(long)]
+    pub replace: bool,
+}
+
+/// A side of the truth.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum Side {
+    /// A table that says too much is dangerous
+    High,
+    /// A table that says too little is dangerous
+    Low,
 }
 
 /// `lenzbore materials`.

@@ -7,9 +7,8 @@ use lenzbore_io::result::IoFault;
 use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
-const LATER: [&str; 11] = [
+const LATER: [&str; 10] = [
     "ladder",
-    "compare",
     "rerun",
     "report",
     "export",
@@ -21,7 +20,7 @@ const LATER: [&str; 11] = [
     "completions",
 ];
 /// Commands that are.
-const BUILT: [&str; 5] = ["new", "check", "run", "curve", "materials"];
+const BUILT: [&str; 6] = ["new", "check", "run", "curve", "compare", "materials"];
 
 /// Why a command ended.
 #[derive(Debug)]
@@ -30,6 +29,10 @@ pub enum End {
     Input(String),
     /// The computation or a file failed.
     Failed(String),
+    /// The answer is no; results were written.
+    No(String),
+    /// The uncertainties do not let one tell; results were written.
+    Undecided(String),
     /// The accuracy target was missed; results were written.
     Missed(String),
     /// The user stopped it.
@@ -53,7 +56,8 @@ impl End {
         let (text, status) = match self {
             Self::Input(text) => (text, 2),
             Self::Failed(text) => (text, 3),
-            Self::Missed(text) => (text, 4),
+            Self::No(text) => (text, 1),
+            Self::Missed(text) | Self::Undecided(text) => (text, 4),
             Self::Interrupted => ("interrupted; nothing was written".to_owned(), 130),
         };
         crate::say::to_standard_error(&text);

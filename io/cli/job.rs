@@ -30,6 +30,11 @@ impl CaseInput {
         Ok(Self { path: words.case.clone(), text, sets: words.set.clone() })
     }
 
+    /// The same case with more overrides of its own.
+    pub fn with(&self, more: &[String]) -> Self {
+        Self { path: self.path.clone(), text: self.text.clone(), sets: [&self.sets, more].concat() }
+    }
+
     /// Reads it with the overrides of the command line, and more behind them.
     pub fn read(&self, more: &[String]) -> Result<ResolvedCase, Diagnostics> {
         let source = match &self.text {

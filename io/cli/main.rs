@@ -5,6 +5,7 @@
 
 mod arguments;
 mod check;
+mod compare;
 mod end;
 mod job;
 mod materials;
@@ -30,6 +31,7 @@ fn main() -> ExitCode {
         Command::Check(words) => check::run(&words),
         Command::Run(words) => solve::run(&words, solve::Question::Travel),
         Command::Curve(words) => solve::run(&words, solve::Question::Curve),
+        Command::Compare(words) => compare::run(&words),
         Command::Materials(words) => materials::run(&words),
         Command::Unbuilt(words) => Err(End::unbuilt(&words)),
     };

@@ -90,6 +90,7 @@ fn input_spread(
         size: (problem, speeds),
         nominal: &nominal(outcome),
         answer: &|case, monitor| Ok(nominal(&answer(case, question, monitor)?.1)),
+        worst: true,
         monitor: terminal,
     };
     let study = spread::study(&varied, words)?;
@@ -98,7 +99,7 @@ fn input_spread(
 }
 
 /// The figures of an outcome, as the study of the inputs takes them.
-fn nominal(outcome: &Outcome) -> Vec<Nominal> {
+pub fn nominal(outcome: &Outcome) -> Vec<Nominal> {
     let of =
         |f: &Figure| Nominal { name: f.name.clone(), unit: f.unit, reading: Reading { value: f.value, band: f.band } };
     outcome.figures.iter().map(of).collect()

@@ -5,4 +5,5 @@ pub mod materials;
 pub mod message;
 pub mod picture;
 pub mod result;
+pub mod table;
 pub mod units;

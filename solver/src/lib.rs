@@ -10,6 +10,7 @@
 //!
 //! Signs: z upward positive, velocities signed, drag positive when it opposes the motion.
 
+pub mod comparison;
 pub mod constants;
 pub mod cost;
 pub mod extrapolate;

@@ -10,6 +10,7 @@
 
 mod bad_input;
 mod commands;
+mod compare;
 mod examples;
 mod folders;
 mod interruption;

@@ -7,3 +7,4 @@ mod workers;
 
 pub use study::{Question, study};
 pub use text::spread_text;
+pub use workers::side_by_side;

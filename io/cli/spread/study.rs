@@ -37,6 +37,8 @@ pub struct Question<'a> {
     pub nominal: &'a [Nominal],
     /// How a case is answered.
     pub answer: &'a Answer<'a>,
+    /// Whether the worst cases are solved too.
+    pub worst: bool,
     /// Progress, and the request to stop.
     pub monitor: &'a dyn Monitor,
 }
@@ -55,7 +57,7 @@ pub fn study(question: &Question<'_>, words: &SpreadWords) -> Result<Spread, End
     let mut figures: Vec<FigureSpread> =
         question.nominal.iter().map(|n| FigureSpread::new(n, &inputs, responses(&n.name, n.reading))).collect();
     let mut cautions = Vec::new();
-    let corners = question.corners(&variable, &inputs, &mut figures, &mut cautions)?;
+    let corners = if question.worst { question.corners(&variable, &inputs, &mut figures, &mut cautions)? } else { 0 };
     let monte_carlo = match words.monte_carlo {
         Some(draws) => {
             let draws = usize::try_from(draws).unwrap_or(usize::MAX);

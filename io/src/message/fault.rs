@@ -2,6 +2,7 @@
 
 use lenzbore_solver::problem::ProblemFault;
 
+use crate::table::TableFault;
 use crate::units::QuantityFault;
 
 /// One fault of a case file, of a base file or of an override, in the user's words. Where it stands is kept beside it.
@@ -187,6 +188,9 @@ pub enum CaseFault {
         /// How it would be written.
         example: &'static str,
     },
+    /// A fault of a table to compare with.
+    #[error("{0}")]
+    Table(TableFault),
     /// Geometry or physics that cannot be.
     #[error("{0}")]
     Problem(ProblemFault),
@@ -211,6 +215,7 @@ impl CaseFault {
             Self::OverridePath { .. } => Some(
                 "a path is a table and a word, or a table, a part's name and a word: wall.sleeve.thickness".to_owned(),
             ),
+            Self::Table(fault) => fault.legal(),
             Self::Problem(fault) => fault.legal(),
             _ => None,
         }
@@ -238,6 +243,7 @@ impl CaseFault {
                 Some(format!("the {instead} differs by grade: name one, or give '{instead}' itself"))
             }
             Self::Clash { mend, .. } => Some(mend.clone()),
+            Self::Table(fault) => fault.mend(),
             Self::Problem(fault) => fault.mend(),
             _ => None,
         }

@@ -5,12 +5,15 @@
 mod alternating;
 mod alternating_across;
 mod axes;
+mod compared;
 mod curve;
 mod key;
 mod letters;
 #[cfg(test)]
 pub(crate) mod look;
+mod overlay;
 mod paper;
+mod residual;
 mod ribbon;
 mod scale;
 mod section;
@@ -24,8 +27,11 @@ mod units;
 
 pub use alternating::impedance;
 pub use alternating_across::current_across;
+pub use compared::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 pub use curve::curve;
+pub use overlay::overlay;
 pub use paper::{DOTS_PER_INCH, Picture};
+pub use residual::residual;
 pub use section::{drawing, section};
 pub use spread::spread;
 pub use travel::travel;

@@ -8,6 +8,7 @@
     reason = "made-up data for tests"
 )]
 
+use lenzbore_solver::comparison::Verdict;
 use lenzbore_solver::outcome::{
     Accuracies, Basis, Caution, DragCurve, DragPoint, Figure, Forces, GridReport, Ledger, Location, Outcome, Regime,
     Stop, Trace, WorkCounters,
@@ -18,6 +19,8 @@ use lenzbore_solver::problem::{
 use lenzbore_solver::sources::Source;
 use lenzbore_solver::spread::{FigureSpread, Input, Nominal, Reading, Response, Spread, plan_offsets, rank};
 use serde_json::{Map, json};
+
+use crate::picture::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 
 pub(crate) use super::demo_fields::fields;
 use super::header::{Program, ResultHeader};
@@ -272,4 +275,37 @@ pub(crate) fn study() -> Spread {
         .collect();
     let ranking = rank(&figures, 2);
     Spread { inputs, figures, ranking, monte_carlo: None, solutions: 12, cautions: Vec::new() }
+}
+
+/// A made-up comparison: a table that is right at low speed and too high at high speed.
+pub(crate) fn compared() -> ComparedPlot {
+    let point = |x: f64| {
+        let ours = COEFFICIENT * x / (1.0 + (x / CRITICAL).powi(2)) * 2.0;
+        let share = 0.03 + 0.02 * x;
+        let verdict = match share {
+            s if s < 0.045 => Verdict::Passes,
+            s if s < 0.07 => Verdict::Undecided,
+            _ => Verdict::FallsShort,
+        };
+        PlotPoint {
+            x,
+            table: ours * (1.0 + share),
+            table_half: 0.01 * ours,
+            ours,
+            ours_half: 0.02 * ours,
+            share,
+            share_half: 0.0224,
+            share_allowed: 0.06,
+            verdict,
+        }
+    };
+    let points = [0.1, 0.3, 1.0, 2.0, 5.0, 10.0, 20.0].map(point).to_vec();
+    ComparedPlot {
+        heading: "Latch damper".into(),
+        verdict: "falls short".into(),
+        x_name: "speed".into(),
+        x_unit: "m/s",
+        judged: (true, true),
+        panels: vec![PlotPanel { name: "drag".into(), unit: "N", curves: vec![PlotCurve { points }] }],
+    }
 }
