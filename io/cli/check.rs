@@ -19,12 +19,12 @@ pub fn run(words: &CheckWords) -> Result<(), End> {
     let case = job::read(&words.case)?;
     let mut plans: Vec<(&str, Problem, Forecast)> = Vec::new();
     if case.travel_given {
-        memory::require(&case.problem, None)?;
+        memory::require_of(&case, &case.problem, None)?;
         plans.push(("run", case.problem.clone(), forecast(&case.problem, None)?));
     }
     if let (Some(problem), Some(plan)) = (case.curve_problem(), &case.curve) {
         let speeds = Some(plan.speeds_m_per_s.as_slice());
-        memory::require(&problem, plan.speeds_m_per_s.last().copied())?;
+        memory::require_of(&case, &problem, plan.speeds_m_per_s.last().copied())?;
         let cost = forecast(&problem, speeds)?;
         plans.push(("curve", problem, cost));
     }
@@ -119,6 +119,8 @@ fn plan(text: &mut String, name: &str, problem: &Problem, cost: &Forecast) {
         (_, Travel::Steady { .. }) => "settled fields at uniform speed",
         (_, Travel::Traverse(_)) => "uniform speed through the whole wall",
         (_, Travel::Free(_)) => "equation of motion",
+        (_, Travel::Sine(_)) => "strokes to and fro, until they settle",
+        (_, Travel::Table(_)) => "motion from a table of positions",
         (_, Travel::Alternating(_)) => "coils at rest with alternating current",
     };
     let _ = writeln!(text, "\nlenzbore {name}: {law}");

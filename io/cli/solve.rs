@@ -115,7 +115,7 @@ fn answer(
             if !case.travel_given {
                 return Err(End::Input("the case has no [travel]; `lenzbore curve` sweeps its [curve]".to_owned()));
             }
-            memory::require(&case.problem, None)?;
+            memory::require_of(case, &case.problem, None)?;
             let outcome = solve(&case.problem, monitor)?;
             Ok((case.problem.clone(), outcome, Vec::new()))
         }
@@ -126,7 +126,7 @@ fn answer(
                         .to_owned(),
                 ));
             };
-            memory::require(&problem, plan.speeds_m_per_s.last().copied())?;
+            memory::require_of(case, &problem, plan.speeds_m_per_s.last().copied())?;
             let outcome = drag_curve(&problem, &plan.speeds_m_per_s, monitor)?;
             Ok((problem, outcome, plan.cautions.clone()))
         }

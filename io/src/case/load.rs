@@ -1,5 +1,6 @@
 //! Reads a case file and the files it starts from.
 
+use std::io::Read;
 use std::path::{Component, Path, PathBuf};
 
 use super::CaseSource;
@@ -112,10 +113,18 @@ pub(crate) fn text_of(path: &Path) -> Result<String, String> {
     if about.is_dir() {
         return Err("it is a folder".to_owned());
     }
+    let too_long = || format!("it is larger than {LARGEST_FILE_BYTES} bytes, too long for a case file");
     if about.len() > LARGEST_FILE_BYTES {
-        return Err(format!("it is larger than {LARGEST_FILE_BYTES} bytes, too long for a case file"));
+        return Err(too_long());
     }
-    std::fs::read_to_string(path).map_err(plain)
+    // A device or a pipe has no length of its own and may never end.
+    let mut bytes = Vec::new();
+    let file = std::fs::File::open(path).map_err(plain)?;
+    let read = file.take(LARGEST_FILE_BYTES + 1).read_to_end(&mut bytes).map_err(plain)?;
+    if u64::try_from(read).map_or(true, |read| read > LARGEST_FILE_BYTES) {
+        return Err(too_long());
+    }
+    String::from_utf8(bytes).map_err(|_| "it is not UTF-8 text".to_owned())
 }
 
 /// The same file under different spellings of its path.

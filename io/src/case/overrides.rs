@@ -119,6 +119,10 @@ fn below_table(words: &TableWords, rest: &[Segment], value: Node, case: &Table) 
         [word] if words.words.contains(&word.word.as_str()) && !words.lists.contains(&word.word.as_str()) => {
             Ok(leaf(word, value))
         }
+        [word] if words.lists.contains(&word.word.as_str()) => {
+            let why = "it is a list of parts; a word of one of them is set by its name";
+            Err(Some(Diagnostic::at(word.place.clone(), CaseFault::OverridePath { path: word.word.clone(), why })))
+        }
         [word] => Err(Some(unknown_word(word, words.path, words.label))),
         [list, name, word] if words.lists.contains(&list.word.as_str()) => {
             let list_word = list.word.clone();

@@ -5,7 +5,7 @@ use serde_json::{Map, Value as Json};
 
 use super::alternating::{is_asked, read_alternating};
 use super::curve::read_curve;
-use super::geometry::{Parts, place_faults};
+use super::geometry::{Parts, odd_sizes, place_faults};
 use super::load::Loaded;
 use super::mover::read_mover;
 use super::output::{read_accuracy, read_output};
@@ -97,6 +97,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
         whole_travel: travel.is_some(),
     };
     place_faults(reader, problem.faults(), &parts);
+    reader.cautions.extend(odd_sizes(&problem));
     if matches!(travel, Some(Travel::Traverse(_) | Travel::Free(_))) {
         let text =
             "currents in the mover's own conducting parts (a sintered magnet conducts about 1 % as well as copper)";
