@@ -30,6 +30,8 @@ pub enum Command {
     Run(SolveWords),
     /// Drag against speed, with settled fields in an endless wall
     Curve(SolveWords),
+    /// Simplified models one step at a time up to the field solution, and what each step is worth
+    Ladder(LadderWords),
     /// Holds a calculator's or a measurement's table against the field solution
     Compare(CompareWords),
     /// The material book, with the source of every number
@@ -100,6 +102,23 @@ pub struct SpreadWords {
     /// Seed of the random draws: the same gives the same draws
     #[arg(long, value_name = "S", default_value_t = 1, requires = "monte_carlo")]
     pub seed: u64,
+}
+
+/// `lenzbore ladder`.
+#[derive(Debug, Args)]
+pub struct LadderWords {
+    /// The case.
+    #[command(flatten)]
+    pub case: CaseWords,
+    /// Climbs for the drag-speed curve of [curve] instead of the travel
+    #[arg(long)]
+    pub curve: bool,
+    /// Result folder [default: out/ and the case file's stem with -ladder behind it]
+    #[arg(long, value_name = "FOLDER")]
+    pub out: Option<PathBuf>,
+    /// Puts the result in the place of an older one
+    #[arg(long)]
+    pub replace: bool,
 }
 
 /// `lenzbore compare`.

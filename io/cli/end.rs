@@ -7,8 +7,7 @@ use lenzbore_io::result::IoFault;
 use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
-const LATER: [&str; 10] = [
-    "ladder",
+const LATER: [&str; 9] = [
     "rerun",
     "report",
     "export",
@@ -20,7 +19,7 @@ const LATER: [&str; 10] = [
     "completions",
 ];
 /// Commands that are.
-const BUILT: [&str; 6] = ["new", "check", "run", "curve", "compare", "materials"];
+const BUILT: [&str; 7] = ["new", "check", "run", "curve", "ladder", "compare", "materials"];
 
 /// Why a command ended.
 #[derive(Debug)]

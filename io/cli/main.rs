@@ -8,6 +8,7 @@ mod check;
 mod compare;
 mod end;
 mod job;
+mod ladder;
 mod materials;
 mod memory;
 mod new;
@@ -31,6 +32,7 @@ fn main() -> ExitCode {
         Command::Check(words) => check::run(&words),
         Command::Run(words) => solve::run(&words, solve::Question::Travel),
         Command::Curve(words) => solve::run(&words, solve::Question::Curve),
+        Command::Ladder(words) => ladder::run(&words),
         Command::Compare(words) => compare::run(&words),
         Command::Materials(words) => materials::run(&words),
         Command::Unbuilt(words) => Err(End::unbuilt(&words)),

@@ -7,6 +7,7 @@ mod alternating_across;
 mod axes;
 mod compared;
 mod curve;
+mod error_map;
 mod key;
 mod letters;
 #[cfg(test)]
@@ -24,14 +25,17 @@ mod style;
 mod svg;
 mod travel;
 mod units;
+mod waterfall;
 
 pub use alternating::impedance;
 pub use alternating_across::current_across;
 pub use compared::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 pub use curve::curve;
+pub use error_map::error_map;
 pub use overlay::overlay;
 pub use paper::{DOTS_PER_INCH, Picture};
 pub use residual::residual;
 pub use section::{drawing, section};
 pub use spread::spread;
 pub use travel::travel;
+pub use waterfall::waterfall;

@@ -12,6 +12,8 @@ pub const FREQUENCY: &str = "frequency.csv";
 pub const ACROSS: &str = "across.csv";
 /// What each input makes of each figure.
 pub const SENSITIVITIES: &str = "sensitivities.csv";
+/// Figures at every rung of a ladder.
+pub const LADDER: &str = "ladder.csv";
 /// Grid, regions, snapshots, traces, figures of every level.
 pub const FIELDS: &str = "run.h5";
 /// Opens `run.h5` in a visualisation program.

@@ -75,7 +75,7 @@ impl Assumptions {
             WallModel::MeanRadius => "mean radius",
             WallModel::Thickness => "thickness integrated",
         };
-        if self == Self::DIPOLE_RULE {
+        if self.magnet == MagnetModel::LoneDipoles && self.wall == WallModel::FacingRadius {
             return "dipole rule for a thin tube, inner radius".to_owned();
         }
         match self.ends {

@@ -5,8 +5,11 @@ use super::outcome::{Cancelling, Rung, Step};
 
 /// An error counts as cancelled where the errors of both signs behind it are at least this large, relative to the top.
 const LARGE: f64 = 0.05;
-/// ... and it is no more than this share of the smaller of the two.
+/// ... and it is itself no larger than this, and no more than a share of the smaller of the two.
+const SMALL: f64 = 0.10;
 const SMALL_SHARE: f64 = 0.5;
+/// Causes below this are not named.
+const NEGLIGIBLE: f64 = 0.005;
 
 /// The steps of a figure over rungs that have it, in units of |top|; effects of rungs without it are taken along.
 pub(super) fn steps(rungs: &[&Rung], name: &str, top: f64) -> Vec<Step> {
@@ -36,7 +39,7 @@ pub(super) fn dominant(steps: &[Step]) -> Option<usize> {
 pub(super) fn cancelling(error: f64, causes: &[Step]) -> Option<Cancelling> {
     let (mut high_effects, mut low_effects) = (Vec::new(), Vec::new());
     let (mut high, mut low) = (0.0, 0.0);
-    for cause in causes {
+    for cause in causes.iter().filter(|c| c.worth.abs() >= NEGLIGIBLE) {
         // Leaving an effect out that lowers the figure makes it too high.
         if cause.worth < 0.0 {
             high -= cause.worth;
@@ -47,7 +50,7 @@ pub(super) fn cancelling(error: f64, causes: &[Step]) -> Option<Cancelling> {
         }
     }
     let smaller = f64::min(high, -low);
-    let cancels = smaller >= LARGE && error.abs() <= SMALL_SHARE * smaller;
+    let cancels = smaller >= LARGE && error.abs() <= SMALL.min(SMALL_SHARE * smaller);
     cancels.then_some(Cancelling { high_effects, high, low_effects, low })
 }
 

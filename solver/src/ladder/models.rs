@@ -36,14 +36,16 @@ impl Features {
     /// The same model in the form in which this case writes it.
     pub fn plain(self, mut assumptions: Assumptions) -> Assumptions {
         let finite = MagnetModel::Finite;
+        if !self.ends {
+            assumptions.ends = EndModel::Gradual;
+        }
+        // One magnet is alone in both dipole models: the rule keeps its name, the ring sum its own.
+        let only = if assumptions.ends == EndModel::Switched { MagnetModel::LoneDipoles } else { MagnetModel::Dipoles };
         match assumptions.magnet {
             MagnetModel::Dipoles if !self.sized => assumptions.magnet = finite,
             MagnetModel::LoneDipoles if !self.sized && !self.neighbours => assumptions.magnet = finite,
-            MagnetModel::LoneDipoles if !self.neighbours => assumptions.magnet = MagnetModel::Dipoles,
+            MagnetModel::LoneDipoles | MagnetModel::Dipoles if !self.neighbours => assumptions.magnet = only,
             _ => {}
-        }
-        if !self.ends {
-            assumptions.ends = EndModel::Gradual;
         }
         assumptions
     }
@@ -130,7 +132,7 @@ impl<'a> Answers<'a> {
                 };
                 Answer { assumptions, figures, travel: None }
             }
-            Travel::Traverse(_) | Travel::Free(_) | Travel::Alternating(_) => {
+            Travel::Traverse(_) | Travel::Free(_) | Travel::Sine(_) | Travel::Table(_) | Travel::Alternating(_) => {
                 let travel = model.travel(self.problem, monitor)?;
                 let mut figures = travel.figures.clone();
                 figures.push(at_rest);
