@@ -14,6 +14,7 @@ mod compare;
 mod examples;
 mod folders;
 mod interruption;
+mod materials;
 mod ladder;
 mod programs;
 mod rig;
