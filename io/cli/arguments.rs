@@ -34,6 +34,8 @@ pub enum Command {
     Ladder(LadderWords),
     /// Holds a calculator's or a measurement's table against the field solution
     Compare(CompareWords),
+    /// The published checks, each labelled code verification, cross-check or validation (experiment)
+    Validate(ValidateWords),
     /// The material book, with the source of every number
     Materials(MaterialsWords),
     /// A command that is not built yet, or none at all
@@ -156,6 +158,35 @@ pub enum Side {
     High,
     /// A table that says too little is dangerous
     Low,
+}
+
+/// `lenzbore validate`.
+#[derive(Debug, Args)]
+pub struct ValidateWords {
+    /// Names the checks, with kind and source, and runs none
+    #[arg(long, conflicts_with_all = ["coverage", "out", "json"])]
+    pub list: bool,
+    /// Runs this check; may be given again [default: all]
+    #[arg(long, value_name = "NAME")]
+    pub only: Vec<String>,
+    /// Holds the bands of cases drawn at random against the Fourier-Bessel integral, instead of the checks
+    #[arg(long, conflicts_with = "only")]
+    pub coverage: bool,
+    /// Cases drawn
+    #[arg(long, value_name = "N", default_value_t = 200, requires = "coverage", value_parser = clap::value_parser!(u32).range(20..=100_000))]
+    pub cases: u32,
+    /// Seed of the draws: the same gives the same cases
+    #[arg(long, value_name = "S", requires = "coverage")]
+    pub seed: Option<u64>,
+    /// Prints one JSON object on standard output instead of text
+    #[arg(long)]
+    pub json: bool,
+    /// Also writes Markdown, JSON, one HTML page and pictures into this folder
+    #[arg(long, value_name = "FOLDER")]
+    pub out: Option<PathBuf>,
+    /// Puts the result in the place of an older one
+    #[arg(long, requires = "out")]
+    pub replace: bool,
 }
 
 /// `lenzbore materials`.

@@ -7,19 +7,9 @@ use lenzbore_io::result::IoFault;
 use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
-const LATER: [&str; 9] = [
-    "rerun",
-    "report",
-    "export",
-    "sweep",
-    "identify",
-    "validate",
-    "schema",
-    "explain",
-    "completions",
-];
+const LATER: [&str; 8] = ["rerun", "report", "export", "sweep", "identify", "schema", "explain", "completions"];
 /// Commands that are.
-const BUILT: [&str; 7] = ["new", "check", "run", "curve", "ladder", "compare", "materials"];
+const BUILT: [&str; 8] = ["new", "check", "run", "curve", "ladder", "compare", "validate", "materials"];
 
 /// Why a command ended.
 #[derive(Debug)]

@@ -17,6 +17,7 @@ mod say;
 mod sketch;
 mod solve;
 mod spread;
+mod validate;
 
 use std::process::ExitCode;
 
@@ -34,6 +35,7 @@ fn main() -> ExitCode {
         Command::Curve(words) => solve::run(&words, solve::Question::Curve),
         Command::Ladder(words) => ladder::run(&words),
         Command::Compare(words) => compare::run(&words),
+        Command::Validate(words) => validate::run(&words),
         Command::Materials(words) => materials::run(&words),
         Command::Unbuilt(words) => Err(End::unbuilt(&words)),
     };

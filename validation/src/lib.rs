@@ -10,8 +10,11 @@ pub mod checks;
 pub mod diffusion;
 pub mod endless;
 mod error;
+pub mod grid_convergence;
 pub mod quadrature;
 pub mod references;
+pub mod report;
+mod side_by_side;
 
 pub use error::Error;
 pub use lenzbore_solver::rings::{self, loops as elliptic};

@@ -13,6 +13,8 @@ pub(super) enum Swatch {
     Ribbon(Stroke),
     /// A ring.
     Ring(&'static str),
+    /// A filled dot.
+    Dot(&'static str),
     /// A filled patch.
     Patch(&'static str),
     /// Nothing: a remark.
@@ -72,6 +74,7 @@ fn draw_swatch(svg: &mut Svg, swatch: Swatch, left: f64, y: f64) {
             let stroke = Some(Stroke::full(colour, 3.0));
             svg.circle((0.5 * (left + right), y), 8.0, "#ffffff", stroke);
         }
+        Swatch::Dot(colour) => svg.circle((0.5 * (left + right), y), 5.5, colour, None),
         Swatch::Patch(colour) => svg.rectangle(left, y - 9.0, right, y + 9.0, colour, None),
         Swatch::None => {}
     }

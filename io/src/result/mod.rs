@@ -12,7 +12,7 @@ mod hdf5;
 mod header;
 mod ladder;
 mod ladder_write;
-mod names;
+pub mod names;
 mod series;
 mod spread;
 mod summary;

@@ -18,6 +18,10 @@ pub const LADDER: &str = "ladder.csv";
 pub const FIELDS: &str = "run.h5";
 /// Opens `run.h5` in a visualisation program.
 pub const FIELDS_INDEX: &str = "run.xdmf";
+/// Every comparison of the published checks.
+pub const VALIDATION: &str = "validation.json";
+/// The study of the bands.
+pub const COVERAGE: &str = "coverage.json";
 
 /// Files by any of which a folder is known as a run's result.
-pub const RESULT_MARKS: [&str; 4] = [SUMMARY, TRACE, CURVE, FIELDS];
+pub const RESULT_MARKS: [&str; 6] = [SUMMARY, TRACE, CURVE, FIELDS, VALIDATION, COVERAGE];

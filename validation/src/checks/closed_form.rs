@@ -3,9 +3,10 @@
 use std::f64::consts::PI;
 
 use lenzbore_solver::constants::MU0;
+use lenzbore_solver::monitor::Monitor;
 
 use super::{Check, Kind, Verdict};
-use crate::references::{half_decimal, half_figure, loops, nagaoka};
+use crate::references::{coil_inductance, half_decimal, half_figure, loops, nagaoka};
 use crate::rings::self_inductance;
 use crate::{Error, elliptic};
 
@@ -24,10 +25,26 @@ pub(super) const CHECKS: &[Check] = &[
         source: &nagaoka::SOURCE,
         run: thin_rings,
     },
+    Check {
+        name: "coil-inductance",
+        about: "self-inductance of a coil of rectangular section, as one turn of it times the turns squared",
+        kind: Kind::CodeVerification,
+        source: &coil_inductance::SOURCE,
+        run: coil,
+    },
 ];
 
+fn coil(_: &dyn Monitor) -> Result<Verdict, Error> {
+    let turns = coil_inductance::TURNS;
+    let found = 1e6 * turns * turns * self_inductance(coil_inductance::RADII_M, coil_inductance::LENGTH_M);
+    let expected = coil_inductance::INDUCTANCE_UH;
+    let mut verdict = Verdict::default();
+    verdict.compare("self-inductance", found, expected, 1e-8 * expected, "uH");
+    Ok(verdict)
+}
+
 /// The thickness of the ring comes in at first order: taken out over two thicknesses.
-fn thin_rings() -> Result<Verdict, Error> {
+fn thin_rings(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     for (ratio, coefficient) in nagaoka::TABLE {
         let length = 2.0 / ratio;
@@ -39,7 +56,7 @@ fn thin_rings() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn pairs() -> Result<Verdict, Error> {
+fn pairs(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     for pair in loops::TABLE {
         let what = format!("loops {} and {} m, {} m apart", pair.a_m, pair.b_m, pair.height_m);

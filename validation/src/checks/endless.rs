@@ -1,6 +1,7 @@
 //! The Fourier-Bessel path against tables computed elsewhere.
 
 use lenzbore_solver::constants::MU0;
+use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::problem::{Mover, Wall};
 
 use super::{Check, Kind, Verdict};
@@ -15,7 +16,7 @@ const fn check(
     name: &'static str,
     about: &'static str,
     source: &'static Source,
-    run: fn() -> Result<Verdict, Error>,
+    run: fn(&dyn Monitor) -> Result<Verdict, Error>,
 ) -> Check {
     Check { name, about, kind: Kind::CodeVerification, source, run }
 }
@@ -66,7 +67,7 @@ pub(super) const CHECKS: &[Check] = &[
     ),
 ];
 
-fn dipole() -> Result<Verdict, Error> {
+fn dipole(_: &dyn Monitor) -> Result<Verdict, Error> {
     let wall = cases::endless_tube(dipole_drag::WALL_M, dipole_drag::CONDUCTIVITY_S_PER_M, 1.0);
     let mover = cases::dipole(dipole_drag::MOMENT_A_M2);
     let mut verdict = Verdict::default();
@@ -81,7 +82,7 @@ fn mm(pair: (f64, f64)) -> (f64, f64) {
     (1e-3 * pair.0, 1e-3 * pair.1)
 }
 
-fn cylinders() -> Result<Verdict, Error> {
+fn cylinders(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     for line in cylinder_damping::TABLE {
         let wall = cases::endless_tube(mm(line.wall_mm), cylinder_damping::CONDUCTIVITY_S_PER_M, 1.0);
@@ -93,7 +94,7 @@ fn cylinders() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn dipole_coefficient() -> Result<Verdict, Error> {
+fn dipole_coefficient(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     for line in cylinder_damping::TABLE {
         let wall = cases::endless_tube(mm(line.wall_mm), cylinder_damping::CONDUCTIVITY_S_PER_M, 1.0);
@@ -106,7 +107,7 @@ fn dipole_coefficient() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn stack_coefficients() -> Result<Verdict, Error> {
+fn stack_coefficients(_: &dyn Monitor) -> Result<Verdict, Error> {
     let wall = cases::endless_tube(magnet_speed::WALL_M, magnet_speed::CONDUCTIVITY_S_PER_M, 1.0);
     let mut verdict = Verdict::default();
     for stack in stacks::TABLE {
@@ -123,7 +124,7 @@ fn stack_coefficients() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn speeds() -> Result<Verdict, Error> {
+fn speeds(_: &dyn Monitor) -> Result<Verdict, Error> {
     let wall = cases::endless_tube(magnet_speed::WALL_M, magnet_speed::CONDUCTIVITY_S_PER_M, 1.0);
     let mover = cases::cylinder(magnet_speed::RADIUS_M, magnet_speed::LENGTH_M, magnet_speed::REMANENCE_T);
     let mut verdict = Verdict::default();
@@ -136,7 +137,7 @@ fn speeds() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn permeable() -> Result<Verdict, Error> {
+fn permeable(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mover = cases::cylinder(permeable_tube::RADIUS_M, permeable_tube::LENGTH_M, permeable_tube::REMANENCE_T);
     let mut verdict = Verdict::default();
     for (column, mu) in permeable_tube::PERMEABILITIES.into_iter().enumerate() {
@@ -160,7 +161,7 @@ fn thin(loss: f64, ratio: f64) -> Result<f64, Error> {
     Ok(endless::drag(&wall, &mover, speed)?.value * a.powi(4) / (MU0 * moment * moment))
 }
 
-fn universal() -> Result<Verdict, Error> {
+fn universal(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     for (loss, drag) in thin_wall::CURVE {
         // The thickness comes in at first order: taken out over two thicknesses.
@@ -173,7 +174,7 @@ fn universal() -> Result<Verdict, Error> {
     Ok(verdict)
 }
 
-fn loop_field() -> Result<Verdict, Error> {
+fn loop_field(_: &dyn Monitor) -> Result<Verdict, Error> {
     let mut verdict = Verdict::default();
     let tables = [
         (moving_loop::INSIDE_RADIUS_M, moving_loop::INSIDE, moving_loop::INSIDE_ERROR_UT),

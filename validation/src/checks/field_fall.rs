@@ -1,6 +1,6 @@
 //! The field solver's fall against the coupled rings, at default settings.
 
-use lenzbore_solver::monitor::Unwatched;
+use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::outcome::Outcome;
 use lenzbore_solver::problem::Travel;
 
@@ -17,9 +17,9 @@ pub(super) const CHECKS: &[Check] = &[Check {
     run: fall,
 }];
 
-fn fall() -> Result<Verdict, Error> {
+fn fall(monitor: &dyn Monitor) -> Result<Verdict, Error> {
     let (wall, mover, law) = fall_case();
-    let outcome = lenzbore_solver::solve(&cases::question(wall, mover, Travel::Free(law)), &Unwatched)?;
+    let outcome = lenzbore_solver::solve(&cases::question(wall, mover, Travel::Free(law)), monitor)?;
     let mut verdict = Verdict::default();
     let transit = figure(&outcome, "transit_time")?;
     verdict.compare("transit time", transit.value, reference::TRANSIT_S, reference::TRANSIT_TOLERANCE_S, "s");

@@ -1,6 +1,6 @@
 //! The field solver's passage through a finite wall against the coupled rings, at default settings.
 
-use lenzbore_solver::monitor::Unwatched;
+use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::problem::{Travel, Traverse};
 
 use super::field_fall::figure;
@@ -17,7 +17,7 @@ pub(super) const CHECKS: &[Check] = &[Check {
     run: passage,
 }];
 
-fn passage() -> Result<Verdict, Error> {
+fn passage(monitor: &dyn Monitor) -> Result<Verdict, Error> {
     let wall = cases::finite_tube(reference::WALL_M, reference::WALL_LENGTH_M, reference::CONDUCTIVITY_S_PER_M);
     let mover = cases::cylinder(reference::MAGNET_M.0, reference::MAGNET_M.1, reference::REMANENCE_T);
     let (from_m, to_m) = reference::TRAVEL_M;
@@ -34,7 +34,7 @@ fn passage() -> Result<Verdict, Error> {
         found[2].push(passage.heat_joule + passage.field_energy_joule);
     }
     let problem = cases::question(wall, mover, Travel::Traverse(travel));
-    let outcome = lenzbore_solver::solve(&problem, &Unwatched)?;
+    let outcome = lenzbore_solver::solve(&problem, monitor)?;
     let mut verdict = Verdict::default();
     let names = [("drag_peak", "N"), ("impulse", "N s"), ("dissipated_energy", "J")];
     for ((name, unit), values) in names.into_iter().zip(found) {

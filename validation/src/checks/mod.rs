@@ -5,21 +5,29 @@
 
 mod closed_form;
 mod endless;
+mod experiment;
 mod field;
 mod field_coverage;
 mod field_fall;
+mod field_loop;
 mod field_passage;
+mod grid_index;
+mod harmonic;
 mod rings;
 mod sources;
+mod sphere;
+mod step;
 mod verdict;
 
-pub use field_coverage::Coverage;
-pub use verdict::{Banded, Comparison, Limits, Verdict};
+pub use field_coverage::{COVERAGE_SEED, Coverage};
+pub use verdict::{Banded, Comparison, Limits, Series, Verdict};
+
+use lenzbore_solver::monitor::Monitor;
 
 use crate::Error;
 use crate::references::Source;
 
-/// What a check is evidence for.
+/// What a check is evidence for, in the words of ASME V&V 10 and V&V 20.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Kind {
     /// The equations are solved right: against an exact solution of the same equations.
@@ -53,8 +61,8 @@ pub struct Check {
     pub kind: Kind,
     /// Where the values come from.
     pub source: &'static Source,
-    /// Runs it.
-    pub run: fn() -> Result<Verdict, Error>,
+    /// Runs it; the monitor may ask it to stop.
+    pub run: fn(&dyn Monitor) -> Result<Verdict, Error>,
 }
 
 /// All checks, those of the independent methods first.
@@ -65,10 +73,16 @@ pub fn all() -> Vec<Check> {
         sources::CHECKS,
         endless::CHECKS,
         rings::CHECKS,
+        grid_index::CHECKS,
+        step::CHECKS,
+        sphere::CHECKS,
         field::CHECKS,
+        field_loop::CHECKS,
         field_coverage::CHECKS,
         field_passage::CHECKS,
         field_fall::CHECKS,
+        harmonic::CHECKS,
+        experiment::CHECKS,
     ];
     groups.concat()
 }

@@ -1,5 +1,6 @@
 //! The ring circuit against the integral, and the fall that it decides.
 
+use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::problem::{Free, Mover, Traverse, Wall};
 
 use super::{Check, Kind, Verdict};
@@ -33,7 +34,7 @@ const CUTTINGS: [Cutting; 3] = [
 /// Their sizes relative to the first.
 const SIZES: [f64; 3] = [1.0, 1.0 / 1.5, 0.5];
 
-fn long_wall() -> Result<Verdict, Error> {
+fn long_wall(_: &dyn Monitor) -> Result<Verdict, Error> {
     let length = 0.24;
     let wall = cases::finite_tube(magnet_speed::WALL_M, length, magnet_speed::CONDUCTIVITY_S_PER_M);
     let endless_wall = cases::endless_tube(magnet_speed::WALL_M, magnet_speed::CONDUCTIVITY_S_PER_M, 1.0);
@@ -73,7 +74,7 @@ pub(super) fn fall_case() -> (Wall, Mover, Free) {
     (wall, mover, cases::free_fall(release, -reference::RELEASE_ABOVE_M, [reference::WALL_LENGTH_M, 0.0]))
 }
 
-fn fall() -> Result<Verdict, Error> {
+fn fall(_: &dyn Monitor) -> Result<Verdict, Error> {
     let (wall, mover, law) = fall_case();
     let (mut transits, mut speeds, mut ledger) = (Vec::new(), Vec::new(), 0.0_f64);
     for cutting in CUTTINGS {

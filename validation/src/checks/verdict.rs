@@ -28,6 +28,14 @@ impl Comparison {
         self.found - self.expected
     }
 
+    /// Difference over what is allowed, and over the band that must hold it where there is one: above 1 it falls short.
+    #[must_use]
+    pub fn shares(&self) -> (f64, Option<f64>) {
+        let off = self.difference().abs();
+        let share = |limit: f64| if off <= 0.0 { 0.0 } else { off / limit };
+        (share(self.allowed), self.band.map(|band| share(band + self.known_within)))
+    }
+
     /// Within tolerance, and the reference inside the band where there is one.
     #[must_use]
     pub fn passes(&self) -> bool {
@@ -53,6 +61,17 @@ impl fmt::Display for Comparison {
 pub struct Verdict {
     /// In order.
     pub comparisons: Vec<Comparison>,
+    /// What a picture of the check shows.
+    pub series: Vec<Series>,
+}
+
+/// A line of a picture.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Series {
+    /// What it is.
+    pub name: String,
+    /// Its points.
+    pub points: Vec<(f64, f64)>,
 }
 
 impl Verdict {
@@ -60,6 +79,17 @@ impl Verdict {
     #[must_use]
     pub fn passed(&self) -> bool {
         !self.comparisons.is_empty() && self.comparisons.iter().all(Comparison::passes)
+    }
+
+    /// The comparison that comes nearest to falling short, or falls short farthest; a value that is no number above all.
+    #[must_use]
+    pub fn worst(&self) -> Option<&Comparison> {
+        let share = |c: &&Comparison| {
+            let (of_allowed, of_band) = c.shares();
+            let worst = of_allowed.max(of_band.unwrap_or(0.0));
+            if c.difference().is_nan() { f64::INFINITY } else { worst }
+        };
+        self.comparisons.iter().max_by(|a, b| share(a).total_cmp(&share(b)))
     }
 
     /// Adds a comparison without a band.
@@ -113,5 +143,29 @@ impl fmt::Display for Verdict {
             writeln!(f, "{comparison}")?;
         }
         Ok(())
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used, reason = "tests may stop at the first fault")]
+
+    use super::*;
+
+    #[test]
+    fn the_worst_is_found_whatever_its_limit() {
+        let mut verdict = Verdict::default();
+        assert!(!verdict.passed() && verdict.worst().is_none());
+        verdict.compare("near", 1.001, 1.0, 0.01, "1");
+        verdict.compare("exact", 1.0, 1.0, 0.0, "1");
+        assert!(verdict.passed());
+        assert_eq!(verdict.worst().unwrap().what, "near");
+        let limits = Limits { allowed: 0.01, known_within: 1e-9 };
+        verdict.compare_banded("band", Banded { value: 1.001, band: 1e-4 }, 1.0, limits, "1");
+        assert_eq!(verdict.worst().unwrap().what, "band");
+        assert!(!verdict.passed(), "the band does not hold the reference");
+        verdict.compare("no number", f64::NAN, 1.0, 1.0, "1");
+        assert_eq!(verdict.worst().unwrap().what, "no number");
+        assert!(!verdict.worst().unwrap().passes());
     }
 }

@@ -4,10 +4,12 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Partovi, Morris 2006",
     citation: "Resistive limit of M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271 (2006); dipole and wall thickness: \
                G. Donoso, C. L. Ladera, P. Martin, \"Magnet fall inside a conductive pipe: motion and the role of the pipe wall thickness\", \
                European Journal of Physics 30, 855-869 (2009)",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the sixth decimal, N s/m",
     tolerance: "the last of six printed decimals",
 };
 

@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Maxwell 1873, coupled rings",
     citation: "Coupled rings: each ring of the wall a circuit with its resistance, self and mutual inductances (J. C. Maxwell, A Treatise on \
                Electricity and Magnetism, art. 701), and the equation of motion",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "2e-4 s and 1e-4 m/s, the spread of two independent methods; refined by rings to 2e-7 s and 1.5e-7 m/s",
     tolerance: "2e-4 s and 1e-4 m/s: the spread of two independent methods, rings and a prototype of a field solution",
 };
 

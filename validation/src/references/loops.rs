@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Maxwell 1873",
     citation: "J. C. Maxwell, A Treatise on Electricity and Magnetism, art. 701; NIST Digital Library of Mathematical Functions, section 19.34. \
                First line: worked example of E. B. Rosa, F. W. Grover, Bulletin of the Bureau of Standards 8, 1-237 (1912), from memory",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the eighth decimal of M in nH, of the ninth figure of dM/dh",
     tolerance: "the last printed figure: the closed form is exact",
 };
 

@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Maxwell 1873",
     citation: "Two current sheets, by the mutual inductance of coaxial loops (J. C. Maxwell, A Treatise on Electricity and Magnetism, art. 701) \
                integrated over both lengths",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the ninth decimal",
     tolerance: "the last of nine printed decimals",
 };
 

@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Partovi, Morris 2006",
     citation: "M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271 (2006), DOI 10.1139/P06-065: integral over the axial \
                wavenumber for a uniformly magnetised cylinder",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the sixth decimal, N",
     tolerance: "the last of six printed decimals",
 };
 

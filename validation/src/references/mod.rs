@@ -3,9 +3,14 @@
 //! Every table says how its values were obtained. Most of the formulas are published without numbers; the numbers were then
 //! computed independently of this program, in another language and with other quadratures, from the formula cited.
 
+pub mod coil_inductance;
+pub mod coil_impedance;
 pub mod cylinder_damping;
 pub mod dipole_drag;
 pub mod fall;
+pub mod falling_magnet;
+pub mod grid_index;
+pub mod hollow_sphere;
 pub mod integral;
 pub mod loops;
 pub mod magnet_force;
@@ -14,9 +19,14 @@ pub mod moving_loop;
 pub mod nagaoka;
 pub mod passage;
 pub mod permeable_tube;
+pub mod rod_alternating;
 pub mod solenoid;
+pub mod sphere_alternating;
 pub mod stacks;
+pub mod step_rod;
+pub mod step_tube;
 pub mod thin_wall;
+pub mod tube_alternating;
 
 /// How the numbers of a table came about.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -44,10 +54,14 @@ impl Obtained {
 /// Where a table comes from and how far it can be trusted.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub struct Source {
+    /// Author and year, for a column of a table.
+    pub short: &'static str,
     /// Authors, title, journal, year; section, equation or table.
     pub citation: &'static str,
     /// How the numbers were obtained.
     pub obtained: Obtained,
+    /// How well they are known.
+    pub uncertainty: &'static str,
     /// What a comparison may differ by, and why.
     pub tolerance: &'static str,
 }

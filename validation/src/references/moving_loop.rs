@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "after Ida 1990",
     citation: "Problem after N. Ida, \"Velocity effects and low level fields in axisymmetric geometries (Problem 9)\", COMPEL 9(3), 169-180 (1990). \
                Its sizes are from memory and its printed results were not at hand: the case is a case of its own, solved exactly",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the fifth figure; on the inner line 2e-4 uT besides, the quadrature error of the table",
     tolerance: "half of the last of five printed figures; on the inner line 2e-4 uT besides (1e-6 of the peak), the quadrature error of the \
                 table: its rows at rest differ by 2e-5 uT from the closed form of a loop",
 };

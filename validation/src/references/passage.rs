@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Maxwell 1873, coupled rings",
     citation: "Coupled rings (J. C. Maxwell, A Treatise on Electricity and Magnetism, art. 701), cut ever finer and extrapolated in even \
                powers of their size",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "what the last extrapolation of the rings moved the figure by, about 2e-6 of it",
     tolerance: "5e-5, and the band; the rings are known to what the last extrapolation moved them by, 2e-6",
 };
 

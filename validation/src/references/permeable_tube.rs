@@ -4,9 +4,11 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Partovi, Morris 2006",
     citation: "M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271 (2006), DOI 10.1139/P06-065, with the permeability of the \
                wall in the interface conditions; cross-checked by an independent one-dimensional finite-element solution in r",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "one unit of the seventh figure",
     tolerance: "one unit of the last of seven figures: some are cut, not rounded",
 };
 

@@ -4,8 +4,10 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Derby, Olbert 2010",
     citation: "N. Derby, S. Olbert, \"Cylindrical magnets and ideal solenoids\", American Journal of Physics 78, 229 (2010), arXiv:0909.3880",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the twelfth decimal",
     tolerance: "one unit of the last of twelve printed decimals: two of them are cut, not rounded (checked in 25-digit arithmetic)",
 };
 

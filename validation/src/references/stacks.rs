@@ -4,8 +4,10 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Partovi, Morris 2006",
     citation: "Resistive limit of M. H. Partovi, E. J. Morris, Canadian Journal of Physics 84, 253-271 (2006), magnets superposed with signs",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the sixth decimal, N s/m",
     tolerance: "the last of six printed decimals",
 };
 

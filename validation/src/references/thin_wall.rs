@@ -4,10 +4,12 @@ use super::{Obtained, Source};
 
 /// Where the values come from.
 pub const SOURCE: Source = Source {
+    short: "Saslow 1992",
     citation: "W. M. Saslow, \"Maxwell's theory of eddy currents in thin conducting sheets, and applications to electromagnetic shielding \
                and MAGLEV\", American Journal of Physics 60, 693-711 (1992), title from memory; sheet condition with one loss parameter \
                V = mu0 sigma w v",
     obtained: Obtained::ComputedIndependently,
+    uncertainty: "half of the seventh figure",
     tolerance: "the last of seven printed figures",
 };
 
@@ -28,6 +30,9 @@ pub const CURVE: [(f64, f64); 14] = [
     (50.0, 0.007344778),
     (100.0, 0.003739583),
 ];
+
+/// V and f of the greatest drag; V to four decimals.
+pub const GREATEST: (f64, f64) = (2.6932, 0.05601025);
 
 /// Significant figures of f.
 pub const FIGURES: i32 = 7;
