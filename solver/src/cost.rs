@@ -279,12 +279,15 @@ impl LevelSize {
 /// Steps and back-solves of a march on one level.
 fn march_work(problem: &Problem, plan: &GridPlan, f: f64) -> (f64, f64) {
     // Free motion takes v dt <= h and a ladder of powers of two; where the speed is held, v dt = h / 2.
+    let pull = if problem.wall.is_permeable() { 1.0 } else { 0.0 };
+    if let Some(steps) = march::prescribed_steps(problem, plan) {
+        return (f * steps, f * steps * (1.0 + pull));
+    }
     let (distance, strides_a_cell, columns) = match &problem.travel {
         Travel::Traverse(t) => ((t.to_m - t.from_m).abs(), 2.0, 1.0),
         Travel::Free(law) => ((law.until_m - law.release_m).abs(), 1.45, 2.0),
-        Travel::Steady { .. } | Travel::Alternating(_) => (0.0, 0.0, 0.0),
+        Travel::Steady { .. } | Travel::Sine(_) | Travel::Table(_) | Travel::Alternating(_) => (0.0, 0.0, 0.0),
     };
-    let pull = if problem.wall.is_permeable() { 1.0 } else { 0.0 };
     let steps = f * strides_a_cell * distance / plan.axial_cell_m;
     (steps, steps * (columns + pull))
 }
@@ -301,11 +304,15 @@ fn snapshots(problem: &Problem) -> f64 {
     let distance = match &problem.travel {
         Travel::Traverse(t) => (t.to_m - t.from_m).abs(),
         Travel::Free(law) => (law.until_m - law.release_m).abs(),
+        Travel::Sine(sine) => 4.0 * sine.amplitude_m,
+        Travel::Table(table) => table.position_m.windows(2).map(|z| (z[1] - z[0]).abs()).sum(),
         Travel::Steady { .. } | Travel::Alternating(_) => 0.0,
     };
     let time = match &problem.travel {
         Travel::Traverse(t) => distance / t.speed_m_per_s,
         Travel::Free(law) => law.time_limit_s,
+        Travel::Sine(sine) => sine.period_s(),
+        Travel::Table(table) => table.time_s.last().zip(table.time_s.first()).map_or(0.0, |(end, start)| end - start),
         Travel::Steady { .. } | Travel::Alternating(_) => 0.0,
     };
     match &problem.snapshots {

@@ -62,7 +62,7 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
             require_endless(problem)?;
             settled::steady(problem, *velocity_m_per_s, monitor)
         }
-        Travel::Traverse(_) | Travel::Free(_) => {
+        Travel::Traverse(_) | Travel::Free(_) | Travel::Sine(_) | Travel::Table(_) => {
             require_finite(problem)?;
             march::march(problem, monitor)
         }
@@ -79,6 +79,21 @@ pub fn drag_curve(problem: &Problem, speeds_m_per_s: &[f64], monitor: &dyn Monit
     settled::curve(problem, speeds_m_per_s, monitor)
 }
 
+/// Stiffness and damping coefficient of strokes of vanishing amplitude about `centre_m`, m, in a finite wall, at each of `frequencies_hz`;
+/// the static pull of a permeable wall is left out.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn small_strokes(
+    problem: &Problem,
+    centre_m: f64,
+    frequencies_hz: &[f64],
+    monitor: &dyn Monitor,
+) -> Result<Vec<outcome::SmallStroke>, SolveFault> {
+    require_finite(problem)?;
+    march::small_strokes(problem, centre_m, frequencies_hz, monitor)
+}
+
 fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
     match problem.wall.extent {
         Extent::Endless => Ok(()),
@@ -91,6 +106,6 @@ fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
 fn require_finite(problem: &Problem) -> Result<(), SolveFault> {
     match problem.wall.extent {
         Extent::Finite { .. } => Ok(()),
-        Extent::Endless => Err(SolveFault::Unsuited("traverse and free need the wall's length")),
+        Extent::Endless => Err(SolveFault::Unsuited("a motion in time needs the wall's length")),
     }
 }

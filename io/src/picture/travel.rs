@@ -226,7 +226,11 @@ fn sense(trace: &Trace) -> &'static str {
 fn gates(problem: &Problem) -> Vec<(f64, &'static str)> {
     match &problem.travel {
         Travel::Free(free) => vec![(free.gates_m[0], "gate 1"), (free.gates_m[1], "gate 2")],
-        Travel::Steady { .. } | Travel::Traverse(_) | Travel::Alternating(_) => Vec::new(),
+        Travel::Steady { .. }
+        | Travel::Traverse(_)
+        | Travel::Sine(_)
+        | Travel::Table(_)
+        | Travel::Alternating(_) => Vec::new(),
     }
 }
 

@@ -36,10 +36,19 @@ pub(super) fn answer(
     let alone = inductance(&problem.mover, law.current_ampere);
     let points: Vec<Point> = (0..law.frequencies_hz.len()).map(|k| point(&levels, k, alone)).collect();
     let mut cautions = cautions(problem, law);
+    let target = problem.accuracy.target_relative;
     for p in &points {
-        let at = |name: &str| format!("{name} at {} Hz", p.point.frequency_hz);
-        cautions.extend(band::order_caution(&at("resistance_change"), &p.resistance));
-        cautions.extend(band::order_caution(&at("reactance_change"), &p.reactance));
+        let (dr, dx) = (p.point.resistance_change, p.point.reactance_change);
+        let whole = dr.value.hypot(dx.value);
+        // Levels that agree far within the target may come together in any order.
+        let slow = [
+            ("resistance_change", &p.resistance, dr.band > target * dr.value.abs()),
+            ("reactance_change", &p.reactance, dx.band > target * whole),
+        ];
+        for (name, ladder, wide) in slow {
+            let caution = band::order_caution(&format!("{name} at {:.6e} Hz", p.point.frequency_hz), ladder);
+            cautions.extend(caution.filter(|_| wide));
+        }
     }
     let mut figures = vec![closed("inductance_alone", "H", alone.value, alone.band)];
     let mut ledger = None;

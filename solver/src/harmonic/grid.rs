@@ -1,6 +1,6 @@
 //! The grid for coils at rest: the rules of `grid_rules.rs` with the skin depth delta = sqrt(2 / (omega mu sigma)) in the place of the wake's.
 //!
-//! - across: as there, h(face) = min(w/4, delta/4, lambda/8);
+//! - across: as there, h(face) = min(w/4, delta/4, lambda/8), and at most delta/2 within a layer up to 8 delta thick;
 //! - along: breakpoints at the coils' ends with h = gap/2 there (gap/4 for permeable walls), at most a/8 (a/16 for permeable) to a distance a
 //!   beyond them and between ends less than 2 a apart; a long coil's middle, where its field hardly varies, is left coarser;
 //! - along, ends of layers: breakpoints with the same size, or delta/4 where that is less, growing with the distance from the coils;
@@ -13,7 +13,7 @@ use crate::grid_rules::{
     GROWTH, GridPlan, axial_cap, axial_size, depth, insert_apart, plan_r, rectangle, sorted_apart,
 };
 use crate::placement::Placement;
-use crate::problem::{Problem, Wall};
+use crate::problem::{Layer, Problem, Wall};
 
 /// Distance of the boundary in outer radii.
 const BOUNDARY: f64 = 400.0;
@@ -29,7 +29,7 @@ pub(super) fn plan(problem: &Problem, placement: &Placement, omega: f64) -> Resu
     let r_max = outer + BOUNDARY * outer;
     // delta = sqrt(2 lambda / (mu sigma v)) with v = lambda omega.
     let speed = placement.wavelength_m * omega;
-    let r = plan_r(problem, placement, speed, GROWTH, r_max)?;
+    let r = plan_r(&with_cells_in_depth(problem, omega), placement, speed, GROWTH, r_max)?;
     let reach = BOUNDARY * outer;
     let length = problem.wall.length_m();
     let low = length.map_or(placement.lowest_m, |_| placement.lowest_m.min(0.0));
@@ -45,9 +45,24 @@ pub(super) fn plan(problem: &Problem, placement: &Placement, omega: f64) -> Resu
     Ok(GridPlan::of_lines(r, z, rectangles(&problem.wall), half, size))
 }
 
+/// Least and greatest number of cells across a layer.
+const CELLS: (f64, f64) = (4.0, 16.0);
+
+/// `problem` with two cells a skin depth all through the layers, as far as that takes no more than 16: beyond eight depths nothing is left to
+/// resolve but at the faces. More where the case asks for more.
+fn with_cells_in_depth(problem: &Problem, omega: f64) -> Problem {
+    let depths = |l: &Layer| l.thickness_m() / depth(l, 1.0, omega);
+    let most = problem.wall.layers.iter().map(depths).fold(0.0, f64::max);
+    #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "clamped to 4 .. 16")]
+    let cells = (2.0 * most.ceil()).clamp(CELLS.0, CELLS.1) as usize;
+    let mut finer = problem.clone();
+    finer.accuracy.cells_across_wall = Some(problem.accuracy.cells_across_wall.unwrap_or(0).max(cells));
+    finer
+}
+
 /// Where each layer lies on the grid.
 fn rectangles(wall: &Wall) -> Vec<Rectangle> {
-    let ends = |l: &crate::problem::Layer| match wall.length_m() {
+    let ends = |l: &Layer| match wall.length_m() {
         None => (f64::NEG_INFINITY, f64::INFINITY),
         Some(_) => (l.from_m, l.to_m),
     };
@@ -61,7 +76,10 @@ fn along(problem: &Problem, placement: &Placement, size: f64, shallow: f64) -> (
     let mut points = Vec::new();
     if problem.wall.length_m().is_some() {
         points = sorted_apart(problem.wall.layers.iter().flat_map(|l| [l.from_m, l.to_m]).collect(), 0.0);
-        let away = |z: f64| spans.iter().map(|s| (s.0 - z).max(z - s.1).max(0.0)).fold(f64::INFINITY, f64::min);
+        // From the coils themselves, not from their ends: a wall that ends within a long coil has all of its field.
+        let coils = problem.mover.parts.iter().map(|p| (p.centre_m, 0.5 * p.outline.length_m));
+        let away =
+            |z: f64| coils.clone().map(|(c, half)| ((z - c).abs() - half).max(0.0)).fold(f64::INFINITY, f64::min);
         let grown = |z: f64| size.min(shallow) + FAR_GROWTH * (away(z) - placement.scale_m).max(0.0);
         law.anchors.extend(points.iter().map(|&position_m| Anchor { position_m, size_m: grown(position_m) }));
     }

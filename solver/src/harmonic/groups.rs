@@ -5,15 +5,15 @@ const WIDEST: f64 = 100.0;
 
 /// Angular frequencies that one recurrence serves, rad/s.
 #[derive(Debug, Clone, PartialEq)]
-pub(super) struct Group {
+pub(crate) struct Group {
     /// Lowest and highest.
-    pub(super) range: (f64, f64),
+    pub(crate) range: (f64, f64),
     /// Its shift: the geometric mean of both.
-    pub(super) shift: f64,
+    pub(crate) shift: f64,
 }
 
 /// Groups of equal ratio that cover `omegas` (positive, in any order).
-pub(super) fn groups(omegas: &[f64]) -> Vec<Group> {
+pub(crate) fn groups(omegas: &[f64]) -> Vec<Group> {
     let low = omegas.iter().copied().fold(f64::INFINITY, f64::min);
     let high = omegas.iter().copied().fold(0.0, f64::max);
     let ratio = high / low;
@@ -30,7 +30,7 @@ pub(super) fn groups(omegas: &[f64]) -> Vec<Group> {
 }
 
 /// The group that `omega` falls into.
-pub(super) fn group_of(groups: &[Group], omega: f64) -> usize {
+pub(crate) fn group_of(groups: &[Group], omega: f64) -> usize {
     groups.partition_point(|g| g.range.1 < omega).min(groups.len().saturating_sub(1))
 }
 

@@ -19,6 +19,9 @@ mod recurrence;
 mod search;
 mod shield;
 
+pub(crate) use groups::{Group, group_of, groups};
+pub(crate) use recurrence::Recurrence;
+
 use crate::fault::SolveFault;
 use crate::grid_rules::GridPlan;
 use crate::monitor::Monitor;
@@ -55,7 +58,7 @@ pub(crate) fn vectors(law: &Alternating) -> f64 {
         let slowest = pole(group.range.0).min(pole(group.range.1));
         1.0e12_f64.ln() / slowest
     };
-    groups::groups(&law.angular_frequencies()).into_iter().map(one).sum()
+    groups(&law.angular_frequencies()).into_iter().map(one).sum()
 }
 
 /// Sum of half axes of the ellipse with foci at -1 and 1 through the pole that the reaction at `omega` has, 0 .. 1/shift mapped to -1 .. 1:

@@ -25,7 +25,7 @@ const MOST_VECTORS: usize = 400;
 
 /// The tridiagonal problem, and the vectors at the wall's nodes.
 #[derive(Debug, Clone)]
-pub(super) struct Recurrence {
+pub(crate) struct Recurrence {
     /// s, rad/s.
     shift: f64,
     /// b_1, the norm of the start vector.
@@ -45,7 +45,7 @@ impl Recurrence {
     ///
     /// # Errors
     /// Interrupted; a solve that is not finite or leaves too large a residual; no convergence.
-    pub(super) fn new(
+    pub(crate) fn new(
         operators: &Operators,
         factor: &mut DirectFactor,
         flux: &[f64],
@@ -158,7 +158,7 @@ impl Recurrence {
     }
 
     /// psi_0^T G phi at `omega` from the tridiagonal problem alone: -i omega b_1^2 x_1.
-    pub(super) fn linked(&self, omega: f64) -> Complex64 {
+    pub(crate) fn linked(&self, omega: f64) -> Complex64 {
         let x = self.coefficients(omega).first().copied().unwrap_or(Complex64::ZERO);
         Complex64::new(0.0, -omega * self.first * self.first) * x
     }

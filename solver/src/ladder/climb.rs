@@ -226,7 +226,7 @@ fn speed_here(question: &Question<'_>, top: &Outcome) -> f64 {
         Travel::Steady { velocity_m_per_s } => velocity_m_per_s.abs(),
         Travel::Traverse(law) => law.speed_m_per_s,
         Travel::Alternating(_) => 0.0,
-        Travel::Free(_) => {
+        Travel::Free(_) | Travel::Sine(_) | Travel::Table(_) => {
             let drag = &top.trace.drag_newton;
             let greatest = (0..drag.len()).max_by(|&a, &b| drag[a].total_cmp(&drag[b]));
             greatest.and_then(|k| top.trace.velocity_m_per_s.get(k)).map_or(0.0, |v| v.abs())

@@ -80,7 +80,9 @@ fn travel(problem: &Problem, circuit: &RingCircuit, step: f64, monitor: &dyn Mon
             let (moments, stop, dissipated) = follow(circuit, &problem.mover, law, step, monitor)?;
             Ok(Path { instants: moments.iter().map(instant).collect(), stop, dissipated })
         }
-        Travel::Steady { .. } | Travel::Alternating(_) => Err(SolveFault::Unsuited("coupled rings need a passage")),
+        Travel::Steady { .. } | Travel::Sine(_) | Travel::Table(_) | Travel::Alternating(_) => {
+            Err(SolveFault::Unsuited("coupled rings need a passage"))
+        }
     }
 }
 

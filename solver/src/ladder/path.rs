@@ -80,7 +80,11 @@ impl Path {
                 add("deceleration_peak", "m/s2", peak(&|i| -i.acceleration * sense(i.v)).filter(|a| *a > 0.0));
                 add("felt_acceleration_peak", "1", peak(&|i| felt(law, i)));
             }
-            Travel::Traverse(_) | Travel::Steady { .. } | Travel::Alternating(_) => {
+            Travel::Traverse(_)
+            | Travel::Steady { .. }
+            | Travel::Sine(_)
+            | Travel::Table(_)
+            | Travel::Alternating(_) => {
                 add("drag_peak", "N", peak(&|i| i.drag));
                 add("impulse", "N s", Some(self.impulse()));
             }

@@ -33,6 +33,9 @@ impl RingSum {
         match &problem.travel {
             Travel::Traverse(law) => Ok(self.traverse(law, step).simulated(problem)),
             Travel::Free(law) => Ok(self.free(problem, law, step, monitor)?.simulated(problem)),
+            Travel::Sine(_) | Travel::Table(_) => {
+                Err(SolveFault::Unsuited("the ring models follow one passage, not a stroke or a motion from a table"))
+            }
             Travel::Steady { .. } | Travel::Alternating(_) => {
                 Err(SolveFault::Unsuited("uniform speed in an endless wall has no passage"))
             }

@@ -5,7 +5,7 @@ use lenzbore_mesh::Refinement;
 
 use super::answer::Journey;
 use super::run::Run;
-use crate::problem::{Problem, Travel};
+use crate::problem::{Problem, Sine, Travel};
 use crate::verification::cases::{fall, finite, layer, long_passage, magnet, problem};
 
 /// Steps before the count, and counted.
@@ -44,4 +44,12 @@ fn a_step_through_a_permeable_wall_allocates_nothing() {
     let wall = finite(0.1, vec![layer(11.0, 13.0, 6.0, 20.0)]);
     let mover = vec![magnet(0.0, 9.0, 12.0, 1.25, 0.0)];
     assert_eq!(allocations(&problem(wall, mover, Travel::Free(fall(110.0, -60.0, 100.0)), 3), 1e-3), 0);
+}
+
+#[test]
+fn a_step_of_a_stroke_allocates_nothing() {
+    let wall = finite(0.1, vec![layer(11.0, 13.0, 58.0, 1.0)]);
+    let mover = vec![magnet(0.0, 9.0, 12.0, 1.25, 0.0)];
+    let sine = Sine { centre_m: 0.05, amplitude_m: 5e-3, frequency_hz: 20.0, cycles: None };
+    assert_eq!(allocations(&problem(wall, mover, Travel::Sine(sine), 3), 1e-3), 0);
 }

@@ -3,11 +3,13 @@
 use lenzbore_mesh::{Refinement, Regions};
 
 use super::combine::{Margins, combine};
-use super::course::{Course, plan, reach, set_out};
+use super::course::{Course, HELD_STRIDE, plan, reach, set_out, windows};
+use super::cycles::Settling;
 use super::figures::{LevelFigure, end_of, level_figures};
 use super::level::MarchLevel;
 use super::lines::LevelLines;
 use super::motion::{Motion, potential_energy};
+use super::path::Path;
 use super::routes::Routes;
 use super::run::{Run, Share};
 use super::schedule::Schedule;
@@ -26,7 +28,7 @@ use crate::materials::Materials;
 use crate::monitor::{Monitor, Quiet};
 use crate::outcome::{Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Trace, WorkCounters};
 use crate::placement::Placement;
-use crate::problem::{Problem, SnapshotPlan};
+use crate::problem::{Problem, Sine, SnapshotPlan};
 use crate::regime::regime;
 use crate::target::{refine, verdict};
 
@@ -53,7 +55,7 @@ pub(super) struct Journey<'p> {
     windows: Option<WindowRule>,
 }
 
-/// Solves `traverse` or `free`.
+/// Solves a motion in time.
 ///
 /// # Errors
 /// See [`SolveFault`].
@@ -81,7 +83,7 @@ pub(crate) fn coarsest_both_ways(
 ) -> Result<Vec<(&'static str, [f64; 2])>, SolveFault> {
     let figures = |journey: Journey<'_>| {
         let records = journey.first(monitor)?;
-        Ok::<_, SolveFault>(level_figures(problem, &records.levels[0].series, &journey.course))
+        Ok::<_, SolveFault>(level_figures(problem, &records.levels[0].series, &records.course))
     };
     let windows = Journey::new(problem)?;
     assert!(windows.windows.is_some(), "the wall is too short for windows");
@@ -91,6 +93,9 @@ pub(crate) fn coarsest_both_ways(
 
 /// The schedule, the levels so far, the coarsest level on half the domain.
 struct Records {
+    /// The course, a stroke's with its last cycle.
+    course: Course,
+    settling: Option<Settling>,
     schedule: Schedule,
     levels: Vec<LevelRecord>,
     cut: Option<LevelRecord>,
@@ -102,10 +107,10 @@ impl<'p> Journey<'p> {
         let (plan, speed) = plan(problem, &placement)?;
         let (motion, course) = set_out(problem)?;
         // v dt <= h for free motion, half of it where the speed is held.
-        let share = if let Motion::Uniform { .. } = motion { 0.5 } else { 1.0 };
+        let share = if let Motion::Free { .. } = motion { 1.0 } else { HELD_STRIDE };
         let course = Course { stride: share * plan.axial_cell_m, ..course };
-        let reach = reach(problem, course.from, course.until);
-        let windows = WindowRule::new(problem, &placement, &plan, reach, speed)?;
+        let reach = reach(problem, &motion, &course);
+        let windows = windows(problem, &placement, &plan, &motion, (reach, speed))?;
         Ok(Self { problem, placement, plan, motion, course, reach, speed, windows })
     }
 
@@ -121,8 +126,7 @@ impl<'p> Journey<'p> {
 
     /// The window to begin with.
     pub(super) fn window(&self) -> Option<Window> {
-        let ahead = (self.course.until - self.course.from).signum();
-        self.windows.as_ref().map(|rule| rule.choose(self.course.from, ahead))
+        self.windows.as_ref().map(|rule| rule.choose(self.course.from, self.course.ahead()))
     }
 
     pub(super) fn level(&self, refinement: Refinement, half: bool) -> Result<MarchLevel<'_>, SolveFault> {
@@ -133,9 +137,27 @@ impl<'p> Journey<'p> {
     fn first(&self, monitor: &dyn Monitor) -> Result<Records, SolveFault> {
         let mut level = self.level(Refinement::COARSEST, false)?;
         let run = Run::new(&mut level, &self.motion, &self.course, self.window())?;
-        let (series, schedule) = run.choose(&self.course, monitor, Share { from: 0.0, to: 0.08 })?;
+        let share = Share { from: 0.0, to: 0.08 };
+        let mut course = self.course.clone();
+        let (series, schedule, settling) = match &self.motion {
+            Motion::Prescribed(Path::Sine(sine)) => {
+                let (series, schedule, settling) = run.choose_cycles(sine, &course, monitor, share)?;
+                let cycles = f64::from(settling.cycles);
+                course.since = (cycles - 1.0) * sine.period_s();
+                course.time_limit = cycles * sine.period_s();
+                (series, schedule, Some(settling))
+            }
+            Motion::Prescribed(Path::Table(table)) => {
+                let (series, schedule) = run.through_table(table, &course, monitor, share)?;
+                (series, schedule, None)
+            }
+            Motion::Uniform { .. } | Motion::Free { .. } => {
+                let (series, schedule) = run.choose(&course, monitor, share)?;
+                (series, schedule, None)
+            }
+        };
         let record = self.record(&level, series, Refinement::COARSEST, None)?;
-        Ok(Records { schedule, levels: vec![record], cut: None })
+        Ok(Records { course, settling, schedule, levels: vec![record], cut: None })
     }
 
     /// Replays the levels not yet there: the finest beside the others, so that two cores are busy.
@@ -143,7 +165,7 @@ impl<'p> Journey<'p> {
         let refinements = Refinement::first(count);
         let missing = &refinements[records.levels.len()..];
         let Some((&finest, others)) = missing.split_last() else { return Ok(()) };
-        let wanted = instants(&self.problem.snapshots, &records.levels[0].series, &self.course);
+        let wanted = instants(&self.problem.snapshots, &records.levels[0].series, &records.course);
         let keep = self.problem.snapshots != SnapshotPlan::None;
         let schedule = &records.schedule;
         let quiet = Quiet { inner: monitor };
@@ -211,18 +233,19 @@ impl<'p> Journey<'p> {
 
     fn outcome(&self, records: &mut Records) -> Outcome {
         let factors: Vec<f64> = Refinement::first(records.levels.len()).iter().map(|f| f.factor()).collect();
-        let (stop, _) = end_of(&records.levels[0].series, &self.course);
+        let (stop, _) = end_of(&records.levels[0].series, &records.course);
         let by_level: Vec<Vec<LevelFigure>> =
-            records.levels.iter().map(|l| level_figures(self.problem, &l.series, &self.course)).collect();
-        let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &self.course));
+            records.levels.iter().map(|l| level_figures(self.problem, &l.series, &records.course)).collect();
+        let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &records.course));
         let residual = records.levels.iter().map(|l| l.report.residual).fold(0.0, f64::max);
         let corners = corner_powers(&self.problem.wall, factors.len());
         let routes = self.routes(records, &factors);
-        let margins = Margins { residual, apart: routes.apart(), corners };
+        let ledger = self.ledger(records, &factors);
+        let unsettled = records.settling.map_or_else(Vec::new, |s| unsettled(&s, &ledger, self.motion.sine()));
+        let margins = Margins { residual, apart: routes.apart(), corners, unsettled };
         let (figures, slow) = combine(&factors, &by_level, cut.as_deref(), &margins);
         let trace = self.trace(records, &factors);
         let peak_time = figures.iter().find(|f| f.name == "drag_peak").and_then(|f| f.location?.t_s);
-        let ledger = self.ledger(records, &factors);
         let accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
         let mut counters = WorkCounters::default();
         for level in records.levels.iter().chain(records.cut.as_ref()) {
@@ -234,7 +257,7 @@ impl<'p> Journey<'p> {
             regime: regime(self.problem, &self.placement, self.regime_speed(&trace)),
             grids: records.levels.iter().map(|l| l.report.clone()).collect(),
             counters,
-            cautions: self.cautions(stop, &figures).into_iter().chain(slow).collect(),
+            cautions: self.cautions(stop, &figures, records.settling.as_ref()).into_iter().chain(slow).collect(),
             stop,
             accuracy,
             trace,
@@ -248,6 +271,9 @@ impl<'p> Journey<'p> {
     }
 
     fn regime_speed(&self, trace: &Trace) -> f64 {
+        if self.motion.is_prescribed() {
+            return self.speed;
+        }
         let largest =
             (0..trace.drag_newton.len()).max_by(|&a, &b| trace.drag_newton[a].total_cmp(&trace.drag_newton[b]));
         largest.map_or(self.speed, |k| trace.velocity_m_per_s[k].abs())
@@ -255,13 +281,9 @@ impl<'p> Journey<'p> {
 
     /// The series at the middles of the coarsest level's pairs, extrapolated.
     fn trace(&self, records: &Records, factors: &[f64]) -> Trace {
-        let (_, end) = end_of(&records.levels[0].series, &self.course);
+        let (_, end) = end_of(&records.levels[0].series, &records.course);
         let mut trace = Trace::default();
-        for k in 0..records.schedule.pairs() {
-            let t = records.schedule.middle(k);
-            if t > end {
-                break;
-            }
+        for t in self.trace_instants(records).take_while(|&t| t <= end) {
             let of = |read: fn(&Series, f64) -> f64| -> Ladder {
                 Ladder::new(factors, records.levels.iter().map(|l| read(&l.series, t)).collect())
             };
@@ -277,13 +299,28 @@ impl<'p> Journey<'p> {
         trace
     }
 
+    /// Middles of the coarsest level's pairs; of its steps where the path is given, so that a stroke's loop is round.
+    fn trace_instants(&self, records: &Records) -> impl Iterator<Item = f64> {
+        let off: &[f64] = if self.motion.is_prescribed() { &[-0.5, 0.5] } else { &[0.0] };
+        let schedule = &records.schedule;
+        (0..schedule.pairs()).flat_map(move |k| {
+            off.iter().map(move |share| schedule.middle(k) + share * schedule.steps(k, Refinement::COARSEST).1)
+        })
+    }
+
     /// The three routes at the instant of the greatest drag, extrapolated.
     fn routes(&self, records: &Records, factors: &[f64]) -> Routes {
         let at = |l: &LevelRecord, of: fn(&Series, f64) -> f64| {
             let series = &l.series;
-            let t = super::figures::drag_peak(series, &self.course).0;
-            let sign = -series.at(&series.velocity, t).signum();
-            sign * (of(series, t) - series.mid_at(&series.pull_mid, t))
+            let t = super::figures::drag_peak(series, &records.course).0;
+            let pull = series.mid_at(&series.pull_mid, t);
+            // Where the mover turns round, its greatest force may be met at rest.
+            let sense = if self.motion.is_prescribed() {
+                -(series.mid_at(&series.force_mid, t) - pull)
+            } else {
+                series.at(&series.velocity, t)
+            };
+            -sense.signum() * (of(series, t) - pull)
         };
         let ladder =
             |of: fn(&Series, f64) -> f64| Ladder::new(factors, records.levels.iter().map(|l| at(l, of)).collect());
@@ -297,9 +334,12 @@ impl<'p> Journey<'p> {
     fn ledger(&self, records: &Records, factors: &[f64]) -> Ledger {
         let entry = |l: &LevelRecord| {
             let series = &l.series;
-            let (_, end) = end_of(series, &self.course);
-            let energy = series.mid_at(&series.energy_mid, end) - series.energy_start;
-            (self.work_against_drag(series, end), series.at(&series.heat, end), energy)
+            let (_, end) = end_of(series, &records.course);
+            let since = records.course.since;
+            let before = if since > 0.0 { series.mid_at(&series.energy_mid, since) } else { series.energy_start };
+            let energy = series.mid_at(&series.energy_mid, end) - before;
+            let heat = series.at(&series.heat, end) - series.at(&series.heat, since);
+            (self.work_against_drag(series, (since, end)), heat, energy)
         };
         let entries: Vec<(f64, f64, f64)> = records.levels.iter().map(entry).collect();
         let value = |of: fn(&(f64, f64, f64)) -> f64| extrapolate(factors, &entries.iter().map(of).collect::<Vec<_>>());
@@ -311,9 +351,10 @@ impl<'p> Journey<'p> {
     }
 
     /// Work done against the magnetic force: of the prescribed motion, or out of the mover's mechanical energy.
-    fn work_against_drag(&self, series: &Series, end: f64) -> f64 {
+    fn work_against_drag(&self, series: &Series, (since, end): (f64, f64)) -> f64 {
         match &self.motion {
             Motion::Uniform { .. } => -series.at(&series.work, end),
+            Motion::Prescribed(_) => series.at(&series.work, since) - series.at(&series.work, end),
             Motion::Free { law, mass } => {
                 let energy = |z: f64, v: f64| 0.5 * mass * v * v + potential_energy(law, *mass, z);
                 let (z, v) = (series.at(&series.position, end), series.at(&series.velocity, end));
@@ -322,8 +363,8 @@ impl<'p> Journey<'p> {
         }
     }
 
-    fn cautions(&self, stop: Stop, figures: &[Figure]) -> Vec<Caution> {
-        let mut texts: Vec<String> = Vec::new();
+    fn cautions(&self, stop: Stop, figures: &[Figure], settling: Option<&Settling>) -> Vec<Caution> {
+        let mut texts: Vec<String> = settling.map(said).into_iter().collect();
         if self.problem.wall.is_permeable() {
             texts.push("Permeability is taken as linear: a steel near saturation behaves otherwise.".to_owned());
             texts.push(
@@ -342,5 +383,42 @@ impl<'p> Journey<'p> {
             }
         }
         texts.into_iter().map(|text| Caution { text }).collect()
+    }
+}
+
+/// What a stroke adds to the bands: the change that more cycles would bring, and what its balance of energy leaves open.
+fn unsettled(settling: &Settling, ledger: &Ledger, sine: Option<&Sine>) -> Vec<(&'static str, f64)> {
+    let Some(sine) = sine else { return Vec::new() };
+    let open = ledger.imbalance_relative.abs() * ledger.work.abs().max(ledger.heat.abs());
+    let loss = settling.loss_left + open;
+    let x = sine.amplitude_m;
+    let damping = loss / (std::f64::consts::PI * sine.angular_frequency() * x * x);
+    let mut list = vec![
+        ("loss_per_cycle", loss),
+        ("damping_coefficient_equivalent", damping),
+        ("stiffness", settling.stiffness_left),
+    ];
+    list.retain(|(_, half)| half.is_finite());
+    list
+}
+
+/// How a stroke settled, in words.
+fn said(settling: &Settling) -> String {
+    let cycles = settling.cycles;
+    match (settling.given, settling.settled()) {
+        (false, true) => format!(
+            "The figures are those of cycle {cycles}, by which the stroke had settled: loss and stiffness of the next would be the same within a millionth."
+        ),
+        (true, true) => {
+            format!("The figures are those of cycle {cycles}, as the case asks; more cycles would change nothing.")
+        }
+        (true, false) => format!(
+            "The figures are those of cycle {cycles}, as the case asks; settled, loss or stiffness would differ by {:.1e} of the force, which the bands hold.",
+            settling.left
+        ),
+        (false, false) => format!(
+            "The stroke had not settled after {cycles} cycles: loss or stiffness would still change by {:.1e} of the force, which the bands hold.",
+            settling.left
+        ),
     }
 }

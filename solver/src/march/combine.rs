@@ -13,6 +13,8 @@ pub(super) struct Margins {
     pub(super) apart: f64,
     /// Powers of the cell size at a permeable wall's corners.
     pub(super) corners: Option<Vec<f64>>,
+    /// What a stroke that has not settled, or does not close its balance of energy, adds to the figures of these names.
+    pub(super) unsettled: Vec<(&'static str, f64)>,
 }
 
 /// Figures that all levels have, extrapolated, with bands. The corners of a permeable wall dominate its static pull, which
@@ -37,7 +39,9 @@ pub(super) fn combine(
         let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
         let rule = if is_local(figure.name) { band::local } else { band::one_route };
         let apart = if is_force_peak(figure.name) { margins.apart } else { 0.0 };
-        let half_width = rule(&ladder, change, (margins.residual + apart) * ladder.value.abs());
+        let unsettled: f64 =
+            margins.unsettled.iter().filter(|(name, _)| *name == figure.name).map(|(_, half)| half).sum();
+        let half_width = rule(&ladder, change, (margins.residual + apart) * ladder.value.abs()) + unsettled;
         if !is_local(figure.name) {
             cautions.extend(band::order_caution(figure.name, &ladder));
         }

@@ -4,21 +4,35 @@ use lenzbore_mesh::{Grid, Refinement};
 
 use super::lines::LevelLines;
 use super::motion::{Motion, friction, frictionless, potential_energy};
+use super::pace::steps;
+use super::path::{Path, TablePath};
 use super::window::WindowRule;
+use crate::constants::MU0;
 use crate::fault::SolveFault;
 use crate::grid_rules::{Frame, GridPlan};
 use crate::placement::Placement;
-use crate::problem::{Free, Problem, Travel};
+use crate::problem::{Free, MOST_CYCLES, Problem, Travel};
+
+/// What ends a run.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(crate) enum End {
+    /// A position of the reference point, m, or the time limit.
+    Place(f64),
+    /// The time limit alone.
+    Instant,
+}
 
 /// Where a run begins and ends.
 #[derive(Debug, Clone)]
 pub(crate) struct Course {
     pub(crate) from: f64,
     pub(crate) velocity: f64,
-    /// The run ends at this position ...
-    pub(crate) until: f64,
+    /// The run ends here ...
+    pub(crate) end: End,
     /// ... or at this instant.
     pub(crate) time_limit: f64,
+    /// From this instant on the run counts, s: the start of the settled cycle of a stroke, else 0.
+    pub(crate) since: f64,
     /// Travel in a step at most, m, on the coarsest level.
     pub(crate) stride: f64,
 }
@@ -26,7 +40,27 @@ pub(crate) struct Course {
 impl Course {
     /// True once `position` is at or beyond the end.
     pub(super) fn passed(&self, position: f64) -> bool {
-        if self.until < self.from { position <= self.until } else { position >= self.until }
+        match self.end {
+            End::Place(until) if until < self.from => position <= until,
+            End::Place(until) => position >= until,
+            End::Instant => false,
+        }
+    }
+
+    /// Share of the way at `position`.
+    pub(super) fn gone(&self, position: f64) -> f64 {
+        match self.end {
+            End::Place(until) => (position - self.from) / (until - self.from),
+            End::Instant => 0.0,
+        }
+    }
+
+    /// Sense in which the way to its end leads; 0 where it has none.
+    pub(super) fn ahead(&self) -> f64 {
+        match self.end {
+            End::Place(until) => (until - self.from).signum(),
+            End::Instant => 0.0,
+        }
     }
 }
 
@@ -36,8 +70,8 @@ impl Course {
 /// See [`SolveFault`].
 pub(crate) fn plan(problem: &Problem, placement: &Placement) -> Result<(GridPlan, f64), SolveFault> {
     let (motion, course) = set_out(problem)?;
-    let reach = reach(problem, course.from, course.until);
-    let speed = fastest(&motion, course.velocity, reach);
+    let reach = reach(problem, &motion, &course);
+    let speed = fastest(&motion, course.velocity, reach, placement.wavelength_m);
     if !(speed > 0.0 && speed.is_finite()) {
         return Err(SolveFault::Unsuited(
             "the mover does not move: nothing drives it, or friction holds it at release",
@@ -57,14 +91,51 @@ pub(crate) fn grids_on_the_way(
     (plan, speed): (&GridPlan, f64),
     refinements: &[Refinement],
 ) -> Result<(Vec<Grid>, usize), SolveFault> {
-    let (_, course) = set_out(problem)?;
-    let reach = reach(problem, course.from, course.until);
-    let rule = WindowRule::new(problem, placement, plan, reach, speed)?;
+    let (motion, course) = set_out(problem)?;
+    let reach = reach(problem, &motion, &course);
+    let rule = windows(problem, placement, plan, &motion, (reach, speed))?;
     let window = rule.as_ref().map(|rule| rule.typical(reach));
     let grids = refinements.iter().map(|&f| LevelLines::new(plan, rule.as_ref(), f, false).grid(window));
     let number = rule.as_ref().map_or(1, |rule| rule.windows_along(reach));
     Ok((grids.collect::<Result<_, _>>()?, number))
 }
+
+/// The rule of the windows, where there are any: a mover that turns round would go back into the one it left.
+pub(super) fn windows(
+    problem: &Problem,
+    placement: &Placement,
+    plan: &GridPlan,
+    motion: &Motion,
+    (reach, speed): ((f64, f64), f64),
+) -> Result<Option<WindowRule>, SolveFault> {
+    if motion.is_prescribed() {
+        return Ok(None);
+    }
+    Ok(WindowRule::new(problem, placement, plan, reach, speed)?)
+}
+
+/// Steps of a prescribed motion on the coarsest level of `plan`, about; `None` for other motions.
+pub(crate) fn prescribed_steps(problem: &Problem, plan: &GridPlan) -> Option<f64> {
+    let (Motion::Prescribed(path), course) = set_out(problem).ok()? else { return None };
+    let cycles = match &path {
+        Path::Sine(sine) => sine.cycles.map_or_else(
+            || {
+                // Currents of a thin wall live mu0 sigma w a / 2 at most, and 14 of that take them to 1e-6.
+                let live = |l: &crate::problem::Layer| {
+                    0.5 * MU0 * l.relative_permeability * l.conductivity_s_per_m * l.thickness_m() * l.outer_radius_m
+                };
+                let longest: f64 = problem.wall.layers.iter().map(live).sum();
+                (2.0 + 14.0 * longest * sine.frequency_hz).min(f64::from(MOST_CYCLES))
+            },
+            f64::from,
+        ),
+        Path::Table(_) => 1.0,
+    };
+    Some(steps(&path, HELD_STRIDE * plan.axial_cell_m, cycles)).filter(|s| s.is_finite() && course.time_limit > 0.0)
+}
+
+/// Travel in a step where the motion is given, in axial cells.
+pub(super) const HELD_STRIDE: f64 = 0.5;
 
 /// The motion, and its course but for the stride.
 pub(super) fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault> {
@@ -72,7 +143,8 @@ pub(super) fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault>
         Travel::Traverse(t) => {
             let velocity = (t.to_m - t.from_m).signum() * t.speed_m_per_s;
             let time_limit = (t.to_m - t.from_m).abs() / t.speed_m_per_s;
-            let course = Course { from: t.from_m, velocity, until: t.to_m, time_limit, stride: 0.0 };
+            let end = End::Place(t.to_m);
+            let course = Course { from: t.from_m, velocity, end, time_limit, since: 0.0, stride: 0.0 };
             Ok((Motion::Uniform { velocity }, course))
         }
         Travel::Free(law) => {
@@ -80,18 +152,39 @@ pub(super) fn set_out(problem: &Problem) -> Result<(Motion, Course), SolveFault>
             let course = Course {
                 from: law.release_m,
                 velocity: law.entry_velocity_m_per_s,
-                until: law.until_m,
+                end: End::Place(law.until_m),
                 time_limit: law.time_limit_s,
+                since: 0.0,
                 stride: 0.0,
             };
             Ok((Motion::Free { law: law.clone(), mass }, course))
+        }
+        Travel::Sine(sine) => {
+            let cycles = sine.cycles.unwrap_or(MOST_CYCLES);
+            Ok(along(Path::Sine(*sine), f64::from(cycles) * sine.period_s()))
+        }
+        Travel::Table(table) => {
+            let path = TablePath::new(table);
+            let duration = path.duration();
+            Ok(along(Path::Table(path), duration))
         }
         Travel::Steady { .. } | Travel::Alternating(_) => Err(SolveFault::Unsuited("settled fields are no march")),
     }
 }
 
+fn along(path: Path, time_limit: f64) -> (Motion, Course) {
+    let (from, velocity) = (path.position(0.0), path.velocity(0.0));
+    let course = Course { from, velocity, end: End::Instant, time_limit, since: 0.0, stride: 0.0 };
+    (Motion::Prescribed(path), course)
+}
+
 /// Positions that the reference point may take, with a little room beyond the end.
-pub(super) fn reach(problem: &Problem, from: f64, to: f64) -> (f64, f64) {
+pub(super) fn reach(problem: &Problem, motion: &Motion, course: &Course) -> (f64, f64) {
+    let (from, to) = match (motion, course.end) {
+        (Motion::Prescribed(path), _) => path.span(),
+        (_, End::Place(until)) => (course.from, until),
+        (_, End::Instant) => (course.from, course.from),
+    };
     let room = 0.02 * (to - from).abs();
     let (mut low, mut high) = (from.min(to) - room, from.max(to) + room);
     if let Travel::Free(law) = &problem.travel
@@ -103,9 +196,11 @@ pub(super) fn reach(problem: &Problem, from: f64, to: f64) -> (f64, f64) {
     (low, high)
 }
 
-/// Greatest speed that the motion can reach without drag, m/s; 0 where it cannot start.
-fn fastest(motion: &Motion, velocity: f64, reach: (f64, f64)) -> f64 {
+/// Greatest speed that the motion can reach without drag, m/s; 0 where it cannot start. A motion that changes at the rate omega has the
+/// skin depth sqrt(2 / (mu sigma omega)), which is the depth at the speed omega `wavelength`.
+fn fastest(motion: &Motion, velocity: f64, reach: (f64, f64), wavelength: f64) -> f64 {
     match motion {
+        Motion::Prescribed(path) => path.greatest_speed().max(path.rate() * wavelength),
         Motion::Uniform { velocity } => velocity.abs(),
         Motion::Free { law, mass } => {
             if velocity.abs() <= 0.0 && frictionless(law, *mass, law.release_m).abs() <= friction(law, *mass) {

@@ -1,11 +1,12 @@
 //! The figures that one level's series give.
 
-use super::course::Course;
+use super::course::{Course, End};
+use super::cycles::CycleSums;
 use super::series::Series;
 use crate::constants::STANDARD_GRAVITY;
 use crate::outcome::{Location, Stop};
 use crate::placement::Placement;
-use crate::problem::{Free, Problem, Travel};
+use crate::problem::{Free, Problem, Sine, Travel};
 
 /// Relative change of speed over a scale length below which the speed counts as terminal.
 const TERMINAL_CHANGE: f64 = 1.0e-3;
@@ -25,7 +26,11 @@ pub(crate) fn end_of(series: &Series, course: &Course) -> (Stop, f64) {
     if let Some(t) = series.stopped_at {
         return (Stop::AtRest, t);
     }
-    match series.crossing(course.until) {
+    let place = match course.end {
+        End::Place(until) => until,
+        End::Instant => return (Stop::EndOfTravel, course.time_limit.min(last)),
+    };
+    match series.crossing(place) {
         Some(t) if t <= course.time_limit * (1.0 + 1.0e-12) => (Stop::EndOfTravel, t),
         _ if (last - course.time_limit).abs() <= 1.0e-9 * last => (Stop::EndOfTravel, last),
         _ => (Stop::TimeLimit, course.time_limit.min(last)),
@@ -38,9 +43,14 @@ fn drag_mid(series: &Series) -> Vec<f64> {
     force.zip(series.position.windows(2)).map(|((f, pull), z)| -(f - pull) * (z[1] - z[0]).signum()).collect()
 }
 
-/// Instant and value of the greatest drag.
+/// Instant and value of the greatest drag. A motion that turns round may have the wall push it along after the turning, and the greatest
+/// force at the turning itself: there it is the greatest force, either way.
 pub(crate) fn drag_peak(series: &Series, course: &Course) -> (f64, f64) {
-    series.greatest(&drag_mid(series), end_of(series, course).1)
+    let drag = match course.end {
+        End::Place(_) => drag_mid(series),
+        End::Instant => series.force_mid.iter().zip(&series.pull_mid).map(|(f, pull)| (f - pull).abs()).collect(),
+    };
+    series.greatest(&drag, (course.since, end_of(series, course).1))
 }
 
 /// All figures of a level.
@@ -49,6 +59,7 @@ pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course)
     let mut figures = Vec::new();
     let (t_drag, drag) = drag_peak(series, course);
     let drag = LevelFigure { name: "drag_peak", unit: "N", value: drag, location: Some(at_time(series, t_drag)) };
+    let span = (course.since, end);
     let energy = LevelFigure {
         name: "dissipated_energy",
         unit: "J",
@@ -63,16 +74,20 @@ pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course)
             acceleration_figures(law, series, end, &mut figures);
             figures.push(energy);
         }
-        Travel::Traverse(_) | Travel::Steady { .. } | Travel::Alternating(_) => {
+        Travel::Sine(sine) => {
+            stroke_figures(problem, sine, series, span, &mut figures);
+            figures.push(drag);
+        }
+        Travel::Traverse(_) | Travel::Table(_) | Travel::Steady { .. } | Travel::Alternating(_) => {
             figures.push(drag);
             figures.push(LevelFigure { name: "impulse", unit: "N s", value: impulse(series, end), location: None });
             figures.push(energy);
         }
     }
-    figures.push(current_peak(series, end));
+    figures.push(current_peak(series, span));
     if series.pull_mid.iter().any(|p| p.abs() > 0.0) {
         let pull: Vec<f64> = series.pull_mid.iter().map(|p| p.abs()).collect();
-        let (t, value) = series.greatest(&pull, end);
+        let (t, value) = series.greatest(&pull, span);
         figures.push(LevelFigure { name: "static_pull_peak", unit: "N", value, location: Some(at_time(series, t)) });
     }
     figures
@@ -82,6 +97,24 @@ pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course)
 fn impulse(series: &Series, end: f64) -> f64 {
     let steps = series.time.windows(2).zip(drag_mid(series));
     steps.map(|(t, drag)| drag * (t[1].min(end) - t[0].min(end))).sum()
+}
+
+/// Figures of the cycle from `from` to `to`, s.
+fn stroke_figures(
+    problem: &Problem,
+    sine: &Sine,
+    series: &Series,
+    (from, to): (f64, f64),
+    figures: &mut Vec<LevelFigure>,
+) {
+    let sums = CycleSums::new(series, sine, from, to);
+    let mut figure = |name, unit, value| figures.push(LevelFigure { name, unit, value, location: None });
+    figure("damping_coefficient_equivalent", "N s/m", sums.damping(sine));
+    figure("stiffness", "N/m", sums.stiffness);
+    if problem.wall.is_permeable() {
+        figure("stiffness_static", "N/m", sums.static_stiffness);
+    }
+    figure("loss_per_cycle", "J", sums.loss);
 }
 
 fn gate_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec<LevelFigure>) {
@@ -131,7 +164,7 @@ fn acceleration_figures(law: &Free, series: &Series, end: f64, figures: &mut Vec
     let weight = law.gravity_m_per_s2 * law.tilt_rad.cos();
     let felt: Vec<f64> = series.acceleration_mid.iter().map(|a| (a + weight).abs() / STANDARD_GRAVITY).collect();
     for (name, unit, values) in [("deceleration_peak", "m/s2", slowing), ("felt_acceleration_peak", "1", felt)] {
-        let (t, value) = series.greatest(&values, end);
+        let (t, value) = series.greatest(&values, (0.0, end));
         // Where nothing decelerates there is no such peak.
         if value > 0.0 {
             figures.push(LevelFigure { name, unit, value, location: Some(at_time(series, t)) });
@@ -144,8 +177,8 @@ fn sense(travel: f64) -> f64 {
     if travel.abs() > 0.0 { travel.signum() } else { 0.0 }
 }
 
-fn current_peak(series: &Series, end: f64) -> LevelFigure {
-    let (t, value) = series.greatest(&series.peak_mid, end);
+fn current_peak(series: &Series, span: (f64, f64)) -> LevelFigure {
+    let (t, value) = series.greatest(&series.peak_mid, span);
     let k = series.time_mid.partition_point(|&s| s < t).min(series.time_mid.len().saturating_sub(1));
     let read = |values: &[f64]| values.get(k).copied();
     let location = Location { r_m: read(&series.peak_r_mid), z_m: read(&series.peak_z_mid), t_s: Some(t) };

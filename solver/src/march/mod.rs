@@ -10,15 +10,21 @@ mod allocation_tests;
 mod answer;
 mod combine;
 mod course;
+mod cycles;
 mod figures;
 mod level;
 mod lines;
 mod motion;
+mod pace;
+mod path;
 mod resample;
 mod routes;
 mod run;
 mod schedule;
 mod series;
+mod small;
+#[cfg(test)]
+pub(crate) mod small_test;
 mod snapshots;
 mod step;
 mod transfer;
@@ -27,4 +33,5 @@ mod window;
 pub(crate) use answer::march;
 #[cfg(test)]
 pub(crate) use answer::{coarsest_both_ways, march_on_whole_grids};
-pub(crate) use course::{grids_on_the_way, plan};
+pub(crate) use course::{grids_on_the_way, plan, prescribed_steps};
+pub(crate) use small::small_strokes;

@@ -1,6 +1,7 @@
-//! The law of motion: uniform speed, or m dv/dt = all forces.
+//! The law of motion: uniform speed, a prescribed path, or m dv/dt = all forces.
 
-use crate::problem::Free;
+use super::path::Path;
+use crate::problem::{Free, Sine};
 
 /// What moves the mover.
 #[derive(Debug, Clone)]
@@ -10,6 +11,8 @@ pub(crate) enum Motion {
         /// Signed velocity.
         velocity: f64,
     },
+    /// Along a path against time.
+    Prescribed(Path),
     /// Equation of motion.
     Free {
         /// Forces other than the magnetic one.
@@ -17,6 +20,26 @@ pub(crate) enum Motion {
         /// Mass, kg.
         mass: f64,
     },
+}
+
+impl Motion {
+    /// The stroke, where it is one.
+    pub(crate) fn sine(&self) -> Option<&Sine> {
+        match self {
+            Self::Prescribed(Path::Sine(sine)) => Some(sine),
+            _ => None,
+        }
+    }
+
+    /// Whole cycles of a stroke before `t`; 0 for other motions.
+    pub(crate) fn cycle(&self, t: f64) -> u32 {
+        if let Self::Prescribed(path) = self { path.cycle(t) } else { 0 }
+    }
+
+    /// Whether it follows a path.
+    pub(crate) fn is_prescribed(&self) -> bool {
+        matches!(self, Self::Prescribed(_))
+    }
 }
 
 /// A force with its derivatives by position and velocity.

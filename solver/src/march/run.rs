@@ -5,6 +5,8 @@ use lenzbore_mesh::Refinement;
 use super::course::Course;
 use super::level::MarchLevel;
 use super::motion::{Motion, friction, frictionless, losses, other_force};
+use super::pace::{PlannedPair, pairs_of_table};
+use super::path::TablePath;
 use super::resample::{Instant, Resampler};
 use super::schedule::Schedule;
 use super::series::Series;
@@ -29,7 +31,9 @@ const NEAR_GREATEST: f64 = 0.8;
 /// Pairs at most.
 const MOST_PAIRS: usize = 2_000_000;
 /// Pairs run on beyond the end, so that the end itself is read between steps.
-const PAIRS_BEYOND: usize = 2;
+pub(super) const PAIRS_BEYOND: u32 = 2;
+/// Speed at the start of a prescribed motion, relative to its greatest, above which it starts with a jerk.
+const SUDDEN: f64 = 1.0e-3;
 
 /// How far along a whole job this run's progress counts.
 #[derive(Debug, Clone, Copy)]
@@ -50,6 +54,10 @@ pub(crate) struct Run<'a, 'p> {
     near: [f64; 2 * PEAK_REACH + 1],
     psi_nodes: Vec<f64>,
     greatest_drag: f64,
+    /// Cycle of a stroke that the greatest drag belongs to.
+    cycle: u32,
+    /// Steps that begin before this instant are damped, s.
+    damped_until: f64,
     heat: f64,
     work: f64,
     losses: f64,
@@ -75,7 +83,7 @@ impl<'a, 'p> Run<'a, 'p> {
         level.fill_source(course.from, &mut source, &mut slope);
         let (flux, energy_start) = level.field_at_rest(&source)?;
         let acceleration = match motion {
-            Motion::Uniform { .. } => 0.0,
+            Motion::Uniform { .. } | Motion::Prescribed(_) => 0.0,
             Motion::Free { law, mass } => driving_force(law, *mass, course) / mass,
         };
         let state = State::new(course.from, course.velocity, flux, source, acceleration);
@@ -95,6 +103,8 @@ impl<'a, 'p> Run<'a, 'p> {
             near: [0.0; 2 * PEAK_REACH + 1],
             psi_nodes: vec![0.0; nodes],
             greatest_drag: 0.0,
+            cycle: 0,
+            damped_until: 0.0,
             heat: 0.0,
             work: 0.0,
             losses: 0.0,
@@ -127,7 +137,7 @@ impl<'a, 'p> Run<'a, 'p> {
             self.follow(&mut schedule)?;
             rung = self.wanted_rung(&schedule, rung, course, floor);
             rung = self.accepted_pair(&mut schedule, rung, course, floor)?;
-            let gone = (self.state.position - course.from) / (course.until - course.from);
+            let gone = course.gone(self.state.position);
             let elapsed = schedule.start(schedule.pairs()) / course.time_limit;
             monitor.progress(share.from + (share.to - share.from) * gone.max(elapsed).clamp(0.0, 1.0), "first level");
             if self.series.stopped_at.is_some() {
@@ -143,6 +153,64 @@ impl<'a, 'p> Run<'a, 'p> {
         Ok((self.series, schedule))
     }
 
+    /// Runs the coarsest level through a table of positions.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(crate) fn through_table(
+        mut self,
+        table: &TablePath,
+        course: &Course,
+        monitor: &dyn Monitor,
+        share: Share,
+    ) -> Result<(Series, Schedule), SolveFault> {
+        let mut schedule = Schedule::planned();
+        let pairs = pairs_of_table(table, course.stride, PAIRS_BEYOND);
+        for (k, &pair) in pairs.iter().enumerate() {
+            if monitor.cancelled() {
+                return Err(SolveFault::Interrupted);
+            }
+            self.planned_pair(&mut schedule, pair)?;
+            monitor.progress(share.from + (share.to - share.from) * count(k + 1) / count(pairs.len()), "first level");
+        }
+        Ok((self.finish(), schedule))
+    }
+
+    /// One planned pair of steps.
+    pub(super) fn planned_pair(&mut self, schedule: &mut Schedule, pair: PlannedPair) -> Result<(), SolveFault> {
+        if schedule.pairs() == 0 {
+            self.damp_until(pair.end_s);
+        }
+        let begin = schedule.start(schedule.pairs());
+        self.series.reserve(2);
+        self.level.prepare(pair.dt_s)?;
+        for n in 0..2 {
+            self.step_and_record(begin + count(n) * pair.dt_s, pair.dt_s)?;
+        }
+        schedule.push_planned(pair);
+        Ok(())
+    }
+
+    /// Damps the first pair, which ends at `end`, where a prescribed motion starts with a jerk.
+    fn damp_until(&mut self, end: f64) {
+        if let Motion::Prescribed(path) = self.motion
+            && path.velocity(0.0).abs() > SUDDEN * path.greatest_speed()
+        {
+            self.damped_until = end;
+        }
+    }
+
+    /// What has been recorded so far.
+    pub(super) fn series(&self) -> &Series {
+        &self.series
+    }
+
+    /// Ends the run with its record.
+    pub(super) fn finish(self) -> Series {
+        self.level.counters.steps += self.series.time_mid.len();
+        self.series
+    }
+
     /// Replays `schedule` at `refinement`, keeping snapshots at the step middles nearest to `instants`.
     ///
     /// # Errors
@@ -156,6 +224,7 @@ impl<'a, 'p> Run<'a, 'p> {
         share: Share,
     ) -> Result<(Series, Vec<Snapshot>), SolveFault> {
         let mut wanted = instants.iter().copied().peekable();
+        self.damp_until(schedule.start(1));
         for k in 0..schedule.pairs() {
             if let Some(window) = schedule.window_from(k) {
                 self.enter(window)?;
@@ -290,6 +359,9 @@ impl<'a, 'p> Run<'a, 'p> {
     pub(super) fn step_and_record(&mut self, begin: f64, dt: f64) -> Result<StepReport, SolveFault> {
         let report = self.stepper.step(self.level, self.motion, &mut self.state, &mut self.currents, begin, dt)?;
         self.record(begin, dt, &report);
+        if begin + 0.5 * dt < self.damped_until {
+            self.stepper.damp(self.level, &mut self.state, dt)?;
+        }
         Ok(report)
     }
 
@@ -335,6 +407,10 @@ impl<'a, 'p> Run<'a, 'p> {
         // The stress is wanted at the greatest drag alone: it is taken where the drag is near its greatest so far.
         let last = |values: &[f64]| values.last().copied().unwrap_or(0.0);
         let drag = (last(&self.series.force_mid) - last(&self.series.pull_mid)).abs();
+        let cycle = self.motion.cycle(time_mid);
+        if cycle != self.cycle {
+            (self.cycle, self.greatest_drag) = (cycle, 0.0);
+        }
         self.greatest_drag = self.greatest_drag.max(drag);
         if drag >= NEAR_GREATEST * self.greatest_drag {
             self.series.time_stress.push(time_mid);

@@ -1,23 +1,31 @@
-//! The step sizes: a ladder of powers of two, fixed once on the coarsest level, in pairs, and replayed at dt / f.
+//! The step sizes, fixed once on the coarsest level, in pairs, and replayed at dt / f: a ladder of powers of two for free motion, planned
+//! ones for a prescribed motion.
 //!
 //! A ladder chosen anew on each level would break the even powers of the error.
 
 use lenzbore_mesh::Refinement;
 
+use super::pace::PlannedPair;
 use super::window::Window;
 
 /// Halvings below the first rung that the clock resolves.
 const FINEST: u32 = 20;
 
-/// Pairs of steps on the coarsest level. Times are whole ticks, so nothing accumulates.
+/// A pair of steps.
+#[derive(Debug, Clone, Copy)]
+struct Pair {
+    start_s: f64,
+    dt_s: f64,
+}
+
+/// Pairs of steps on the coarsest level. Times are whole ticks, or planned beforehand, so nothing accumulates.
 #[derive(Debug, Clone)]
 pub(crate) struct Schedule {
     tick_s: f64,
-    /// Rung of each pair: dt = tick 2^rung.
-    rungs: Vec<u32>,
-    /// Ticks before each pair.
-    starts: Vec<u64>,
+    pairs: Vec<Pair>,
+    /// Ticks, and seconds, of all pairs so far.
     now: u64,
+    end_s: f64,
     /// Pairs before which the window moves, and where to.
     windows: Vec<(usize, Window)>,
 }
@@ -26,7 +34,12 @@ impl Schedule {
     /// A schedule whose first rung has the step `first_dt_s`.
     pub(crate) fn new(first_dt_s: f64) -> Self {
         let tick_s = first_dt_s / f64::from(1_u32 << FINEST);
-        Self { tick_s, rungs: Vec::new(), starts: Vec::new(), now: 0, windows: Vec::new() }
+        Self { tick_s, pairs: Vec::new(), now: 0, end_s: 0.0, windows: Vec::new() }
+    }
+
+    /// A schedule of planned pairs.
+    pub(super) fn planned() -> Self {
+        Self::new(0.0)
     }
 
     /// The first rung.
@@ -40,15 +53,30 @@ impl Schedule {
     }
 
     /// Accepts a pair of steps at `rung`.
+    #[expect(clippy::cast_precision_loss, reason = "tick counts stay far below 2^52 in any run of sensible length")]
     pub(crate) fn push(&mut self, rung: u32) {
-        self.rungs.push(rung);
-        self.starts.push(self.now);
+        self.pairs.push(Pair { start_s: self.end_s, dt_s: self.dt(rung) });
         self.now += 2_u64 << rung.min(60);
+        self.end_s = self.now as f64 * self.tick_s;
+    }
+
+    /// Accepts a planned pair.
+    pub(super) fn push_planned(&mut self, pair: PlannedPair) {
+        self.pairs.push(Pair { start_s: self.end_s, dt_s: pair.dt_s });
+        self.end_s = pair.end_s;
+    }
+
+    /// Forgets all pairs after the first `count`.
+    pub(super) fn truncate(&mut self, count: usize) {
+        if let Some(pair) = self.pairs.get(count) {
+            self.end_s = pair.start_s;
+            self.pairs.truncate(count);
+        }
     }
 
     /// From the next pair on, the grid is that of `window`.
     pub(crate) fn move_window(&mut self, window: Window) {
-        self.windows.push((self.rungs.len(), window));
+        self.windows.push((self.pairs.len(), window));
     }
 
     /// The window that begins with pair `k`.
@@ -59,23 +87,22 @@ impl Schedule {
 
     /// Pairs so far.
     pub(crate) fn pairs(&self) -> usize {
-        self.rungs.len()
+        self.pairs.len()
     }
 
     /// Start of pair `k`, or of the next one, s.
-    #[expect(clippy::cast_precision_loss, reason = "tick counts stay far below 2^52 in any run of sensible length")]
     pub(crate) fn start(&self, k: usize) -> f64 {
-        self.starts.get(k).copied().unwrap_or(self.now) as f64 * self.tick_s
+        self.pairs.get(k).map_or(self.end_s, |p| p.start_s)
     }
 
     /// Middle of pair `k`, s.
     pub(crate) fn middle(&self, k: usize) -> f64 {
-        self.start(k) + self.dt(self.rungs[k])
+        self.start(k) + self.pairs[k].dt_s
     }
 
     /// Number of steps and step size of pair `k` at `refinement`.
     pub(crate) fn steps(&self, k: usize, refinement: Refinement) -> (usize, f64) {
-        (refinement.times(2), self.dt(self.rungs[k]) / refinement.factor())
+        (refinement.times(2), self.pairs[k].dt_s / refinement.factor())
     }
 }
 

@@ -124,10 +124,11 @@ impl Series {
         Stencil::<ALONG_POINTS>::at(&self.time, t).slope_of(&self.position)
     }
 
-    /// Greatest value of a quantity of step middles up to `until`, with its instant.
-    pub(crate) fn greatest(&self, values: &[f64], until: f64) -> (f64, f64) {
+    /// Greatest value of a quantity of step middles from `since` up to `until`, with its instant.
+    pub(crate) fn greatest(&self, values: &[f64], (since, until): (f64, f64)) -> (f64, f64) {
+        let first = self.time_mid.partition_point(|&t| t < since);
         let n = self.time_mid.partition_point(|&t| t <= until).max(1).min(values.len());
-        let largest = (0..n).max_by(|&a, &b| values[a].total_cmp(&values[b]));
+        let largest = (first..n).max_by(|&a, &b| values[a].total_cmp(&values[b]));
         let Some(k) = largest else { return (0.0, 0.0) };
         let from = k.saturating_sub(4);
         let to = (k + 5).min(values.len());

@@ -16,6 +16,7 @@ pub(crate) fn instants(plan: &SnapshotPlan, series: &Series, course: &Course) ->
         SnapshotPlan::Instants { times_s } => times_s.iter().copied().filter(|&t| t <= end).collect(),
     };
     instants.push(drag_peak(series, course).0);
+    instants.retain(|&t| t >= course.since || matches!(plan, SnapshotPlan::Instants { .. }));
     instants.sort_by(f64::total_cmp);
     instants.dedup();
     instants

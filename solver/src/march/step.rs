@@ -17,6 +17,9 @@ const ROUNDING: f64 = 16.0;
 /// Residual limit of the step's linear system.
 const STEP_RESIDUAL: f64 = 1.0e-11;
 
+/// Travel in a step, in bore radii, below which the force is taken from the slope of the mover's field instead of its difference.
+const LEAST_TRAVEL: f64 = 1.0e-6;
+
 /// Everything that a step changes.
 #[derive(Debug, Clone)]
 pub(crate) struct State {
@@ -154,6 +157,11 @@ impl Stepper {
                 self.field_for(level, state, state.position + travel, dt, false)?;
                 travel
             }
+            Motion::Prescribed(path) => {
+                let end = path.position(time + dt);
+                self.field_for(level, state, end, dt, false)?;
+                end - state.position
+            }
             Motion::Free { law, mass } => {
                 let mechanics = Mechanics { law, mass: *mass, direction: sliding(law, *mass, state) };
                 self.travel_of(level, state, &mechanics, time, dt)?
@@ -161,7 +169,7 @@ impl Stepper {
         };
         self.ring_currents(level, state, dt, currents);
         self.equivalents(level, currents, dt, 1);
-        let force = self.force(state, travel);
+        let force = self.force(level, state, travel);
         let mut report = StepReport {
             force,
             heat: dt * heat_rate(level, currents),
@@ -171,7 +179,40 @@ impl Stepper {
             held: false,
         };
         self.accept(motion, level, state, travel, dt, &mut report);
+        if let Motion::Prescribed(path) = motion {
+            state.position = path.position(time + dt);
+            state.velocity = path.velocity(time + dt);
+        }
         Ok(report)
+    }
+
+    /// Ends the step just made by half a step of the implicit Euler rule from its middle instead of by the midpoint rule's reflection,
+    /// with the same factor. What a sudden start excites in cells whose currents live much shorter than a step, the midpoint rule would
+    /// only turn over from step to step; this damps it.
+    ///
+    /// # Errors
+    /// Not finite, or a residual.
+    pub(crate) fn damp(&mut self, level: &mut MarchLevel<'_>, state: &mut State, dt: f64) -> Result<(), SolveFault> {
+        let n = level.operators.unknowns();
+        let wall = &level.operators.wall;
+        self.right[..n].fill(0.0);
+        for w in 0..wall.len() {
+            let u = wall.unknown[w];
+            let middle = self.columns[u] + self.mean[w];
+            self.right[u] = 2.0 * wall.conductance[w] / dt * (middle - state.source[w]);
+        }
+        if let Some(excess) = &level.operators.excess {
+            spread_wall(&level.operators, &state.source, &mut self.nodes);
+            add_product(excess, &self.nodes, -1.0, &mut self.right[..n]);
+        }
+        self.columns[n..].copy_from_slice(&self.right[..n]);
+        level.solve(&mut self.columns[n..]);
+        level.check(&self.columns[n..], &self.right[..n], STEP_RESIDUAL)?;
+        let wall = &level.operators.wall;
+        for w in 0..wall.len() {
+            state.flux[w] = self.columns[n + wall.unknown[w]] + state.source[w];
+        }
+        Ok(())
     }
 
     /// The travel that balances the equation of motion: Newton passes with the exact tangent as a second right-hand side.
@@ -221,7 +262,8 @@ impl Stepper {
     ) -> f64 {
         self.equivalents_of(level, state, dt, 1);
         let other = mechanics.other_force(state.position + 0.5 * travel, travel / dt);
-        (2.0 * mechanics.mass * (travel / dt - state.velocity) / dt - self.force(state, travel) - other.value).abs()
+        (2.0 * mechanics.mass * (travel / dt - state.velocity) / dt - self.force(level, state, travel) - other.value)
+            .abs()
     }
 
     /// Solves for the reaction at the middle with the mover ending at `position`; with its tangent where asked.
@@ -292,14 +334,15 @@ impl Stepper {
         self.rings = rings;
     }
 
-    /// F = 2 pi sum (K0 psi_mid) . dpsi_s / travel, N; at rest the derivative instead of the difference.
-    fn force(&self, state: &State, travel: f64) -> f64 {
-        2.0 * PI * self.virtual_work(state, travel, 0)
+    /// F = 2 pi sum (K0 psi_mid) . dpsi_s / travel, N; where it hardly moves, the derivative instead of the difference, of which rounding
+    /// would be left.
+    fn force(&self, level: &MarchLevel<'_>, state: &State, travel: f64) -> f64 {
+        2.0 * PI * self.virtual_work(level, state, travel, 0)
     }
 
-    fn virtual_work(&self, state: &State, travel: f64, column: usize) -> f64 {
+    fn virtual_work(&self, level: &MarchLevel<'_>, state: &State, travel: f64, column: usize) -> f64 {
         let equivalent = &self.equivalent[column];
-        if travel.abs() > 0.0 {
+        if travel.abs() > LEAST_TRAVEL * level.placement.scale_m {
             let ends = self.source_next.iter().zip(&state.source);
             equivalent.iter().zip(ends).map(|(i, (b, a))| i * (b - a)).sum::<f64>() / travel
         } else {
@@ -310,10 +353,11 @@ impl Stepper {
     /// The force and its derivative by the step's end position.
     fn force_and_slope(&mut self, level: &MarchLevel<'_>, state: &State, travel: f64, dt: f64) -> (f64, f64) {
         self.equivalents_of(level, state, dt, 2);
-        let force = self.force(state, travel);
-        let by_currents = 2.0 * PI * self.virtual_work(state, travel, 1);
+        let force = self.force(level, state, travel);
+        let by_currents = 2.0 * PI * self.virtual_work(level, state, travel, 1);
         let by_place: f64 = self.equivalent[0].iter().zip(&self.source_slope).map(|(i, s)| i * s).sum();
-        let by_length = if travel.abs() > 0.0 { (2.0 * PI * by_place - force) / travel } else { 0.0 };
+        let moves = travel.abs() > LEAST_TRAVEL * level.placement.scale_m;
+        let by_length = if moves { (2.0 * PI * by_place - force) / travel } else { 0.0 };
         (force, by_currents + by_length)
     }
 

@@ -4,6 +4,7 @@ mod fields;
 mod figure;
 mod frequency;
 mod report;
+mod stroke;
 
 pub use fields::{Fields, Snapshot};
 pub use figure::{Basis, Figure, Location};
@@ -11,3 +12,4 @@ pub use frequency::{CurrentSample, FrequencyPoint, FrequencyResponse, Measured, 
 pub use report::{
     Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
 };
+pub use stroke::SmallStroke;

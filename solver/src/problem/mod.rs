@@ -6,6 +6,7 @@ mod fault;
 mod mover;
 mod quantity;
 mod reach;
+mod stroke;
 mod travel;
 mod validity;
 mod wall;
@@ -14,6 +15,7 @@ pub use accuracy::{Accuracy, SnapshotPlan};
 pub use fault::{Named, ProblemFault, Subject};
 pub use mover::{Mover, Outline, Part};
 pub use quantity::{Quantity, SensibleRange};
+pub use stroke::{MOST_CYCLES, MotionTable, Sine};
 pub use travel::{Alternating, Free, Travel, Traverse};
 pub use wall::{Extent, Layer, Wall};
 

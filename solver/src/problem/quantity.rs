@@ -52,6 +52,8 @@ pub enum Quantity {
     Length,
     /// Position along the axis, m.
     Position,
+    /// Amplitude of a stroke, zero to peak, m.
+    Amplitude,
     /// Electrical conductivity, S/m.
     Conductivity,
     /// Relative permeability.
@@ -84,7 +86,7 @@ pub enum Quantity {
     SpringRate,
     /// A time, s.
     Time,
-    /// Frequency of an alternating current, Hz.
+    /// Frequency of an alternating current or of a stroke, Hz.
     Frequency,
     /// Current in a coil, A, zero to peak.
     Current,
@@ -103,6 +105,7 @@ impl Quantity {
             Self::OuterRadius => "outer radius",
             Self::Length => "length",
             Self::Position => "position",
+            Self::Amplitude => "amplitude",
             Self::Conductivity => "conductivity",
             Self::RelativePermeability => "relative permeability",
             Self::Moment => "dipole moment",
@@ -130,7 +133,7 @@ impl Quantity {
     #[must_use]
     pub const fn unit(self) -> &'static str {
         match self {
-            Self::InnerRadius | Self::OuterRadius | Self::Length | Self::Position => "m",
+            Self::InnerRadius | Self::OuterRadius | Self::Length | Self::Position | Self::Amplitude => "m",
             Self::Conductivity => "S/m",
             Self::RelativePermeability | Self::FrictionCoefficient | Self::TargetRelative => "",
             Self::Moment => "A m2",
@@ -157,6 +160,7 @@ impl Quantity {
             Self::InnerRadius => SensibleRange::with_zero(1e-9, 1e4),
             Self::OuterRadius | Self::Length => SensibleRange::positive(1e-9, 1e4),
             Self::Position => SensibleRange::signed(1e4),
+            Self::Amplitude => SensibleRange::positive(1e-9, 1e4),
             Self::Conductivity => SensibleRange::with_zero(1e-12, 1e10),
             Self::RelativePermeability => SensibleRange::positive(1e-6, 1e7),
             Self::Moment => SensibleRange::signed(1e9),

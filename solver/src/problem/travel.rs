@@ -1,5 +1,6 @@
 //! How the mover travels.
 
+use super::stroke::{MotionTable, Sine};
 use crate::constants::STANDARD_GRAVITY;
 
 /// The law of motion.
@@ -14,6 +15,10 @@ pub enum Travel {
     Traverse(Traverse),
     /// Equation of motion.
     Free(Free),
+    /// Strokes to and fro, settled.
+    Sine(Sine),
+    /// A motion given point by point.
+    Table(MotionTable),
     /// Coils at rest with alternating current.
     Alternating(Alternating),
 }

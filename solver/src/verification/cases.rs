@@ -22,7 +22,7 @@ pub(crate) fn layer(inner_mm: f64, outer_mm: f64, sigma_ms: f64, mu_r: f64) -> L
 }
 
 /// The wall without thick or thin ends of it.
-pub(super) fn endless(layers: Vec<Layer>) -> Wall {
+pub(crate) fn endless(layers: Vec<Layer>) -> Wall {
     Wall { extent: Extent::Endless, layers }
 }
 

@@ -28,6 +28,7 @@ mod permeable_shell;
 mod settled_drag;
 mod static_fields;
 mod step_ladders;
+mod strokes;
 mod symmetries;
 mod unsymmetric;
 mod windows;

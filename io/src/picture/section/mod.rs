@@ -230,9 +230,10 @@ fn velocity(problem: &Problem, trace: &Trace, time: f64) -> f64 {
         Travel::Steady { velocity_m_per_s } => *velocity_m_per_s,
         Travel::Alternating(_) => 0.0,
         Travel::Traverse(t) => t.speed_m_per_s * (t.to_m - t.from_m).signum(),
-        Travel::Free(free) => {
+        Travel::Free(_) | Travel::Sine(_) | Travel::Table(_) => {
             let at = trace.time_s.partition_point(|t| *t < time).min(trace.velocity_m_per_s.len().saturating_sub(1));
-            trace.velocity_m_per_s.get(at).copied().unwrap_or(free.entry_velocity_m_per_s)
+            let at_start = if let Travel::Free(free) = &problem.travel { free.entry_velocity_m_per_s } else { 0.0 };
+            trace.velocity_m_per_s.get(at).copied().unwrap_or(at_start)
         }
     }
 }
