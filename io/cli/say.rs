@@ -5,7 +5,7 @@ use std::fmt::Write as _;
 use std::io::Write as _;
 
 use lenzbore_io::result::ResultHeader;
-use lenzbore_solver::outcome::{DragCurve, Figure, FrequencyResponse, Outcome};
+use lenzbore_solver::outcome::{DragCurve, Figure, FrequencyResponse, LumpedModel, Outcome, StrokeResponse};
 
 /// Points of a curve shown on the terminal.
 const SHOWN_POINTS: usize = 12;
@@ -53,6 +53,9 @@ pub fn answer(header: &ResultHeader, outcome: &Outcome) -> String {
     }
     if let Some(response) = &outcome.frequency {
         frequency_lines(&mut text, response);
+    }
+    if let Some(response) = &outcome.strokes {
+        stroke_lines(&mut text, response);
     }
     balance(&mut text, outcome);
     regime(&mut text, outcome);
@@ -163,6 +166,33 @@ fn frequency_lines(text: &mut String, response: &FrequencyResponse) {
             );
         }
     }
+}
+
+/// Small strokes over frequency, and what stands for them in a simulation.
+fn stroke_lines(text: &mut String, response: &StrokeResponse) {
+    let count = response.points.len();
+    let stride = count.div_ceil(SHOWN_POINTS).max(1);
+    let heading = ("small strokes Hz", "damping N s/m", "band", "stiffness N/m", "band");
+    let _ = writeln!(text, "\n{:>16} {:>17} {:>9} {:>17} {:>9}", heading.0, heading.1, heading.2, heading.3, heading.4);
+    for (k, p) in response.points.iter().enumerate() {
+        if k % stride == 0 || k + 1 == count {
+            let (c, s) = (with_band(p.damping, p.damping_band).0, with_band(p.stiffness, p.stiffness_band).0);
+            let f = p.frequency_hz;
+            let _ = writeln!(text, "{f:>16.6} {c:>17} {:>9.1e} {s:>17} {:>9.1e}", p.damping_band, p.stiffness_band);
+        }
+    }
+    let _ = writeln!(text, "\nfor a simulation of small strokes, F = sum of F_k with tau_k dF_k/dt + F_k = -c_k v:");
+    for model in &response.lumped {
+        let _ = writeln!(text, "{}", lumped_line(model));
+    }
+}
+
+fn lumped_line(model: &LumpedModel) -> String {
+    let term = |t: &lenzbore_solver::outcome::LumpedTerm| {
+        format!("c {:.5} N s/m tau {:.5} ms", t.damping_n_s_per_m, 1e3 * t.lag_s)
+    };
+    let terms: Vec<String> = model.terms.iter().map(term).collect();
+    format!("  within {:>6.2} %: {}", 100.0 * model.largest_error, terms.join("; "))
 }
 
 fn balance(text: &mut String, outcome: &Outcome) {

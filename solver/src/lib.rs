@@ -94,6 +94,13 @@ pub fn small_strokes(
     march::small_strokes(problem, centre_m, frequencies_hz, monitor)
 }
 
+/// A wall's currents as `terms` first-order lags, fitted to small strokes over frequency; `None` with fewer points than terms, or where
+/// nothing damps.
+#[must_use]
+pub fn lumped_model(points: &[outcome::SmallStroke], terms: usize) -> Option<outcome::LumpedModel> {
+    march::lumped_model(points, terms)
+}
+
 fn require_endless(problem: &Problem) -> Result<(), SolveFault> {
     match problem.wall.extent {
         Extent::Endless => Ok(()),

@@ -42,7 +42,7 @@ const FAULTS: [Fault; 29] = [
     fault("unknown word", THICK, "thikness = \"2 mm\"", "10:1", &["no word of", "did you mean 'thickness'?"]),
     fault("unknown table", "[travel]", "[travell]", "18:2", &["did you mean 'travel'?"]),
     fault("unknown law", "\"steady\"", "\"stedy\"", "19:7", &["did you mean \"steady\"?"]),
-    fault("law of later work", "\"steady\"", "\"sine\"", "19:7", &["not modelled yet"]),
+    fault("half a stroke", "\"steady\"", "\"sine\"", "18:2", &["lacks 'amplitude'", "a word of law 'steady'"]),
     fault("negative speed", SPEED, "speed = \"-5 m/s\"", "20:9", &["a speed is a magnitude"]),
     fault("absurd speed", SPEED, "speed = \"1e9 m/s\"", "20:9", &["impossible"]),
     fault("absurd conductivity", "58 MS/m", "58e9 MS/m", "8:16", &["impossible"]),

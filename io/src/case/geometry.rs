@@ -110,7 +110,7 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
         ProblemFault::FreeNeedsMass => {
             (parts.mover.section.place.clone(), Some((travel(&["law"]), "the law that needs it")))
         }
-        ProblemFault::NoTravel { .. } => (travel(&["to", "until", "from", "release"]), None),
+        ProblemFault::NoTravel { .. } => (travel(&["to", "until", "file", "from", "release"]), None),
         ProblemFault::NoTime { .. } => (travel(&["time_limit", "law"]), None),
         ProblemFault::OutOfReach { .. } => {
             (travel(&["until", "law"]), Some((travel(&["release"]), "where it is let go")))
@@ -118,6 +118,10 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
         ProblemFault::GatesCoincide { .. } => (travel(&["gates"]), None),
         ProblemFault::NoCoil { part: p } => {
             (part(p.index, &["name"]), Some((travel(&["law"]), "the law that drives coils")))
+        }
+        ProblemFault::Cycles { .. } => (travel(&["cycles"]), None),
+        ProblemFault::TableShort { .. } | ProblemFault::TableTimes { .. } | ProblemFault::TableJump { .. } => {
+            (travel(&["file"]), None)
         }
         ProblemFault::Frequencies => (travel(&["frequencies", "frequency"]), None),
         ProblemFault::Levels { .. } => (parts.accuracy.map_or_else(root, |s| s.place_of("levels")), None),

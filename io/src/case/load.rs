@@ -75,7 +75,7 @@ fn read_own_materials(source: &CaseSource<'_>, loaded: &mut Loaded) {
 }
 
 /// The folder of the file that a place points into.
-fn folder_of(place: &Place, source: &CaseSource<'_>, sources: &Sources) -> PathBuf {
+pub(super) fn folder_of(place: &Place, source: &CaseSource<'_>, sources: &Sources) -> PathBuf {
     match source {
         CaseSource::Text { base_dir, .. } if place.source == 0 => base_dir.to_path_buf(),
         _ => sources.text(place).and_then(|t| Path::new(&t.label).parent()).unwrap_or(Path::new("")).to_owned(),
@@ -103,6 +103,11 @@ fn read_file(path: &Path, named_at: Option<Place>, chain: &mut Vec<PathBuf>, loa
 
 /// The text of a file, or why it cannot be read.
 pub(crate) fn text_of(path: &Path) -> Result<String, String> {
+    String::from_utf8(bytes_of(path)?).map_err(|_| "it is not UTF-8 text".to_owned())
+}
+
+/// The bytes of a file, or why it cannot be read.
+pub(super) fn bytes_of(path: &Path) -> Result<Vec<u8>, String> {
     let plain = |e: std::io::Error| match e.kind() {
         std::io::ErrorKind::NotFound => "there is no such file".to_owned(),
         std::io::ErrorKind::PermissionDenied => "no permission to read it".to_owned(),
@@ -124,7 +129,7 @@ pub(crate) fn text_of(path: &Path) -> Result<String, String> {
     if u64::try_from(read).map_or(true, |read| read > LARGEST_FILE_BYTES) {
         return Err(too_long());
     }
-    String::from_utf8(bytes).map_err(|_| "it is not UTF-8 text".to_owned())
+    Ok(bytes)
 }
 
 /// The same file under different spellings of its path.
@@ -183,7 +188,7 @@ fn file_name(path: &Path) -> String {
 }
 
 /// `cases/../base.toml` is shown as `base.toml`.
-fn tidy(path: &Path) -> PathBuf {
+pub(super) fn tidy(path: &Path) -> PathBuf {
     let mut tidy = PathBuf::new();
     for part in path.components() {
         match part {

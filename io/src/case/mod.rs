@@ -43,6 +43,7 @@ mod reader;
 mod resolve;
 mod resolved;
 mod sizes;
+mod stroke;
 mod temperature;
 mod tolerance;
 mod travel;

@@ -10,6 +10,7 @@ use super::load::Loaded;
 use super::mover::read_mover;
 use super::output::{read_accuracy, read_output};
 use super::reader::{Reader, Section};
+use super::stroke::{is_given_motion, read_given_motion};
 use super::tolerance::{Tolerance, read_tolerances};
 use super::travel::{Surroundings, read_travel};
 use super::tree::Table;
@@ -68,6 +69,8 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     let travel = travel_section.as_ref().and_then(|s| {
         if is_asked(s) {
             read_alternating(reader, s, wall.as_ref().map(|w| &w.wall), mover.as_ref())
+        } else if is_given_motion(s) {
+            read_given_motion(reader, s, around, source)
         } else {
             read_travel(reader, s, around)
         }
@@ -98,7 +101,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     };
     place_faults(reader, problem.faults(), &parts);
     reader.cautions.extend(odd_sizes(&problem));
-    if matches!(travel, Some(Travel::Traverse(_) | Travel::Free(_))) {
+    if matches!(travel, Some(Travel::Traverse(_) | Travel::Free(_) | Travel::Sine(_) | Travel::Table(_))) {
         let text =
             "currents in the mover's own conducting parts (a sintered magnet conducts about 1 % as well as copper)";
         reader.not_modelled.push(text.to_owned());

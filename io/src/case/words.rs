@@ -191,8 +191,8 @@ pub const LAWS: [LawWords; 6] = [
         ],
         modelled: true,
     },
-    LawWords { law: "sine", words: &["centre", "amplitude", "frequency", "cycles"], modelled: false },
-    LawWords { law: "table", words: &["file"], modelled: false },
+    LawWords { law: "sine", words: &["centre", "amplitude", "frequency", "cycles"], modelled: true },
+    LawWords { law: "table", words: &["file"], modelled: true },
     LawWords {
         law: "alternating",
         words: &["frequency", "frequencies", "points", "position", "winding_resistance"],

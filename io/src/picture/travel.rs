@@ -24,10 +24,12 @@ pub fn travel(heading: &str, problem: &Problem, outcome: &Outcome) -> Vec<Pictur
     if outcome.trace.time_s.len() < 2 {
         return Vec::new();
     }
-    vec![
-        View::against_position(problem, &outcome.trace).draw("travel_position", heading, outcome),
-        View::against_time(problem, &outcome.trace).draw("travel_time", heading, outcome),
-    ]
+    let by_time = View::against_time(problem, &outcome.trace).draw("travel_time", heading, outcome);
+    if let Travel::Sine(_) = problem.travel {
+        // Against position the strokes lie on one another: the force-displacement loop shows the settled one.
+        return vec![by_time];
+    }
+    vec![View::against_position(problem, &outcome.trace).draw("travel_position", heading, outcome), by_time]
 }
 
 /// One picture: what runs along its level axis, and what is marked on it.
@@ -167,20 +169,22 @@ impl View {
         let peak = outcome.figures.iter().find(|f| f.name == "drag_peak")?;
         let time = peak.location?.t_s?;
         let along = if self.by_time { time * self.factor } else { interpolated(&outcome.trace.time_s, &drag.x, time)? };
-        let shown = peak.value * unit.factor;
+        // A mover that turns round may be pushed along by its greatest force.
+        let sense = interpolated(&outcome.trace.time_s, &drag.y, time).map_or(1.0, f64::signum);
+        let shown = sense * peak.value * unit.factor;
         if !x.holds(along) || !y.holds(shown) {
             return None;
         }
         let at = (x.at(along), y.at(shown));
         svg.circle(at, 9.0, "#ffffff", Some(Stroke::full(ORANGE, 3.4)));
-        Some(self.peak_text(peak, time))
+        Some(self.peak_text(peak, time, if sense < 0.0 { "force, along the motion," } else { "drag" }))
     }
 
-    fn peak_text(&self, peak: &Figure, time: f64) -> String {
+    fn peak_text(&self, peak: &Figure, time: f64, what: &str) -> String {
         let place = peak.location.and_then(|l| l.z_m).filter(|_| !self.by_time);
         let place =
             place.map_or_else(|| format!("{} s", significant(time, 5)), |z| format!("{} mm", significant(1e3 * z, 5)));
-        format!("greatest drag {} N, at {place}", with_band(peak.value, peak.band))
+        format!("greatest {what} {} N, at {place}", with_band(peak.value, peak.band))
     }
 
     fn entries(&self, drag: &Banded, scale: &Scale, peak: Option<String>) -> Vec<(Swatch, String)> {
@@ -226,11 +230,9 @@ fn sense(trace: &Trace) -> &'static str {
 fn gates(problem: &Problem) -> Vec<(f64, &'static str)> {
     match &problem.travel {
         Travel::Free(free) => vec![(free.gates_m[0], "gate 1"), (free.gates_m[1], "gate 2")],
-        Travel::Steady { .. }
-        | Travel::Traverse(_)
-        | Travel::Sine(_)
-        | Travel::Table(_)
-        | Travel::Alternating(_) => Vec::new(),
+        Travel::Steady { .. } | Travel::Traverse(_) | Travel::Sine(_) | Travel::Table(_) | Travel::Alternating(_) => {
+            Vec::new()
+        }
     }
 }
 

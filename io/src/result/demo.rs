@@ -220,6 +220,7 @@ pub(crate) fn outcome(figures: Vec<Figure>, stop: Stop, trace: Trace, curve: Opt
         trace,
         curve,
         frequency: None,
+        strokes: None,
         fields: None,
     }
 }

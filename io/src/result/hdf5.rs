@@ -19,6 +19,7 @@ use super::fault::IoFault;
 use super::finite::all_finite;
 use super::header::ResultHeader;
 use super::frequency::frequency_columns;
+use super::strokes::stroke_columns;
 use super::series::{Column, curve_columns, trace_columns};
 use dataset::{About, put, text};
 
@@ -54,6 +55,9 @@ pub fn write_fields(
     if let Some(response) = &outcome.frequency {
         table(&file, "frequency", &frequency_columns(response)?).map_err(blame)?;
         frequency::write(&file, response, fields).map_err(blame)?;
+    }
+    if let Some(response) = &outcome.strokes {
+        table(&file, "strokes", &stroke_columns(response)?).map_err(blame)?;
     }
     snapshots::write(&file, fields, path, monitor)?;
     file.flush().map_err(blame)?;

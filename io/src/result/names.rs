@@ -10,6 +10,8 @@ pub const CURVE: &str = "curve.csv";
 pub const FREQUENCY: &str = "frequency.csv";
 /// Current density across the wall.
 pub const ACROSS: &str = "across.csv";
+/// Small strokes over frequency.
+pub const STROKES: &str = "strokes.csv";
 /// What each input makes of each figure.
 pub const SENSITIVITIES: &str = "sensitivities.csv";
 /// Figures at every rung of a ladder.

@@ -12,6 +12,7 @@ use super::frequency::frequency_object;
 use super::header::ResultHeader;
 use super::series::curve_columns;
 use super::spread::{input_spread, spread_object};
+use super::strokes::strokes_object;
 
 /// The summary of a run.
 ///
@@ -44,6 +45,9 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     }
     if let Some(response) = &outcome.frequency {
         put("frequency", frequency_object(response)?);
+    }
+    if let Some(response) = &outcome.strokes {
+        put("strokes", strokes_object(response)?);
     }
     let of_the_run = outcome.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());

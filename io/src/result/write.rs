@@ -9,7 +9,7 @@ use lenzbore_solver::problem::Problem;
 use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
-use super::{across_columns, csv, curve_columns, frequency_columns, hdf5, names, sensitivities_csv, summary_text, trace_columns, xdmf};
+use super::{across_columns, csv, curve_columns, frequency_columns, hdf5, names, sensitivities_csv, stroke_columns, summary_text, trace_columns, xdmf};
 use crate::picture::{self, Picture};
 
 /// What to write; what does not apply to a run (no series, no fields, no curve) is left out without a word.
@@ -98,6 +98,8 @@ fn fill(
 pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<Vec<Picture>, IoFault> {
     let mut all: Vec<Picture> = picture::curve(&header.title, outcome).into_iter().collect();
     all.extend(picture::travel(&header.title, problem, outcome));
+    all.extend(picture::force_loop(&header.title, problem, outcome));
+    all.extend(picture::stroke_response(&header.title, problem, outcome));
     all.extend(picture::impedance(&header.title, outcome));
     all.extend(picture::current_across(&header.title, outcome));
     all.extend(header.spread.as_ref().and_then(|s| picture::spread(&header.title, s)));
@@ -136,6 +138,9 @@ fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
     if let Some(response) = &outcome.frequency {
         sheaf.put(names::FREQUENCY, csv(&frequency_columns(response)?).as_bytes())?;
         sheaf.put(names::ACROSS, csv(&across_columns(response)?).as_bytes())?;
+    }
+    if let Some(response) = &outcome.strokes {
+        sheaf.put(names::STROKES, csv(&stroke_columns(response)?).as_bytes())?;
     }
     Ok(())
 }

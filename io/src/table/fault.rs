@@ -85,6 +85,14 @@ pub enum TableFault {
         /// What would be in range.
         legal: String,
     },
+    /// A table that gives no motion.
+    #[error("the table has {what}")]
+    NoMotion {
+        /// What it has, or lacks.
+        what: String,
+        /// What to write instead.
+        mend: String,
+    },
     /// The case does not give what the table has.
     #[error("the case gives no {what}")]
     NotOfTheCase {
@@ -139,7 +147,7 @@ impl TableFault {
                 Some("decimal commas need semicolons or tabs between the columns".to_owned())
             }
             Self::NoNumber { mend, .. } => mend.map(str::to_owned),
-            Self::NotOfTheCase { mend, .. } => Some(mend.clone()),
+            Self::NotOfTheCase { mend, .. } | Self::NoMotion { mend, .. } => Some(mend.clone()),
             _ => None,
         }
     }

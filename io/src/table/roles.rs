@@ -52,7 +52,7 @@ const fn figure(name: &'static str, kind: Kind) -> FigureName {
 }
 
 /// Every figure that a column can hold.
-pub const FIGURES: [FigureName; 19] = [
+pub const FIGURES: [FigureName; 21] = [
     figure("drag", Kind::Force),
     figure("damping_coefficient", Kind::DampingCoefficient),
     figure("dissipated_power", Kind::Power),
@@ -72,6 +72,8 @@ pub const FIGURES: [FigureName; 19] = [
     figure("deceleration_peak", Kind::Acceleration),
     figure("felt_acceleration_peak", Kind::Ratio),
     figure("stiffness", Kind::SpringRate),
+    figure("damping_coefficient_equivalent", Kind::DampingCoefficient),
+    figure("loss_per_cycle", Kind::Energy),
 ];
 
 /// What a named column is, before the other columns decide between abscissa and value.

@@ -80,6 +80,7 @@ pub(super) fn answer(
         trace: Trace::default(),
         curve: None,
         frequency: Some(response(&levels, points, alone)),
+        strokes: None,
         figures,
         forces: None,
         ledger,

@@ -3,7 +3,7 @@
 use lenzbore_mesh::{Refinement, Regions};
 
 use super::combine::{Margins, combine};
-use super::course::{Course, HELD_STRIDE, plan, reach, set_out, windows};
+use super::course::{Course, HELD_STRIDE, life_time, plan, reach, set_out, windows};
 use super::cycles::Settling;
 use super::figures::{LevelFigure, end_of, level_figures};
 use super::level::MarchLevel;
@@ -14,6 +14,7 @@ use super::routes::Routes;
 use super::run::{Run, Share};
 use super::schedule::Schedule;
 use super::series::Series;
+use super::small::around;
 use super::snapshots::instants;
 use super::window::{Window, WindowRule};
 use crate::band::{self, Ladder};
@@ -116,10 +117,15 @@ impl<'p> Journey<'p> {
 
     fn solve(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
         let mut records = self.first(monitor)?;
-        let outcome = refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
+        let mut outcome = refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
             self.replay_missing(&mut records, count, monitor)?;
             Ok::<_, SolveFault>(self.outcome(&mut records))
         })?;
+        if let Some(sine) = self.motion.sine()
+            && life_time(&self.problem.wall) > 0.0
+        {
+            outcome.strokes = Some(around(self.problem, sine, monitor)?);
+        }
         monitor.progress(1.0, "done");
         Ok(outcome)
     }
@@ -263,6 +269,7 @@ impl<'p> Journey<'p> {
             trace,
             curve: None,
             frequency: None,
+            strokes: None,
             forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),

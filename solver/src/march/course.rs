@@ -11,7 +11,7 @@ use crate::constants::MU0;
 use crate::fault::SolveFault;
 use crate::grid_rules::{Frame, GridPlan};
 use crate::placement::Placement;
-use crate::problem::{Free, MOST_CYCLES, Problem, Travel};
+use crate::problem::{Free, Layer, MOST_CYCLES, Problem, Travel, Wall};
 
 /// What ends a run.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -119,19 +119,20 @@ pub(crate) fn prescribed_steps(problem: &Problem, plan: &GridPlan) -> Option<f64
     let (Motion::Prescribed(path), course) = set_out(problem).ok()? else { return None };
     let cycles = match &path {
         Path::Sine(sine) => sine.cycles.map_or_else(
-            || {
-                // Currents of a thin wall live mu0 sigma w a / 2 at most, and 14 of that take them to 1e-6.
-                let live = |l: &crate::problem::Layer| {
-                    0.5 * MU0 * l.relative_permeability * l.conductivity_s_per_m * l.thickness_m() * l.outer_radius_m
-                };
-                let longest: f64 = problem.wall.layers.iter().map(live).sum();
-                (2.0 + 14.0 * longest * sine.frequency_hz).min(f64::from(MOST_CYCLES))
-            },
+            // 14 life times take currents to 1e-6.
+            || (2.0 + 14.0 * life_time(&problem.wall) * sine.frequency_hz).min(f64::from(MOST_CYCLES)),
             f64::from,
         ),
         Path::Table(_) => 1.0,
     };
     Some(steps(&path, HELD_STRIDE * plan.axial_cell_m, cycles)).filter(|s| s.is_finite() && course.time_limit > 0.0)
+}
+
+/// How long currents live at most, s, about: mu0 sigma w a / 2 in a thin wall.
+pub(super) fn life_time(wall: &Wall) -> f64 {
+    let live =
+        |l: &Layer| 0.5 * MU0 * l.relative_permeability * l.conductivity_s_per_m * l.thickness_m() * l.outer_radius_m;
+    wall.layers.iter().map(live).sum()
 }
 
 /// Travel in a step where the motion is given, in axial cells.

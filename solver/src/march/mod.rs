@@ -14,6 +14,7 @@ mod cycles;
 mod figures;
 mod level;
 mod lines;
+mod lumped;
 mod motion;
 mod pace;
 mod path;
@@ -34,4 +35,5 @@ pub(crate) use answer::march;
 #[cfg(test)]
 pub(crate) use answer::{coarsest_both_ways, march_on_whole_grids};
 pub(crate) use course::{grids_on_the_way, plan, prescribed_steps};
+pub(crate) use lumped::lumped_model;
 pub(crate) use small::small_strokes;

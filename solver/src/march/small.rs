@@ -10,17 +10,19 @@
 
 use lenzbore_mesh::Refinement;
 
+use super::course::life_time;
 use super::level::MarchLevel;
 use super::lines::LevelLines;
+use super::lumped::with_models;
 use crate::band::{self, Ladder};
 use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_rules::{Frame, GridPlan};
 use crate::harmonic::{Group, Recurrence, group_of, groups};
 use crate::monitor::Monitor;
-use crate::outcome::SmallStroke;
+use crate::outcome::{SmallStroke, StrokeResponse};
 use crate::placement::Placement;
-use crate::problem::Problem;
+use crate::problem::{Problem, Sine};
 use crate::target::levels_wanted;
 
 /// Stiffness and damping coefficient at vanishing amplitude about `centre_m`, at each of `frequencies_hz`, extrapolated, with bands.
@@ -55,6 +57,34 @@ pub(crate) fn small_strokes(
             SmallStroke { frequency_hz, stiffness, stiffness_band, damping, damping_band }
         })
         .collect())
+}
+
+/// Frequencies of a stroke's response, each 1.3 times the one before.
+const RATIO: f64 = 1.3;
+/// How far they go beyond the stroke's own frequency and that of the currents' life time.
+const BEYOND: f64 = 10.0;
+
+/// The response around a stroke: from a tenth of its frequency, and of 1 / (2 pi times the life time of currents), to ten times both.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub(super) fn around(problem: &Problem, sine: &Sine, monitor: &dyn Monitor) -> Result<StrokeResponse, SolveFault> {
+    let characteristic = 1.0 / (std::f64::consts::TAU * life_time(&problem.wall));
+    let own = sine.frequency_hz;
+    let (low, high) = (own.min(characteristic) / BEYOND, own.max(characteristic) * BEYOND);
+    let steps = |far: f64| (far / own).ln().abs() / RATIO.ln();
+    let mut frequencies = vec![own];
+    let mut k = 1.0;
+    while k <= steps(high) {
+        frequencies.push(own * RATIO.powf(k));
+        k += 1.0;
+    }
+    let mut k = 1.0;
+    while k <= steps(low) {
+        frequencies.insert(0, own * RATIO.powf(-k));
+        k += 1.0;
+    }
+    Ok(with_models(small_strokes(problem, sine.centre_m, &frequencies, monitor)?))
 }
 
 pub(super) fn plan(

@@ -12,4 +12,4 @@ pub use frequency::{CurrentSample, FrequencyPoint, FrequencyResponse, Measured, 
 pub use report::{
     Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
 };
-pub use stroke::SmallStroke;
+pub use stroke::{LumpedModel, LumpedTerm, SmallStroke, StrokeResponse};

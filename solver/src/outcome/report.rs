@@ -1,6 +1,6 @@
 //! Everything around the figures.
 
-use super::{Fields, Figure, FrequencyResponse};
+use super::{Fields, Figure, FrequencyResponse, StrokeResponse};
 
 /// Drag by three routes at one instant, N, each with the same meaning: positive opposes the motion.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -199,6 +199,8 @@ pub struct Outcome {
     pub curve: Option<DragCurve>,
     /// What coils at rest see over frequency, where that was asked.
     pub frequency: Option<FrequencyResponse>,
+    /// Small strokes over frequency, where the travel is a stroke.
+    pub strokes: Option<StrokeResponse>,
     /// Fields, where they were asked.
     pub fields: Option<Fields>,
 }

@@ -62,6 +62,7 @@ fn curve_on(problem: &Problem, speeds: &[f64], levels: &mut Levels<'_>) -> Resul
         trace: Trace::default(),
         curve: Some(DragCurve { points }),
         frequency: None,
+        strokes: None,
         figures,
         forces,
         ledger: None,

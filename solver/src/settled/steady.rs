@@ -59,6 +59,7 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
         trace: Trace::default(),
         curve: None,
         frequency: None,
+        strokes: None,
         figures,
         forces,
         ledger,

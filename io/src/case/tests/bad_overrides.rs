@@ -32,7 +32,7 @@ fn faults_of_overrides_point_at_the_option() {
             &["--set: part 'M' (diameters 0 mm to 25.5 mm) has no running clearance", "the layer: t.toml:9:13"],
         ),
         ("tolerance.wall.sleeve.thickness=10 mT", &["'mT' does not measure a length"]),
-        ("travel.law=sine", &["law = \"sine\": not modelled yet"]),
+        ("travel.law=sina", &["did you mean \"sine\"?"]),
         ("travel.gates=[600 mm]", &["there are two gates"]),
     ] {
         let shown = bad(CASE, &[set]).to_string();
