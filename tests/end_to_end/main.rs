@@ -8,6 +8,7 @@
     reason = "a test may stop at the first fault"
 )]
 
+mod alternating;
 mod bad_input;
 mod commands;
 mod compare;

@@ -38,9 +38,10 @@ pub fn impedance(heading: &str, outcome: &Outcome) -> Option<Picture> {
         Axis { scale: logarithmic(from, to, 1.0, area.left, area.right), title: format!("Frequency, {}", unit.unit) };
     grid(&mut svg, &area, &x, &y);
     let mut entries = Vec::new();
-    for (curve, stroke, name) in
-        [(&curves[0], CURVE, "resistance that the wall adds"), (&curves[1], REACTANCE, "reactance with the wall")]
-    {
+    for (curve, stroke, name) in [
+        (&curves[0], CURVE, ("resistance that the wall adds", "resistance")),
+        (&curves[1], REACTANCE, ("reactance with the wall", "reactance")),
+    ] {
         let line = smooth(curve, &x.scale, &y.scale);
         let points: Vec<(f64, f64)> =
             line.x.iter().zip(&line.y).map(|(a, b)| (x.scale.at(*a), y.scale.at(*b))).collect();
@@ -48,7 +49,7 @@ pub fn impedance(heading: &str, outcome: &Outcome) -> Option<Picture> {
         for (a, b) in curve.x.iter().zip(&curve.y) {
             svg.circle((x.scale.at(*a), y.scale.at(*b)), 4.4, stroke.colour, None);
         }
-        entries.push((Swatch::Line(stroke), format!("{name}; {}", curve.remark_on_greatest(&y.scale, name))));
+        entries.push((Swatch::Line(stroke), format!("{}; {}", name.0, curve.remark_on_greatest(&y.scale, name.1))));
     }
     critical(&mut svg, (outcome, &unit), (&x, &y, &area), &mut entries);
     entries.push((

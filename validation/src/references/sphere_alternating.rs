@@ -10,7 +10,7 @@ pub const SOURCE: Source = Source {
                k1(q r) in the shell, q^2 = i omega mu0 sigma, B0 r/2 + E/r^2 outside), A and dA/dr continuous",
     obtained: Obtained::ComputedIndependently,
     uncertainty: "half of the last digit",
-    tolerance: "1 % of the applied field in the cavity and 2 % of the loss: the wall's layers have straight sides, so the sphere is a stack of 48 \
+    tolerance: "0.1 % of the applied field in the cavity and 2 % of the loss: the wall's layers have straight sides, so the sphere is a stack of 64 \
                 stepped rings whose rims differ from it by up to half a step",
 };
 
