@@ -23,7 +23,8 @@ fn point(summary: &Value, k: usize) -> (f64, f64, f64) {
 fn the_probe_in_a_long_tube_has_the_impedance_of_the_integral() {
     let bench = Bench::new();
     let sets = ["--set", "wall.length=\"400 mm\"", "--set", "travel.position=\"200 mm\""];
-    let words = [&["run", &example(), "--json", "--out", "result"], sets.as_slice()].concat();
+    let case = example();
+    let words = [&["run", case.as_str(), "--json", "--out", "result"], sets.as_slice()].concat();
     let summary = bench.succeed(&words).json();
     assert!((figure(&summary, "inductance_alone") / 189.873_369_344e-6 - 1.0).abs() < 1e-9);
     for (k, hertz, resistance, reactance) in [
