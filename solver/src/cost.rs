@@ -7,6 +7,7 @@ use std::time::Instant;
 
 use lenzbore_mesh::{Grid, Refinement, Regions};
 
+use crate::band::near_permeable_wall;
 use crate::direct::DirectPlan;
 use crate::fault::SolveFault;
 use crate::grid_report::grid_report;
@@ -45,6 +46,8 @@ const ADDING_S: f64 = 8.0e-10;
 /// Shielding above which the peak current density usually asks for a level more than three (at 100 and 1000 in every wall tried, at
 /// 10 in none).
 const LEVEL_MORE: f64 = 40.0;
+/// Doubt by a permeable wall above which the same holds.
+const DOUBT_MORE: f64 = 20.0;
 /// Factors kept by a level of a march.
 const KEPT_FACTORS: f64 = 4.0;
 
@@ -129,8 +132,12 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
     let work = settled
         .map(|speeds| SettledWork { share: share(&problem.wall, speeds), speeds: speeds.len() })
         .or_else(|| alternating_work(problem));
-    let refinements =
-        Refinement::first(levels_expected(problem, work.is_some() && curve_speeds_m_per_s.is_none(), speed));
+    let refinements = Refinement::first(levels_expected(
+        problem,
+        placement.gap_m,
+        work.is_some() && curve_speeds_m_per_s.is_none(),
+        speed,
+    ));
     let (grids, windows) = if work.is_some() {
         (refinements.iter().map(|&f| plan.grid(f)).collect(), 1)
     } else {
@@ -181,9 +188,10 @@ pub fn forecast(problem: &Problem, curve_speeds_m_per_s: Option<&[f64]>) -> Resu
 }
 
 /// Levels that the target will probably take.
-fn levels_expected(problem: &Problem, steady: bool, speed: f64) -> usize {
+fn levels_expected(problem: &Problem, gap_m: f64, steady: bool, speed: f64) -> usize {
     let first = levels_wanted(&problem.accuracy);
-    let more = steady && problem.accuracy.levels.is_none() && shielding(&problem.wall, speed) > LEVEL_MORE;
+    let hard = shielding(&problem.wall, speed) > LEVEL_MORE || near_permeable_wall(problem, gap_m, first) > DOUBT_MORE;
+    let more = steady && problem.accuracy.levels.is_none() && hard;
     if more { first + 1 } else { first }
 }
 
