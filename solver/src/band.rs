@@ -101,7 +101,6 @@ impl Ladder {
     /// The same where corners of a permeable wall add powers of their own (`corners`, from [`crate::corner`]) to even ones: the
     /// value is that of even powers, and what the corners' powers would make of it instead counts as a step. On three levels a
     /// sleeve in a steel jacket is off by half of that.
-    #[cfg_attr(not(test), expect(dead_code, reason = "the march's bands are to take it for finite permeable walls"))]
     pub(crate) fn beside_corners(factors: &[f64], levels: Vec<f64>, corners: &[f64]) -> Self {
         let ladder = Self::new(factors, levels);
         let other = Self::with_powers(factors, ladder.levels.clone(), corners);

@@ -382,6 +382,12 @@ impl<'p> Journey<'p> {
             if stop == Stop::TimeLimit {
                 texts.push("The time limit ended the run before the end of travel.".to_owned());
             }
+            if stop == Stop::OutOfReach {
+                texts.push(
+                    "The mover left the wall's field away from the end of travel, and nothing brings it back: the run ended there."
+                        .to_owned(),
+                );
+            }
             if stop == Stop::AtRest {
                 texts.push("Friction brought the mover to rest before the end of travel.".to_owned());
             }

@@ -34,7 +34,8 @@ pub(super) fn combine(
         let coarsest = values[0];
         let ladder = match &margins.corners {
             Some(powers) if figure.name == "static_pull_peak" => Ladder::with_powers(factors, values, powers),
-            _ => Ladder::new(factors, values),
+            Some(powers) => Ladder::beside_corners(factors, values, powers),
+            None => Ladder::new(factors, values),
         };
         let change = cut.and_then(find).map_or(0.0, |c| c - coarsest);
         let rule = if is_local(figure.name) { band::local } else { band::one_route };

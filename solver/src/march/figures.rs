@@ -33,6 +33,7 @@ pub(crate) fn end_of(series: &Series, course: &Course) -> (Stop, f64) {
     match series.crossing(place) {
         Some(t) if t <= course.time_limit * (1.0 + 1.0e-12) => (Stop::EndOfTravel, t),
         _ if (last - course.time_limit).abs() <= 1.0e-9 * last => (Stop::EndOfTravel, last),
+        _ if series.lost => (Stop::OutOfReach, last),
         _ => (Stop::TimeLimit, course.time_limit.min(last)),
     }
 }

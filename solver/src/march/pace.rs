@@ -34,7 +34,7 @@ pub(super) fn pair_of_cycle(sine: &Sine, a_cycle: u32, k: u32) -> PlannedPair {
     PlannedPair { dt_s: 0.5 * sine.period_s() / f64::from(a_cycle), end_s: end * sine.period_s() }
 }
 
-/// Pairs of steps through a table: each of its pieces in whole pairs, as the acceleration jumps between pieces; then `beyond` more.
+/// Pairs of steps through a table: each of its pieces in whole pairs, as the rate of the acceleration jumps between them; then `beyond` more.
 pub(super) fn pairs_of_table(table: &TablePath, stride: f64, beyond: u32) -> Vec<PlannedPair> {
     let mut pairs: Vec<PlannedPair> = Vec::new();
     let fastest = (0..table.pieces()).map(|k| table.greatest_speed(k)).fold(0.0, f64::max);

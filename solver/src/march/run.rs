@@ -140,7 +140,8 @@ impl<'a, 'p> Run<'a, 'p> {
             let gone = course.gone(self.state.position);
             let elapsed = schedule.start(schedule.pairs()) / course.time_limit;
             monitor.progress(share.from + (share.to - share.from) * gone.max(elapsed).clamp(0.0, 1.0), "first level");
-            if self.series.stopped_at.is_some() {
+            self.series.lost = self.level.problem.is_lost(self.state.position, self.state.velocity);
+            if self.series.stopped_at.is_some() || self.series.lost {
                 break;
             }
             let over = course.passed(self.state.position) || elapsed >= 1.0;

@@ -39,6 +39,8 @@ pub(crate) struct Series {
     pub(crate) energy_start: f64,
     /// Instant at which friction held the mover, s.
     pub(crate) stopped_at: Option<f64>,
+    /// The mover left the wall's field for good.
+    pub(crate) lost: bool,
 }
 
 impl Series {

@@ -103,6 +103,8 @@ pub enum Stop {
     TimeLimit,
     /// The mover came to rest and stays there.
     AtRest,
+    /// The mover left the wall's field, away from the end of travel, and nothing brings it back.
+    OutOfReach,
 }
 
 impl Stop {
@@ -114,6 +116,7 @@ impl Stop {
             Self::EndOfTravel => "end of travel",
             Self::TimeLimit => "time limit",
             Self::AtRest => "at rest",
+            Self::OutOfReach => "out of reach of wall and end of travel",
         }
     }
 }
