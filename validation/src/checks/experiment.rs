@@ -59,7 +59,10 @@ fn fall(verdict: &mut Verdict, monitor: &dyn Monitor) -> Result<(), Error> {
     let magnet = cases::cylinder(reference::MAGNET_M.0, reference::MAGNET_M.1, remanence);
     let mover = Mover { mass_kg: Some(reference::MASS_KG), ..magnet };
     let law = cases::free_fall(reference::LENGTH_M, -5e-3, [reference::LENGTH_M, 0.0]);
-    let outcome = lenzbore_solver::solve(&cases::question(wall, mover, Travel::Free(law)), monitor)?;
+    let mut problem = cases::question(wall, mover, Travel::Free(law));
+    // The experiment tells no more closely than 2 %: a band of 0.1 % is narrow enough.
+    problem.accuracy.target_relative = 1e-3;
+    let outcome = lenzbore_solver::solve(&problem, monitor)?;
     let time = figure(&outcome, "transit_time")?;
     let (low, high) = reference::REMANENCE_T;
     // The time goes with the remanence squared.

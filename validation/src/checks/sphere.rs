@@ -24,9 +24,12 @@ const LEVELS: usize = 4;
 /// Greatest error on the finest of them, over the applied field: 1.3 times what was found.
 const STAIRCASE_ERROR: f64 = 5e-4;
 const SHARES_ERROR: f64 = 7e-4;
-/// The order that shares of cells give is 2; found 1.9 over these levels. Steps by centres fall between 1 and 3 from level to level.
+/// The order that shares of cells give is 2; found 1.9 over these levels.
 const ORDER_WITHIN: f64 = 0.3;
-const LEAST_STAIRCASE_ORDER: f64 = 1.0;
+/// Steps have no steady order: from level to level the error falls with orders from 0.5 to 7, or rises (on levels 1 to 3 it was
+/// 3.9e-3, 1.5e-3, 1.3e-3, 2.6e-4, 3.8e-4). It stays below this times the cell size over the thickness, so first order is what can be
+/// counted on.
+const STAIRCASE_BOUND: f64 = 2e-2;
 
 /// The shell of the reference.
 fn shell() -> Body {
@@ -89,20 +92,22 @@ fn hollow_sphere(monitor: &dyn Monitor) -> Result<Verdict, Error> {
     for (rim, name, allowed) in rims {
         let levels = convergence(rim, monitor)?;
         let points = levels.iter().map(|l| (l.cell, l.error)).collect();
-        verdict.series.push(Series { name: format!("{name}: order {:.1}", order(&levels)), points });
+        let steady =
+            if rim == Rim::Shares { format!("order {:.1}", order(&levels)) } else { "no steady order".to_owned() };
+        verdict.series.push(Series { name: format!("{name}: {steady}"), points });
         if let Some(finest) = levels.last() {
             for ((time, expected), found) in reference::CAVITY.into_iter().zip(&finest.found) {
                 verdict.compare(format!("cavity at {:.0} ms, {name}", 1e3 * time), *found, expected, allowed, "1");
             }
             verdict.compare(format!("greatest error, {name}"), finest.worst, 0.0, allowed, "1");
         }
-        match rim {
-            Rim::Shares => verdict.compare(format!("order, {name}"), order(&levels), 2.0, ORDER_WITHIN, "1"),
-            Rim::Staircase => {
-                let short = (LEAST_STAIRCASE_ORDER - order(&levels)).max(0.0);
-                let what = format!("order, {name}: {:.1}, what it lacks of 1", order(&levels));
-                verdict.compare(what, short, 0.0, 1e-9, "1");
-            }
+        if rim == Rim::Shares {
+            verdict.compare(format!("order, {name}"), order(&levels), 2.0, ORDER_WITHIN, "1");
+            continue;
+        }
+        for level in &levels {
+            let what = format!("greatest error at {:.0} cells across, {name}", 1.0 / level.cell);
+            verdict.compare(what, level.worst, 0.0, STAIRCASE_BOUND * level.cell, "1");
         }
     }
     Ok(verdict)

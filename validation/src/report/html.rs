@@ -11,7 +11,7 @@ use super::{Finding, KINDS, Report};
 const STYLE: &str = "body{font:15px/1.5 Arial,Helvetica,sans-serif;color:#222;max-width:76em;margin:2em auto;padding:0 1em}\
 h1{font-size:1.6em}h2{font-size:1.15em;margin-top:2em}table{border-collapse:collapse;font-size:.87em;font-variant-numeric:tabular-nums}\
 th,td{text-align:left;padding:.2em .7em;border-bottom:1px solid #ddd;vertical-align:top}td.n{text-align:right;white-space:nowrap}\
-.bad{color:#8c1d18;font-weight:bold}.pictures{display:flex;flex-wrap:wrap;gap:1em;align-items:flex-start}.pictures svg{width:26em;height:auto}\
+.bad{color:#8c1d18;font-weight:bold}.pictures{display:flex;flex-wrap:wrap;gap:1em;align-items:flex-start}.pictures svg{width:23.4em;height:auto}\
 .wide{overflow-x:auto}details{margin:.5em 0}summary{cursor:pointer}@media print{details{display:block}}";
 
 /// A whole page around `body`.
@@ -47,16 +47,17 @@ impl Report {
         body.push_str(
             "<p>Difference = ours - reference. Each line shows the comparison that comes nearest to its limit.</p>\n",
         );
-        body.push_str("<div class=\"wide\"><table>\n<tr><th>check<th>kind<th>source<th>reference<th>ours<th>band<th>difference<th>allowed<th>verdict</tr>\n");
+        body.push_str("<div class=\"wide\"><table>\n<tr><th>check<th>kind<th>source<th>figure<th>reference<th>ours<th>band<th>difference<th>allowed<th>verdict</tr>\n");
         for finding in &self.findings {
             let check = finding.check;
-            let worst = finding.verdict.as_ref().ok().and_then(|v| v.worst()).map(cells).unwrap_or_default();
+            let worst = finding.verdict.as_ref().ok().and_then(|v| v.worst());
             let _ = writeln!(
                 body,
-                "<tr><td><a href=\"#{name}\">{name}</a><td>{}<td>{}{}{}</tr>",
+                "<tr><td><a href=\"#{name}\">{name}</a><td>{}<td>{}<td>{}{}{}</tr>",
                 check.kind.words(),
                 escaped(check.source.short),
-                numbers(&worst),
+                escaped(worst.map_or("", |c| c.what.as_str())),
+                numbers(&worst.map(cells).unwrap_or_default()),
                 marked(finding.passed(), finding.word()),
                 name = check.name,
             );

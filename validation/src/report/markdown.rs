@@ -23,16 +23,20 @@ impl Report {
             text,
             "\nDifference = ours - reference. Each line shows the comparison that comes nearest to its limit.\n"
         );
-        let _ = writeln!(text, "| check | kind | source | reference | ours | band | difference | allowed | verdict |");
-        let _ = writeln!(text, "| --- | --- | --- | --- | --- | --- | --- | --- | --- |");
+        let _ = writeln!(
+            text,
+            "| check | kind | source | figure | reference | ours | band | difference | allowed | verdict |"
+        );
+        let _ = writeln!(text, "| --- | --- | --- | --- | --- | --- | --- | --- | --- | --- |");
         for finding in &self.findings {
             let check = finding.check;
-            let worst = finding.verdict.as_ref().ok().and_then(|v| v.worst()).map(cells).unwrap_or_default();
+            let worst = finding.verdict.as_ref().ok().and_then(|v| v.worst());
+            let figure = worst.map_or("", |c| c.what.as_str()).replace('|', "\\|");
             let (link, kind, source) = (check.name, check.kind.words(), check.source.short);
             let _ = writeln!(
                 text,
-                "| [{link}](#{link}) | {kind} | {source} | {} | {} |",
-                worst.join(" | "),
+                "| [{link}](#{link}) | {kind} | {source} | {figure} | {} | {} |",
+                worst.map(cells).unwrap_or_default().join(" | "),
                 finding.word()
             );
         }

@@ -149,13 +149,17 @@ const KINDS: [(Kind, &str); 3] = [
 
 /// Nine significant digits at most, and no idle zeros.
 fn number(value: f64) -> String {
+    let trimmed = |text: &str| {
+        if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text.to_owned() }
+    };
     if value.abs() > 0.0 && !(1e-4..1e6).contains(&value.abs()) {
-        return format!("{value:.8e}").replace("00000000e", "e").replace(".e", "e");
+        let text = format!("{value:.8e}");
+        return text.split_once('e').map_or(text.clone(), |(mantissa, power)| format!("{}e{power}", trimmed(mantissa)));
     }
     let digits = if value.abs() > 0.0 { 8.0 - value.abs().log10().floor() } else { 0.0 };
     #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "clamped to 0 .. 15")]
-    let text = format!("{value:.*}", digits.clamp(0.0, 15.0) as usize);
-    if text.contains('.') { text.trim_end_matches('0').trim_end_matches('.').to_owned() } else { text }
+    let decimals = digits.clamp(0.0, 15.0) as usize;
+    trimmed(&format!("{value:.decimals$}"))
 }
 
 /// Two significant digits.

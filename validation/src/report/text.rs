@@ -10,8 +10,9 @@ impl Report {
     #[must_use]
     pub fn text(&self) -> String {
         let mut text = String::new();
-        let head = ["check", "kind", "source", "reference", "ours", "band", "difference", "allowed", "verdict"]
-            .map(str::to_owned);
+        let head =
+            ["check", "kind", "source", "reference", "ours", "band", "difference", "allowed", "verdict", "figure"]
+                .map(str::to_owned);
         let mut rows = vec![head];
         rows.extend(self.findings.iter().map(row));
         let widths = widths(&rows);
@@ -59,7 +60,7 @@ pub fn list(checks: &[Check]) -> String {
     text
 }
 
-fn row(finding: &Finding) -> [String; 9] {
+fn row(finding: &Finding) -> [String; 10] {
     let check = finding.check;
     let [name, kind, source] = [check.name, check.kind.words(), check.source.short].map(str::to_owned);
     let verdict = finding.verdict.as_ref().ok();
@@ -69,9 +70,9 @@ fn row(finding: &Finding) -> [String; 9] {
     match verdict.and_then(|v| v.worst()) {
         Some(c) => {
             let [reference, ours, band, difference, allowed] = cells(c);
-            [name, kind, source, reference, ours, band, difference, allowed, word]
+            [name, kind, source, reference, ours, band, difference, allowed, word, c.what.clone()]
         }
-        None => [name, kind, source, "".into(), "".into(), "".into(), "".into(), "".into(), word],
+        None => [name, kind, source, "".into(), "".into(), "".into(), "".into(), "".into(), word, "".into()],
     }
 }
 

@@ -20,7 +20,7 @@ pub struct DifferenceRow {
 
 const LINE: f64 = 31.0;
 /// Differences below this share are drawn at it.
-const LEAST: f64 = 1e-5;
+const LEAST: f64 = 1e-3;
 /// Where the axis ends unless a difference is greater.
 const MOST: f64 = 3.0;
 const LIMIT: Stroke = Stroke::full("#8c1d18", 3.0);
@@ -36,7 +36,7 @@ pub fn differences(heading: &str, rows: &[DifferenceRow]) -> Option<Picture> {
     let area = Frame { edge: MARGIN, left, right: COLUMN - MARGIN - 16.0, top, bottom: top + LINE * count + 8.0 };
     let most = rows.iter().flat_map(|r| [Some(r.of_allowed), r.of_band]).flatten().filter(|v| v.is_finite());
     let scale = logarithmic(LEAST, most.fold(MOST, f64::max), 1.6, area.left, area.right);
-    let x = Axis { scale, title: "Difference over what is allowed; over the band".to_owned() };
+    let x = Axis { scale, title: "Difference over its limit".to_owned() };
     level_grid(&mut svg, &area, &x);
     svg.line((scale.at(1.0), area.top), (scale.at(1.0), area.bottom), LIMIT);
     for (k, row) in rows.iter().enumerate() {
@@ -53,7 +53,7 @@ pub fn differences(heading: &str, rows: &[DifferenceRow]) -> Option<Picture> {
         (Swatch::Dot(BLUE), "over what the check allows".to_owned()),
         (Swatch::Ring(ORANGE), "over the program's own band, where that is held".to_owned()),
         (Swatch::Line(LIMIT), "limit: beyond it the check falls short".to_owned()),
-        (Swatch::None, "Shares below 10^{\u{2212}5} are drawn there.".to_owned()),
+        (Swatch::None, "Shares below 0.001 are drawn there.".to_owned()),
     ];
     let end = key(&mut svg, MARGIN, COLUMN - MARGIN, area.bottom + room_below() + 6.0, &entries);
     Some(Picture { name: "differences", svg: svg.finish(end + MARGIN, heading, "Differences of the published checks") })
