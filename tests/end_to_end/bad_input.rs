@@ -114,7 +114,7 @@ fn a_case_larger_than_the_machine_is_refused_before_solving() {
     let errors = refuse("a snapshot every two nanometres", SLOW, &["--set", "output.fields=\"every 2 nm\""]);
     assert!(errors.contains("MiB are available"), "{errors}");
     let errors =
-        refuse("a wall of 9 km", &SLOW.replace("\"1.5 m\"", "\"9 km\"").replace("\"1.52 m\"", "\"9001 m\""), &[]);
+        refuse("a wall of 9 km", &SLOW.replace("\"15 m\"", "\"9 km\"").replace("\"15.02 m\"", "\"9001 m\""), &[]);
     assert!(errors.contains("MiB are available") || errors.contains("the grid cannot be built"), "{errors}");
 }
 
@@ -139,7 +139,7 @@ fn a_law_that_does_not_suit_the_wall_says_which_does() {
     let finite = QUICK.replace("\"endless\"", "\"0.2 m\"");
     let errors = refuse("steady in a finite wall", &finite, &[]);
     assert!(errors.contains("case.toml:19:7:") && errors.contains("traverse"), "{errors}");
-    let errors = refuse("free in an endless wall", &SLOW.replace("\"1.5 m\"", "\"endless\""), &[]);
+    let errors = refuse("free in an endless wall", &SLOW.replace("\"15 m\"", "\"endless\""), &[]);
     assert!(errors.contains("has no ends"), "{errors}");
     let errors = refuse("free without a mass", &SLOW.replace("mass = \"50 g\"", ""), &[]);
     assert!(errors.contains("mass"), "{errors}");

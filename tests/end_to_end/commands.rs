@@ -152,7 +152,7 @@ fn materials_have_sources() {
 /// `script` gives the program a terminal; without one there is no bar.
 #[test]
 fn a_bar_shows_on_a_terminal_only() {
-    let bench = Bench::with("case.toml", &SLOW.replace("1.5 m", "0.12 m").replace("1.52 m", "0.14 m"));
+    let bench = Bench::with("case.toml", &SLOW.replace("\"15 m\"", "\"1.5 m\"").replace("15.02 m", "1.52 m"));
     let plain = bench.succeed(&["run", "case.toml"]);
     assert_eq!(plain.errors, "");
     let line = format!("{} run case.toml --replace", assert_cmd::cargo::cargo_bin!("lenzbore").display());

@@ -7,7 +7,7 @@ use crate::rig::{Bench, SLOW, entries};
 
 /// A fall that is solved in a second and leaves a field file of some tens of megabytes.
 fn many_fields() -> String {
-    let short = SLOW.replace("\"1.5 m\"", "\"20 mm\"").replace("\"1.52 m\"", "\"30 mm\"");
+    let short = SLOW.replace("\"15 m\"", "\"20 mm\"").replace("\"15.02 m\"", "\"30 mm\"");
     short
         + "\n[accuracy]\ntarget = \"1 %\"\n\n[output]\nwrite = [\"summary\", \"trace\", \"fields\"]\nfields = \"every 0.1 mm\"\n"
 }

@@ -34,11 +34,11 @@ speeds = ["0.1 m/s", "100 m/s"]
 points = 5
 "#;
 
-/// A slow fall through a tube 1.5 m long: takes longer than any test waits for.
+/// A slow fall through a tube 15 m long: takes longer than any test waits for.
 pub const SLOW: &str = r#"title = "Long fall"
 
 [wall]
-length = "1.5 m"
+length = "15 m"
 
 [[wall.layer]]
 name = "tube"
@@ -58,7 +58,7 @@ length = "8 mm"
 
 [travel]
 law = "free"
-release = "1.52 m"
+release = "15.02 m"
 until = "-20 mm"
 "#;
 

@@ -61,7 +61,7 @@ fn missing_words_say_what_they_are_for() {
         ("outer_diameter = \"22 mm\"\n", "", "12:1", &["lacks 'outer_diameter'"]),
         ("length = \"12 mm\"\n", "", "12:1", &["lacks 'length'"]),
         ("release = \"640 mm\"\n", "", "18:2", &["[travel] lacks 'release'", "let go"]),
-        ("law = \"free\"\n", "", "18:2", &["[travel] lacks 'law'", "steady, traverse or free"]),
+        ("law = \"free\"\n", "", "18:2", &["[travel] lacks 'law'", "steady, traverse, free, sine or table"]),
         (
             "mass = \"0.42 kg\"\n",
             "",
@@ -147,7 +147,7 @@ fn choices_are_listed() {
             "19:7",
             &[
                 "law = 'fre' is none of its values",
-                "legal values: \"steady\", \"traverse\", \"free\", \"alternating\"\n",
+                "legal values: \"steady\", \"traverse\", \"free\", \"sine\", \"table\", \"alternating\"\n",
                 "did you mean \"free\"?",
             ],
         ),

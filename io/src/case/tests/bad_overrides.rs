@@ -23,7 +23,7 @@ fn faults_of_overrides_point_at_the_option() {
         ("mover.M.remanance=1 T", &["'remanance' is no word of [[mover.magnet]]", "did you mean 'remanence'?"]),
         ("travel.relase=1 m", &["'relase' is no word of [travel]", "did you mean 'release'?"]),
         ("wall.layer.sleeve.thickness.x=2 mm", &["it is too long"]),
-        ("wall.layer=2", &["'layer' is no word"]),
+        ("wall.layer=2", &["'layer' leads to no word of a case", "it is a list of parts"]),
         ("wall.sleeve.thickness=-2 mm", &["--set: thickness = -2 mm is impossible", "                       ^^^^^"]),
         ("wall.sleeve.thickness=2 mT", &["'mT' does not measure a length"]),
         ("wall.sleeve.thickness=2,1 mm", &["did you mean '2.1 mm'?"]),

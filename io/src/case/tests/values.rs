@@ -157,7 +157,7 @@ fn defaults_of_free_travel() {
     assert_eq!((f.gates_m, f.spring_rate_n_per_m), ([0.6, 0.0], 0.0));
     approx::assert_relative_eq!(f.until_m, -0.05, max_relative = 1e-12);
     // Let go below the middle: the gates turn round, and the run ends above.
-    let f = free(&with("release = \"640 mm\"", "release = \"-40 mm\"\nentry_velocity = \"3 m/s\""));
+    let f = free(&with("release = \"640 mm\"", "release = \"-40 mm\"\nentry_velocity = \"4 m/s\""));
     assert_eq!(f.gates_m, [0.0, 0.6]);
     approx::assert_relative_eq!(f.until_m, 0.65, max_relative = 1e-12);
 }
