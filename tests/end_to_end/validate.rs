@@ -1,6 +1,6 @@
 //! `lenzbore validate`: lists, runs, writes, and ends with the right status.
 
-use crate::rig::{Bench, entries, read_json};
+use crate::rig::{Bench, entries, read_json, root};
 
 #[test]
 fn the_list_names_every_check_with_kind_and_source() {
@@ -94,4 +94,33 @@ fn the_study_of_the_bands_is_repeated_by_its_seed() {
     assert_eq!(json["passed"].as_bool().unwrap(), first.status == Some(0));
     assert_eq!(entries(&bench.path("a")), ["coverage.html", "coverage.json", "coverage.md", "coverage.svg"]);
     assert_eq!(study("b").json()["errors"], json["errors"]);
+}
+
+/// The README's lines are what this version says, but for digits below the limits.
+#[test]
+fn the_readme_shows_what_validate_says() {
+    let readme = std::fs::read_to_string(root().join("README.md")).unwrap();
+    let (head, _) = readme.split_once("verdict            figure").unwrap();
+    let block = &readme[head.rfind("```text").unwrap()..];
+    let shown: Vec<Vec<&str>> = block.lines().skip(1).take(4).map(columns).collect();
+    let mut words = vec!["validate"];
+    for line in &shown[1..] {
+        words.extend(["--only", line[0]]);
+    }
+    let output = Bench::new().succeed(&words).output;
+    let said: Vec<Vec<&str>> = output.lines().take(4).map(columns).collect();
+    assert_eq!(shown[0], said[0]);
+    for (shown, said) in shown.iter().zip(&said).skip(1) {
+        for column in [0, 1, 2, 3, 7, 8, 9] {
+            assert_eq!(shown[column], said[column], "README.md shows {shown:?}");
+        }
+        let number = |cell: &str| cell.parse::<f64>().unwrap();
+        let apart = (number(shown[4]) - number(said[4])).abs();
+        assert!(apart <= number(said[7]), "README.md shows {shown:?}, the program says {said:?}");
+    }
+}
+
+/// Cells of a line, which two blanks or more keep apart.
+fn columns(line: &str) -> Vec<&str> {
+    line.split("  ").map(str::trim).filter(|cell| !cell.is_empty()).collect()
 }

@@ -122,7 +122,8 @@ enum Rim {
     Shares,
 }
 
-/// Square cells across the metal on the coarsest level; the rim of the fine part lies half a thickness outside the sphere.
+/// Square cells across the metal on the coarsest level, 11 thicknesses making the outer radius; the fine part ends half a thickness
+/// outside the sphere.
 const ACROSS: usize = 4;
 /// Distance of the boundary, in outer radii.
 const FAR: f64 = 60.0;
@@ -140,7 +141,7 @@ fn sphere(
     let fine = outer + 2.0 * size;
     let law = SizeLaw { growth: 0.3, anchors: vec![Anchor { position_m: fine, size_m: size }], caps: Vec::new() };
     let outside = PlannedLine::new(&[fine, FAR * outer], &law).map_err(SolveFault::from)?;
-    let mut r = evenly(0.0, fine, refinement.times((fine / size).round() as usize));
+    let mut r = evenly(0.0, fine, refinement.times(11 * ACROSS + 2));
     r.extend(outside.nodes(refinement).nodes());
     let z: Vec<f64> = r.iter().skip(1).rev().map(|r| -r).chain(r.iter().copied()).collect();
     let (columns, rows) = (r.len() - 1, z.len() - 1);
@@ -150,7 +151,7 @@ fn sphere(
         *sigma = body.conductivity_s_per_m * share(rim, (inner, outer), (r[i], r[i + 1]), (z[j], z[j + 1]));
     }
     let mut field = StepField::new(&r, &z, &sigma, 1.0)?;
-    let (middle, half) = (r.len() - 1, refinement.times(20));
+    let (middle, half) = (r.len() - 1, refinement.times(5 * ACROSS));
     let mut found = Vec::new();
     follow(&mut field, samples_s, refinement, monitor, |field| {
         found.push(field.mean_flux_density()?[middle * r.len() + half]);
