@@ -31,14 +31,15 @@ pub fn spread_text(study: &Spread) -> String {
 fn spread_line(f: &FigureSpread) -> String {
     let unit = if f.unit == "1" { "" } else { f.unit };
     let share = |x: f64| if f.nominal.value.abs() > 0.0 { 100.0 * x / f.nominal.value.abs() } else { 0.0 };
+    let above = format!("+{:.3} %", share(f.plus));
     format!(
-        "{:<32}{:>12} {unit:<6} 95 %: -{:.3} {:<9} worst: {:.3} {}",
+        "{:<32}{:>12} {unit:<6} 95 %: -{:.3} {above:<9} worst: {:.3} +{:.3} %{}",
         f.name,
         short(f.nominal.value),
         share(f.minus),
-        format!("+{:.3} %", share(f.plus)),
         share(f.worst_minus),
-        format!("+{:.3} %{}", share(f.worst_plus), if f.worst_solved { "" } else { " (added up)" }),
+        share(f.worst_plus),
+        if f.worst_solved { "" } else { " (added up)" },
     )
 }
 

@@ -35,7 +35,7 @@ const LINK: Stroke = Stroke::full("#9a9a9a", 1.6);
 #[must_use]
 pub fn waterfall(heading: &str, outcome: &LadderOutcome) -> Option<Picture> {
     let figure = |name: &&str| outcome.figures.iter().find(|f| f.name == **name && !f.steps.is_empty());
-    let figures: Vec<&FigureLadder> = SHOWN.iter().filter_map(|name| figure(name)).take(MOST).collect();
+    let figures: Vec<&FigureLadder> = SHOWN.iter().filter_map(figure).take(MOST).collect();
     if figures.is_empty() {
         return None;
     }

@@ -69,7 +69,7 @@ fn steps_of(figure: &FigureLadder, rungs: &[Rung]) -> Result<Value, IoFault> {
         let value = value.map_or(Ok(Value::Null), |v| number(&figure.name, v))?;
         Ok(json!({"effect": rung.effect.word(), "value": value}))
     });
-    let dominant = figure.dominant.and_then(|k| figure.steps.get(k)).map(|s| effects(s));
+    let dominant = figure.dominant.and_then(|k| figure.steps.get(k)).map(effects);
     Ok(json!({
         "unit": figure.unit,
         "values": values.collect::<Result<Vec<_>, IoFault>>()?,

@@ -107,10 +107,11 @@ fn subject(bare: &str, has_unit: bool) -> (Subject, String) {
     if let Some(role) = role_of(&name) {
         return (Subject::Known(role), String::new());
     }
-    if !has_unit && let Some((name, tail)) = longest_name(bare) {
-        if let Some(role) = role_of(&name) {
-            return (Subject::Known(role), tail);
-        }
+    if !has_unit
+        && let Some((name, tail)) = longest_name(bare)
+        && let Some(role) = role_of(&name)
+    {
+        return (Subject::Known(role), tail);
     }
     (Subject::Unknown(bare.to_owned()), String::new())
 }

@@ -1,4 +1,10 @@
-#![allow(clippy::unwrap_used, clippy::expect_used, clippy::panic, reason = "tests may stop at the first fault")]
+#![allow(
+    clippy::unwrap_used,
+    clippy::expect_used,
+    clippy::panic,
+    clippy::print_stdout,
+    reason = "tests may stop at the first fault and print what they measured"
+)]
 
 use approx::assert_relative_eq;
 

@@ -26,7 +26,7 @@ fn across(file: &File, response: &FrequencyResponse) -> hdf5::Result<()> {
     let layers: Vec<u64> = first.across.iter().map(|s| s.layer as u64 + 1).collect();
     put(&group, "layer", &[samples], &layers, &about("1", "number of the layer, from 1 in the order of the case"))?;
     let shape = [response.points.len(), samples];
-    let columns: [(&str, &str, fn(&CurrentSample) -> f64); 3] = [
+    let columns: [Column; 3] = [
         ("current_density_real_A_per_m2", "current density in phase with the coils' current", |s| s.real),
         ("current_density_imaginary_A_per_m2", "current density a quarter period ahead of it", |s| s.imaginary),
         ("current_density_band_A_per_m2", "half-width of the magnitude's numerical band", |s| s.band),
@@ -37,6 +37,9 @@ fn across(file: &File, response: &FrequencyResponse) -> hdf5::Result<()> {
     }
     Ok(())
 }
+
+/// Name of a data set, what it is, and how it is read off a sample.
+type Column = (&'static str, &'static str, fn(&CurrentSample) -> f64);
 
 /// Real and imaginary part of every linear field, from the two snapshots.
 fn amplitudes(file: &File, fields: &Fields) -> hdf5::Result<()> {
