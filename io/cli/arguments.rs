@@ -1,4 +1,8 @@
 //! The words of the command line.
+#![allow(
+    rustdoc::broken_intra_doc_links,
+    reason = "the comments are the help that users read, where a table of a case stands in brackets"
+)]
 
 use std::path::PathBuf;
 
