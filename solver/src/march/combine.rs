@@ -2,7 +2,8 @@
 
 use super::figures::LevelFigure;
 use crate::band::{self, Ladder};
-use crate::outcome::{Basis, Caution, Figure};
+use crate::extrapolate::extrapolate;
+use crate::outcome::{Basis, Caution, Figure, Location};
 use crate::target::is_local;
 
 /// What else goes into the bands of a march.
@@ -52,11 +53,26 @@ pub(super) fn combine(
             unit: figure.unit,
             band: half_width,
             basis: Basis::Extrapolated,
-            location: figure.location,
+            location: located(factors, by_level, figure),
             levels: ladder.levels,
         });
     }
     (figures, cautions)
+}
+
+/// Where a figure is: instant and height extrapolated over the levels, where that stays within their last step; else as on the finest.
+fn located(factors: &[f64], by_level: &[Vec<LevelFigure>], figure: &LevelFigure) -> Option<Location> {
+    let finest = figure.location?;
+    let read = |of: fn(&Location) -> Option<f64>| -> Option<f64> {
+        let last = of(&finest)?;
+        let same = |list: &Vec<LevelFigure>| list.iter().find(|f| f.name == figure.name)?.location.and_then(|l| of(&l));
+        let values: Option<Vec<f64>> = by_level.iter().map(same).collect();
+        let values = values.filter(|v| v.len() > 1).unwrap_or_else(|| vec![last]);
+        let step = values.len().checked_sub(2).map_or(0.0, |k| (last - values[k]).abs());
+        let value = extrapolate(&factors[factors.len() - values.len()..], &values);
+        Some(if (value - last).abs() <= 2.0 * step { value } else { last })
+    };
+    Some(Location { t_s: read(|l| l.t_s), z_m: read(|l| l.z_m), ..finest })
 }
 
 /// Figures that are a peak of the force in time: their band takes the second route in.
