@@ -188,7 +188,17 @@ fn steel_jacket_traverse_runs() {
 
 #[test]
 fn every_example_is_tested_and_can_be_checked() {
-    let tested = ["arrest-sleeve", "latch-damper", "ring-carriage", "steel-jacket-traverse", "two-layer-steady"];
+    let tested = [
+        "arrest-sleeve-tolerances",
+        "arrest-sleeve",
+        "cam-follower",
+        "coil-probe",
+        "latch-damper",
+        "ring-carriage",
+        "steel-jacket-traverse",
+        "stroke-damper",
+        "two-layer-steady",
+    ];
     let found: Vec<String> = entries(&root().join("examples"))
         .into_iter()
         .filter_map(|f| f.strip_suffix(".toml").map(str::to_owned))

@@ -102,7 +102,9 @@ impl Judged {
             })
             .collect();
         let domain = domain(varied.len(), &rows);
-        let one_figure = asked.table.ordinates.len() == 1;
+        // Along a travel a factor means nothing: a position has no zero of its own, a drag passes through zero.
+        let one_figure =
+            asked.table.ordinates.len() == 1 && matches!(asked.table.abscissa, None | Some(Abscissa::Speed));
         let inside = |k: &usize| domain.as_ref().is_some_and(|d| d.holds(&rows[asked.cells[*k].row].at));
         let chosen: Vec<Point> = (0..points.len()).filter(inside).map(|k| points[k]).collect();
         Self {

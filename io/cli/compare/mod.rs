@@ -169,7 +169,10 @@ fn why(
     let deeper = few && judged.overall != Verdict::Passes;
     let explanations = models::explanations(asked, &scale, apart, deeper)?;
     let explained = explanations.first().is_some_and(|e| e.same);
-    let slips = if deeper && !explained { slips::slips(asked, &values, &scale, apart)? } else { Vec::new() };
+    let mut slips = if deeper && !explained { slips::slips(asked, &values, &scale, apart)? } else { Vec::new() };
+    if let Some(best) = explanations.first() {
+        slips.extend(models::cancelling(asked, best, &values, &scale)?);
+    }
     Ok((apart, explanations, slips))
 }
 

@@ -26,6 +26,8 @@ pub struct Explanation {
     pub explains: f64,
     /// Whether the table is that model's.
     pub same: bool,
+    /// What its rings take for granted, at the temperatures of the case.
+    pub assumptions: Option<Assumptions>,
 }
 
 const MODELS: [Assumptions; 6] = [
@@ -41,13 +43,14 @@ const MODELS: [Assumptions; 6] = [
 /// solution are apart; with `deeper` fields with one effect dropped are solved too.
 pub fn explanations(asked: &Asked<'_>, scales: &[f64], field: f64, deeper: bool) -> Result<Vec<Explanation>, End> {
     let mut out = Vec::new();
-    let mut add = |model: String, leaves_out: Vec<&'static str>, values: &[Option<f64>]| {
-        if let Some(found) = asked.likeness(values, scales) {
-            let explains = if field > 0.0 { 1.0 - found.apart / field } else { 0.0 };
-            let same = found.apart <= SAME && CLOSER * found.apart <= field;
-            out.push(Explanation { model, leaves_out, apart: found.apart, explains, same });
-        }
-    };
+    let mut add =
+        |model: String, leaves_out: Vec<&'static str>, values: &[Option<f64>], assumptions: Option<Assumptions>| {
+            if let Some(found) = asked.likeness(values, scales) {
+                let explains = if field > 0.0 { 1.0 - found.apart / field } else { 0.0 };
+                let same = found.apart <= SAME && CLOSER * found.apart <= field;
+                out.push(Explanation { model, leaves_out, apart: found.apart, explains, same, assumptions });
+            }
+        };
     let problems = |warm: bool| -> Option<Vec<Problem>> {
         let cold = ["wall.temperature=20 degC".to_owned(), "mover.temperature=20 degC".to_owned()];
         let of = |g: &super::groups::Group| {
@@ -63,24 +66,62 @@ pub fn explanations(asked: &Asked<'_>, scales: &[f64], field: f64, deeper: bool)
             if let Some(values) = by_rings(asked, problems, assumptions)? {
                 let mut left = left_out(assumptions, &problems[0]);
                 left.extend((!at.is_empty()).then_some(Effect::Temperature.left_out()));
-                add(format!("{}{at}", assumptions.words()), left, &values);
+                add(format!("{}{at}", assumptions.words()), left, &values, at.is_empty().then_some(assumptions));
             }
         }
     }
     if deeper {
         if let Some(cold) = &cold {
             let values = asked.changed_to(cold)?;
-            add("field solution at 20 degC".to_owned(), vec![Effect::Temperature.left_out()], &values);
+            add("field solution at 20 degC".to_owned(), vec![Effect::Temperature.left_out()], &values, None);
         }
         let permeable = |p: &Problem| p.wall.layers.iter().any(|l| l.relative_permeability > 1.001);
         if warm.iter().any(permeable)
             && let Some(values) = asked.changed(&unmagnetic)?
         {
-            add("field solution, wall not permeable".to_owned(), vec![Effect::WallPermeability.left_out()], &values);
+            add(
+                "field solution, wall not permeable".to_owned(),
+                vec![Effect::WallPermeability.left_out()],
+                &values,
+                None,
+            );
         }
     }
     out.sort_by(|a, b| a.apart.total_cmp(&b.apart));
     Ok(out)
+}
+
+/// Errors smaller than this, relative, are no large ones that cancel.
+const LARGE: f64 = 0.02;
+
+/// Where the table's model is nearly right because two larger errors cancel, in a sentence.
+pub fn cancelling(asked: &Asked<'_>, best: &Explanation, ours: &[f64], scales: &[f64]) -> Result<Option<String>, End> {
+    let Some(assumptions) = best.assumptions.filter(|a| best.same && *a != Assumptions::RESISTIVE) else {
+        return Ok(None);
+    };
+    let now: Vec<Problem> = asked.groups.iter().map(|g| g.case.problem.clone()).collect();
+    let (Some(model), Some(resistive)) =
+        (by_rings(asked, &now, assumptions)?, by_rings(asked, &now, Assumptions::RESISTIVE)?)
+    else {
+        return Ok(None);
+    };
+    let parts = |k: usize| -> Option<(f64, f64)> {
+        let (m, r) = (model[k]?, resistive[k]?);
+        Some(((m - r) / scales[k], (r - ours[k]) / scales[k]))
+    };
+    let smaller = |(a, b): (f64, f64)| a.abs().min(b.abs());
+    let found = (0..ours.len())
+        .filter_map(|k| parts(k).map(|p| (k, p)))
+        .filter(|(_, (a, b))| a * b < 0.0 && smaller((*a, *b)) >= LARGE.max(2.0 * (a + b).abs()))
+        .max_by(|x, y| smaller(x.1).total_cmp(&smaller(y.1)));
+    Ok(found.map(|(k, (shape, induction))| {
+        format!(
+            "it is nearly right on line {} because two errors cancel: {:+.1} % for what it leaves out of magnets and wall, {:+.1} % for the field of the wall's own currents; elsewhere they do not",
+            asked.table.rows[asked.cells[k].row].line,
+            100.0 * shape,
+            100.0 * induction
+        )
+    }))
 }
 
 fn unmagnetic(problem: &Problem) -> Problem {

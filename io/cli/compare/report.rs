@@ -39,7 +39,7 @@ impl Report<'_> {
 
     /// Sentences on why.
     fn reasons(&self) -> Vec<String> {
-        let mut out = self.slips.to_vec();
+        let mut out = Vec::new();
         let left = |e: &Explanation| e.leaves_out.join(", ");
         match self.explanations.first() {
             Some(best) if best.same => out.push(format!(
@@ -48,7 +48,7 @@ impl Report<'_> {
                 best.model,
                 left(best)
             )),
-            Some(best) if self.apart > 0.005 && best.explains > 0.3 => out.push(format!(
+            Some(best) if self.apart > 0.005 && best.explains > 0.5 => out.push(format!(
                 "the difference looks most like that of a simplified model: {}, which explains {:.0} % of it; it leaves out {}",
                 best.model,
                 100.0 * best.explains,
@@ -59,6 +59,7 @@ impl Report<'_> {
             }
             _ => {}
         }
+        out.extend_from_slice(self.slips);
         out
     }
 

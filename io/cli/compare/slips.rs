@@ -18,6 +18,8 @@ const CLOSE: f64 = 0.02;
 const WORTH_SOLVING: f64 = 0.2;
 /// How far the factor between table and ours may swing and still be one factor.
 const STEADY: f64 = 0.01;
+/// With fewer values some changed case fits by chance.
+const FEWEST: usize = 3;
 /// Highest number taken for a speed in a swapped column, m/s.
 const FASTEST: f64 = 1.0e3;
 
@@ -151,30 +153,42 @@ struct Slip {
     change: Box<dyn Fn(&Problem) -> Problem + Sync>,
 }
 
+/// Ring models that a changed case is tried with.
+const RINGS: [Assumptions; 4] =
+    [Assumptions::RESISTIVE, Assumptions::RINGS_INNER, Assumptions::RINGS_MEAN, Assumptions::DIPOLE_RULE];
+
 /// A radius typed for a diameter, or the reverse.
 fn sizes(asked: &Asked<'_>, table: &[f64], ours: &[f64], scales: &[f64], field: f64) -> Result<Option<String>, End> {
+    if table.len() < FEWEST {
+        return Ok(None);
+    }
     let now: Vec<Problem> = asked.groups.iter().map(|g| g.case.problem.clone()).collect();
     let Some(resistive) = by_rings(asked, &now, Assumptions::RESISTIVE)? else { return Ok(None) };
+    let travels = asked.needs.iter().any(|n| n.run);
     let target = CLOSE.min(0.2 * field);
+    let close = |values: &[Option<f64>]| likeness(table, values, scales).filter(|l| l.apart < target);
     let mut best: Option<(f64, String)> = None;
     for slip in candidates(&now[0]) {
         let changed: Vec<Problem> = now.iter().map(|p| (slip.change)(p)).collect();
-        let possible = changed.iter().all(|p| p.faults().is_empty());
-        for model in
-            [Assumptions::RESISTIVE, Assumptions::RINGS_INNER, Assumptions::RINGS_MEAN, Assumptions::DIPOLE_RULE]
-        {
+        // A magnet as it is has no place outside its bore; a dipole of the same moment has, and a calculator may not notice.
+        let models: &[Assumptions] = match (changed.iter().all(|p| p.faults().is_empty()), travels) {
+            (true, _) => &RINGS,
+            (false, false) => &RINGS[3..],
+            (false, true) => &[],
+        };
+        for &model in models {
             let Some(values) = by_rings(asked, &changed, model)? else { continue };
-            if let Some(l) = likeness(table, &values, scales).filter(|l| l.apart < target) {
+            if let Some(l) = close(&values) {
                 keep(&mut best, l.apart, format!("{} ({})", slip.words, model.words()));
             }
-            if model != Assumptions::RESISTIVE || !possible {
-                continue;
-            }
-            let estimate: Vec<Option<f64>> =
-                values.iter().zip(&resistive).zip(ours).map(|((v, r), o)| Some(o * (*v)? / (*r)?)).collect();
-            if likeness(table, &estimate, scales).is_some_and(|l| l.apart < WORTH_SOLVING.max(0.5 * field).min(1.0))
+            // The field of the changed case is solved where its estimate, our value times the change of the rings', comes near.
+            let ratio = |((v, r), o): ((&Option<f64>, &Option<f64>), &f64)| Some(o * (*v)? / (*r)?);
+            let estimate: Vec<Option<f64>> = values.iter().zip(&resistive).zip(ours).map(ratio).collect();
+            let near = likeness(table, &estimate, scales);
+            if model == Assumptions::RESISTIVE
+                && near.is_some_and(|l| l.apart < WORTH_SOLVING.max(0.5 * field).min(1.0))
                 && let Some(values) = asked.changed(&*slip.change)?
-                && let Some(l) = likeness(table, &values, scales).filter(|l| l.apart < target)
+                && let Some(l) = close(&values)
             {
                 keep(&mut best, l.apart, slip.words.clone());
             }

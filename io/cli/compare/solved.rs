@@ -38,16 +38,16 @@ const ANY_SPEED: f64 = 1.0;
 /// Where the answer to a column comes from, or why the case has none.
 pub fn ask(table: &Table, name: &str, travel: &Travel, travel_given: bool) -> Result<Ask, TableFault> {
     let missing = |mend: &str| TableFault::NotOfTheCase { what: name.to_owned(), mend: mend.to_owned() };
-    let moves = travel_given && matches!(travel, Travel::Traverse(_) | Travel::Free(_));
+    let moves = travel_given && !matches!(travel, Travel::Steady { .. } | Travel::Alternating(_));
     match table.abscissa {
         Some(Abscissa::Speed) if SETTLED.contains(&name) => Ok(Ask::Settled),
         Some(Abscissa::Speed) if PASSAGE.contains(&name) && matches!(travel, Travel::Traverse(_)) => Ok(Ask::Run),
         Some(Abscissa::Speed) => Err(missing(
             "against speed a table has drag, damping_coefficient, dissipated_power or current_density_peak, and with law = \"traverse\" drag_peak, impulse or dissipated_energy",
         )),
-        Some(_) if !moves => {
-            Err(missing("a table along time or place needs [travel] with law = \"free\" or \"traverse\""))
-        }
+        Some(_) if !moves => Err(missing(
+            "a table along time or place needs a [travel] with a motion in time, as law = \"free\" or \"traverse\"",
+        )),
         Some(_) if ["drag", "time", "position", "displacement", "speed", "velocity"].contains(&name) => Ok(Ask::Course),
         Some(_) => {
             Err(missing("it is one figure of the whole run: give it in a table of its own, without time or place"))

@@ -4,13 +4,18 @@ use super::axes::{Axis, Frame, frame, grid, room_below, room_left};
 use super::compared::{ComparedPlot, PlotPanel, bar, capital, colour, kept, mark, y_axis};
 use super::key::{Swatch, key, title};
 use super::paper::{COLUMN, Picture};
-use super::style::{BLUE, MARGIN, ORANGE};
-use super::svg::{Stroke, Svg, polygon};
+use super::scale::significant;
+use super::style::{BLUE, MARGIN, ORANGE, SMALL, letters};
+use super::svg::{Anchor, Stroke, Svg, Type, polygon};
 use super::units::Shown;
 
 const HEIGHT: f64 = 360.0;
 const MOST_PANELS: usize = 6;
 const ZERO: Stroke = Stroke::full("#444444", 2.2);
+/// Where differences run beyond so many times what is allowed, the axis is cut so that what is allowed can be seen.
+const CUT_FROM: f64 = 15.0;
+/// It is cut here, times what is allowed; points beyond stand at the edge with their number.
+const CUT_AT: f64 = 6.0;
 /// Ground of what is allowed.
 const ALLOWED: &str = "#e3eedd";
 
@@ -44,6 +49,10 @@ fn draw(svg: &mut Svg, plot: &ComparedPlot, panel: &PlotPanel, x_shown: &Shown, 
         points().flat_map(|p| [p.share - p.share_half, p.share + p.share_half, 0.0]).map(per_cent).collect();
     let allowed = points().map(|p| per_cent(p.share_allowed)).fold(0.0, f64::max);
     values.extend([if plot.judged.1 { -1.2 * allowed } else { 0.0 }, if plot.judged.0 { 1.2 * allowed } else { 0.0 }]);
+    let reach = values.iter().fold(0.0, |m: f64, v| m.max(v.abs()));
+    if allowed > 0.0 && reach > CUT_FROM * allowed {
+        values.iter_mut().for_each(|v| *v = v.clamp(-CUT_AT * allowed, CUT_AT * allowed));
+    }
     let (start, end) = (top + HEIGHT, top);
     let y =
         Axis { scale: y_axis(&values, false, start, end), title: format!("{}, difference in %", capital(&panel.name)) };
@@ -57,9 +66,21 @@ fn draw(svg: &mut Svg, plot: &ComparedPlot, panel: &PlotPanel, x_shown: &Shown, 
         let ends = (per_cent(p.share - p.share_half), per_cent(p.share + p.share_half));
         bar(svg, place.0, &y.scale, ends, Stroke::full(colour(p.verdict), 2.4));
         mark(svg, place, p.verdict);
+        if !y.scale.holds(per_cent(p.share)) {
+            beyond(svg, &area, place, per_cent(p.share));
+        }
     }
     frame(svg, &area, &x, &y);
     area.bottom + room_below() + 14.0
+}
+
+/// The number of a point that stands at the edge because it lies beyond.
+fn beyond(svg: &mut Svg, area: &Frame, place: (f64, f64), per_cent: f64) {
+    let right = place.0 > 0.5 * (area.left + area.right);
+    let (anchor, aside) = if right { (Anchor::End, -13.0) } else { (Anchor::Start, 13.0) };
+    let down = if per_cent > 0.0 { 26.0 } else { -10.0 };
+    let text = format!("{} %", significant(per_cent, 3));
+    svg.text(place.0 + aside, place.1 + down, &text, Type { rim: "#ffffff", ..letters(SMALL, anchor) });
 }
 
 /// Shades what is allowed; a side that is not judged is allowed without end.
@@ -107,6 +128,12 @@ mod tests {
         one_sided.name = "residual_one_sided";
         look::keep(&one_sided);
         assert_ne!(one_sided.svg, picture.svg);
+        // One point far beyond cuts the axis and shows its number.
+        plot.panels[0].curves[0].points[6].share = 3.42;
+        let mut cut = residual(&plot).unwrap();
+        cut.name = "residual_cut";
+        look::keep(&cut);
+        assert!(look::words(&cut).contains("342 %"), "{}", look::words(&cut));
     }
 
     #[test]

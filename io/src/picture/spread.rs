@@ -19,7 +19,7 @@ const LEAST_SHARE: f64 = 0.002;
 /// Figures whose bars agree this closely, relative, share one panel.
 const ALIKE: f64 = 2e-3;
 /// Widest label of an input.
-const WIDEST_LABEL: f64 = 330.0;
+const WIDEST_LABEL: f64 = 390.0;
 
 /// Where the input falls.
 const LOW: &str = "#7fa8cf";
