@@ -70,9 +70,8 @@ struct Instant {
 
 /// The last whole cycle of the series.
 fn last_cycle(trace: &Trace, sine: &Sine) -> Option<Vec<Instant>> {
-    let (first, last) = (*trace.time_s.first()?, *trace.time_s.last()?);
-    let step = (last - first) / f64::from(u32::try_from(trace.time_s.len().checked_sub(1)?).ok()?);
-    let since = last - sine.period_s() + 0.5 * step;
+    let [.., before, last] = trace.time_s.as_slice() else { return None };
+    let since = last - sine.period_s() + 0.5 * (last - before);
     let from = trace.time_s.partition_point(|t| *t < since);
     let cycle: Vec<Instant> = (from..trace.time_s.len())
         .map(|k| Instant {

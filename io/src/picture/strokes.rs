@@ -11,12 +11,14 @@ use super::paper::{COLUMN, Picture};
 use super::ribbon::Banded;
 use super::scale::significant;
 use super::smooth::smooth;
-use super::style::{CURVE, LAW, MARGIN, ORANGE};
+use super::style::{CURVE, MARGIN, ORANGE};
 use super::svg::{Stroke, Svg, polyline};
 use super::units::Shown;
 
 const PANEL: f64 = 330.0;
 const BETWEEN: f64 = 26.0;
+/// The lumped model, over the line that it follows.
+const MODEL: Stroke = Stroke::dashed("#e8b878", 2.2, "10 8");
 /// Points of the lumped model's line.
 const POINTS: u32 = 120;
 
@@ -44,9 +46,6 @@ pub fn stroke_response(heading: &str, problem: &Problem, outcome: &Outcome) -> O
     for (part, (y, top)) in [&damping, &stiffness].into_iter().zip(axes.iter().zip([top, lower])) {
         let area = Frame { edge: MARGIN, left, right, top, bottom: top + PANEL };
         grid(&mut svg, &area, &x, y);
-        if let Some(model) = model {
-            svg.path(&part.line_of(model, (first, last), (&x, y), unit.factor), LAW);
-        }
         let curve = Banded {
             x: response.points.iter().map(|p| p.frequency_hz * unit.factor).collect(),
             y: part.values.clone(),
@@ -56,6 +55,9 @@ pub fn stroke_response(heading: &str, problem: &Problem, outcome: &Outcome) -> O
         let places: Vec<(f64, f64)> =
             line.x.iter().zip(&line.y).map(|(a, b)| (x.scale.at(*a), y.scale.at(*b))).collect();
         svg.path(&polyline(&super::simplify::simplified(&places, 0.2)), CURVE);
+        if let Some(model) = model {
+            svg.path(&part.line_of(model, (first, last), (&x, y), unit.factor), MODEL);
+        }
         part.own(&mut svg, (problem, outcome), (&x, y), unit.factor);
         let remark = curve.remark_on_greatest(&y.scale, part.name);
         entries.push((Swatch::Line(CURVE), format!("{}, vanishing amplitude; {remark}", part.name)));
@@ -64,7 +66,7 @@ pub fn stroke_response(heading: &str, problem: &Problem, outcome: &Outcome) -> O
     }
     if let Some(model) = model {
         let error = significant(100.0 * model.largest_error, 2);
-        entries.push((Swatch::Line(LAW), format!("{} lags, within {error} % of the force", model.terms.len())));
+        entries.push((Swatch::Line(MODEL), format!("{} lags, within {error} % of the force", model.terms.len())));
     }
     if let Travel::Sine(sine) = &problem.travel {
         let text = format!("settled stroke of {} mm amplitude", significant(1e3 * sine.amplitude_m, 4));

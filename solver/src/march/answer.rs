@@ -252,7 +252,12 @@ impl<'p> Journey<'p> {
         let (figures, slow) = combine(&factors, &by_level, cut.as_deref(), &margins);
         let trace = self.trace(records, &factors);
         let peak_time = figures.iter().find(|f| f.name == "drag_peak").and_then(|f| f.location?.t_s);
-        let accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
+        let mut accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
+        if let (Some(settling), Some(advice)) = (&records.settling, &mut accuracy.advice)
+            && !settling.settled()
+        {
+            *advice = unsettled_advice(settling);
+        }
         let mut counters = WorkCounters::default();
         for level in records.levels.iter().chain(records.cut.as_ref()) {
             counters.factorisations += level.counters.factorisations;
@@ -413,6 +418,16 @@ fn unsettled(settling: &Settling, ledger: &Ledger, sine: Option<&Sine>) -> Vec<(
     ];
     list.retain(|(_, half)| half.is_finite());
     list
+}
+
+/// What would narrow the bands of a stroke that has not settled.
+fn unsettled_advice(settling: &Settling) -> String {
+    let cycles = settling.cycles;
+    if settling.given {
+        format!("the stroke has not settled in {cycles} cycles: leave 'cycles' out of the travel, or give more")
+    } else {
+        format!("the stroke has not settled in {cycles} cycles, as many as are followed")
+    }
 }
 
 /// How a stroke settled, in words.

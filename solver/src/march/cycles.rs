@@ -33,7 +33,7 @@ pub(crate) struct CycleSums {
 
 impl CycleSums {
     /// Over the steps of the cycle from `from` to `to`, s: with z = X sin(omega t) about the centre, the part of F in phase is
-    /// (2/T) integral F sin(omega t) dt = -k X; the midpoint sum over whole cycles converges faster than any power.
+    /// (2/T) integral F sin(omega t) dt = -k X; the midpoint sum over whole cycles of even steps converges faster than any power.
     pub(crate) fn new(series: &Series, sine: &Sine, from: f64, to: f64) -> Self {
         let sliver = 1.0e-9 * sine.period_s();
         let first = series.time.partition_point(|&t| t < from - sliver);
@@ -41,11 +41,11 @@ impl CycleSums {
         let (mut force, mut pull) = (0.0, 0.0);
         for k in first..last {
             let z = series.position_mid[k] - sine.centre_m;
-            force += series.force_mid[k] * z;
-            pull += series.pull_mid[k] * z;
+            let dt = series.time[k + 1] - series.time[k];
+            force += series.force_mid[k] * z * dt;
+            pull += series.pull_mid[k] * z * dt;
         }
-        #[expect(clippy::cast_precision_loss, reason = "step counts are far below 2^52")]
-        let scale = -2.0 / (sine.amplitude_m * sine.amplitude_m * (last - first) as f64);
+        let scale = -2.0 / (sine.amplitude_m * sine.amplitude_m * (series.time[last] - series.time[first]));
         let loss = series.work[first] - series.work[last];
         Self { loss, stiffness: scale * force, static_stiffness: scale * pull }
     }
@@ -146,7 +146,7 @@ impl Run<'_, '_> {
                 if monitor.cancelled() {
                     return Err(SolveFault::Interrupted);
                 }
-                it.planned_pair(schedule, pair_of_cycle(sine, a_cycle, k))?;
+                it.planned(schedule, pair_of_cycle(sine, a_cycle, k))?;
                 k += 1;
             }
             Ok(())
@@ -165,8 +165,8 @@ impl Run<'_, '_> {
         }
         let settling = settling(&sums, sine);
         // Where a cycle more was run to see what is left, the finer levels need none of it.
-        let pairs = (settling.cycles * a_cycle + PAIRS_BEYOND) as usize;
-        schedule.truncate(pairs);
+        let end = (f64::from(settling.cycles * a_cycle + PAIRS_BEYOND) - 0.5) * sine.period_s() / f64::from(a_cycle);
+        schedule.end_by(end);
         Ok((self.finish(), schedule, settling))
     }
 }

@@ -19,6 +19,29 @@ pub(super) struct PlannedPair {
     pub(super) end_s: f64,
 }
 
+/// Halvings of the first step where a motion starts with a jerk.
+const HALVINGS: i32 = 8;
+
+impl PlannedPair {
+    /// The same stretch of time, which begins at `begin`, from steps 1/256 as long that double pair by pair. A sudden start excites currents of
+    /// all life times; each dies away where the steps are about as long, and whole pairs keep the error in even powers. One long step would
+    /// only turn over what lives much shorter.
+    pub(super) fn graded(self, begin: f64) -> Vec<Self> {
+        let mut pairs: Vec<Self> = Vec::new();
+        let mut ends = 0.5_f64.powi(HALVINGS);
+        pairs.push(Self { dt_s: self.dt_s * ends, end_s: begin + 2.0 * self.dt_s * ends });
+        for halvings in (1..=HALVINGS).rev() {
+            let share = 0.5_f64.powi(halvings);
+            ends += share;
+            pairs.push(Self { dt_s: self.dt_s * share, end_s: begin + 2.0 * self.dt_s * ends });
+        }
+        if let Some(last) = pairs.last_mut() {
+            last.end_s = self.end_s;
+        }
+        pairs
+    }
+}
+
 /// Pairs of steps a cycle, for a travel of at most `stride` a step.
 pub(super) fn pairs_a_cycle(sine: &Sine, stride: f64) -> u32 {
     let wanted = LEAST_STEPS.max(sine.greatest_speed() * sine.period_s() / stride);
@@ -87,6 +110,18 @@ mod tests {
                 max_relative = 1e-15
             );
         }
+    }
+
+    #[test]
+    fn a_graded_pair_takes_as_long_as_the_pair() {
+        let pair = PlannedPair { dt_s: 0.3, end_s: 1.6 };
+        let pairs = pair.graded(1.0);
+        let mut begin = 1.0;
+        for part in &pairs {
+            approx::assert_relative_eq!(part.end_s - begin, 2.0 * part.dt_s, max_relative = 1e-12);
+            begin = part.end_s;
+        }
+        assert_eq!((pairs.len(), pairs[8].dt_s, begin), (9, 0.15, 1.6));
     }
 
     #[test]

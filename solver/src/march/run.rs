@@ -56,8 +56,6 @@ pub(crate) struct Run<'a, 'p> {
     greatest_drag: f64,
     /// Cycle of a stroke that the greatest drag belongs to.
     cycle: u32,
-    /// Steps that begin before this instant are damped, s.
-    damped_until: f64,
     heat: f64,
     work: f64,
     losses: f64,
@@ -104,7 +102,6 @@ impl<'a, 'p> Run<'a, 'p> {
             psi_nodes: vec![0.0; nodes],
             greatest_drag: 0.0,
             cycle: 0,
-            damped_until: 0.0,
             heat: 0.0,
             work: 0.0,
             losses: 0.0,
@@ -171,17 +168,21 @@ impl<'a, 'p> Run<'a, 'p> {
             if monitor.cancelled() {
                 return Err(SolveFault::Interrupted);
             }
-            self.planned_pair(&mut schedule, pair)?;
+            self.planned(&mut schedule, pair)?;
             monitor.progress(share.from + (share.to - share.from) * count(k + 1) / count(pairs.len()), "first level");
         }
         Ok((self.finish(), schedule))
     }
 
-    /// One planned pair of steps.
-    pub(super) fn planned_pair(&mut self, schedule: &mut Schedule, pair: PlannedPair) -> Result<(), SolveFault> {
-        if schedule.pairs() == 0 {
-            self.damp_until(pair.end_s);
+    /// A planned pair of steps; the first in shorter ones where the motion starts with a jerk.
+    pub(super) fn planned(&mut self, schedule: &mut Schedule, pair: PlannedPair) -> Result<(), SolveFault> {
+        if schedule.pairs() == 0 && self.starts_suddenly() {
+            return pair.graded(0.0).into_iter().try_for_each(|part| self.planned_pair(schedule, part));
         }
+        self.planned_pair(schedule, pair)
+    }
+
+    fn planned_pair(&mut self, schedule: &mut Schedule, pair: PlannedPair) -> Result<(), SolveFault> {
         let begin = schedule.start(schedule.pairs());
         self.series.reserve(2);
         self.level.prepare(pair.dt_s)?;
@@ -192,13 +193,9 @@ impl<'a, 'p> Run<'a, 'p> {
         Ok(())
     }
 
-    /// Damps the first pair, which ends at `end`, where a prescribed motion starts with a jerk.
-    fn damp_until(&mut self, end: f64) {
-        if let Motion::Prescribed(path) = self.motion
-            && path.velocity(0.0).abs() > SUDDEN * path.greatest_speed()
-        {
-            self.damped_until = end;
-        }
+    fn starts_suddenly(&self) -> bool {
+        let Motion::Prescribed(path) = self.motion else { return false };
+        path.velocity(0.0).abs() > SUDDEN * path.greatest_speed()
     }
 
     /// What has been recorded so far.
@@ -225,7 +222,6 @@ impl<'a, 'p> Run<'a, 'p> {
         share: Share,
     ) -> Result<(Series, Vec<Snapshot>), SolveFault> {
         let mut wanted = instants.iter().copied().peekable();
-        self.damp_until(schedule.start(1));
         for k in 0..schedule.pairs() {
             if let Some(window) = schedule.window_from(k) {
                 self.enter(window)?;
@@ -360,9 +356,6 @@ impl<'a, 'p> Run<'a, 'p> {
     pub(super) fn step_and_record(&mut self, begin: f64, dt: f64) -> Result<StepReport, SolveFault> {
         let report = self.stepper.step(self.level, self.motion, &mut self.state, &mut self.currents, begin, dt)?;
         self.record(begin, dt, &report);
-        if begin + 0.5 * dt < self.damped_until {
-            self.stepper.damp(self.level, &mut self.state, dt)?;
-        }
         Ok(report)
     }
 

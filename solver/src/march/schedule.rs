@@ -66,11 +66,12 @@ impl Schedule {
         self.end_s = pair.end_s;
     }
 
-    /// Forgets all pairs after the first `count`.
-    pub(super) fn truncate(&mut self, count: usize) {
-        if let Some(pair) = self.pairs.get(count) {
+    /// Forgets all pairs that start after `time_s`.
+    pub(super) fn end_by(&mut self, time_s: f64) {
+        let kept = self.pairs.partition_point(|p| p.start_s <= time_s);
+        if let Some(pair) = self.pairs.get(kept) {
             self.end_s = pair.start_s;
-            self.pairs.truncate(count);
+            self.pairs.truncate(kept);
         }
     }
 

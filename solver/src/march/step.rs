@@ -186,35 +186,6 @@ impl Stepper {
         Ok(report)
     }
 
-    /// Ends the step just made by half a step of the implicit Euler rule from its middle instead of by the midpoint rule's reflection,
-    /// with the same factor. What a sudden start excites in cells whose currents live much shorter than a step, the midpoint rule would
-    /// only turn over from step to step; this damps it.
-    ///
-    /// # Errors
-    /// Not finite, or a residual.
-    pub(crate) fn damp(&mut self, level: &mut MarchLevel<'_>, state: &mut State, dt: f64) -> Result<(), SolveFault> {
-        let n = level.operators.unknowns();
-        let wall = &level.operators.wall;
-        self.right[..n].fill(0.0);
-        for w in 0..wall.len() {
-            let u = wall.unknown[w];
-            let middle = self.columns[u] + self.mean[w];
-            self.right[u] = 2.0 * wall.conductance[w] / dt * (middle - state.source[w]);
-        }
-        if let Some(excess) = &level.operators.excess {
-            spread_wall(&level.operators, &state.source, &mut self.nodes);
-            add_product(excess, &self.nodes, -1.0, &mut self.right[..n]);
-        }
-        self.columns[n..].copy_from_slice(&self.right[..n]);
-        level.solve(&mut self.columns[n..]);
-        level.check(&self.columns[n..], &self.right[..n], STEP_RESIDUAL)?;
-        let wall = &level.operators.wall;
-        for w in 0..wall.len() {
-            state.flux[w] = self.columns[n + wall.unknown[w]] + state.source[w];
-        }
-        Ok(())
-    }
-
     /// The travel that balances the equation of motion: Newton passes with the exact tangent as a second right-hand side.
     fn travel_of(
         &mut self,
