@@ -19,5 +19,6 @@ mod ladder;
 mod materials;
 mod programs;
 mod rig;
+mod strokes;
 mod tolerance;
 mod validate;

@@ -77,14 +77,20 @@ pub(super) fn read_travel(reader: &mut Reader, section: &Section<'_>, around: Su
 pub(super) fn law(reader: &mut Reader, section: &Section<'_>) -> Option<&'static str> {
     let example = "law = \"traverse\"";
     if !section.table.has("law") {
-        reader.missing(section, "law", "how the mover travels: steady, traverse, free, sine or table; alternating for coils at rest", example);
+        reader.missing(
+            section,
+            "law",
+            "how the mover travels: steady, traverse, free, sine or table; alternating for coils at rest",
+            example,
+        );
         reader.check_words(section);
         return None;
     }
     let asked = section.table.text("law").unwrap_or_default().trim();
     if let Some(later) = LAWS.iter().find(|l| l.law == asked && !l.modelled) {
         let what = format!("law = \"{}\"", later.law);
-        let instead = Some("laws that are: \"steady\", \"traverse\", \"free\", \"sine\", \"table\", \"alternating\"".to_owned());
+        let instead =
+            Some("laws that are: \"steady\", \"traverse\", \"free\", \"sine\", \"table\", \"alternating\"".to_owned());
         reader.fault(section.place_of("law"), CaseFault::NotModelled { what, instead });
         return None;
     }

@@ -30,13 +30,13 @@ mod units;
 pub mod validation;
 mod waterfall;
 
-pub use compared::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 pub use alternating::impedance;
 pub use alternating_across::current_across;
+pub use compared::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 pub use curve::curve;
+pub use error_map::error_map;
 pub use force_loop::force_loop;
 pub use overlay::overlay;
-pub use error_map::error_map;
 pub use paper::{DOTS_PER_INCH, Picture};
 pub use residual::residual;
 pub use section::{drawing, section};

@@ -17,10 +17,10 @@ use lenzbore_solver::outcome::{Fields, Outcome};
 
 use super::fault::IoFault;
 use super::finite::all_finite;
-use super::header::ResultHeader;
 use super::frequency::frequency_columns;
-use super::strokes::stroke_columns;
+use super::header::ResultHeader;
 use super::series::{Column, curve_columns, trace_columns};
+use super::strokes::stroke_columns;
 use dataset::{About, put, text};
 
 const STORED: &str = "Stored fields are those of the finest grid, with its discretisation error. Figures are extrapolated \

@@ -9,7 +9,10 @@ use lenzbore_solver::problem::Problem;
 use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
-use super::{across_columns, csv, curve_columns, frequency_columns, hdf5, names, sensitivities_csv, stroke_columns, summary_text, trace_columns, xdmf};
+use super::{
+    across_columns, csv, curve_columns, frequency_columns, hdf5, names, sensitivities_csv, stroke_columns,
+    summary_text, trace_columns, xdmf,
+};
 use crate::picture::{self, Picture};
 
 /// What to write; what does not apply to a run (no series, no fields, no curve) is left out without a word.

@@ -51,7 +51,20 @@ pub(crate) fn drag_peak(series: &Series, course: &Course) -> (f64, f64) {
         End::Place(_) => drag_mid(series),
         End::Instant => series.force_mid.iter().zip(&series.pull_mid).map(|(f, pull)| (f - pull).abs()).collect(),
     };
-    series.greatest(&drag, (course.since, end_of(series, course).1))
+    greatest(series, &drag, (course.since, end_of(series, course).1))
+}
+
+/// Peaks of the two halves of a cycle that differ by less, relative, are one.
+const SAME_PEAK: f64 = 1.0e-6;
+
+/// The greatest of a span; in a stroke's cycle the earlier of two that are as good as equal, or rounding would choose.
+fn greatest(series: &Series, values: &[f64], (since, end): (f64, f64)) -> (f64, f64) {
+    let all = series.greatest(values, (since, end));
+    if since <= 0.0 {
+        return all;
+    }
+    let first = series.greatest(values, (since, 0.5 * (since + end)));
+    if first.1 >= (1.0 - SAME_PEAK) * all.1 { first } else { all }
 }
 
 /// All figures of a level.
@@ -179,7 +192,7 @@ fn sense(travel: f64) -> f64 {
 }
 
 fn current_peak(series: &Series, span: (f64, f64)) -> LevelFigure {
-    let (t, value) = series.greatest(&series.peak_mid, span);
+    let (t, value) = greatest(series, &series.peak_mid, span);
     let k = series.time_mid.partition_point(|&s| s < t).min(series.time_mid.len().saturating_sub(1));
     let read = |values: &[f64]| values.get(k).copied();
     let location = Location { r_m: read(&series.peak_r_mid), z_m: read(&series.peak_z_mid), t_s: Some(t) };

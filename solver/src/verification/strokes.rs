@@ -172,9 +172,9 @@ fn the_first_cycle_is_some_per_cent_off() {
 fn long_strokes_through_an_end_close_their_balance() {
     let sine = Sine { centre_m: 0.23, amplitude_m: 0.04, frequency_hz: 12.0, cycles: None };
     let outcome = answer(&in_copper(Travel::Sine(sine)));
-    let ledger = outcome.ledger.clone().unwrap();
+    let ledger = outcome.ledger.unwrap();
     println!("{ledger:?} {:?}", outcome.figures);
-    assert!(ledger.imbalance_relative.abs() < 3e-6 && outcome.forces.clone().unwrap().agree);
+    assert!(ledger.imbalance_relative.abs() < 3e-6 && outcome.forces.unwrap().agree);
     assert!(outcome.accuracy.met, "{:?}", outcome.accuracy);
 }
 

@@ -57,7 +57,14 @@ impl Endless {
     }
 
     /// sigma k v integral of r |A|^2 over layer `i`, `rate` being k v.
-    fn loss(&self, cascade: &Cascade<'_>, i: usize, wave: Wave, rate: f64, rule: &GaussRule) -> Result<f64, Error> {
+    pub(super) fn loss(
+        &self,
+        cascade: &Cascade<'_>,
+        i: usize,
+        wave: Wave,
+        rate: f64,
+        rule: &GaussRule,
+    ) -> Result<f64, Error> {
         let region = &self.regions[i];
         let mut step = 0.0;
         let mut size = 0.0;

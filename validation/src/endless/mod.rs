@@ -21,6 +21,7 @@ mod field;
 mod region;
 mod setup;
 mod spectrum;
+mod stroke;
 
 pub use coefficient::{LowSpeed, damping_coefficient, low_speed};
 pub use current::{CurrentPeak, current_density, current_density_along, current_density_peak};

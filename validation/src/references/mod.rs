@@ -3,8 +3,8 @@
 //! Every table says how its values were obtained. Most of the formulas are published without numbers; the numbers were then
 //! computed independently of this program, in another language and with other quadratures, from the formula cited.
 
-pub mod coil_inductance;
 pub mod coil_impedance;
+pub mod coil_inductance;
 pub mod cylinder_damping;
 pub mod dipole_drag;
 pub mod fall;
@@ -25,6 +25,7 @@ pub mod sphere_alternating;
 pub mod stacks;
 pub mod step_rod;
 pub mod step_tube;
+pub mod stroke;
 pub mod thin_wall;
 pub mod tube_alternating;
 
