@@ -81,7 +81,12 @@ fn decimal(value: f64) -> String {
     if magnitude > 0.0 && !(1e-4..1e15).contains(&magnitude) { format!("{value:e}") } else { format!("{value}") }
 }
 
-pub(super) fn column<'a>(name: &'static str, unit: &'static str, description: &'static str, values: Cow<'a, [f64]>) -> Column<'a> {
+pub(super) fn column<'a>(
+    name: &'static str,
+    unit: &'static str,
+    description: &'static str,
+    values: Cow<'a, [f64]>,
+) -> Column<'a> {
     Column { name, unit, description, values }
 }
 

@@ -137,9 +137,7 @@ impl Kind {
             Self::Power => ("a power", "W", d(2, 1, -3, 0, 0), &["W", "mW", "kW"]),
             Self::Energy => ("an energy", "J", d(2, 1, -2, 0, 0), &["J", "mJ", "kJ", "N m"]),
             Self::Impulse => ("an impulse", "N s", d(1, 1, -1, 0, 0), &["N s", "mN s", "lbf s"]),
-            Self::CurrentDensity => {
-                ("a current density", "A/m2", d(-2, 0, 0, 1, 0), &["A/mm2", "A/m2", "MA/m2"])
-            }
+            Self::CurrentDensity => ("a current density", "A/m2", d(-2, 0, 0, 1, 0), &["A/mm2", "A/m2", "MA/m2"]),
         }
     }
 
