@@ -52,12 +52,7 @@ fn hold(words: &ValidateWords, checks: &[Check]) -> Result<(), End> {
     let report = Report::run(checks, VERSION, &terminal).map_err(fault)?;
     terminal.finish();
     save(words.out.as_deref(), words.replace, |folder| report.write(folder))?;
-    if words.json {
-        say::to_standard_output(&format!("{:#}\n", report.json()));
-    } else {
-        say::to_standard_output(&report.text());
-        say_where(words.out.as_deref());
-    }
+    tell(words, || format!("{:#}\n", report.json()), || report.text());
     verdict(&report)
 }
 
@@ -78,12 +73,7 @@ fn study(words: &ValidateWords) -> Result<(), End> {
     let report = CoverageReport::run(words.cases, seed, VERSION, &terminal).map_err(fault)?;
     terminal.finish();
     save(words.out.as_deref(), words.replace, |folder| report.write(folder))?;
-    if words.json {
-        say::to_standard_output(&format!("{:#}\n", report.json()));
-    } else {
-        say::to_standard_output(&report.text());
-        say_where(words.out.as_deref());
-    }
+    tell(words, || format!("{:#}\n", report.json()), || report.text());
     if report.passed() { Ok(()) } else { Err(End::No("the bands are not worth what is said of them".to_owned())) }
 }
 
@@ -100,8 +90,14 @@ fn save(
     Ok(())
 }
 
-fn say_where(target: Option<&Path>) {
-    if let Some(target) = target {
+/// Prints the one JSON object, or the text and where it was written.
+fn tell(words: &ValidateWords, json: impl FnOnce() -> String, text: impl FnOnce() -> String) {
+    if words.json {
+        say::to_standard_output(&json());
+        return;
+    }
+    say::to_standard_output(&text());
+    if let Some(target) = &words.out {
         say::to_standard_output(&format!("written to {}\n", target.display()));
     }
 }

@@ -1,33 +1,28 @@
 //! The loop over steps: the coarsest level chooses the schedule, finer levels replay it.
 
+mod follow;
+mod record;
+
 use lenzbore_mesh::Refinement;
+
+use record::PEAK_REACH;
 
 use super::course::Course;
 use super::level::MarchLevel;
-use super::motion::{Motion, friction, frictionless, losses, other_force};
+use super::motion::{Motion, friction, frictionless, other_force};
 use super::pace::{PlannedPair, pairs_of_table};
 use super::path::TablePath;
-use super::resample::{Instant, Resampler};
+use super::resample::Resampler;
 use super::schedule::Schedule;
 use super::series::Series;
-use super::step::{State, StepReport, Stepper, heat_rate};
-use super::transfer::{Heights, carry};
+use super::step::{State, StepReport, Stepper};
 use super::window::Window;
 use crate::fault::SolveFault;
-use crate::fields::snapshot;
-use crate::force::{by_stress, on_mover};
-use crate::interpolate::{ALONG_POINTS, Stencil, peak_near, sampled};
 use crate::monitor::Monitor;
 use crate::outcome::Snapshot;
-use crate::settled::greatest_node;
-use crate::sources::AxialField;
 
 /// Greatest change of speed in a pair of steps, relative to the speed.
 const SPEED_CHANGE: f64 = 0.15;
-/// Nodes on either side of the greatest current density that its peak is read from.
-const PEAK_REACH: usize = 8;
-/// Share of the greatest drag so far above which the stress is taken too.
-const NEAR_GREATEST: f64 = 0.8;
 /// Pairs at most.
 const MOST_PAIRS: usize = 2_000_000;
 /// Pairs run on beyond the end, so that the end itself is read between steps.
@@ -249,45 +244,6 @@ impl<'a, 'p> Run<'a, 'p> {
         Ok((self.series, self.snapshots))
     }
 
-    /// Moves the window where it no longer has fine cells all around the mover.
-    fn follow(&mut self, schedule: &mut Schedule) -> Result<(), SolveFault> {
-        let (Some(rule), Some(window)) = (self.level.lines.rule(), self.window) else { return Ok(()) };
-        let direction = self.direction();
-        if !rule.covers(window, self.state.position, direction) {
-            let window = rule.choose(self.state.position, direction);
-            schedule.move_window(window);
-            self.enter(window)?;
-        }
-        Ok(())
-    }
-
-    /// Sense in which the mover travels, or is about to.
-    fn direction(&self) -> f64 {
-        let velocity = self.state.velocity;
-        if velocity.abs() > 0.0 { velocity.signum() } else { self.state.first_acceleration().signum() }
-    }
-
-    /// Goes over to the grid of `window`: the reaction at the wall is carried along, the mover's own field is exact.
-    fn enter(&mut self, window: Window) -> Result<(), SolveFault> {
-        let Some(rule) = self.level.lines.rule() else { return Ok(()) };
-        let from = Heights { z: self.level.operators.grid.z.nodes().to_vec(), wall: self.level.operators.wall.clone() };
-        let reaction: Vec<f64> = self.state.flux.iter().zip(&self.state.source).map(|(y, s)| y - s).collect();
-        self.level.enter(window)?;
-        let operators = &self.level.operators;
-        let (wall, nodes) = (operators.wall.len(), operators.grid.nodes());
-        let mut flux = carry(&from, &reaction, (operators.grid.z.nodes(), &operators.wall), rule.ends());
-        let (mut source, mut slope) = (vec![0.0; wall], vec![0.0; wall]);
-        self.level.fill_source(self.state.position, &mut source, &mut slope);
-        flux.iter_mut().zip(&source).for_each(|(y, s)| *y += s);
-        self.state = self.state.carried(flux, source);
-        self.saved = self.state.clone();
-        self.stepper = Stepper::new(self.level);
-        self.currents = vec![0.0; wall];
-        self.psi_nodes = vec![0.0; nodes];
-        self.window = Some(window);
-        Ok(())
-    }
-
     /// Makes room for `steps` more, and the factor of `dt` ready.
     #[cfg(test)]
     pub(super) fn make_ready(&mut self, steps: usize, dt: f64) -> Result<(), SolveFault> {
@@ -358,106 +314,6 @@ impl<'a, 'p> Run<'a, 'p> {
         self.record(begin, dt, &report);
         Ok(report)
     }
-
-    fn record(&mut self, begin: f64, dt: f64, report: &StepReport) {
-        let series = &mut self.series;
-        let middle = self.state.position - 0.5 * report.travel;
-        self.heat += report.heat;
-        self.work += report.force * report.travel;
-        if let Motion::Free { law, mass } = self.motion {
-            self.losses += losses(law, *mass, report.travel, report.travel / dt);
-        }
-        series.time.push(begin + dt);
-        series.position.push(self.state.position);
-        series.velocity.push(self.state.velocity);
-        series.heat.push(self.heat);
-        series.work.push(self.work);
-        series.losses.push(self.losses);
-        series.time_mid.push(begin + 0.5 * dt);
-        series.position_mid.push(middle);
-        series.force_mid.push(report.force);
-        series.heat_rate_mid.push(heat_rate(self.level, &self.currents));
-        series.energy_mid.push(report.energy);
-        series.acceleration_mid.push(report.acceleration);
-        if report.held {
-            let before = series.velocity[series.velocity.len() - 2];
-            series.stopped_at = Some(begin + dt * before / (before - self.state.velocity));
-        }
-        let pull = self.level.static_pull(middle);
-        self.series.pull_mid.push(pull);
-        self.record_routes(middle, begin + 0.5 * dt);
-        self.record_peak(dt, report.travel);
-    }
-
-    /// The two other routes at the step's middle.
-    fn record_routes(&mut self, middle: f64, time_mid: f64) {
-        let operators = &self.level.operators;
-        let (nr, grid) = (operators.grid.nr(), &operators.grid);
-        for (j, row) in self.stepper.reaction().chunks_exact(nr - 2).enumerate() {
-            self.psi_nodes[(j + 1) * nr + 1..(j + 2) * nr - 1].copy_from_slice(row);
-        }
-        let (problem, placement) = (self.level.problem, self.level.placement);
-        self.series.force_on_mover_mid.push(on_mover(grid, &self.psi_nodes, &problem.mover, middle, placement.gap_m));
-        // The stress is wanted at the greatest drag alone: it is taken where the drag is near its greatest so far.
-        let last = |values: &[f64]| values.last().copied().unwrap_or(0.0);
-        let drag = (last(&self.series.force_mid) - last(&self.series.pull_mid)).abs();
-        let cycle = self.motion.cycle(time_mid);
-        if cycle != self.cycle {
-            (self.cycle, self.greatest_drag) = (cycle, 0.0);
-        }
-        self.greatest_drag = self.greatest_drag.max(drag);
-        if drag >= NEAR_GREATEST * self.greatest_drag {
-            self.series.time_stress.push(time_mid);
-            self.series.force_by_stress.push(by_stress(grid, &self.psi_nodes, problem, placement, middle));
-        }
-    }
-
-    /// The greatest current density over the step: sigma |dpsi/dt| / r, the mover's own part exact between nodes.
-    fn record_peak(&mut self, dt: f64, travel: f64) {
-        let operators = &self.level.operators;
-        let wall = &operators.wall;
-        let (value, r, z) = greatest_node(operators, &self.currents).map_or((0.0, 0.0, 0.0), |(row, k)| {
-            let r = operators.grid.r.nodes()[row.i];
-            let heights = &operators.grid.z.nodes()[row.j..row.j + row.count];
-            let (end, mover) = (self.state.position, &self.level.problem.mover);
-            let own = |z: f64| (mover.psi(r, z - end + travel) - mover.psi(r, z - end)) / (r * dt);
-            // Only the nodes around the greatest are read by the interpolation.
-            let (from, to) = (k.saturating_sub(PEAK_REACH), (k + PEAK_REACH + 1).min(row.count));
-            for (n, (near, &z)) in self.near.iter_mut().zip(&heights[from..to]).enumerate() {
-                let w = row.start + from + n;
-                *near = self.currents[w] / (wall.conductance[w] * r) - own(z);
-            }
-            let (places, near) = (&heights[from..to], &self.near[..to - from]);
-            let (at, field) = peak_near(places, k - from, |z| own(z) + along(places, near, z));
-            (wall.sigma_max[row.start + k] * field, r, at)
-        });
-        self.series.peak_mid.push(value);
-        self.series.peak_r_mid.push(r);
-        self.series.peak_z_mid.push(z);
-    }
-
-    fn keep_snapshot(&mut self, time: f64, travel: f64) -> Result<(), SolveFault> {
-        let position = self.state.position - 0.5 * travel;
-        let (operators, problem) = (&self.level.operators, self.level.problem);
-        if self.window.is_some() {
-            if self.resampler.is_none() {
-                self.resampler = Some(Resampler::new(problem, &self.level.lines)?);
-            }
-            let instant = Instant { psi: &self.psi_nodes, currents: &self.currents, time, position };
-            self.snapshots.extend(self.resampler.as_ref().map(|whole| whole.snapshot(operators, problem, &instant)));
-        } else {
-            self.snapshots.push(snapshot(operators, problem, &self.psi_nodes, &self.currents, time, position));
-        }
-        Ok(())
-    }
-}
-
-/// Interpolated value along the wall, or linear between the few nodes of a very short one.
-fn along(places: &[f64], values: &[f64], z: f64) -> f64 {
-    if places.len() < ALONG_POINTS {
-        return sampled(places, values, z);
-    }
-    Stencil::<ALONG_POINTS>::at(places, z).value_of(values)
 }
 
 /// Force at release without the magnetic one, N: friction holds, or acts against the sliding.

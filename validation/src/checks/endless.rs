@@ -4,62 +4,58 @@ use lenzbore_solver::constants::MU0;
 use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::problem::{Mover, Wall};
 
-use super::{Check, Kind, Verdict};
+use super::{Check, Verdict};
 use crate::endless::{Emitter, Endless, Shape};
 use crate::references::{
-    Source, cylinder_damping, dipole_drag, half_decimal, half_figure, magnet_speed, moving_loop, permeable_tube,
-    stacks, thin_wall,
+    cylinder_damping, dipole_drag, half_decimal, half_figure, magnet_speed, moving_loop, permeable_tube, stacks,
+    thin_wall,
 };
 use crate::{Error, cases, endless};
 
-const fn check(
-    name: &'static str,
-    about: &'static str,
-    source: &'static Source,
-    run: fn(&dyn Monitor) -> Result<Verdict, Error>,
-) -> Check {
-    Check { name, about, kind: Kind::CodeVerification, source, run }
-}
-
 pub(super) const CHECKS: &[Check] = &[
-    check(
+    Check::code_verification(
         "integral-dipole",
         "Fourier-Bessel drag of a dipole in a copper wall at four speeds",
         &dipole_drag::SOURCE,
         dipole,
     ),
-    check(
+    Check::code_verification(
         "integral-cylinders",
         "Fourier-Bessel damping coefficients of cylinder magnets in fifteen walls",
         &cylinder_damping::SOURCE,
         cylinders,
     ),
-    check(
+    Check::code_verification(
         "integral-dipole-coefficient",
         "Fourier-Bessel damping coefficient of a dipole against its closed form in thick walls",
         &cylinder_damping::SOURCE,
         dipole_coefficient,
     ),
-    check(
+    Check::code_verification(
         "integral-stacks",
         "Fourier-Bessel damping coefficients of magnet stacks",
         &stacks::SOURCE,
         stack_coefficients,
     ),
-    check("integral-speeds", "Fourier-Bessel drag of a magnet from 0.01 to 100 m/s", &magnet_speed::SOURCE, speeds),
-    check(
+    Check::code_verification(
+        "integral-speeds",
+        "Fourier-Bessel drag of a magnet from 0.01 to 100 m/s",
+        &magnet_speed::SOURCE,
+        speeds,
+    ),
+    Check::code_verification(
         "integral-permeable",
         "Fourier-Bessel drag in tubes of permeability 1, 50 and 200",
         &permeable_tube::SOURCE,
         permeable,
     ),
-    check(
+    Check::code_verification(
         "integral-thin-wall",
         "Fourier-Bessel drag of a dipole in an ever thinner wall against the sheet's universal curve",
         &thin_wall::SOURCE,
         universal,
     ),
-    check(
+    Check::code_verification(
         "integral-moving-loop",
         "Fourier-Bessel flux density of a moving loop inside and outside a tube",
         &moving_loop::SOURCE,

@@ -9,35 +9,46 @@ use lenzbore_solver::outcome::Outcome;
 use lenzbore_solver::problem::{Mover, Travel, Wall};
 
 use super::field_fall::figure;
-use super::{Banded, Check, Kind, Limits, Series, Verdict};
+use super::{Banded, Check, Limits, Series, Verdict};
 use crate::references::cylinder_damping::Cylinder;
 use crate::references::{
-    Source, cylinder_damping, dipole_drag, half_decimal, half_figure, magnet_speed, permeable_tube, stacks, thin_wall,
+    cylinder_damping, dipole_drag, half_decimal, half_figure, magnet_speed, permeable_tube, stacks, thin_wall,
 };
 use crate::{Error, cases, endless};
 
-const fn check(
-    name: &'static str,
-    about: &'static str,
-    source: &'static Source,
-    run: fn(&dyn Monitor) -> Result<Verdict, Error>,
-) -> Check {
-    Check { name, about, kind: Kind::CodeVerification, source, run }
-}
-
 pub(super) const CHECKS: &[Check] = &[
-    check("field-dipole", "drag of a dipole in a copper wall at four speeds", &dipole_drag::SOURCE, dipole),
-    check("field-cylinders", "damping coefficients of cylinder magnets", &cylinder_damping::SOURCE, cylinders),
-    check("field-stacks", "damping coefficients of magnet stacks", &stacks::SOURCE, stack_coefficients),
-    check("field-speeds", "drag of a magnet from 0.01 to 100 m/s", &magnet_speed::SOURCE, speeds),
-    check("field-permeable", "drag in tubes of permeability 1, 50 and 200", &permeable_tube::SOURCE, permeable),
-    check(
+    Check::code_verification(
+        "field-dipole",
+        "drag of a dipole in a copper wall at four speeds",
+        &dipole_drag::SOURCE,
+        dipole,
+    ),
+    Check::code_verification(
+        "field-cylinders",
+        "damping coefficients of cylinder magnets",
+        &cylinder_damping::SOURCE,
+        cylinders,
+    ),
+    Check::code_verification(
+        "field-stacks",
+        "damping coefficients of magnet stacks",
+        &stacks::SOURCE,
+        stack_coefficients,
+    ),
+    Check::code_verification("field-speeds", "drag of a magnet from 0.01 to 100 m/s", &magnet_speed::SOURCE, speeds),
+    Check::code_verification(
+        "field-permeable",
+        "drag in tubes of permeability 1, 50 and 200",
+        &permeable_tube::SOURCE,
+        permeable,
+    ),
+    Check::code_verification(
         "field-thin-wall",
         "drag of a dipole in a thin wall against the universal curve",
         &thin_wall::SOURCE,
         universal,
     ),
-    check(
+    Check::code_verification(
         "field-critical-speed",
         "critical speed and greatest drag of a dipole in a thin wall",
         &thin_wall::SOURCE,

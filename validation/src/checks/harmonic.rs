@@ -8,35 +8,36 @@ use lenzbore_solver::outcome::{FrequencyPoint, FrequencyResponse, Outcome};
 use lenzbore_solver::problem::{Accuracy, Alternating, Extent, Layer, Mover, Travel, Wall};
 use lenzbore_solver::sources::{AxialField, Coil, Source as Field};
 
-use super::{Banded, Check, Kind, Limits, Verdict};
-use crate::references::{Source, coil_impedance, half_figure, rod_alternating, sphere_alternating, tube_alternating};
+use super::{Banded, Check, Limits, Verdict};
+use crate::references::{coil_impedance, half_figure, rod_alternating, sphere_alternating, tube_alternating};
 use crate::{Error, cases};
 
-const fn check(
-    name: &'static str,
-    about: &'static str,
-    source: &'static Source,
-    run: fn(&dyn Monitor) -> Result<Verdict, Error>,
-) -> Check {
-    Check { name, about, kind: Kind::CodeVerification, source, run }
-}
-
 pub(super) const CHECKS: &[Check] = &[
-    check(
+    Check::code_verification(
         "alternating-coil",
         "inductance of a coil, and what tubes of permeability 1 and 50 add to its impedance from 100 Hz to 100 kHz",
         &coil_impedance::SOURCE,
         coil,
     ),
-    check("alternating-rod", "field on the axis of a rod in an axial field", &rod_alternating::SOURCE, rod),
-    check(
+    Check::code_verification(
+        "alternating-rod",
+        "field on the axis of a rod in an axial field",
+        &rod_alternating::SOURCE,
+        rod,
+    ),
+    Check::code_verification(
         "alternating-skin-depth",
         "skin depth against handbook figures, and the depth of 1/e read off the current density",
         &rod_alternating::DEPTH_SOURCE,
         depths,
     ),
-    check("alternating-tube", "field in the bore of a tube in an axial field", &tube_alternating::SOURCE, tube),
-    check(
+    Check::code_verification(
+        "alternating-tube",
+        "field in the bore of a tube in an axial field",
+        &tube_alternating::SOURCE,
+        tube,
+    ),
+    Check::code_verification(
         "alternating-sphere",
         "field in the cavity of a hollow sphere, and its loss",
         &sphere_alternating::SOURCE,

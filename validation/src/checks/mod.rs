@@ -66,6 +66,18 @@ pub struct Check {
     pub run: fn(&dyn Monitor) -> Result<Verdict, Error>,
 }
 
+impl Check {
+    /// A check of the code against an exact solution of the same equations.
+    const fn code_verification(
+        name: &'static str,
+        about: &'static str,
+        source: &'static Source,
+        run: fn(&dyn Monitor) -> Result<Verdict, Error>,
+    ) -> Self {
+        Self { name, about, kind: Kind::CodeVerification, source, run }
+    }
+}
+
 /// All checks, those of the independent methods first.
 #[must_use]
 pub fn all() -> Vec<Check> {
