@@ -34,6 +34,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     };
 
     // v = 0.1 * 2^k m/s.

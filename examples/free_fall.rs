@@ -36,6 +36,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         travel: Travel::Free(fall),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     };
 
     let outcome = solve(&problem, &Unwatched)?;

@@ -94,6 +94,20 @@ pub fn small_strokes(
     march::small_strokes(problem, centre_m, frequencies_hz, monitor)
 }
 
+/// Damping coefficient as the speed vanishes, with the reference point at each of `positions_m`, in a finite wall; the law of travel takes no
+/// part in it.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn damping_against_position(
+    problem: &Problem,
+    positions_m: &[f64],
+    monitor: &dyn Monitor,
+) -> Result<Outcome, SolveFault> {
+    require_finite(problem)?;
+    march::damping_against_position(problem, positions_m, monitor)
+}
+
 /// A wall's currents as `terms` first-order lags, fitted to small strokes over frequency; `None` with fewer points than terms, or where
 /// nothing damps.
 #[must_use]

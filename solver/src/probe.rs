@@ -48,6 +48,7 @@ pub type NodeLines = (Vec<f64>, Vec<f64>);
 ///     travel: Travel::Steady { velocity_m_per_s: 5.0 },
 ///     accuracy: Accuracy::default(),
 ///     snapshots: SnapshotPlan::None,
+///     stations: Vec::new(),
 /// };
 /// let lines = node_lines(&problem, None)?;
 /// assert_eq!(lines.len(), 3);

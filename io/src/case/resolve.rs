@@ -142,7 +142,7 @@ fn problem(
             Travel::Steady { velocity_m_per_s }
         }
     };
-    Problem { wall, mover: mover.clone(), travel, accuracy, snapshots }
+    Problem { wall, mover: mover.clone(), travel, accuracy, snapshots, stations: Vec::new() }
 }
 
 fn title(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -> String {

@@ -27,6 +27,7 @@ fn outcome() -> LadderOutcome {
         travel: Travel::Steady { velocity_m_per_s: 4.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     };
     ladder(&problem, &Unwatched).unwrap()
 }

@@ -11,7 +11,7 @@
 use lenzbore_solver::comparison::Verdict;
 use lenzbore_solver::outcome::{
     Accuracies, Basis, Caution, DragCurve, DragPoint, Figure, Forces, GridReport, Ledger, Location, Outcome, Regime,
-    Stop, Trace, WorkCounters,
+    Stop, Sweeps, Trace, WorkCounters,
 };
 use lenzbore_solver::problem::{
     Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall,
@@ -61,6 +61,7 @@ pub(crate) fn free() -> (Problem, Outcome) {
         travel: Travel::Free(Free::let_go(0.16, -0.04, [0.12, 0.0])),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::Automatic,
+        stations: Vec::new(),
     };
     let trace = fall(4.5, 0.18);
     let peak = (0..trace.time_s.len()).max_by(|a, b| trace.drag_newton[*a].total_cmp(&trace.drag_newton[*b])).unwrap();
@@ -221,6 +222,8 @@ pub(crate) fn outcome(figures: Vec<Figure>, stop: Stop, trace: Trace, curve: Opt
         curve,
         frequency: None,
         strokes: None,
+        sweeps: Sweeps::default(),
+        stations: Vec::new(),
         fields: None,
     }
 }

@@ -80,6 +80,7 @@ fn finite(length_m: f64, travel: Travel) -> Problem {
         travel,
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 
@@ -91,6 +92,7 @@ fn endless(part: Part, inner_radius_m: f64, outer_radius_m: f64, relative_permea
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 

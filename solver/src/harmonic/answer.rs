@@ -11,7 +11,7 @@ use crate::fault::SolveFault;
 use crate::fields::{empty_fields, snapshot};
 use crate::monitor::Monitor;
 use crate::outcome::{
-    Basis, Caution, Fields, Figure, FrequencyResponse, Ledger, Location, Measured, Outcome, Stop, Trace,
+    Basis, Caution, Fields, Figure, FrequencyResponse, Ledger, Location, Measured, Outcome, Stop, Sweeps, Trace,
 };
 use crate::problem::{Alternating, Problem, SnapshotPlan};
 use crate::regime::regime;
@@ -81,6 +81,8 @@ pub(super) fn answer(
         curve: None,
         frequency: Some(response(&levels, points, alone)),
         strokes: None,
+        sweeps: Sweeps::default(),
+        stations: Vec::new(),
         figures,
         forces: None,
         ledger,

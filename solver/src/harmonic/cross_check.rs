@@ -51,6 +51,7 @@ fn problem(extent: Extent, layers: Vec<Layer>, parts: Vec<Part>, law: Alternatin
         travel: Travel::Alternating(law),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 

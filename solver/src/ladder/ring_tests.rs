@@ -44,6 +44,7 @@ pub(super) fn problem(a: f64, b: f64, length: Option<f64>, parts: Vec<Part>, tra
         travel,
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 

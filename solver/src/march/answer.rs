@@ -27,7 +27,9 @@ use crate::grid_rules::GridPlan;
 use crate::interpolate::sampled;
 use crate::materials::Materials;
 use crate::monitor::{Monitor, Quiet};
-use crate::outcome::{Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Trace, WorkCounters};
+use crate::outcome::{
+    Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Sweeps, Trace, WorkCounters,
+};
 use crate::placement::Placement;
 use crate::problem::{Problem, Sine, SnapshotPlan};
 use crate::regime::regime;
@@ -275,6 +277,8 @@ impl<'p> Journey<'p> {
             curve: None,
             frequency: None,
             strokes: None,
+            sweeps: Sweeps::default(),
+            stations: Vec::new(),
             forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),

@@ -4,7 +4,9 @@ mod fields;
 mod figure;
 mod frequency;
 mod report;
+mod station;
 mod stroke;
+mod sweep;
 
 pub use fields::{Fields, Snapshot};
 pub use figure::{Basis, Figure, Location};
@@ -12,4 +14,6 @@ pub use frequency::{CurrentSample, FrequencyPoint, FrequencyResponse, Measured, 
 pub use report::{
     Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
 };
+pub use station::{StationSeries, StationTrace};
 pub use stroke::{LumpedModel, LumpedTerm, SmallStroke, StrokeResponse};
+pub use sweep::{AtPosition, AtStroke, AtTemperature, Sweeps};

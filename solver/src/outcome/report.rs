@@ -1,6 +1,6 @@
 //! Everything around the figures.
 
-use super::{Fields, Figure, FrequencyResponse, StrokeResponse};
+use super::{Fields, Figure, FrequencyResponse, StationTrace, StrokeResponse, Sweeps};
 
 /// Drag by three routes at one instant, N, each with the same meaning: positive opposes the motion.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -204,6 +204,10 @@ pub struct Outcome {
     pub frequency: Option<FrequencyResponse>,
     /// Small strokes over frequency, where the travel is a stroke.
     pub strokes: Option<StrokeResponse>,
+    /// What a curve sweeps beside speed.
+    pub sweeps: Sweeps,
+    /// What gauges at fixed places read.
+    pub stations: Vec<StationTrace>,
     /// Fields, where they were asked.
     pub fields: Option<Fields>,
 }

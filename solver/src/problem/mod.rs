@@ -6,6 +6,7 @@ mod fault;
 mod mover;
 mod quantity;
 mod reach;
+mod station;
 mod stroke;
 mod travel;
 mod validity;
@@ -15,6 +16,7 @@ pub use accuracy::{Accuracy, SnapshotPlan};
 pub use fault::{Named, ProblemFault, Subject};
 pub use mover::{Mover, Outline, Part};
 pub use quantity::{Quantity, SensibleRange};
+pub use station::{Gauge, Station};
 pub use stroke::{MOST_CYCLES, MotionTable, Sine};
 pub use travel::{Alternating, Free, Travel, Traverse};
 pub use wall::{Extent, Layer, Wall};
@@ -35,4 +37,6 @@ pub struct Problem {
     pub accuracy: Accuracy,
     /// When the fields are kept.
     pub snapshots: SnapshotPlan,
+    /// Gauges at fixed places.
+    pub stations: Vec<Station>,
 }

@@ -119,6 +119,7 @@ mod tests {
             travel: Travel::Free(free),
             accuracy: Accuracy::default(),
             snapshots: SnapshotPlan::None,
+            stations: Vec::new(),
         }
     }
 

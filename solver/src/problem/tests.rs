@@ -42,6 +42,7 @@ fn problem() -> Problem {
         travel: traverse(),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::default(),
+        stations: Vec::new(),
     }
 }
 

@@ -44,6 +44,7 @@ fn problem(jacket: Option<f64>) -> Problem {
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 

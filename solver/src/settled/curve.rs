@@ -9,7 +9,7 @@ use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::interpolate::greatest;
 use crate::monitor::Monitor;
-use crate::outcome::{Caution, DragCurve, DragPoint, Figure, Outcome, Stop, Trace};
+use crate::outcome::{Caution, DragCurve, DragPoint, Figure, Outcome, Stop, Sweeps, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
 use crate::target::{MOST_LEVELS, levels_wanted, refine, verdict};
@@ -63,6 +63,8 @@ fn curve_on(problem: &Problem, speeds: &[f64], levels: &mut Levels<'_>) -> Resul
         curve: Some(DragCurve { points }),
         frequency: None,
         strokes: None,
+        sweeps: Sweeps::default(),
+        stations: Vec::new(),
         figures,
         forces,
         ledger: None,

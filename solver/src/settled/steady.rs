@@ -6,7 +6,7 @@ use super::levels::{Levels, Point, damping_at_rest};
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::monitor::Monitor;
-use crate::outcome::{Basis, Figure, Ledger, Location, Outcome, Stop, Trace};
+use crate::outcome::{Basis, Figure, Ledger, Location, Outcome, Stop, Sweeps, Trace};
 use crate::problem::Problem;
 use crate::regime::regime;
 use crate::target::{MOST_LEVELS, levels_wanted, refine, verdict};
@@ -60,6 +60,8 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
         curve: None,
         frequency: None,
         strokes: None,
+        sweeps: Sweeps::default(),
+        stations: Vec::new(),
         figures,
         forces,
         ledger,

@@ -43,6 +43,7 @@ fn problem(thickness: f64, mu_r: f64) -> Problem {
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 

@@ -74,6 +74,7 @@ pub(crate) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usiz
         travel,
         accuracy: Accuracy { levels: Some(levels), ..Accuracy::default() },
         snapshots: SnapshotPlan::None,
+        stations: Vec::new(),
     }
 }
 
