@@ -35,6 +35,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     };
 
     // v = 0.1 * 2^k m/s.

@@ -37,6 +37,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     };
 
     let outcome = solve(&problem, &Unwatched)?;

@@ -49,6 +49,7 @@ pub type NodeLines = (Vec<f64>, Vec<f64>);
 ///     accuracy: Accuracy::default(),
 ///     snapshots: SnapshotPlan::None,
 ///     stations: Vec::new(),
+///     warming: None,
 /// };
 /// let lines = node_lines(&problem, None)?;
 /// assert_eq!(lines.len(), 3);

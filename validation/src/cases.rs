@@ -89,7 +89,8 @@ pub fn stack(radius_m: f64, length_m: f64, remanence_tesla: f64, signs: &[f64], 
 /// A question at default accuracy that keeps no fields.
 #[must_use]
 pub fn question(wall: Wall, mover: Mover, travel: Travel) -> Problem {
-    Problem { wall, mover, travel, accuracy: Accuracy::default(), snapshots: SnapshotPlan::None, stations: Vec::new() }
+    let (accuracy, snapshots) = (Accuracy::default(), SnapshotPlan::None);
+    Problem { wall, mover, travel, accuracy, snapshots, stations: Vec::new(), warming: None }
 }
 
 /// A fall under standard gravity from rest at `release_m`, ending at `until_m`, timed between two gates.

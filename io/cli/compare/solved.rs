@@ -120,7 +120,7 @@ pub fn endless(problem: &Problem, speed: f64) -> Result<Problem, End> {
 
 /// The problem of the travel, without fields.
 fn plain(problem: &Problem) -> Problem {
-    Problem { snapshots: SnapshotPlan::None, ..problem.clone() }
+    Problem { snapshots: SnapshotPlan::None, warming: None, ..problem.clone() }
 }
 
 impl Solved {

@@ -142,7 +142,7 @@ fn problem(
             Travel::Steady { velocity_m_per_s }
         }
     };
-    Problem { wall, mover: mover.clone(), travel, accuracy, snapshots, stations: Vec::new() }
+    Problem { wall, mover: mover.clone(), travel, accuracy, snapshots, stations: Vec::new(), warming: None }
 }
 
 fn title(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -> String {

@@ -28,6 +28,7 @@ fn outcome() -> LadderOutcome {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     };
     ladder(&problem, &Unwatched).unwrap()
 }

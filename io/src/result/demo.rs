@@ -62,6 +62,7 @@ pub(crate) fn free() -> (Problem, Outcome) {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::Automatic,
         stations: Vec::new(),
+        warming: None,
     };
     let trace = fall(4.5, 0.18);
     let peak = (0..trace.time_s.len()).max_by(|a, b| trace.drag_newton[*a].total_cmp(&trace.drag_newton[*b])).unwrap();
@@ -224,6 +225,7 @@ pub(crate) fn outcome(figures: Vec<Figure>, stop: Stop, trace: Trace, curve: Opt
         strokes: None,
         sweeps: Sweeps::default(),
         stations: Vec::new(),
+        thermal: None,
         fields: None,
     }
 }

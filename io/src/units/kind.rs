@@ -36,6 +36,8 @@ pub enum Kind {
     SpecificHeat,
     /// W/(m K)
     ThermalConductivity,
+    /// W/(m2 K)
+    FilmCoefficient,
     /// s
     Time,
     /// Hz
@@ -63,7 +65,7 @@ pub enum Kind {
 }
 
 /// Every kind, in the order in which a unit's dimension is given a name.
-const KINDS: [Kind; 27] = [
+const KINDS: [Kind; 28] = [
     Kind::Length,
     Kind::Speed,
     Kind::Temperature,
@@ -79,6 +81,7 @@ const KINDS: [Kind; 27] = [
     Kind::Density,
     Kind::SpecificHeat,
     Kind::ThermalConductivity,
+    Kind::FilmCoefficient,
     Kind::Time,
     Kind::Frequency,
     Kind::Acceleration,
@@ -125,6 +128,9 @@ impl Kind {
             }
             Self::ThermalConductivity => {
                 ("a thermal conductivity", "W/(m K)", d(1, 1, -3, 0, -1), &["W/(m K)", "W/(cm K)"])
+            }
+            Self::FilmCoefficient => {
+                ("a film coefficient", "W/(m2 K)", d(0, 1, -3, 0, -1), &["W/(m2 K)", "kW/(m2 K)", "W/(cm2 K)"])
             }
             Self::Time => ("a time", "s", d(0, 0, 1, 0, 0), &["s", "ms", "us", "min", "h"]),
             Self::Frequency => ("a frequency", "Hz", d(0, 0, -1, 0, 0), &["Hz", "kHz", "rpm"]),

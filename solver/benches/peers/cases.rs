@@ -81,6 +81,7 @@ fn finite(length_m: f64, travel: Travel) -> Problem {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 
@@ -93,6 +94,7 @@ fn endless(part: Part, inner_radius_m: f64, outer_radius_m: f64, relative_permea
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 

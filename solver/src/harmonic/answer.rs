@@ -83,6 +83,7 @@ pub(super) fn answer(
         strokes: None,
         sweeps: Sweeps::default(),
         stations: Vec::new(),
+        thermal: None,
         figures,
         forces: None,
         ledger,

@@ -52,6 +52,7 @@ fn problem(extent: Extent, layers: Vec<Layer>, parts: Vec<Part>, law: Alternatin
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 

@@ -97,7 +97,8 @@ impl Question<'_> {
     fn solve(&self, problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
         match self.speeds_m_per_s {
             Some(speeds) => crate::drag_curve(problem, speeds, monitor),
-            None => crate::solve(problem, monitor),
+            // How warm the wall gets is no rung.
+            None => crate::solve(&Problem { warming: None, ..problem.clone() }, monitor),
         }
     }
 

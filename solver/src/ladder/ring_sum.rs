@@ -30,6 +30,7 @@ use crate::problem::{Problem, Wall};
 /// #     mover: Mover { parts: vec![part], mass_kg: None },
 /// #     travel: Travel::Steady { velocity_m_per_s: 1.0 },
 /// #     accuracy: Accuracy::default(), snapshots: SnapshotPlan::None, stations: Vec::new(),
+/// #     warming: None,
 /// # };
 /// // A magnet of 10 x 10 mm, 1.2 T, in a copper tube of 15 to 19 mm: 0.755653 N s/m (computed independently).
 /// let model = RingSum::new(&problem, Assumptions::RESISTIVE)?;

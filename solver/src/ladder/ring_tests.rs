@@ -45,6 +45,7 @@ pub(super) fn problem(a: f64, b: f64, length: Option<f64>, parts: Vec<Part>, tra
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 

@@ -279,6 +279,7 @@ impl<'p> Journey<'p> {
             strokes: None,
             sweeps: Sweeps::default(),
             stations: Vec::new(),
+            thermal: None,
             forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),

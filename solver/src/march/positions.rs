@@ -122,6 +122,7 @@ fn outcome(problem: &Problem, placement: &Placement, positions: &[f64], levels: 
         curve: None,
         frequency: None,
         strokes: None,
+        thermal: None,
         sweeps: Sweeps { positions: points, ..Sweeps::default() },
         stations: Vec::new(),
         forces: None,

@@ -7,6 +7,7 @@ mod report;
 mod station;
 mod stroke;
 mod sweep;
+mod thermal;
 
 pub use fields::{Fields, Snapshot};
 pub use figure::{Basis, Figure, Location};
@@ -17,3 +18,4 @@ pub use report::{
 pub use station::{StationSeries, StationTrace};
 pub use stroke::{LumpedModel, LumpedTerm, SmallStroke, StrokeResponse};
 pub use sweep::{AtPosition, AtStroke, AtTemperature, Sweeps};
+pub use thermal::{DutyOutcome, DutyStop, HeatLedger, LayerWarmth, TemperatureField, Thermal};

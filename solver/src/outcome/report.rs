@@ -1,6 +1,6 @@
 //! Everything around the figures.
 
-use super::{Fields, Figure, FrequencyResponse, StationTrace, StrokeResponse, Sweeps};
+use super::{Fields, Figure, FrequencyResponse, StationTrace, StrokeResponse, Sweeps, Thermal};
 
 /// Drag by three routes at one instant, N, each with the same meaning: positive opposes the motion.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -208,6 +208,8 @@ pub struct Outcome {
     pub sweeps: Sweeps,
     /// What gauges at fixed places read.
     pub stations: Vec<StationTrace>,
+    /// How warm the wall gets, where that is known.
+    pub thermal: Option<Thermal>,
     /// Fields, where they were asked.
     pub fields: Option<Fields>,
 }

@@ -11,6 +11,7 @@ mod stroke;
 mod travel;
 mod validity;
 mod wall;
+mod warming;
 
 pub use accuracy::{Accuracy, SnapshotPlan};
 pub use fault::{Named, ProblemFault, Subject};
@@ -20,6 +21,7 @@ pub use station::{Gauge, Station};
 pub use stroke::{MOST_CYCLES, MotionTable, Sine};
 pub use travel::{Alternating, Free, Travel, Traverse};
 pub use wall::{Extent, Layer, Wall};
+pub use warming::{Cooling, Duty, LayerHeat, MOST_STOPS, Warming};
 
 #[cfg(test)]
 mod tests;
@@ -39,4 +41,6 @@ pub struct Problem {
     pub snapshots: SnapshotPlan,
     /// Gauges at fixed places.
     pub stations: Vec<Station>,
+    /// How the wall warms, where it is known; `None` leaves its temperature out.
+    pub warming: Option<Warming>,
 }

@@ -120,6 +120,7 @@ mod tests {
             accuracy: Accuracy::default(),
             snapshots: SnapshotPlan::None,
             stations: Vec::new(),
+            warming: None,
         }
     }
 

@@ -43,6 +43,7 @@ fn problem() -> Problem {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::default(),
         stations: Vec::new(),
+        warming: None,
     }
 }
 

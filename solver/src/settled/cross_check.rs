@@ -45,6 +45,7 @@ fn problem(jacket: Option<f64>) -> Problem {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 

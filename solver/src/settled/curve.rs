@@ -65,6 +65,7 @@ fn curve_on(problem: &Problem, speeds: &[f64], levels: &mut Levels<'_>) -> Resul
         strokes: None,
         sweeps: Sweeps::default(),
         stations: Vec::new(),
+        thermal: None,
         figures,
         forces,
         ledger: None,

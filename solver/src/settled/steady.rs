@@ -62,6 +62,7 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
         strokes: None,
         sweeps: Sweeps::default(),
         stations: Vec::new(),
+        thermal: None,
         figures,
         forces,
         ledger,

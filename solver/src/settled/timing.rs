@@ -44,6 +44,7 @@ fn problem(thickness: f64, mu_r: f64) -> Problem {
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 

@@ -75,6 +75,7 @@ pub(crate) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usiz
         accuracy: Accuracy { levels: Some(levels), ..Accuracy::default() },
         snapshots: SnapshotPlan::None,
         stations: Vec::new(),
+        warming: None,
     }
 }
 
