@@ -6,7 +6,8 @@
 
 use std::path::PathBuf;
 
-use clap::{Args, Parser, Subcommand, ValueEnum};
+use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
+use clap_complete::Shell;
 
 /// Drag, travel, eddy currents and heat of a magnet carrier in a conducting tube, each figure with a numerical band.
 #[derive(Debug, Parser)]
@@ -21,6 +22,12 @@ pub struct Arguments {
     /// What to do.
     #[command(subcommand)]
     pub command: Command,
+}
+
+/// Name of every command and what it does.
+pub fn commands() -> Vec<(String, String)> {
+    let about = |c: &clap::Command| c.get_about().map(ToString::to_string).unwrap_or_default();
+    Arguments::command().get_subcommands().map(|c| (c.get_name().to_owned(), about(c))).collect()
 }
 
 /// The commands.
@@ -42,6 +49,12 @@ pub enum Command {
     Validate(ValidateWords),
     /// The material book, with the source of every number
     Materials(MaterialsWords),
+    /// The JSON Schema of the case file, for completion and checks in editors
+    Schema,
+    /// What a word means: of the case file, of a result, of a table, a command; without a word, lists all
+    Explain(ExplainWords),
+    /// The script that completes commands and options in a shell
+    Completions(CompletionsWords),
     /// A command that is not built yet, or none at all
     #[command(external_subcommand)]
     Unbuilt(Vec<String>),
@@ -207,4 +220,22 @@ pub struct MaterialsWords {
     /// Prints one JSON object instead of text
     #[arg(long)]
     pub json: bool,
+}
+
+/// `lenzbore explain`.
+#[derive(Debug, Args)]
+pub struct ExplainWords {
+    /// The word, as thickness, wall.layer.thickness, drag_peak, steady, "[curve]", run
+    pub word: Option<String>,
+    /// Prints one JSON object instead of text
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `lenzbore completions`.
+#[derive(Debug, Args)]
+pub struct CompletionsWords {
+    /// The shell
+    #[arg(value_enum)]
+    pub shell: Shell,
 }

@@ -7,9 +7,7 @@ use lenzbore_io::result::IoFault;
 use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
-const LATER: [&str; 8] = ["rerun", "report", "export", "sweep", "identify", "schema", "explain", "completions"];
-/// Commands that are.
-const BUILT: [&str; 8] = ["new", "check", "run", "curve", "ladder", "compare", "validate", "materials"];
+const LATER: [&str; 5] = ["rerun", "report", "export", "sweep", "identify"];
 
 /// Why a command ended.
 #[derive(Debug)]
@@ -35,8 +33,10 @@ impl End {
         if LATER.contains(&word) {
             return Self::Input(format!("'lenzbore {word}' is not built yet"));
         }
-        let known = BUILT.join(", ");
-        let hint = nearest(word, BUILT).map_or(String::new(), |n| format!("; did you mean '{n}'?"));
+        let built = crate::arguments::commands();
+        let names: Vec<&str> = built.iter().map(|(name, _)| name.as_str()).collect();
+        let known = names.join(", ");
+        let hint = nearest(word, names).map_or(String::new(), |n| format!("; did you mean '{n}'?"));
         Self::Input(format!("'{word}' is no command of lenzbore{hint}\ncommands: {known}"))
     }
 

@@ -6,7 +6,9 @@
 mod arguments;
 mod check;
 mod compare;
+mod completions;
 mod end;
+mod explain;
 mod job;
 mod ladder;
 mod materials;
@@ -14,6 +16,7 @@ mod memory;
 mod new;
 mod progress;
 mod say;
+mod schema;
 mod sketch;
 mod solve;
 mod spread;
@@ -37,6 +40,9 @@ fn main() -> ExitCode {
         Command::Compare(words) => compare::run(&words),
         Command::Validate(words) => validate::run(&words),
         Command::Materials(words) => materials::run(&words),
+        Command::Schema => schema::run(),
+        Command::Explain(words) => explain::run(&words),
+        Command::Completions(words) => completions::run(&words),
         Command::Unbuilt(words) => Err(End::unbuilt(&words)),
     };
     match end {

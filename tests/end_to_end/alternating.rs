@@ -45,6 +45,7 @@ fn the_probe_in_a_long_tube_has_the_impedance_of_the_integral() {
 fn the_example_writes_tables_fields_and_pictures() {
     let bench = Bench::new();
     let summary = bench.succeed(&["run", &example(), "--json", "--out", "result"]).json();
+    crate::words::assert_figures_are_explained(&summary);
     assert_eq!(summary, read_json(&bench.path("result/summary.json")));
     assert!(summary["accuracy"]["met"].as_bool().unwrap());
     let files = entries(&bench.path("result"));
@@ -85,6 +86,7 @@ fn one_frequency_has_its_figures_and_a_magnet_is_refused() {
     let one = text.replace("frequencies = [\"50 Hz\", \"200 kHz\"]\npoints = 25", "frequency = \"5 kHz\"");
     bench.write("one.toml", &one);
     let summary = bench.succeed(&["run", "one.toml", "--json", "--out", "result"]).json();
+    crate::words::assert_figures_are_explained(&summary);
     for name in ["resistance", "reactance", "inductance", "shielding_factor", "skin_depth", "dissipated_power"] {
         assert!(figure(&summary, name) > 0.0, "{name}");
     }

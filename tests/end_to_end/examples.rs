@@ -38,6 +38,7 @@ fn solve(command: &str, name: &str) -> Value {
     let summary = ran.json();
     assert_eq!(summary, read_json(&bench.path("result/summary.json")));
     assert!(summary["accuracy"]["met"].as_bool().unwrap(), "{name}");
+    crate::words::assert_figures_are_explained(&summary);
     let files = entries(&bench.path("result"));
     for file in ["section.png", "section.svg", "summary.json"] {
         assert!(files.iter().any(|f| f == file), "{name}: {file} lacks in {files:?}");

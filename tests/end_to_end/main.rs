@@ -22,3 +22,4 @@ mod rig;
 mod strokes;
 mod tolerance;
 mod validate;
+mod words;

@@ -11,6 +11,8 @@ use crate::units::{Kind, read_bare_number, read_quantity};
 impl Reader {
     /// A quantity, if it is there and sound; faults are collected.
     pub fn quantity(&mut self, section: &Section<'_>, word: &'static str, wanted: Wanted) -> Option<f64> {
+        #[cfg(test)]
+        crate::explain::assert_explained(section.kind, word, wanted.kind, wanted.range);
         let node = section.table.get(word)?;
         let si = self.value(node, word, wanted)?;
         let origin = self.origin(&node.place);

@@ -22,6 +22,7 @@ use super::header::ResultHeader;
 use super::series::{Column, curve_columns, trace_columns};
 use super::strokes::stroke_columns;
 use dataset::{About, put, text};
+pub use snapshots::snapshot_arrays;
 
 const STORED: &str = "Stored fields are those of the finest grid, with its discretisation error. Figures are extrapolated \
      over the grid levels and stand in summary.json; /levels holds them for each level.";

@@ -22,6 +22,7 @@ mod xdmf;
 
 pub use fault::IoFault;
 pub use frequency::{across_columns, frequency_columns};
+pub use hdf5::snapshot_arrays;
 pub use header::{Program, ResultHeader};
 pub use ladder::{ladder_csv, ladder_summary};
 pub use ladder_write::write_ladder;

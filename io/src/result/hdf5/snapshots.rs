@@ -25,16 +25,24 @@ pub(super) fn cell_arrays(snapshot: &Snapshot) -> [(&'static str, &[f64]); 4] {
     ]
 }
 
+/// Name, unit and description of every array of a snapshot, as `run.h5` holds them.
+const ARRAYS: [(&str, &str, &str); 6] = [
+    ("psi_total_Wb_per_rad", "Wb/rad", "psi = r A_phi, total"),
+    ("psi_reaction_Wb_per_rad", "Wb/rad", "psi of wall currents and permeable wall, without the mover's own"),
+    ("flux_density_r_T", "T", "radial flux density, total"),
+    ("flux_density_z_T", "T", "axial flux density, total"),
+    ("current_density_phi_A_per_m2", "A/m2", "azimuthal current density, right-handed about +z"),
+    ("heat_density_W_per_m3", "W/m3", "heat density"),
+];
+
+/// Name, unit and description of every array of a snapshot.
+pub fn snapshot_arrays() -> impl Iterator<Item = (&'static str, &'static str, &'static str)> {
+    ARRAYS.into_iter()
+}
+
 /// Unit and description of a snapshot's array.
 fn about(name: &str) -> (&'static str, &'static str) {
-    match name {
-        "psi_total_Wb_per_rad" => ("Wb/rad", "psi = r A_phi, total"),
-        "psi_reaction_Wb_per_rad" => ("Wb/rad", "psi of wall currents and permeable wall, without the mover's own"),
-        "flux_density_r_T" => ("T", "radial flux density, total"),
-        "flux_density_z_T" => ("T", "axial flux density, total"),
-        "current_density_phi_A_per_m2" => ("A/m2", "azimuthal current density, right-handed about +z"),
-        _ => ("W/m3", "heat density"),
-    }
+    ARRAYS.iter().find(|a| a.0 == name).map_or(("1", ""), |a| (a.1, a.2))
 }
 
 /// Writes `/snapshots`, and looks after each array whether the user wants to stop.
