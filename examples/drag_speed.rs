@@ -29,7 +29,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
     };
     let problem = Problem {
-        wall: Wall { extent: Extent::Endless, layers: vec![tube] },
+        wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![tube] },
         mover: Mover { parts: vec![magnet], mass_kg: None },
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),

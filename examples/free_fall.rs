@@ -31,7 +31,7 @@ fn main() -> Result<(), Box<dyn Error>> {
     // m dv/dt = -m g + F(z, v, history): F is the force of the wall's currents on the magnet.
     let fall = Free::let_go(tube_length + 30e-3, -30e-3, [tube_length, 0.0]);
     let problem = Problem {
-        wall: Wall { extent: Extent::Finite { length_m: tube_length }, layers: vec![tube] },
+        wall: Wall { slots: 0, extent: Extent::Finite { length_m: tube_length }, layers: vec![tube] },
         mover: Mover { parts: vec![magnet], mass_kg: Some(0.06) },
         travel: Travel::Free(fall),
         accuracy: Accuracy::default(),

@@ -5,7 +5,9 @@ use std::fmt::Write as _;
 use std::io::Write as _;
 
 use lenzbore_io::result::ResultHeader;
-use lenzbore_solver::outcome::{DragCurve, Figure, FrequencyResponse, LumpedModel, Outcome, StrokeResponse};
+use lenzbore_solver::outcome::{
+    Basis, DragCurve, Figure, FrequencyResponse, LumpedModel, Outcome, SlottedDrag, StrokeResponse,
+};
 
 /// Points of a curve shown on the terminal.
 const SHOWN_POINTS: usize = 12;
@@ -49,7 +51,7 @@ pub fn answer(header: &ResultHeader, outcome: &Outcome) -> String {
         let _ = writeln!(text, "{}", figure_line(figure));
     }
     if let Some(curve) = &outcome.curve {
-        curve_lines(&mut text, curve);
+        curve_lines(&mut text, curve, outcome.slotted.as_ref());
     }
     if let Some(response) = &outcome.frequency {
         frequency_lines(&mut text, response);
@@ -89,7 +91,10 @@ fn figure_line(figure: &Figure) -> String {
     });
     let unit = if figure.unit == "1" { "" } else { figure.unit };
     let share = percent(figure.band, figure.value);
-    format!("{:<32}{value:>16} {unit:<6} +/- {band:<10} {share}{place}", figure.name)
+    let model = if figure.basis == Basis::Approximation { "   approximation, with a model band" } else { "" };
+    // A long name takes of the blanks before its value.
+    let width = 48_usize.saturating_sub(figure.name.chars().count()).max(1);
+    format!("{}{value:>width$} {unit:<6} +/- {band:<10} {share}{place}{model}", figure.name)
 }
 
 fn percent(band: f64, value: f64) -> String {
@@ -128,14 +133,20 @@ fn whole(digits: f64) -> usize {
     digits as usize
 }
 
-fn curve_lines(text: &mut String, curve: &DragCurve) {
+fn curve_lines(text: &mut String, curve: &DragCurve, slotted: Option<&SlottedDrag>) {
     let count = curve.points.len();
     let stride = count.div_ceil(SHOWN_POINTS).max(1);
-    let _ = writeln!(text, "\n{:>16}  {:>16}  {:>10}", "speed m/s", "drag N", "band N");
+    let slots =
+        slotted.map_or_else(String::new, |s| format!("  {:>16}  {:>10}", format!("{} slots N", s.slots), "band N"));
+    let _ = writeln!(text, "\n{:>16}  {:>16}  {:>10}{slots}", "speed m/s", "drag N", "band N");
     for (k, point) in curve.points.iter().enumerate() {
         if k % stride == 0 || k + 1 == count {
             let (drag, _) = with_band(point.drag_newton, point.band_newton);
-            let _ = writeln!(text, "{:>16.6}  {drag:>16}  {:>10.1e}", point.speed_m_per_s, point.band_newton);
+            let with_slots = slotted.and_then(|s| s.points.get(k)).map_or_else(String::new, |p| {
+                format!("  {:>16}  {:>10.1e}", with_band(p.drag_newton, p.band_newton).0, p.band_newton)
+            });
+            let (speed, band) = (point.speed_m_per_s, point.band_newton);
+            let _ = writeln!(text, "{speed:>16.6}  {drag:>16}  {band:>10.1e}{with_slots}");
         }
     }
 }

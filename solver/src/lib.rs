@@ -21,6 +21,7 @@ pub mod outcome;
 pub mod probe;
 pub mod problem;
 pub mod rings;
+pub mod slots;
 pub mod sources;
 pub mod spread;
 pub mod step_field;
@@ -57,7 +58,7 @@ use problem::{Extent, Problem, Travel};
 /// # Errors
 /// See [`SolveFault`].
 pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    match &problem.travel {
+    let mut outcome = match &problem.travel {
         Travel::Steady { velocity_m_per_s } => {
             require_endless(problem)?;
             settled::steady(problem, *velocity_m_per_s, monitor)
@@ -67,7 +68,9 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
             march::march(problem, monitor)
         }
         Travel::Alternating(law) => harmonic::alternating(problem, law, monitor),
-    }
+    }?;
+    slots::add_to(&mut outcome, problem);
+    Ok(outcome)
 }
 
 /// Drag against speed with settled fields; a finite wall is taken as endless by the caller.
@@ -76,7 +79,9 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
 /// See [`SolveFault`].
 pub fn drag_curve(problem: &Problem, speeds_m_per_s: &[f64], monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
     require_endless(problem)?;
-    settled::curve(problem, speeds_m_per_s, monitor)
+    let mut outcome = settled::curve(problem, speeds_m_per_s, monitor)?;
+    slots::add_to(&mut outcome, problem);
+    Ok(outcome)
 }
 
 /// Stiffness and damping coefficient of strokes of vanishing amplitude about `centre_m`, m, in a finite wall, at each of `frequencies_hz`;

@@ -123,6 +123,27 @@ fn arrest_sleeve_has_a_curve() {
     assert!((settled / 0.2423 - 1.0).abs() < 1e-3, "{settled}");
 }
 
+/// Slots: the model's share of the field's own figure; everything else is as without them.
+#[test]
+fn slotted_brake_has_a_curve() {
+    let name = "slotted-brake";
+    let summary = solve("curve", name);
+    check_independent(name, &summary);
+    check(name, &summary, &[reg("slot_factor_low_speed", 0.36808), reg("damping_coefficient_zero_speed", 35.75743)]);
+    let share = figure(&summary, "slot_factor_low_speed");
+    let slotted = figure(&summary, "damping_coefficient_zero_speed_slotted");
+    assert!((slotted / (share * figure(&summary, "damping_coefficient_zero_speed")) - 1.0).abs() < 1e-12);
+    let basis = summary["figures"]["slot_factor_low_speed"]["basis"].as_str().unwrap();
+    assert_eq!(basis, "approximation");
+    let first = &summary["curve"][0];
+    assert!((first["slot_factor"].as_f64().unwrap() - share).abs() < 1e-4 * share);
+    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
+    assert!(
+        text.contains("slot_factor_low_speed                     0.3681        +/- 0.0039"),
+        "README.md shows the share"
+    );
+}
+
 #[test]
 fn latch_damper_runs() {
     let name = "latch-damper";

@@ -22,7 +22,7 @@ pub fn layer(name: &str, radii_m: (f64, f64), conductivity_s_per_m: f64, relativ
 /// An endless wall of these layers.
 #[must_use]
 pub fn endless(layers: Vec<Layer>) -> Wall {
-    Wall { extent: Extent::Endless, layers }
+    Wall { slots: 0, extent: Extent::Endless, layers }
 }
 
 /// An endless wall of one layer.
@@ -35,7 +35,7 @@ pub fn endless_tube(radii_m: (f64, f64), conductivity_s_per_m: f64, relative_per
 #[must_use]
 pub fn finite_tube(radii_m: (f64, f64), length_m: f64, conductivity_s_per_m: f64) -> Wall {
     let tube = Layer { to_m: length_m, ..layer("tube", radii_m, conductivity_s_per_m, 1.0) };
-    Wall { extent: Extent::Finite { length_m }, layers: vec![tube] }
+    Wall { slots: 0, extent: Extent::Finite { length_m }, layers: vec![tube] }
 }
 
 /// A part with its centre at `centre_m`; its outline is that of its currents.

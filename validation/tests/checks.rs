@@ -43,6 +43,7 @@ checks! {
     val_source_solenoid: "source-solenoid",
     val_source_force: "source-force",
     val_source_loop: "source-loop",
+    val_slots: "slots",
     val_grid_convergence: "grid-convergence",
     val_step_rod: "step-rod",
     val_step_tube: "step-tube",

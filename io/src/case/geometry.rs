@@ -85,6 +85,7 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
     let travel = |words: &[&str]| parts.travel.map_or_else(root, |s| s.place_of_any(words));
     match fault {
         ProblemFault::Impossible { subject, quantity, .. } => (of_number(*subject, *quantity, parts), None),
+        ProblemFault::SlotsUnmodelled { .. } => (parts.wall.section.place_of("slots"), None),
         ProblemFault::LayerInsideOut { layer: l, .. } => {
             (layer(l.index, &["inner_diameter", "thickness", "size"]), None)
         }

@@ -24,6 +24,9 @@ pub(super) struct WallReading<'t> {
     pub complete: bool,
 }
 
+/// Most slots round a wall.
+const MOST_SLOTS: u32 = 1000;
+
 const EXAMPLE: &str = "[[wall.layer]] with name, material and size = \"28 x 1.5 mm\"";
 
 /// Reads the wall; `None` where there is none.
@@ -35,6 +38,7 @@ pub(super) fn read_wall<'t>(reader: &mut Reader, root: &Section<'t>) -> Option<W
     reader.check_words(&section);
     let extent = extent(reader, &section);
     let warmth = temperature(reader, &section, "temperature");
+    let slots = reader.count(&section, "slots", 1, MOST_SLOTS).unwrap_or(0);
     let sections = reader.tables(&section, "layer", EXAMPLE);
     if !section.table.has("layer") {
         reader.missing(&section, "layer", "a wall has at least one layer", EXAMPLE);
@@ -53,7 +57,7 @@ pub(super) fn read_wall<'t>(reader: &mut Reader, root: &Section<'t>) -> Option<W
         }
     }
     let complete = reader.faults.len() == complete_before && !layers.is_empty();
-    let wall = Wall { extent: extent.unwrap_or(Extent::Endless), layers }.with_faces_joined();
+    let wall = Wall { slots, extent: extent.unwrap_or(Extent::Endless), layers }.with_faces_joined();
     Some(WallReading { section, wall, layers: kept, extent, complete })
 }
 

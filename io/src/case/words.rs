@@ -39,7 +39,12 @@ pub const TABLES: [TableWords; 15] = [
         words: &["document", "revision", "purpose", "prepared", "checked"],
         lists: &[],
     },
-    TableWords { path: "wall", label: "[wall]", words: &["length", "temperature", "layer"], lists: &["layer"] },
+    TableWords {
+        path: "wall",
+        label: "[wall]",
+        words: &["length", "temperature", "slots", "layer"],
+        lists: &["layer"],
+    },
     TableWords {
         path: "wall.layer",
         label: "[[wall.layer]]",

@@ -1,6 +1,6 @@
 //! Drag against speed, with the band, the greatest drag and the law of low speed.
 
-use lenzbore_solver::outcome::{DragPoint, Figure, Outcome};
+use lenzbore_solver::outcome::{DragPoint, Figure, Outcome, SlottedPoint};
 
 use super::axes::{Axis, Frame, frame, grid, linear, logarithmic, room_below, room_left, tight};
 use super::key::{Swatch, key, title};
@@ -25,7 +25,8 @@ pub fn curve(heading: &str, outcome: &Outcome) -> Option<Picture> {
     let speed_unit = Shown::speed(last.speed_m_per_s);
     let mut svg = Svg::new(COLUMN);
     let top = title(&mut svg, COLUMN, heading, "Drag against speed, settled fields, endless wall");
-    let y = drag_axis(points, &drag_unit, top, first.speed_m_per_s > 0.0);
+    let slotted = outcome.slotted.as_ref().map_or(&[][..], |s| &s.points);
+    let y = drag_axis((points, slotted), &drag_unit, top, first.speed_m_per_s > 0.0);
     let area =
         Frame { edge: MARGIN, left: MARGIN + room_left(&y), right: COLUMN - MARGIN - 8.0, top, bottom: top + HEIGHT };
     let x = speed_axis(first.speed_m_per_s, last.speed_m_per_s, &speed_unit, &area);
@@ -34,6 +35,7 @@ pub fn curve(heading: &str, outcome: &Outcome) -> Option<Picture> {
     grid(&mut svg, &plot.area, &plot.x, &plot.y);
     plot.law(&mut svg, outcome, &mut entries);
     plot.drag(&mut svg, points, &mut entries);
+    plot.slotted(&mut svg, slotted, &mut entries);
     plot.greatest(&mut svg, outcome, &mut entries);
     frame(&mut svg, &plot.area, &plot.x, &plot.y);
     let below = plot.area.bottom + room_below() + 6.0;
@@ -62,8 +64,16 @@ fn speed_axis(low: f64, high: f64, unit: &Shown, area: &Frame) -> Axis {
 }
 
 /// Logarithmic where speed and drag both run over a wide range.
-fn drag_axis(points: &[DragPoint], unit: &Shown, top: f64, speeds_positive: bool) -> Axis {
-    let values = || points.iter().map(|p| p.drag_newton * unit.factor);
+fn drag_axis(
+    (points, slotted): (&[DragPoint], &[SlottedPoint]),
+    unit: &Shown,
+    top: f64,
+    speeds_positive: bool,
+) -> Axis {
+    let values = || {
+        let all = points.iter().map(|p| p.drag_newton).chain(slotted.iter().map(|p| p.drag_newton - p.band_newton));
+        all.map(|drag| drag * unit.factor)
+    };
     let (low, high) = (values().fold(f64::INFINITY, f64::min), values().fold(0.0, f64::max));
     let speeds = || points.iter().map(|p| p.speed_m_per_s);
     let wide = speeds_positive && speeds().fold(0.0, f64::max) / speeds().fold(f64::INFINITY, f64::min) >= WIDE;
@@ -119,6 +129,28 @@ impl Plot {
         let line = if visible { Swatch::Ribbon(CURVE) } else { Swatch::Line(CURVE) };
         let dots = if points.len() <= 80 { " (dots: computed speeds)" } else { "" };
         entries.insert(0, (line, format!("drag{dots}; {}", banded.remark_on_each(&self.y.scale))));
+    }
+
+    /// The drag with slots, between the edges of its model band.
+    fn slotted(&self, svg: &mut Svg, points: &[SlottedPoint], entries: &mut Vec<(Swatch, String)>) {
+        if points.is_empty() {
+            return;
+        }
+        let middle = Stroke::dashed(ORANGE, CURVE.width, "20 8");
+        let edge = Stroke::full(ORANGE, 1.6);
+        for (part, stroke) in [(-1.0, edge), (1.0, edge), (0.0, middle)] {
+            let at = |p: &SlottedPoint| {
+                let drag = (p.drag_newton + part * p.band_newton) * self.drag_unit.factor;
+                let place = (p.speed_m_per_s * self.speed_unit.factor, drag);
+                holds(&self.y.scale, place.1).then(|| (self.x.scale.at(place.0), self.y.scale.at(place.1)))
+            };
+            let line: Vec<(f64, f64)> = points.iter().filter_map(at).collect();
+            svg.path(&polyline(&line), stroke);
+        }
+        entries.push((
+            Swatch::Line(middle),
+            "with slots: an approximation, between the edges of its model band".to_owned(),
+        ));
     }
 
     /// Rings the greatest drag and drops a line to its speed.

@@ -22,7 +22,7 @@ fn outcome() -> LadderOutcome {
     let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 8e-3, length_m: 16e-3, remanence_tesla: 1.2 };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 8e-3, length_m: 16e-3 };
     let problem = Problem {
-        wall: Wall { extent: Extent::Endless, layers: vec![layer] },
+        wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
         mover: Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None },
         travel: Travel::Steady { velocity_m_per_s: 4.0 },
         accuracy: Accuracy::default(),

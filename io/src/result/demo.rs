@@ -51,6 +51,7 @@ pub(crate) fn header(title: &str) -> ResultHeader {
 pub(crate) fn free() -> (Problem, Outcome) {
     let problem = Problem {
         wall: Wall {
+            slots: 0,
             extent: Extent::Finite { length_m: 0.12 },
             layers: vec![
                 layer("liner", 12.5e-3, 13.1e-3, 0.12, 35.0e6),
@@ -102,7 +103,8 @@ pub(crate) fn drag(speed: f64) -> f64 {
 /// A point dipole in an endless wall at a steady speed.
 pub(crate) fn steady() -> (Problem, Outcome) {
     let (mut problem, _) = free();
-    problem.wall = Wall { extent: Extent::Endless, layers: vec![layer("wall", 10.5e-3, 12.5e-3, 0.0, 58.0e6)] };
+    problem.wall =
+        Wall { slots: 0, extent: Extent::Endless, layers: vec![layer("wall", 10.5e-3, 12.5e-3, 0.0, 58.0e6)] };
     problem.mover.parts = vec![Part {
         name: "dipole".into(),
         centre_m: 0.0,
@@ -226,6 +228,7 @@ pub(crate) fn outcome(figures: Vec<Figure>, stop: Stop, trace: Trace, curve: Opt
         sweeps: Sweeps::default(),
         stations: Vec::new(),
         thermal: None,
+        slotted: None,
         fields: None,
     }
 }

@@ -44,7 +44,8 @@ pub fn write_fields(
 ) -> Result<(), IoFault> {
     vet(fields)?;
     let trace = trace_columns(&outcome.trace)?;
-    let curve = outcome.curve.as_ref().map(curve_columns).transpose()?.unwrap_or_default();
+    let curve =
+        outcome.curve.as_ref().map(|c| curve_columns(c, outcome.slotted.as_ref())).transpose()?.unwrap_or_default();
     let blame = |error| IoFault::from_field_file(path, error);
     let file = File::create(path).map_err(blame)?;
     describe(&file, header).map_err(blame)?;

@@ -2,7 +2,7 @@
 
 use std::borrow::Cow;
 
-use lenzbore_solver::outcome::{DragCurve, DragPoint, Trace};
+use lenzbore_solver::outcome::{DragCurve, DragPoint, SlottedDrag, SlottedPoint, Trace};
 
 use super::fault::IoFault;
 use super::finite::all_finite;
@@ -38,13 +38,13 @@ pub fn trace_columns(trace: &Trace) -> Result<Vec<Column<'_>>, IoFault> {
     vetted(columns)
 }
 
-/// The columns of a drag-speed curve.
+/// The columns of a drag-speed curve; with slots also what they leave of it.
 ///
 /// # Errors
 /// [`IoFault::NotFinite`].
-pub fn curve_columns(curve: &DragCurve) -> Result<Vec<Column<'_>>, IoFault> {
+pub fn curve_columns<'a>(curve: &'a DragCurve, slotted: Option<&'a SlottedDrag>) -> Result<Vec<Column<'a>>, IoFault> {
     let of = |pick: fn(&DragPoint) -> f64| Cow::Owned(curve.points.iter().map(pick).collect::<Vec<_>>());
-    let columns = vec![
+    let mut columns = vec![
         column("speed_m_per_s", "m/s", "speed, a magnitude", of(|p| p.speed_m_per_s)),
         column("drag_N", "N", "drag with settled fields", of(|p| p.drag_newton)),
         column("drag_band_N", "N", "half-width of the drag's numerical band", of(|p| p.band_newton)),
@@ -57,7 +57,18 @@ pub fn curve_columns(curve: &DragCurve) -> Result<Vec<Column<'_>>, IoFault> {
             of(|p| p.current_density_band),
         ),
     ];
+    columns.extend(slotted.into_iter().flat_map(slotted_columns));
     vetted(columns)
+}
+
+fn slotted_columns(slotted: &SlottedDrag) -> [Column<'_>; 4] {
+    let of = |pick: fn(&SlottedPoint) -> f64| Cow::Owned(slotted.points.iter().map(pick).collect::<Vec<_>>());
+    [
+        column("slot_factor", "1", "share of the drag that the slots leave, an approximation", of(|p| p.share.value)),
+        column("slot_factor_band", "1", "half-width of the share's model band", of(|p| p.share.band)),
+        column("drag_slotted_N", "N", "drag with slots, an approximation", of(|p| p.drag_newton)),
+        column("drag_slotted_band_N", "N", "half-width of its band, numerical and model", of(|p| p.band_newton)),
+    ]
 }
 
 /// The table as text: a header line, then shortest decimals that read back to the same numbers.
@@ -114,7 +125,7 @@ mod tests {
         let text = csv(&trace_columns(&trace).unwrap());
         assert!(text.starts_with("time_s,position_m,speed_m_per_s,drag_N,drag_band_N,velocity_m_per_s,heat_W\n"));
         let curve = demo::curve().1.curve.unwrap();
-        let text = csv(&curve_columns(&curve).unwrap());
+        let text = csv(&curve_columns(&curve, None).unwrap());
         assert!(text.starts_with(
             "speed_m_per_s,drag_N,drag_band_N,heat_W,current_density_peak_A_per_m2,current_density_peak_band_A_per_m2\n"
         ));

@@ -1,7 +1,7 @@
 //! `summary.json`: the whole outcome but its fields and its long series, as one object. `--json` prints the same.
 
 use lenzbore_solver::outcome::{
-    Accuracies, DragCurve, Figure, Forces, GridReport, Ledger, Location, Outcome, Regime, WorkCounters,
+    Accuracies, DragCurve, Figure, Forces, GridReport, Ledger, Location, Outcome, Regime, SlottedDrag, WorkCounters,
 };
 use lenzbore_solver::spread::{FigureSpread, Spread};
 use serde_json::{Map, Value, json};
@@ -41,7 +41,7 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     put("work", work(&outcome.counters));
     put("stop", json!(outcome.stop.word()));
     if let Some(drag) = &outcome.curve {
-        put("curve", curve(drag)?);
+        put("curve", curve(drag, outcome.slotted.as_ref())?);
     }
     if let Some(response) = &outcome.frequency {
         put("frequency", frequency_object(response)?);
@@ -176,8 +176,8 @@ fn work(counters: &WorkCounters) -> Value {
 }
 
 /// One object a speed, keys as the columns of `curve.csv`.
-fn curve(curve: &DragCurve) -> Result<Value, IoFault> {
-    let columns = curve_columns(curve)?;
+fn curve(curve: &DragCurve, slotted: Option<&SlottedDrag>) -> Result<Value, IoFault> {
+    let columns = curve_columns(curve, slotted)?;
     let point = |row: usize| -> Result<Value, IoFault> {
         let entries = columns.iter().map(|c| Ok((c.name.to_owned(), number(c.name, c.values[row])?)));
         Ok(Value::Object(entries.collect::<Result<Map<_, _>, IoFault>>()?))

@@ -136,7 +136,7 @@ fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
         sheaf.put(names::TRACE, csv(&trace_columns(&outcome.trace)?).as_bytes())?;
     }
     if let Some(curve) = &outcome.curve {
-        sheaf.put(names::CURVE, csv(&curve_columns(curve)?).as_bytes())?;
+        sheaf.put(names::CURVE, csv(&curve_columns(curve, outcome.slotted.as_ref())?).as_bytes())?;
     }
     if let Some(response) = &outcome.frequency {
         sheaf.put(names::FREQUENCY, csv(&frequency_columns(response)?).as_bytes())?;

@@ -75,7 +75,7 @@ pub(crate) fn traverse(length_m: f64, speed_m_per_s: f64) -> Problem {
 fn finite(length_m: f64, travel: Travel) -> Problem {
     let layer = layer(11.0e-3, 13.0e-3, length_m, 1.0);
     Problem {
-        wall: Wall { extent: Extent::Finite { length_m }, layers: vec![layer] },
+        wall: Wall { slots: 0, extent: Extent::Finite { length_m }, layers: vec![layer] },
         mover: Mover { parts: vec![part(magnet(9.0e-3, 12.0e-3, 1.25))], mass_kg: Some(0.060) },
         travel,
         accuracy: Accuracy::default(),
@@ -88,7 +88,7 @@ fn finite(length_m: f64, travel: Travel) -> Problem {
 fn endless(part: Part, inner_radius_m: f64, outer_radius_m: f64, relative_permeability: f64) -> Problem {
     let layer = layer(inner_radius_m, outer_radius_m, 0.0, relative_permeability);
     Problem {
-        wall: Wall { extent: Extent::Endless, layers: vec![layer] },
+        wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
         mover: Mover { parts: vec![part], mass_kg: None },
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),

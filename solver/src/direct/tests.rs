@@ -45,7 +45,7 @@ fn operators(layers: Vec<Layer>, r: NodeLine, z: NodeLine) -> Operators {
         .iter()
         .map(|l| Rectangle { r_from_m: l.inner_radius_m, r_to_m: l.outer_radius_m, z_from_m: l.from_m, z_to_m: l.to_m })
         .collect();
-    let wall = Wall { extent: Extent::Endless, layers };
+    let wall = Wall { slots: 0, extent: Extent::Endless, layers };
     let materials = Materials::new(&wall, &Regions::new(&grid, &rectangles));
     Operators::new(grid, materials)
 }

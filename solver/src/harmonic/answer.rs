@@ -84,6 +84,7 @@ pub(super) fn answer(
         sweeps: Sweeps::default(),
         stations: Vec::new(),
         thermal: None,
+        slotted: None,
         figures,
         forces: None,
         ledger,

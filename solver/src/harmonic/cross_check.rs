@@ -46,7 +46,7 @@ fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, turns: f64, centre_mm: f64
 
 fn problem(extent: Extent, layers: Vec<Layer>, parts: Vec<Part>, law: Alternating) -> Problem {
     Problem {
-        wall: Wall { extent, layers },
+        wall: Wall { slots: 0, extent, layers },
         mover: Mover { parts, mass_kg: None },
         travel: Travel::Alternating(law),
         accuracy: Accuracy::default(),

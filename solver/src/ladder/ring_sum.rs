@@ -26,7 +26,7 @@ use crate::problem::{Problem, Wall};
 /// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 5e-3, length_m: 10e-3 };
 /// # let part = Part { name: "M".into(), centre_m: 0.0, source, outline };
 /// # let problem = Problem {
-/// #     wall: Wall { extent: Extent::Endless, layers: vec![layer] },
+/// #     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
 /// #     mover: Mover { parts: vec![part], mass_kg: None },
 /// #     travel: Travel::Steady { velocity_m_per_s: 1.0 },
 /// #     accuracy: Accuracy::default(), snapshots: SnapshotPlan::None, stations: Vec::new(),

@@ -37,6 +37,7 @@ pub(super) fn problem(a: f64, b: f64, length: Option<f64>, parts: Vec<Part>, tra
     };
     Problem {
         wall: Wall {
+            slots: 0,
             extent: length.map_or(Extent::Endless, |length_m| Extent::Finite { length_m }),
             layers: vec![layer],
         },

@@ -280,6 +280,7 @@ impl<'p> Journey<'p> {
             sweeps: Sweeps::default(),
             stations: Vec::new(),
             thermal: None,
+            slotted: None,
             forces: peak_time.map(|t| routes.forces(t)),
             ledger: Some(ledger),
             fields: records.levels.last_mut().and_then(|l| l.fields.clone()),

@@ -123,6 +123,7 @@ fn outcome(problem: &Problem, placement: &Placement, positions: &[f64], levels: 
         frequency: None,
         strokes: None,
         thermal: None,
+        slotted: None,
         sweeps: Sweeps { positions: points, ..Sweeps::default() },
         stations: Vec::new(),
         forces: None,

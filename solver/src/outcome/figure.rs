@@ -11,6 +11,8 @@ pub enum Basis {
     ClosedForm,
     /// One-sided bound.
     Bound,
+    /// A simplified model on top of the field solution; the band is a model band.
+    Approximation,
 }
 
 impl Basis {
@@ -22,6 +24,7 @@ impl Basis {
             Self::FinestGrid => "finest grid",
             Self::ClosedForm => "closed form",
             Self::Bound => "bound",
+            Self::Approximation => "approximation",
         }
     }
 }

@@ -4,6 +4,7 @@ mod fields;
 mod figure;
 mod frequency;
 mod report;
+mod slots;
 mod station;
 mod stroke;
 mod sweep;
@@ -15,6 +16,7 @@ pub use frequency::{CurrentSample, FrequencyPoint, FrequencyResponse, Measured, 
 pub use report::{
     Accuracies, Caution, DragCurve, DragPoint, Forces, GridReport, Ledger, Outcome, Regime, Stop, Trace, WorkCounters,
 };
+pub use slots::{SlotShare, SlottedDrag, SlottedPoint};
 pub use station::{StationSeries, StationTrace};
 pub use stroke::{LumpedModel, LumpedTerm, SmallStroke, StrokeResponse};
 pub use sweep::{AtPosition, AtStroke, AtTemperature, Sweeps};

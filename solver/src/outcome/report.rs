@@ -1,6 +1,6 @@
 //! Everything around the figures.
 
-use super::{Fields, Figure, FrequencyResponse, StationTrace, StrokeResponse, Sweeps, Thermal};
+use super::{Fields, Figure, FrequencyResponse, SlottedDrag, StationTrace, StrokeResponse, Sweeps, Thermal};
 
 /// Drag by three routes at one instant, N, each with the same meaning: positive opposes the motion.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -210,6 +210,8 @@ pub struct Outcome {
     pub stations: Vec<StationTrace>,
     /// How warm the wall gets, where that is known.
     pub thermal: Option<Thermal>,
+    /// What full-length slots leave of the drag, where the wall has them.
+    pub slotted: Option<SlottedDrag>,
     /// Fields, where they were asked.
     pub fields: Option<Fields>,
 }

@@ -54,6 +54,12 @@ pub enum ProblemFault {
         /// The value found, SI.
         value: f64,
     },
+    /// Slots where their effect is not modelled.
+    #[error("slots in {what} are not modelled yet")]
+    SlotsUnmodelled {
+        /// In what: a permeable wall, a rod, a wall with alternating current.
+        what: &'static str,
+    },
     /// A layer whose inner radius is not below its outer one.
     #[error("layer {layer} has no thickness: inner diameter {} and outer diameter {}",
         mm(2.0 * inner_radius_m), mm(2.0 * outer_radius_m))]
@@ -299,6 +305,7 @@ impl ProblemFault {
             Self::LayerBeyondWall { .. } => "'from' and 'to' count from the wall's lower end",
             Self::PartsOverlap { .. } => "parts may touch: move one ('at'), or place them by 'stack'",
             Self::InertWall => "give a layer a conductivity",
+            Self::SlotsUnmodelled { .. } => "take 'slots' out: the figures are then those of a wall without slots",
             Self::NoTime { .. } => "leave 'time_limit' out for 60 s, or give a longer one",
             Self::OutOfReach { .. } => {
                 "put 'until' where it travels to, or change 'push', 'entry_velocity' or 'tilt_from_vertical'"

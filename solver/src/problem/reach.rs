@@ -111,7 +111,7 @@ mod tests {
         let mut free = Free::let_go(release, until, [0.3, 0.0]);
         change(&mut free);
         Problem {
-            wall: Wall { extent: Extent::Finite { length_m: 0.3 }, layers: vec![layer] },
+            wall: Wall { slots: 0, extent: Extent::Finite { length_m: 0.3 }, layers: vec![layer] },
             mover: Mover {
                 parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
                 mass_kg: Some(0.1),

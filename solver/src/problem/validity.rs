@@ -22,6 +22,7 @@ impl Problem {
     pub fn faults(&self) -> Vec<ProblemFault> {
         let mut faults = Vec::new();
         wall_faults(&self.wall, &mut faults);
+        slot_faults(self, &mut faults);
         mover_faults(&self.mover, &mut faults);
         clearance_faults(&self.wall, &self.mover, &mut faults);
         travel_faults(self, &mut faults);
@@ -71,6 +72,23 @@ fn wall_faults(wall: &Wall, faults: &mut Vec<ProblemFault>) {
     let inert = |l: &Layer| l.conductivity_s_per_m.abs() <= 0.0 && (l.relative_permeability - 1.0).abs() <= 0.0;
     if wall.layers.iter().all(inert) {
         faults.push(ProblemFault::InertWall);
+    }
+}
+
+/// Slots are a factor on the drag of a wall that is a tube of permeability 1.
+fn slot_faults(problem: &Problem, faults: &mut Vec<ProblemFault>) {
+    if problem.wall.slots == 0 {
+        return;
+    }
+    let mut unmodelled = |what| faults.push(ProblemFault::SlotsUnmodelled { what });
+    if problem.wall.is_permeable() {
+        unmodelled("a permeable wall");
+    }
+    if problem.wall.inner_radius_m() <= 0.0 {
+        unmodelled("a rod");
+    }
+    if matches!(problem.travel, Travel::Alternating(_)) {
+        unmodelled("a wall around alternating current");
     }
 }
 

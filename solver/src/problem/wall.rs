@@ -44,6 +44,9 @@ impl Layer {
 pub struct Wall {
     /// Axial extent.
     pub extent: Extent,
+    /// Number of narrow slots along the whole wall, evenly round it; 0 for an unbroken wall. The field has none: they enter as a factor on
+    /// its drag, see [`crate::slots`].
+    pub slots: usize,
     /// One or more layers in any order; they may touch or leave gaps, never overlap.
     pub layers: Vec<Layer>,
 }

@@ -66,6 +66,7 @@ fn curve_on(problem: &Problem, speeds: &[f64], levels: &mut Levels<'_>) -> Resul
         sweeps: Sweeps::default(),
         stations: Vec::new(),
         thermal: None,
+        slotted: None,
         figures,
         forces,
         ledger: None,

@@ -86,7 +86,7 @@ mod tests {
             conductivity_s_per_m: 58e6,
             relative_permeability: 1.0,
         };
-        let wall = Wall { extent: Extent::Endless, layers: vec![layer] };
+        let wall = Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] };
         let at = |reynolds: f64| reynolds / reynolds_per_speed(&wall);
         assert_eq!(share(&wall, &[at(10.0)]).eliminated, 0);
         let fast = share(&wall, &[-at(1000.0)]);

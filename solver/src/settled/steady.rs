@@ -63,6 +63,7 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
         sweeps: Sweeps::default(),
         stations: Vec::new(),
         thermal: None,
+        slotted: None,
         figures,
         forces,
         ledger,

@@ -23,13 +23,13 @@ pub(crate) fn layer(inner_mm: f64, outer_mm: f64, sigma_ms: f64, mu_r: f64) -> L
 
 /// The wall without thick or thin ends of it.
 pub(crate) fn endless(layers: Vec<Layer>) -> Wall {
-    Wall { extent: Extent::Endless, layers }
+    Wall { slots: 0, extent: Extent::Endless, layers }
 }
 
 /// The same layers from z = 0 to `length_m`.
 pub(crate) fn finite(length_m: f64, mut layers: Vec<Layer>) -> Wall {
     layers.iter_mut().for_each(|l| l.to_m = length_m);
-    Wall { extent: Extent::Finite { length_m }, layers }
+    Wall { slots: 0, extent: Extent::Finite { length_m }, layers }
 }
 
 /// A part without coating at `centre_mm`.

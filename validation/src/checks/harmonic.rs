@@ -179,7 +179,7 @@ fn stepped_shell(conductivity_s_per_m: f64) -> Wall {
         layers.push(Layer { name: format!("lower {k}"), from_m: outer - span.1, to_m: outer - span.0, ..ring.clone() });
         layers.push(Layer { from_m: outer + span.0, to_m: outer + span.1, ..ring });
     }
-    Wall { extent: Extent::Finite { length_m: 2.0 * outer }, layers }.with_faces_joined()
+    Wall { slots: 0, extent: Extent::Finite { length_m: 2.0 * outer }, layers }.with_faces_joined()
 }
 
 fn sphere(monitor: &dyn Monitor) -> Result<Verdict, Error> {

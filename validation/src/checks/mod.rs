@@ -15,6 +15,7 @@ mod field_stroke;
 mod grid_index;
 mod harmonic;
 mod rings;
+mod slots;
 mod sources;
 mod sphere;
 mod step;
@@ -86,6 +87,7 @@ pub fn all() -> Vec<Check> {
         sources::CHECKS,
         endless::CHECKS,
         rings::CHECKS,
+        slots::CHECKS,
         grid_index::CHECKS,
         step::CHECKS,
         sphere::CHECKS,

@@ -20,6 +20,7 @@ pub mod nagaoka;
 pub mod passage;
 pub mod permeable_tube;
 pub mod rod_alternating;
+pub mod slots;
 pub mod solenoid;
 pub mod sphere_alternating;
 pub mod stacks;
