@@ -1,6 +1,6 @@
 //! The columns of every table that a result holds, read off the writers themselves.
 
-use lenzbore_solver::outcome::{DragCurve, FrequencyResponse, Measured, StrokeResponse, Trace};
+use lenzbore_solver::outcome::{DragCurve, FrequencyResponse, Measured, SlotShare, SlottedDrag, StrokeResponse, Trace};
 
 use crate::result::{
     Column, IoFault, across_columns, curve_columns, frequency_columns, names, snapshot_arrays, stroke_columns,
@@ -19,10 +19,11 @@ pub(super) struct ColumnMeaning {
 pub(super) fn column_meanings() -> Vec<ColumnMeaning> {
     let coils = no_frequency();
     let (trace, curve) = (Trace::default(), DragCurve::default());
+    let slotted = SlottedDrag { slots: 1, low_speed: SlotShare { value: 1.0, band: 0.0 }, points: Vec::new() };
     let strokes = StrokeResponse { points: Vec::new(), lumped: Vec::new() };
     let tables = [
         (names::TRACE, trace_columns(&trace)),
-        (names::CURVE, curve_columns(&curve)),
+        (names::CURVE, curve_columns(&curve, Some(&slotted))),
         (names::FREQUENCY, frequency_columns(&coils)),
         (names::ACROSS, across_columns(&coils)),
         (names::STROKES, stroke_columns(&strokes)),

@@ -28,6 +28,8 @@ const fn figure(
 
 const TRADE: &str = "common practice";
 const OWN: &str = "defined here";
+const SLOTS: &str =
+    "defined here; its factor after R. L. Russell and K. H. Norsworthy, Proceedings of the IEE 105A, 163-175 (1958)";
 const GIVEN: &str = "`run`, laws traverse and table";
 const ALL_TRAVEL: &str = "`run`, laws traverse, table, free and sine";
 const COILS: &str = "`run`, law alternating";
@@ -62,6 +64,41 @@ pub const FIGURES: &[FigureMeaning] = &[
         "`curve`",
         "slope of drag over speed at low speed: drag = coefficient x speed there",
         TRADE,
+    ),
+    figure(
+        "slot_factor_low_speed",
+        "1",
+        "`run` and `curve`, walls with slots",
+        "share of the drag at low speed that full-length slots leave in an endless wall: an approximation with a model band",
+        SLOTS,
+    ),
+    figure(
+        "slot_factor",
+        "1",
+        "`run`, law steady, walls with slots",
+        "share of the drag that full-length slots leave at this speed: an approximation with a model band",
+        SLOTS,
+    ),
+    figure(
+        "drag_slotted",
+        "N",
+        "`run`, law steady, walls with slots",
+        "drag with slots: drag x slot_factor, an approximation with a model band",
+        SLOTS,
+    ),
+    figure(
+        "damping_coefficient_slotted",
+        "N s/m",
+        "`run`, law steady, walls with slots",
+        "drag with slots over speed, an approximation with a model band",
+        SLOTS,
+    ),
+    figure(
+        "damping_coefficient_zero_speed_slotted",
+        "N s/m",
+        "`curve`, walls with slots",
+        "damping_coefficient_zero_speed x slot_factor_low_speed, an approximation with a model band",
+        SLOTS,
     ),
     figure(
         "critical_speed",

@@ -18,7 +18,10 @@ pub const KEYS: &[(&str, &str)] = &[
         "half-width of the numerical uncertainty alone, meant to hold the truth of the equations in 95 of 100 cases; inputs and what the model leaves out are not in it",
     ),
     ("input_spread", "what [tolerance] makes of the figure, as half-widths of 95 %"),
-    ("basis", "where a value comes from: extrapolated over the grids, finest grid, closed form or bound"),
+    (
+        "basis",
+        "where a value comes from: extrapolated over the grids, finest grid, closed form, bound, or approximation (its band is a model band)",
+    ),
     ("where", "place and instant of a figure"),
     ("r_m", "radius, m"),
     ("z_m", "height over the wall's lower end (endless wall: over the reference point), m"),

@@ -1,7 +1,7 @@
 //! Slotted walls at low speed: the model's share and band against the strip solved in space.
 
 use lenzbore_solver::monitor::Monitor;
-use lenzbore_solver::problem::{Accuracy, Problem, SnapshotPlan, Travel};
+use lenzbore_solver::problem::Travel;
 use lenzbore_solver::slots::slot_shares;
 
 use super::{Banded, Check, Limits, Verdict};
@@ -31,13 +31,8 @@ fn against(table: &[(u32, f64, f64)]) -> Verdict {
     let mut verdict = Verdict::default();
     for &(slots, thickness, expected) in table {
         let half = 0.5 * RADIUS_M * if thickness > 0.0 { thickness } else { THIN };
-        let problem = Problem {
-            wall: cases::endless_tube((RADIUS_M - half, RADIUS_M + half), 35.0e6, 1.0),
-            mover: cases::dipole(1.0),
-            travel: Travel::Steady { velocity_m_per_s: 1.0 },
-            accuracy: Accuracy::default(),
-            snapshots: SnapshotPlan::None,
-        };
+        let wall = cases::endless_tube((RADIUS_M - half, RADIUS_M + half), 35.0e6, 1.0);
+        let problem = cases::question(wall, cases::dipole(1.0), Travel::Steady { velocity_m_per_s: 1.0 });
         let count = usize::try_from(slots).unwrap_or(0);
         for share in slot_shares(&problem, count, &[0.0]) {
             let what = format!("{slots} slots, thickness / mean radius {thickness}");

@@ -27,6 +27,14 @@ pub(super) const WALL: CaseTable = CaseTable {
             "20 degC",
             "temperature = \"60 degC\"",
         ),
+        word(
+            "slots",
+            Form::Count { least: 1, most: 1000 },
+            "number of narrow slots along the whole wall, evenly round it; what they leave of the drag is given beside the field \
+             solution, which has none, as an approximation with a model band",
+            "none",
+            "slots = 6",
+        ),
         word("layer", Form::Tables, "one or more layers; they may touch or leave gaps, never overlap", "needed", ""),
     ],
 };
