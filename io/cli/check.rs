@@ -54,6 +54,7 @@ fn report(case: &ResolvedCase, plans: &[(&str, Problem, Forecast)]) -> String {
     for (name, problem, cost) in plans {
         plan(&mut text, name, problem, cost);
     }
+    swept(&mut text, case);
     for (heading, list) in [("cautions", &case.cautions), ("not modelled", &case.not_modelled)] {
         if !list.is_empty() {
             let _ = writeln!(text, "\n{heading}:");
@@ -63,6 +64,36 @@ fn report(case: &ResolvedCase, plans: &[(&str, Problem, Forecast)]) -> String {
         }
     }
     text
+}
+
+/// What the curve sweeps beside speed.
+fn swept(text: &mut String, case: &ResolvedCase) {
+    let Some(plan) = &case.curve else { return };
+    let several = |n: usize, what: &str| format!("{n} {what}{}", if n == 1 { "" } else { "s" });
+    let mut lines = Vec::new();
+    if !plan.temperatures_k.is_empty() {
+        lines.push(format!("drag against speed at {}", several(plan.temperatures_k.len(), "temperature")));
+    }
+    if !plan.positions_m.is_empty() {
+        lines.push(format!(
+            "damping coefficient at {}, wall with its ends",
+            several(plan.positions_m.len(), "position")
+        ));
+    }
+    if let Some(strokes) = &plan.strokes {
+        let (f, a) = (strokes.frequencies_hz.len(), strokes.amplitudes_m.len());
+        lines.push(format!(
+            "settled strokes: {} and {}",
+            several(f, "frequency").replace("ys", "ies"),
+            several(a, "amplitude")
+        ));
+    }
+    if !lines.is_empty() {
+        let _ = writeln!(text, "\nlenzbore curve, swept beside:");
+        lines.iter().for_each(|line| {
+            let _ = writeln!(text, "  {line}");
+        });
+    }
 }
 
 fn parts(text: &mut String, problem: &Problem) {

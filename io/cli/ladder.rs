@@ -48,7 +48,8 @@ fn answer(input: &CaseInput, case: &ResolvedCase, curve: bool, terminal: &Termin
     let curve = asks_curve(case, curve);
     let Some(problem) = asked(case, curve) else {
         return Err(End::Input(
-            "the case has no [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40".to_owned(),
+            "the case has no speeds in [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40"
+                .to_owned(),
         ));
     };
     let speeds = case.curve.as_ref().filter(|_| curve).map(|plan| plan.speeds_m_per_s.clone());

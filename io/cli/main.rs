@@ -7,6 +7,7 @@ mod arguments;
 mod check;
 mod compare;
 mod completions;
+mod curve;
 mod end;
 mod explain;
 mod job;

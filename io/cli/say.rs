@@ -1,5 +1,7 @@
 //! What is said on the terminal.
 
+mod sweeps;
+
 use std::borrow::Cow;
 use std::fmt::Write as _;
 use std::io::Write as _;
@@ -59,6 +61,7 @@ pub fn answer(header: &ResultHeader, outcome: &Outcome) -> String {
     if let Some(response) = &outcome.strokes {
         stroke_lines(&mut text, response);
     }
+    sweeps::lines(&mut text, &outcome.sweeps);
     balance(&mut text, outcome);
     regime(&mut text, outcome);
     let cautions: Vec<&str> =

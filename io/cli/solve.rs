@@ -5,8 +5,8 @@ use lenzbore_io::result::{ResultHeader, WriteOptions, folder, summary, write};
 use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::outcome::{Figure, Outcome};
 use lenzbore_solver::problem::{Problem, Travel};
+use lenzbore_solver::solve;
 use lenzbore_solver::spread::{Nominal, Reading, Spread};
-use lenzbore_solver::{drag_curve, solve};
 use lenzbore_validation::endless;
 use serde_json::{Value, json};
 
@@ -15,7 +15,7 @@ use crate::end::End;
 use crate::job::CaseInput;
 use crate::progress::Terminal;
 use crate::spread::{self, spread_text};
-use crate::{job, memory, say};
+use crate::{curve, job, memory, say};
 
 /// What is asked of a case.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -35,7 +35,10 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     let target = words.out.clone().unwrap_or_else(|| job::default_folder(&words.case, suffix));
     folder::vet(&target, words.replace)?;
     let terminal = Terminal::new()?;
-    let (problem, outcome, cautions) = answer(&case, question, &terminal)?;
+    let (problem, mut outcome, mut cautions) = answer(&case, question, &terminal)?;
+    if question == Question::Curve {
+        cautions.extend(curve::beside(&input, &case, &mut outcome, &terminal)?);
+    }
     terminal.finish();
     let spread = input_spread(&input, &case, question, (&problem, &outcome), &words.spread, &terminal)?;
     let independent = independent(&problem, &outcome, question);
@@ -119,17 +122,7 @@ fn answer(
             let outcome = solve(&case.problem, monitor)?;
             Ok((case.problem.clone(), outcome, Vec::new()))
         }
-        Question::Curve => {
-            let (Some(problem), Some(plan)) = (case.curve_problem(), case.curve.as_ref()) else {
-                return Err(End::Input(
-                    "the case has no [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40"
-                        .to_owned(),
-                ));
-            };
-            memory::require_of(case, &problem, plan.speeds_m_per_s.last().copied())?;
-            let outcome = drag_curve(&problem, &plan.speeds_m_per_s, monitor)?;
-            Ok((problem, outcome, plan.cautions.clone()))
-        }
+        Question::Curve => curve::answer(case, monitor),
     }
 }
 

@@ -113,6 +113,18 @@ pub fn damping_against_position(
     march::damping_against_position(problem, positions_m, monitor)
 }
 
+/// As [`solve`] for strokes of law `sine`, without the small strokes over frequency beside them.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn settled_stroke(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    require_finite(problem)?;
+    if !matches!(problem.travel, Travel::Sine(_)) {
+        return Err(SolveFault::Unsuited("a settled stroke is of law 'sine'"));
+    }
+    march::settled_stroke(problem, monitor)
+}
+
 /// A wall's currents as `terms` first-order lags, fitted to small strokes over frequency; `None` with fewer points than terms, or where
 /// nothing damps.
 #[must_use]

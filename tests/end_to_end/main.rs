@@ -20,6 +20,7 @@ mod materials;
 mod programs;
 mod rig;
 mod strokes;
+mod sweeps;
 mod tolerance;
 mod validate;
 mod words;

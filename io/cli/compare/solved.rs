@@ -139,7 +139,8 @@ impl Solved {
             out.warn(&outcome);
         }
         if need.curve {
-            let speeds = case.curve.as_ref().map_or_else(|| vec![ANY_SPEED], |c| c.speeds_m_per_s.clone());
+            let speeds = case.curve.as_ref().map(|c| c.speeds_m_per_s.clone()).filter(|s| !s.is_empty());
+            let speeds = speeds.unwrap_or_else(|| vec![ANY_SPEED]);
             let problem = endless(problem, speeds.last().copied().unwrap_or(ANY_SPEED))?;
             let outcome = drag_curve(&problem, &speeds, monitor)?;
             out.curve = nominal(&outcome);

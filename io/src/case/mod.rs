@@ -15,7 +15,8 @@
 //! - A given conductivity holds at 20 degC where `conductivity_at` does not say otherwise, a remanence at 20 degC.
 //! - Where two sizes across of a layer have tolerances, these two are taken as given and the third follows; a tolerance of
 //!   one size moves it as `--set` would.
-//! - `[curve]` with two speeds spreads `points` between them; with more it takes them as they are.
+//! - `[curve]` with two speeds, or two positions, spreads `points` between them; with more it takes them as they are. Temperatures,
+//!   frequencies and amplitudes are taken as they are.
 //!
 //! ```
 //! use lenzbore_io::case::{CaseSource, STARTER, read_case};
@@ -54,7 +55,7 @@ mod words;
 
 use std::path::Path;
 
-use lenzbore_solver::problem::{Extent, Problem, Travel};
+use lenzbore_solver::problem::{Extent, Problem, Sine, SnapshotPlan, Travel, Traverse};
 
 use crate::message::Diagnostics;
 pub(crate) use load::text_of;
@@ -84,13 +85,30 @@ pub enum CaseSource<'a> {
     },
 }
 
-/// The speeds at which `lenzbore curve` wants settled drag.
+/// What `lenzbore curve` sweeps. Lists that were not asked for are empty.
 #[derive(Debug, Clone, PartialEq)]
 pub struct CurvePlan {
-    /// Increasing speeds, m/s, all above 0.
+    /// Increasing speeds, m/s, all above 0, at which settled drag is wanted.
     pub speeds_m_per_s: Vec<f64>,
+    /// Increasing temperatures of wall and mover, K, at each of which the drag is wanted at all these speeds.
+    pub temperatures_k: Vec<f64>,
+    /// Increasing positions of the reference point, m, at which the zero-speed damping coefficient is wanted.
+    pub positions_m: Vec<f64>,
+    /// Strokes, where they are asked for.
+    pub strokes: Option<StrokesPlan>,
+    /// Length of the case's wall, m; `None` where it is endless.
+    pub length_m: Option<f64>,
     /// Cautions that belong to the curve alone.
     pub cautions: Vec<String>,
+}
+
+/// Frequencies and amplitudes of settled strokes: every one of these with every one of those.
+#[derive(Debug, Clone, PartialEq)]
+pub struct StrokesPlan {
+    /// Increasing frequencies, Hz.
+    pub frequencies_hz: Vec<f64>,
+    /// Increasing amplitudes, m, zero to peak.
+    pub amplitudes_m: Vec<f64>,
 }
 
 /// Which results are wanted beside the summary, which is always written.
@@ -134,7 +152,28 @@ pub struct ResolvedCase {
 }
 
 impl ResolvedCase {
-    /// The problem for `lenzbore curve`: the wall endless, the travel steady at the curve's highest speed.
+    /// The problem for the positions of `lenzbore curve`: the wall with its ends, and a slow traverse in the place of the travel.
+    #[must_use]
+    pub fn positions_problem(&self) -> Option<Problem> {
+        let curve = self.curve.as_ref()?;
+        let (first, last) = (*curve.positions_m.first()?, *curve.positions_m.last()?);
+        let length_m = curve.length_m?;
+        let mut problem = self.problem.clone();
+        problem.wall.extent = Extent::Finite { length_m };
+        problem.travel = Travel::Traverse(Traverse { speed_m_per_s: 1.0, from_m: first, to_m: last });
+        problem.stations.clear();
+        Some(problem)
+    }
+
+    /// The problem of one stroke of `lenzbore curve`, without fields; `None` where the travel is no stroke.
+    #[must_use]
+    pub fn stroke_problem(&self, frequency_hz: f64, amplitude_m: f64) -> Option<Problem> {
+        let Travel::Sine(sine) = self.problem.travel else { return None };
+        let travel = Travel::Sine(Sine { frequency_hz, amplitude_m, ..sine });
+        Some(Problem { travel, snapshots: SnapshotPlan::None, stations: Vec::new(), ..self.problem.clone() })
+    }
+
+    /// The problem for `lenzbore curve` over speed: the wall endless, the travel steady at the curve's highest speed.
     #[must_use]
     pub fn curve_problem(&self) -> Option<Problem> {
         let velocity_m_per_s = *self.curve.as_ref()?.speeds_m_per_s.last()?;

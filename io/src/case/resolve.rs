@@ -76,7 +76,9 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
         }
     });
     let curve_section = reader.table(root, "curve", "[curve] with speeds = [\"0.01 m/s\", \"50 m/s\"]");
-    let curve = curve_section.as_ref().and_then(|s| read_curve(reader, s, wall.as_ref()));
+    let curve = curve_section
+        .as_ref()
+        .and_then(|s| read_curve(reader, s, wall.as_ref(), (travel_section.is_some(), travel.as_ref())));
     if !root.table.has("travel") && !root.table.has("curve") {
         let why = "what is asked: how the mover travels, or a [curve] of drag against speed";
         reader.missing(root, "travel", why, "[travel] with law = \"free\" and release = \"640 mm\"");
@@ -121,8 +123,8 @@ fn optional<'t>(reader: &mut Reader, root: &Section<'t>, word: &'static str) -> 
     })
 }
 
-/// Wall, mover and travel as one problem; a case without `[travel]` asks for a curve, whose wall is endless. Where the
-/// travel could not be read, another stands in for it, so that the faults of wall and mover are found all the same.
+/// Wall, mover and travel as one problem; a case without `[travel]` asks for a curve, whose wall is endless where speeds are
+/// swept. Where the travel could not be read, another stands in for it, so that the faults of wall and mover are found all the same.
 fn problem(
     wall: &Wall,
     mover: &Mover,
@@ -133,7 +135,7 @@ fn problem(
     let mut wall = wall.clone();
     let travel = match (travel, wall.extent) {
         (Some(travel), _) => travel.clone(),
-        (None, Extent::Finite { length_m }) if curve.is_none() => {
+        (None, Extent::Finite { length_m }) if curve.is_none_or(|c| c.speeds_m_per_s.is_empty()) => {
             Travel::Traverse(Traverse { speed_m_per_s: 1.0, from_m: -length_m, to_m: 2.0 * length_m })
         }
         (None, _) => {

@@ -14,8 +14,8 @@ use crate::message::{CaseFault, Diagnostic, Place, SourceKind};
 use crate::table::{Abscissa, Table, TableFault, read_table};
 use crate::units::Kind;
 
-const AMPLITUDE: Wanted = wanted(Kind::Length, Number::Amplitude);
-const FREQUENCY: Wanted = wanted(Kind::Frequency, Number::Frequency);
+pub(super) const AMPLITUDE: Wanted = wanted(Kind::Length, Number::Amplitude);
+pub(super) const FREQUENCY: Wanted = wanted(Kind::Frequency, Number::Frequency);
 const FILE: &str = "file = \"motion.csv\"";
 /// A table with fewer points says nothing of a motion.
 const LEAST_POINTS: usize = 3;

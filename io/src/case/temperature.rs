@@ -3,7 +3,7 @@
 use lenzbore_solver::problem::SensibleRange;
 
 use super::reader::{Reader, Section, Wanted};
-use super::tree::Value;
+use super::tree::{Node, Value};
 use crate::message::CaseFault;
 use crate::units::Kind;
 
@@ -24,21 +24,31 @@ pub(super) const TEMPERATURE: Wanted = Wanted { kind: Kind::Temperature, range: 
 
 /// Reads a temperature; 20 degC where it is absent. A bare number that makes no sense as kelvin is refused.
 pub(super) fn temperature(reader: &mut Reader, section: &Section<'_>, word: &'static str) -> f64 {
-    if let Some(node) = section.table.get(word)
-        && let Value::Number(bare) = node.value
-        && bare.is_finite()
-        && !(LOWEST_BARE_K..=RANGE.highest).contains(&bare)
-    {
-        let fault = CaseFault::Impossible {
-            word: word.to_owned(),
-            found: bare.to_string(),
-            legal: format!("a bare number is in K, and {bare} K is no likely temperature"),
-            mend: Some(format!("did you mean \"{bare} degC\"? (or write \"{bare} K\")")),
-        };
-        reader.fault(node.place.clone(), fault);
+    if section.table.get(word).is_some_and(|node| is_unlikely(reader, node, word)) {
         return ROOM_K;
     }
     reader.quantity_or(section, word, TEMPERATURE, ROOM_K, "room temperature, 20 degC")
+}
+
+/// A temperature of a list.
+pub(super) fn temperature_of(reader: &mut Reader, node: &Node, word: &str) -> Option<f64> {
+    if is_unlikely(reader, node, word) { None } else { reader.value(node, word, TEMPERATURE) }
+}
+
+/// Refuses a bare number that makes no sense as kelvin.
+fn is_unlikely(reader: &mut Reader, node: &Node, word: &str) -> bool {
+    let Value::Number(bare) = node.value else { return false };
+    if !bare.is_finite() || (LOWEST_BARE_K..=RANGE.highest).contains(&bare) {
+        return false;
+    }
+    let fault = CaseFault::Impossible {
+        word: word.to_owned(),
+        found: bare.to_string(),
+        legal: format!("a bare number is in K, and {bare} K is no likely temperature"),
+        mend: Some(format!("did you mean \"{bare} degC\"? (or write \"{bare} K\")")),
+    };
+    reader.fault(node.place.clone(), fault);
+    true
 }
 
 /// `degC` for messages.

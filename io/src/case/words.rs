@@ -119,7 +119,7 @@ pub const TABLES: [TableWords; 15] = [
     TableWords {
         path: "curve",
         label: "[curve]",
-        words: &["speeds", "points", "spacing", "temperatures", "positions"],
+        words: &["speeds", "points", "spacing", "temperatures", "positions", "frequencies", "amplitudes"],
         lists: &[],
     },
     TableWords { path: "accuracy", label: "[accuracy]", words: &["target", "levels", "cells_across_wall"], lists: &[] },

@@ -17,6 +17,7 @@ mod series;
 mod spread;
 mod strokes;
 mod summary;
+mod sweeps;
 mod write;
 mod xdmf;
 
@@ -30,4 +31,5 @@ pub use series::{Column, csv, curve_columns, trace_columns};
 pub use spread::{sensitivities_csv, spread_object};
 pub use strokes::stroke_columns;
 pub use summary::{summary, summary_text};
+pub use sweeps::{position_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns};
 pub use write::{WriteOptions, Written, pictures_of, write};

@@ -12,6 +12,14 @@ pub const FREQUENCY: &str = "frequency.csv";
 pub const ACROSS: &str = "across.csv";
 /// Small strokes over frequency.
 pub const STROKES: &str = "strokes.csv";
+/// Figures of the curve at each temperature.
+pub const TEMPERATURES: &str = "temperatures.csv";
+/// Drag against speed at each temperature.
+pub const TEMPERATURE_CURVES: &str = "curve_temperatures.csv";
+/// Damping coefficient against position.
+pub const POSITIONS: &str = "positions.csv";
+/// Settled strokes over frequency and amplitude.
+pub const STROKE_CURVE: &str = "stroke_curve.csv";
 /// What each input makes of each figure.
 pub const SENSITIVITIES: &str = "sensitivities.csv";
 /// Figures at every rung of a ladder.

@@ -13,6 +13,7 @@ use super::header::ResultHeader;
 use super::series::curve_columns;
 use super::spread::{input_spread, spread_object};
 use super::strokes::strokes_object;
+use super::sweeps::{positions_object, stroke_curve_object, temperatures_object};
 
 /// The summary of a run.
 ///
@@ -48,6 +49,16 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     }
     if let Some(response) = &outcome.strokes {
         put("strokes", strokes_object(response)?);
+    }
+    let sweeps = &outcome.sweeps;
+    if !sweeps.temperatures.is_empty() {
+        put("temperatures", temperatures_object(&sweeps.temperatures)?);
+    }
+    if !sweeps.positions.is_empty() {
+        put("positions", positions_object(&sweeps.positions)?);
+    }
+    if !sweeps.strokes.is_empty() {
+        put("stroke_curve", stroke_curve_object(&sweeps.strokes)?);
     }
     let of_the_run = outcome.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());

@@ -10,8 +10,9 @@ use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
 use super::{
-    across_columns, csv, curve_columns, frequency_columns, hdf5, names, sensitivities_csv, stroke_columns,
-    summary_text, trace_columns, xdmf,
+    across_columns, csv, curve_columns, frequency_columns, hdf5, names, position_columns, sensitivities_csv,
+    stroke_columns, stroke_curve_columns, summary_text, temperature_columns, temperature_curve_columns, trace_columns,
+    xdmf,
 };
 use crate::picture::{self, Picture};
 
@@ -100,6 +101,9 @@ fn fill(
 /// [`IoFault::Picture`].
 pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<Vec<Picture>, IoFault> {
     let mut all: Vec<Picture> = picture::curve(&header.title, outcome).into_iter().collect();
+    all.extend(picture::temperatures(&header.title, outcome));
+    all.extend(picture::positions(&header.title, outcome));
+    all.extend(picture::stroke_curve(&header.title, outcome));
     all.extend(picture::travel(&header.title, problem, outcome));
     all.extend(picture::force_loop(&header.title, problem, outcome));
     all.extend(picture::stroke_response(&header.title, problem, outcome));
@@ -137,6 +141,17 @@ fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
     }
     if let Some(curve) = &outcome.curve {
         sheaf.put(names::CURVE, csv(&curve_columns(curve, outcome.slotted.as_ref())?).as_bytes())?;
+    }
+    let sweeps = &outcome.sweeps;
+    if !sweeps.temperatures.is_empty() {
+        sheaf.put(names::TEMPERATURES, csv(&temperature_columns(&sweeps.temperatures)?).as_bytes())?;
+        sheaf.put(names::TEMPERATURE_CURVES, csv(&temperature_curve_columns(&sweeps.temperatures)?).as_bytes())?;
+    }
+    if !sweeps.positions.is_empty() {
+        sheaf.put(names::POSITIONS, csv(&position_columns(&sweeps.positions)?).as_bytes())?;
+    }
+    if !sweeps.strokes.is_empty() {
+        sheaf.put(names::STROKE_CURVE, csv(&stroke_curve_columns(&sweeps.strokes)?).as_bytes())?;
     }
     if let Some(response) = &outcome.frequency {
         sheaf.put(names::FREQUENCY, csv(&frequency_columns(response)?).as_bytes())?;

@@ -66,6 +66,14 @@ pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome,
     Journey::new(problem)?.solve(monitor)
 }
 
+/// The same of a stroke, without small strokes over frequency.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub(crate) fn settled_stroke(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    Journey::new(problem)?.through_levels(monitor)
+}
+
 /// The same without windows.
 ///
 /// # Errors
@@ -118,11 +126,7 @@ impl<'p> Journey<'p> {
     }
 
     fn solve(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-        let mut records = self.first(monitor)?;
-        let mut outcome = refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
-            self.replay_missing(&mut records, count, monitor)?;
-            Ok::<_, SolveFault>(self.outcome(&mut records))
-        })?;
+        let mut outcome = self.through_levels(monitor)?;
         if let Some(sine) = self.motion.sine()
             && life_time(&self.problem.wall) > 0.0
         {
@@ -130,6 +134,14 @@ impl<'p> Journey<'p> {
         }
         monitor.progress(1.0, "done");
         Ok(outcome)
+    }
+
+    fn through_levels(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+        let mut records = self.first(monitor)?;
+        refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
+            self.replay_missing(&mut records, count, monitor)?;
+            Ok::<_, SolveFault>(self.outcome(&mut records))
+        })
     }
 
     /// The window to begin with.

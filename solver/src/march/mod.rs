@@ -32,9 +32,9 @@ mod step;
 mod transfer;
 mod window;
 
-pub(crate) use answer::march;
 #[cfg(test)]
 pub(crate) use answer::{coarsest_both_ways, march_on_whole_grids};
+pub(crate) use answer::{march, settled_stroke};
 pub(crate) use course::{grids_on_the_way, plan, prescribed_steps};
 pub(crate) use lumped::lumped_model;
 pub(crate) use positions::damping_against_position;

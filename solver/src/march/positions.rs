@@ -124,7 +124,7 @@ fn outcome(problem: &Problem, placement: &Placement, positions: &[f64], levels: 
         strokes: None,
         thermal: None,
         slotted: None,
-        sweeps: Sweeps { positions: points, ..Sweeps::default() },
+        sweeps: Sweeps { positions: points, length_m: problem.wall.length_m(), ..Sweeps::default() },
         stations: Vec::new(),
         forces: None,
         ledger: None,

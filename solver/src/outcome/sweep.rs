@@ -1,6 +1,7 @@
 //! What a curve sweeps beside speed: temperature, position, strokes.
 
-use super::{DragPoint, Figure};
+use super::{DragPoint, Figure, Outcome};
+use crate::problem::Sine;
 
 /// What was swept; empty lists where nothing was asked.
 #[derive(Debug, Clone, PartialEq, Default)]
@@ -9,6 +10,8 @@ pub struct Sweeps {
     pub temperatures: Vec<AtTemperature>,
     /// Zero-speed damping coefficient at each position in a wall with ends.
     pub positions: Vec<AtPosition>,
+    /// Length of that wall, m.
+    pub length_m: Option<f64>,
     /// Settled strokes at each frequency and amplitude.
     pub strokes: Vec<AtStroke>,
 }
@@ -56,7 +59,7 @@ pub struct AtStroke {
     pub damping: f64,
     /// Half-width of its band, N s/m.
     pub damping_band: f64,
-    /// In-phase stiffness of the wall's currents, N/m, positive where it restores.
+    /// In-phase stiffness, N/m, positive where it restores: of the wall's currents, and of its static pull where it is permeable.
     pub stiffness: f64,
     /// Half-width of its band, N/m.
     pub stiffness_band: f64,
@@ -68,4 +71,28 @@ pub struct AtStroke {
     pub drag_peak: f64,
     /// Half-width of its band, N.
     pub drag_peak_band: f64,
+}
+
+impl AtStroke {
+    /// The figures of a settled stroke in one row; `None` where the outcome is of another law.
+    #[must_use]
+    pub fn of(sine: &Sine, outcome: &Outcome) -> Option<Self> {
+        let figure = |name: &str| outcome.figures.iter().find(|f| f.name == name).map(|f| (f.value, f.band));
+        let (damping, damping_band) = figure("damping_coefficient_equivalent")?;
+        let (stiffness, stiffness_band) = figure("stiffness")?;
+        let (loss, loss_band) = figure("loss_per_cycle")?;
+        let (drag_peak, drag_peak_band) = figure("drag_peak")?;
+        Some(Self {
+            frequency_hz: sine.frequency_hz,
+            amplitude_m: sine.amplitude_m,
+            damping,
+            damping_band,
+            stiffness,
+            stiffness_band,
+            loss,
+            loss_band,
+            drag_peak,
+            drag_peak_band,
+        })
+    }
 }

@@ -25,6 +25,7 @@ mod null_fields;
 mod order;
 mod passage;
 mod permeable_shell;
+mod positions;
 mod settled_drag;
 mod static_fields;
 mod step_ladders;

@@ -11,6 +11,7 @@ mod field_coverage;
 mod field_fall;
 mod field_loop;
 mod field_passage;
+mod field_position;
 mod field_stroke;
 mod grid_index;
 mod harmonic;
@@ -96,6 +97,7 @@ pub fn all() -> Vec<Check> {
         field_coverage::CHECKS,
         field_passage::CHECKS,
         field_fall::CHECKS,
+        field_position::CHECKS,
         field_stroke::CHECKS,
         harmonic::CHECKS,
         experiment::CHECKS,

@@ -19,6 +19,7 @@ pub mod moving_loop;
 pub mod nagaoka;
 pub mod passage;
 pub mod permeable_tube;
+pub mod position;
 pub mod rod_alternating;
 pub mod slots;
 pub mod solenoid;

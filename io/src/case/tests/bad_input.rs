@@ -192,6 +192,17 @@ fn shapes_are_checked() {
         ("", "[output]\nfields = \"every 3 kg\"\n", "22:10", &["does not measure a length but a mass"]),
         ("", "[output]\nwrite = [3]\n", "22:10", &["it lists names of results"]),
         ("", "[curve]\nspeeds = [2, 1]\n", "22:10", &["speeds increase"]),
+        ("", "[curve]\ntemperatures = [\"20 degC\"]\n", "21:2", &["speeds"]),
+        ("", "[curve]\nspeeds = [1, 2]\ntemperatures = [20, \"70 degC\"]\n", "23:17", &["20 degC"]),
+        (
+            "",
+            "[curve]\nspeeds = [1, 2]\ntemperatures = [\"70 degC\", \"20 degC\"]\n",
+            "23:16",
+            &["temperatures increase"],
+        ),
+        ("", "[curve]\npositions = [0.1, 0]\n", "22:13", &["positions increase"]),
+        ("", "[curve]\nfrequencies = [10, 20]\n", "22:15", &["law \"sine\""]),
+        ("", "[curve]\npositions = [0, 0.1, 0.2]\npoints = 5\n", "23:10", &["'points' beside"]),
         ("", "[curve]\nspeeds = [0, 1]\n", "22:11", &["greater than 0"]),
         ("", "[curve]\npoints = 3\n", "21:2", &["[curve] lacks 'speeds'"]),
         ("", "[curve]\nspeeds = [1, 2, 3]\npoints = 3\n", "23:10", &["beside a list of more than two speeds"]),
@@ -227,18 +238,6 @@ fn words_of_later_work_are_refused_as_not_modelled_yet() {
     check(&[
         ("", "[[output.station]]\nat = \"1 mm\"\n", "21:10", &["[[output.station]]", "not modelled yet"]),
         ("", "[[mover.iron]]\nlength = \"1 mm\"\n", "21:9", &["[[mover.iron]]", "not modelled yet"]),
-        (
-            "",
-            "[curve]\nspeeds = [1, 2]\ntemperatures = [\"20 degC\"]\n",
-            "23:1",
-            &["curves over temperature", "not modelled yet"],
-        ),
-        (
-            "",
-            "[curve]\nspeeds = [1, 2]\npositions = [\"0 mm\"]\n",
-            "23:1",
-            &["damping against position", "not modelled yet"],
-        ),
         (
             "recoil_permeability = 1\n",
             "recoil_permeability = 1.05\n",

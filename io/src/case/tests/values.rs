@@ -228,6 +228,30 @@ fn curves_are_spread_or_listed() {
 }
 
 #[test]
+fn a_curve_sweeps_temperatures_positions_and_strokes() {
+    let plan = |words: &str| good(&with("", &format!("[curve]\n{words}\n")), &[]).curve.unwrap();
+    let hot = plan("speeds = [1, 2, 5]\ntemperatures = [\"-30 degC\", \"70 degC\"]");
+    approx::assert_relative_eq!(hot.temperatures_k[0], 243.15, max_relative = 1e-12);
+    assert_eq!((hot.temperatures_k.len(), hot.positions_m.len(), hot.strokes), (2, 0, None));
+    let along = plan("positions = [\"0 mm\", \"90 mm\"]\npoints = 4");
+    assert_eq!((along.speeds_m_per_s.len(), along.positions_m.len(), along.length_m), (0, 4, Some(0.6)));
+    approx::assert_relative_eq!(along.positions_m[1], 0.03, max_relative = 1e-12);
+    assert!(along.cautions.is_empty(), "nothing is taken as endless");
+    let travel = "[travel]\nlaw = \"free\"\nrelease = \"640 mm\"\n";
+    let alone = good(&with(travel, "[curve]\npositions = [0, 0.02, 0.3]\n"), &[]);
+    let problem = alone.positions_problem().unwrap();
+    assert_eq!((problem.faults(), problem.wall.length_m(), alone.curve_problem()), (Vec::new(), Some(0.6), None));
+    let stroke = "[travel]\nlaw = \"sine\"\namplitude = \"4 mm\"\nfrequency = \"20 Hz\"\n";
+    let swept = good(&with(travel, &format!("{stroke}[curve]\nfrequencies = [10, 20]\n")), &[]);
+    let strokes = swept.curve.as_ref().unwrap().strokes.clone().unwrap();
+    assert_eq!(
+        (strokes.frequencies_hz.as_slice(), strokes.amplitudes_m.as_slice()),
+        ([10.0, 20.0].as_slice(), [0.004].as_slice())
+    );
+    assert_eq!(swept.stroke_problem(10.0, 0.004).unwrap().faults(), []);
+}
+
+#[test]
 fn stacks_are_built_bottom_to_top_about_their_middle() {
     let p = good(
         &with("[mover]\n", "[mover]\nstack = [\"M+\", \"S\", \"M-\"]\nstack_gap = \"0.1 mm\"\n")
