@@ -30,7 +30,7 @@ fn main() -> Result<(), Box<dyn Error>> {
     };
     let problem = Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![tube] },
-        mover: Mover { parts: vec![magnet], mass_kg: None },
+        mover: Mover { parts: vec![magnet], mass_kg: None, recoil: None },
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

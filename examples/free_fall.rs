@@ -32,7 +32,7 @@ fn main() -> Result<(), Box<dyn Error>> {
     let fall = Free::let_go(tube_length + 30e-3, -30e-3, [tube_length, 0.0]);
     let problem = Problem {
         wall: Wall { slots: 0, extent: Extent::Finite { length_m: tube_length }, layers: vec![tube] },
-        mover: Mover { parts: vec![magnet], mass_kg: Some(0.06) },
+        mover: Mover { parts: vec![magnet], mass_kg: Some(0.06), recoil: None },
         travel: Travel::Free(fall),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

@@ -14,7 +14,7 @@ use crate::sources::{AxialField, Source};
 /// Axial force of a reaction field on the mover's equivalent currents with its reference point at `position`, N.
 ///
 /// A current sheet K from z1 to z2 at radius R feels 2 pi K (psi(R, z2) - psi(R, z1)); a dipole m feels m dB_z/dz. `gap` is the
-/// free distance around a dipole, m.
+/// free distance around a dipole, m. The filaments of a recoil permeability feel 2 pi I d psi/dz.
 pub(crate) fn on_mover(grid: &Grid, psi_reaction: &[f64], mover: &Mover, position: f64, gap: f64) -> f64 {
     let psi = |r: f64, z: f64| psi_at(grid, psi_reaction, r, z);
     let mut force = 0.0;
@@ -34,7 +34,18 @@ pub(crate) fn on_mover(grid: &Grid, psi_reaction: &[f64], mover: &Mover, positio
             }
         };
     }
-    force
+    force + on_recoil(grid, psi_reaction, mover, position)
+}
+
+/// Force on the bound currents that recoil permeability adds, N: a filament I feels 2 pi I d psi/dz.
+fn on_recoil(grid: &Grid, psi: &[f64], mover: &Mover, position: f64) -> f64 {
+    let slope = |r: f64, z: f64| {
+        let (qr, qz) = (Stencil::<POINTS>::at(grid.r.nodes(), r), Stencil::<ALONG_POINTS>::at(grid.z.nodes(), z));
+        let row = |n: usize| qr.value_of(&psi[grid.node(0, qz.first + n)..]);
+        qz.slope.iter().enumerate().map(|(n, w)| w * row(n)).sum::<f64>()
+    };
+    let filaments = mover.recoil.iter().flat_map(|recoil| recoil.filaments());
+    2.0 * PI / MU0 * filaments.map(|f| f.tesla_metre * slope(f.radius_m, position + f.height_m)).sum::<f64>()
 }
 
 /// Composite Simpson rule with 16 panels, for the smooth reaction field across a coil.

@@ -1,5 +1,6 @@
 //! Where the mover runs relative to the wall: gaps, radii for the Maxwell stress, characteristic lengths.
 
+use crate::fault::SolveFault;
 use crate::problem::{Part, Problem};
 use crate::sources::Source;
 
@@ -80,6 +81,24 @@ impl Placement {
             source_ends_m: ends,
             stress_faces,
         }
+    }
+}
+
+/// Where the field is asked for, against the running gap: at the wall's faces, and half-way to them before the corners of a permeable
+/// wall.
+const ASKED_FROM: (f64, f64) = (0.95, 0.45);
+
+impl Problem {
+    /// The same problem with recoil permeabilities, one a part of the mover (1 for what is no magnet); see [`crate::problem::Mover::with_recoil`].
+    ///
+    /// # Errors
+    /// Those of that.
+    pub fn with_recoil(mut self, permeability: &[f64]) -> Result<Self, SolveFault> {
+        let (gap, _) = gap_and_scale(&self);
+        let share =
+            if self.wall.is_permeable() && self.wall.length_m().is_some() { ASKED_FROM.1 } else { ASKED_FROM.0 };
+        self.mover = self.mover.with_recoil(permeability, share * gap)?;
+        Ok(self)
     }
 }
 

@@ -52,7 +52,7 @@ pub fn part(name: &str, centre_m: f64, source: Source) -> Part {
 /// A mover of these parts without mass.
 #[must_use]
 pub fn mover(parts: Vec<Part>) -> Mover {
-    Mover { parts, mass_kg: None }
+    Mover { parts, mass_kg: None, recoil: None }
 }
 
 /// A point dipole.

@@ -75,6 +75,12 @@ pub fn explanations(asked: &Asked<'_>, scales: &[f64], field: f64, deeper: bool)
             let values = asked.changed_to(cold)?;
             add("field solution at 20 degC".to_owned(), vec![Effect::Temperature.left_out()], &values, None);
         }
+        if warm.iter().any(|p| p.mover.recoil.is_some())
+            && let Some(values) = asked.changed(&without_recoil)?
+        {
+            let model = "field solution, recoil permeability 1".to_owned();
+            add(model, vec![Effect::RecoilPermeability.left_out()], &values, None);
+        }
         let permeable = |p: &Problem| p.wall.layers.iter().any(|l| l.relative_permeability > 1.001);
         if warm.iter().any(permeable)
             && let Some(values) = asked.changed(&unmagnetic)?
@@ -132,7 +138,12 @@ fn unmagnetic(problem: &Problem) -> Problem {
     plain
 }
 
-/// A ring model's values, cell by cell; `None` where the model does not suit.
+/// The case as quick calculators see its magnets.
+fn without_recoil(problem: &Problem) -> Problem {
+    Problem { mover: problem.mover.without_recoil(), ..problem.clone() }
+}
+
+/// A ring model's values with recoil permeability 1, cell by cell; `None` where the model does not suit.
 pub fn by_rings(
     asked: &Asked<'_>,
     problems: &[Problem],
@@ -140,7 +151,8 @@ pub fn by_rings(
 ) -> Result<Option<Vec<Option<f64>>>, End> {
     let mut solved = Vec::new();
     for (problem, need) in problems.iter().zip(&asked.needs) {
-        match Solved::by_rings(problem, assumptions, need, asked.monitor) {
+        let plain = without_recoil(problem);
+        match Solved::by_rings(&plain, assumptions, need, asked.monitor) {
             Ok(one) => solved.push(one),
             Err(SolveFault::Interrupted) => return Err(End::Interrupted),
             // A dipole has no place around a rod; a model may find no end of a motion.
@@ -166,6 +178,9 @@ fn left_out(assumptions: Assumptions, problem: &Problem) -> Vec<&'static str> {
         effects.push(Effect::FiniteLength);
     }
     effects.push(Effect::Induction);
+    if problem.mover.recoil.is_some() {
+        effects.push(Effect::RecoilPermeability);
+    }
     if problem.wall.layers.iter().any(|l| l.relative_permeability > 1.001) {
         effects.push(Effect::WallPermeability);
     }

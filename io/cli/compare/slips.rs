@@ -267,7 +267,7 @@ fn candidates(problem: &Problem) -> Vec<Slip> {
                 change: Box::new(move |p| {
                     let mut p = p.clone();
                     p.mover.parts.iter_mut().filter(|x| x.name == part).for_each(|x| scale(x, factor));
-                    p
+                    solved_again(p)
                 }),
             });
         }
@@ -280,11 +280,19 @@ fn candidates(problem: &Problem) -> Vec<Slip> {
                     l.outer_radius_m *= factor;
                 }
                 p.mover.parts.iter_mut().for_each(|x| scale(x, factor));
-                p
+                solved_again(p)
             }),
         });
     }
     out
+}
+
+/// The case with the recoil permeability of its parts as they are now; where that fails it stays as it was, and
+/// [`Problem::faults`] says so.
+fn solved_again(mut problem: Problem) -> Problem {
+    let renewed = problem.mover.renew_recoil();
+    debug_assert!(renewed.is_ok() || !problem.faults().is_empty());
+    problem
 }
 
 /// A part with its diameters scaled.

@@ -104,7 +104,9 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
             (part(p.index, &PART_ACROSS), Some((layer(l.index, &ACROSS), "the layer")))
         }
         ProblemFault::NoLayer | ProblemFault::InertWall => (parts.wall.section.place.clone(), None),
-        ProblemFault::NoPart | ProblemFault::InertMover => (parts.mover.section.place.clone(), None),
+        ProblemFault::NoPart | ProblemFault::InertMover | ProblemFault::StaleRecoil => {
+            (parts.mover.section.place.clone(), None)
+        }
         ProblemFault::SteadyNeedsEndlessWall { .. } | ProblemFault::TravelNeedsEnds { .. } => {
             (travel(&["law"]), Some((parts.wall.section.place_of("length"), "the wall's length")))
         }
@@ -151,6 +153,7 @@ fn of_number(subject: Subject, quantity: Quantity, parts: &Parts<'_, '_>) -> Pla
         Quantity::Position => &["at", "release", "from", "to", "until", "gates", "position"],
         Quantity::Conductivity => &["conductivity", "material"],
         Quantity::RelativePermeability => &["permeability", "material"],
+        Quantity::RecoilPermeability => &["recoil_permeability", "material"],
         Quantity::Moment => &["moment"],
         Quantity::Remanence => &["remanence", "material"],
         Quantity::AmpereTurns => &["current", "turns"],

@@ -18,6 +18,8 @@ use crate::units::Kind;
 pub(super) struct MoverReading<'t> {
     pub section: Section<'t>,
     pub mover: Mover,
+    /// Recoil permeability of each part of `mover`; the mover itself has it not yet.
+    pub recoil: Vec<f64>,
     /// One a part of `mover`, in the same order.
     pub parts: Vec<Section<'t>>,
     /// Whether everything could be read.
@@ -53,14 +55,17 @@ pub(super) fn read_mover<'t>(reader: &mut Reader, root: &Section<'t>) -> Option<
     let mass_kg = reader.quantity(&section, "mass", wanted(Kind::Mass, Number::Mass));
     let warmth = temperature(reader, &section, "temperature");
     let items = items(reader, &section, warmth);
+    let known: Vec<(String, f64)> = items.iter().map(|i| (i.name.clone(), i.body.recoil())).collect();
     let placed = match reader.list(&section, "stack", "stack = [\"M+\", \"S\", \"M-\"]") {
         Some(nodes) => stacked(reader, &section, &items, nodes),
         None => placed_one_by_one(reader, &section, items),
     };
     let (parts, parts_sections): (Vec<Part>, Vec<Section<'t>>) = placed.parts.into_iter().unzip();
+    let recoil_of = |p: &Part| known.iter().find(|(name, _)| *name == p.name).map_or(1.0, |(_, recoil)| *recoil);
+    let recoil = parts.iter().map(recoil_of).collect();
     let complete = reader.faults.len() == before;
-    let mover = Mover { parts, mass_kg };
-    Some(MoverReading { section, mover, parts: parts_sections, complete, ends_m: placed.ends_m })
+    let mover = Mover { parts, mass_kg, recoil: None };
+    Some(MoverReading { section, mover, recoil, parts: parts_sections, complete, ends_m: placed.ends_m })
 }
 
 /// Reads every magnet, spacer, dipole and coil.
@@ -128,7 +133,7 @@ fn placed_one_by_one<'t>(reader: &mut Reader, section: &Section<'t>, items: Vec<
             continue;
         }
         let at = position(reader, &item.section, alone);
-        if let (Body::Magnetic { source, outline, north }, Some(centre_m)) = (&item.body, at) {
+        if let (Body::Magnetic { source, outline, north, .. }, Some(centre_m)) = (&item.body, at) {
             let source = if *north == North::Down { source.reversed() } else { *source };
             parts.push((Part { name: item.name, centre_m, source, outline: *outline }, item.section));
         }

@@ -17,12 +17,19 @@ use crate::units::Kind;
 /// What an entry of the mover is.
 #[derive(Debug, Clone)]
 pub(super) enum Body {
-    /// A part with a field; `north` as its own word says.
-    Magnetic { source: Source, outline: Outline, north: North },
+    /// A part with a field; `north` as its own word says, `recoil` its recoil permeability (1 for what is no magnet).
+    Magnetic { source: Source, outline: Outline, north: North, recoil: f64 },
     /// A length without field.
     Spacer { length_m: f64 },
     /// An entry that could not be read; its fault stands.
     Faulty,
+}
+
+impl Body {
+    /// Its recoil permeability; 1 for what is no magnet.
+    pub fn recoil(&self) -> f64 {
+        if let Self::Magnetic { recoil, .. } = self { *recoil } else { 1.0 }
+    }
 }
 
 const REMANENCE: Wanted = wanted(Kind::FluxDensity, Number::Remanence);
@@ -31,14 +38,14 @@ const TURNS: Wanted =
 const CURRENT: Wanted =
     Wanted { kind: Kind::Current, range: SensibleRange { lowest: 0.0, highest: 1e7, zero: true, signed: true } };
 
-/// What leaving the recoil permeability out costs, from an own study of one damper.
-const RECOIL_COST: &str = "for 1.05 the zero-speed damping coefficient comes out about 3.7 % too high (own study: 25/28 mm copper \
+/// What taking a recoil permeability as 1 costs, from an own study of one damper.
+const RECOIL_COST: &str = "if it is 1.05, the zero-speed damping coefficient comes out about 3.7 % too high (own study: 25/28 mm copper \
                            tube, magnet 22 x 12 mm)";
 
 pub(super) fn read_magnet(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> Body {
     let sizes = body_sizes(reader, section);
     let coating = reader.quantity_or(section, "coating", HOLE, 0.0, "no coating");
-    let remanence = remanence(reader, section, name, warmth);
+    let (remanence, recoil) = remanence(reader, section, name, warmth);
     let north = match reader.choice(section, "north", &["up", "down"], "north = \"up\"") {
         Some("down") => North::Down,
         _ => North::Up,
@@ -46,9 +53,11 @@ pub(super) fn read_magnet(reader: &mut Reader, section: &Section<'_>, name: &str
     if !section.table.has("north") {
         reader.note_text(section, "north", "up");
     }
-    let (Some([inner, outer, length]), Some(remanence)) = (sizes, remanence) else { return Body::Faulty };
+    let (Some([inner, outer, length]), Some(remanence), Some(recoil)) = (sizes, remanence, recoil) else {
+        return Body::Faulty;
+    };
     match coated_magnet(0.5 * inner, 0.5 * outer, length, coating, remanence) {
-        Some((source, outline)) => Body::Magnetic { source, outline, north },
+        Some((source, outline)) => Body::Magnetic { source, outline, north, recoil },
         None => {
             let place = section.place_of("coating");
             let fault = CaseFault::Impossible {
@@ -81,13 +90,22 @@ fn body_sizes(reader: &mut Reader, section: &Section<'_>) -> Option<[f64; 3]> {
     Some([inner, outer, length])
 }
 
-/// Remanence at the mover's temperature, T.
-fn remanence(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> Option<f64> {
+/// Remanence at the mover's temperature, T, and recoil permeability.
+fn remanence(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> (Option<f64>, Option<f64>) {
     let named = section.table.has("material");
     let grade = magnet_grade(reader, section);
     let grade = grade.as_deref();
     let which = grade_value(reader, section, named);
-    recoil(reader, section, name, grade);
+    let recoil = recoil(reader, section, name, grade);
+    (remanence_of(reader, section, (name, warmth), (named, grade, which)), recoil)
+}
+
+fn remanence_of(
+    reader: &mut Reader,
+    section: &Section<'_>,
+    (name, warmth): (&str, f64),
+    (named, grade, which): (bool, Option<&MagnetGrade>, GradeValue),
+) -> Option<f64> {
     let given = section.table.has("remanence");
     if !given && grade.is_none() {
         if !named {
@@ -185,40 +203,21 @@ fn at_temperature(
     }
 }
 
-/// The recoil permeability is taken as 1; what that costs is said.
-fn recoil(reader: &mut Reader, section: &Section<'_>, name: &str, grade: Option<&MagnetGrade>) {
+/// The recoil permeability: given, else the grade's, else 1 with a caution.
+fn recoil(reader: &mut Reader, section: &Section<'_>, name: &str, grade: Option<&MagnetGrade>) -> Option<f64> {
     let word = "recoil_permeability";
     if section.table.has(word) {
-        let Some(given) = reader.quantity(section, word, wanted(Kind::Ratio, Number::RelativePermeability)) else {
-            return;
-        };
-        if (given - 1.0).abs() > 1e-12 {
-            let what = format!("recoil_permeability = {given}");
-            let instead = Some(format!("recoil_permeability = 1 solves without it: {RECOIL_COST}"));
-            reader.fault(section.place_of(word), CaseFault::NotModelled { what, instead });
-        }
-        return;
+        return reader.quantity(section, word, wanted(Kind::Ratio, Number::RecoilPermeability));
     }
-    match grade.and_then(|g| Some((g.grade.full_name(), g.recoil_permeability.as_ref()?.typical))) {
-        Some((grade, recoil)) if (recoil - 1.0).abs() > 1e-12 => {
-            let why = format!("taken as 1, not as the material book's {recoil} for {grade}: not modelled yet");
-            reader.note_default(section, word, 1.0, Kind::Ratio, &why);
-            reader
-                .cautions
-                .push(format!("magnet '{name}': recoil permeability {recoil} ({grade}) is taken as 1; {RECOIL_COST}"));
-            let entry = format!("recoil permeability of magnets (taken as 1; {RECOIL_COST})");
-            if !reader.not_modelled.contains(&entry) {
-                reader.not_modelled.push(entry);
-            }
-        }
-        Some(_) => reader.note_default(section, word, 1.0, Kind::Ratio, "the material book's"),
-        None => {
-            reader.note_default(section, word, 1.0, Kind::Ratio, "no grade says otherwise");
-            reader.cautions.push(format!(
-                "magnet '{name}': no recoil permeability is given or known of its grade, so it is taken as 1; {RECOIL_COST}"
-            ));
-        }
+    if let Some((g, number)) = grade.and_then(|g| Some((g, g.recoil_permeability.as_ref()?))) {
+        note_book(reader, section, (word, number.typical, ""), &g.grade.full_name(), &number.source);
+        return Some(number.typical);
     }
+    reader.note_default(section, word, 1.0, Kind::Ratio, "no grade says otherwise");
+    reader.cautions.push(format!(
+        "magnet '{name}': no recoil permeability is given or known of its grade, so it is taken as 1; {RECOIL_COST}"
+    ));
+    Some(1.0)
 }
 
 pub(super) fn read_spacer(reader: &mut Reader, section: &Section<'_>) -> Body {
@@ -236,7 +235,7 @@ pub(super) fn read_dipole(reader: &mut Reader, section: &Section<'_>) -> Body {
     );
     let Some(moment_a_m2) = moment else { return Body::Faulty };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
-    Body::Magnetic { source: Source::Dipole { moment_a_m2 }, outline, north: North::Up }
+    Body::Magnetic { source: Source::Dipole { moment_a_m2 }, outline, north: North::Up, recoil: 1.0 }
 }
 
 pub(super) fn read_coil(reader: &mut Reader, section: &Section<'_>) -> Body {
@@ -256,5 +255,6 @@ pub(super) fn read_coil(reader: &mut Reader, section: &Section<'_>) -> Body {
         source: Source::Coil { inner_radius_m, outer_radius_m, length_m, ampere_turns },
         outline: Outline { inner_radius_m, outer_radius_m, length_m },
         north: North::Up,
+        recoil: 1.0,
     }
 }

@@ -7,7 +7,7 @@ use super::alternating::{is_asked, read_alternating};
 use super::curve::read_curve;
 use super::geometry::{Parts, odd_sizes, place_faults};
 use super::load::Loaded;
-use super::mover::read_mover;
+use super::mover::{MoverReading, read_mover};
 use super::output::{read_accuracy, read_output};
 use super::reader::{Reader, Section};
 use super::stroke::{is_given_motion, read_given_motion};
@@ -16,7 +16,7 @@ use super::travel::{Surroundings, read_travel};
 use super::tree::Table;
 use super::wall::read_wall;
 use super::{CaseSource, CurvePlan, OutputPlan, ResolvedCase};
-use crate::message::{Diagnostics, Place};
+use crate::message::{CaseFault, Diagnostics, Place};
 
 static NO_TABLE: Table = Table { entries: Vec::new() };
 
@@ -102,6 +102,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
         whole_travel: travel.is_some(),
     };
     place_faults(reader, problem.faults(), &parts);
+    let problem = if reader.faults.is_empty() { with_recoil(reader, problem, &mover)? } else { problem };
     reader.cautions.extend(odd_sizes(&problem));
     if matches!(travel, Some(Travel::Traverse(_) | Travel::Free(_) | Travel::Sine(_) | Travel::Table(_))) {
         let text =
@@ -145,6 +146,19 @@ fn problem(
         }
     };
     Problem { wall, mover: mover.clone(), travel, accuracy, snapshots, stations: Vec::new(), warming: None }
+}
+
+/// The mover's own field with the recoil permeability of its magnets.
+fn with_recoil(reader: &mut Reader, problem: Problem, mover: &MoverReading<'_>) -> Option<Problem> {
+    match problem.with_recoil(&mover.recoil) {
+        Ok(problem) => Some(problem),
+        Err(fault) => {
+            let word = "recoil_permeability".to_owned();
+            let (found, legal) = (format!("{:?}", mover.recoil), fault.to_string());
+            reader.fault(mover.section.place.clone(), CaseFault::Impossible { word, found, legal, mend: None });
+            None
+        }
+    }
 }
 
 fn title(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -> String {

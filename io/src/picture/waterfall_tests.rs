@@ -23,7 +23,11 @@ fn outcome() -> LadderOutcome {
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 8e-3, length_m: 16e-3 };
     let problem = Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
-        mover: Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None },
+        mover: Mover {
+            parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }],
+            mass_kg: None,
+            recoil: None,
+        },
         travel: Travel::Steady { velocity_m_per_s: 4.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

@@ -58,7 +58,11 @@ pub(crate) fn free() -> (Problem, Outcome) {
                 layer("sleeve", 13.1e-3, 15.0e-3, 0.12, 58.0e6),
             ],
         },
-        mover: Mover { parts: vec![magnet("lower", -7e-3, 1.3), magnet("upper", 7e-3, -1.3)], mass_kg: Some(0.18) },
+        mover: Mover {
+            parts: vec![magnet("lower", -7e-3, 1.3), magnet("upper", 7e-3, -1.3)],
+            mass_kg: Some(0.18),
+            recoil: None,
+        },
         travel: Travel::Free(Free::let_go(0.16, -0.04, [0.12, 0.0])),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::Automatic,

@@ -76,7 +76,7 @@ fn finite(length_m: f64, travel: Travel) -> Problem {
     let layer = layer(11.0e-3, 13.0e-3, length_m, 1.0);
     Problem {
         wall: Wall { slots: 0, extent: Extent::Finite { length_m }, layers: vec![layer] },
-        mover: Mover { parts: vec![part(magnet(9.0e-3, 12.0e-3, 1.25))], mass_kg: Some(0.060) },
+        mover: Mover { parts: vec![part(magnet(9.0e-3, 12.0e-3, 1.25))], mass_kg: Some(0.060), recoil: None },
         travel,
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,
@@ -89,7 +89,7 @@ fn endless(part: Part, inner_radius_m: f64, outer_radius_m: f64, relative_permea
     let layer = layer(inner_radius_m, outer_radius_m, 0.0, relative_permeability);
     Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
-        mover: Mover { parts: vec![part], mass_kg: None },
+        mover: Mover { parts: vec![part], mass_kg: None, recoil: None },
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

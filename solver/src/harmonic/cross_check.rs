@@ -47,7 +47,7 @@ fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, turns: f64, centre_mm: f64
 fn problem(extent: Extent, layers: Vec<Layer>, parts: Vec<Part>, law: Alternating) -> Problem {
     Problem {
         wall: Wall { slots: 0, extent, layers },
-        mover: Mover { parts, mass_kg: None },
+        mover: Mover { parts, mass_kg: None, recoil: None },
         travel: Travel::Alternating(law),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

@@ -79,7 +79,7 @@ mod tests {
     }
 
     fn of(parts: Vec<Part>) -> Measured {
-        inductance(&Mover { parts, mass_kg: None }, 1.0)
+        inductance(&Mover { parts, mass_kg: None, recoil: None }, 1.0)
     }
 
     /// Computed independently with SciPy: Maxwell's mutual inductance of two loops integrated over both sections (panels graded towards the

@@ -48,7 +48,9 @@ pub fn climb(question: &Question<'_>, monitor: &dyn Monitor) -> Result<LadderOut
     let top = question.solve(question.problem, &share(0.0, 0.4, "field solution"))?;
     let critical = question.speeds_m_per_s.map(|speeds| critical_speed(&top, speeds));
     let features = Features::of(seen);
-    let mut answers = Answers::new(seen, critical);
+    // Quick models take magnets with recoil permeability 1.
+    let plain = Problem { mover: seen.mover.without_recoil(), ..seen.clone() };
+    let mut answers = Answers::new(&plain, critical);
     let mut rungs = Vec::new();
     for (effect, assumptions) in features.climb(features.foot()) {
         let answer = answers.of(assumptions, monitor)?;
@@ -107,9 +109,13 @@ impl Question<'_> {
         let mut rungs = Vec::new();
         let passage = seen.wall.length_m().is_some() && !matches!(seen.travel, Travel::Steady { .. });
         if passage {
-            rungs.push(coupled_rung(seen, monitor)?);
+            let plain = Problem { mover: seen.mover.without_recoil(), ..seen.clone() };
+            rungs.push(coupled_rung(&plain, monitor)?);
         }
         let mut fields = vec![if passage { Effect::Field } else { Effect::Induction }];
+        if seen.mover.recoil.is_some() {
+            fields.push(Effect::RecoilPermeability);
+        }
         if seen.wall.is_permeable() {
             fields.push(Effect::WallPermeability);
         }
@@ -124,6 +130,9 @@ impl Question<'_> {
                 let mut simpler = Problem { snapshots: SnapshotPlan::None, ..seen.clone() };
                 if effect < Effect::WallPermeability {
                     simpler.wall = unmagnetic(&seen.wall);
+                }
+                if effect < Effect::RecoilPermeability {
+                    simpler.mover = seen.mover.without_recoil();
                 }
                 self.solve(&simpler, monitor)?
             };
@@ -158,6 +167,7 @@ fn coupled_rung(seen: &Problem, monitor: &dyn Monitor) -> Result<Rung, SolveFaul
 
 fn field_rung(effect: Effect, outcome: &Outcome) -> Rung {
     let model = match effect {
+        Effect::RecoilPermeability => "field solution with the magnets' recoil permeability",
         Effect::WallPermeability => "field solution with the wall's permeability",
         Effect::Temperature => "field solution at the case's temperatures",
         _ => "field solution",
@@ -249,6 +259,7 @@ fn sweeps(
         return Ok(None);
     }
     seen.wall = unmagnetic(&seen.wall);
+    seen.mover = seen.mover.without_recoil();
     Designs { truth: &truth, seen: &seen, here }.sweep(quick, monitor)
 }
 
@@ -263,10 +274,10 @@ fn skipped(question: &Question<'_>, features: Features, swept: bool) -> Vec<Skip
     add(!features.dipoles, "dipole models", "the mover runs around the wall, where a point dipole stands for nothing");
     add(features.dipoles && !features.sized, "finite magnet", "the mover is a dipole in this case");
     add(!features.ends, "finite length", "settled fields have an endless wall");
+    add(problem.mover.recoil.is_none(), "recoil permeability", "every magnet has recoil permeability 1");
     let permeable = problem.wall.is_permeable();
     add(!permeable, "wall permeability", "every layer has relative permeability 1");
     add(question.at_20_degc.is_none(), "temperature", "wall and mover are taken at the temperature of their data");
-    add(true, "recoil permeability", "not modelled yet: magnets are taken with recoil permeability 1");
     add(true, "pole pieces and back iron", "not modelled yet");
     let sections =
         "no sweeps: the wall has sections, is at rest, or has nothing that conducts, so no endless wall stands for it";

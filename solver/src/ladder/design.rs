@@ -1,6 +1,7 @@
 //! The design in an endless wall, and its neighbours: other wall thickness, other size of magnets.
 
 use super::rows::runs_inside;
+use crate::fault::SolveFault;
 use crate::grid_rules::reynolds_per_speed;
 use crate::placement::source_sizes;
 use crate::problem::{Accuracy, Extent, Layer, Mover, Part, Problem, SnapshotPlan, Travel};
@@ -84,7 +85,10 @@ pub(super) fn magnet_scales(problem: &Problem, inside: bool) -> (f64, f64) {
 }
 
 /// All parts and their distances made `scale` times as large; remanences stay.
-pub(super) fn with_magnets(problem: &Problem, scale: f64) -> Problem {
+///
+/// # Errors
+/// Those of the recoil permeability, solved again.
+pub(super) fn with_magnets(problem: &Problem, scale: f64) -> Result<Problem, SolveFault> {
     let part = |p: &Part| {
         let mut part = p.clone();
         part.centre_m *= scale;
@@ -102,6 +106,7 @@ pub(super) fn with_magnets(problem: &Problem, scale: f64) -> Problem {
         }
         part
     };
-    let mover = Mover { parts: problem.mover.parts.iter().map(part).collect(), ..problem.mover.clone() };
-    Problem { mover, ..problem.clone() }
+    let mut mover = Mover { parts: problem.mover.parts.iter().map(part).collect(), ..problem.mover.clone() };
+    mover.renew_recoil()?;
+    Ok(Problem { mover, ..problem.clone() })
 }

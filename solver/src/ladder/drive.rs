@@ -38,7 +38,8 @@ pub(super) fn simplified(mover: &Mover, model: MagnetModel) -> Mover {
             Part { source: Source::Dipole { moment_a_m2: moment(&part.source) }, ..part.clone() }
         }
     };
-    Mover { parts: mover.parts.iter().map(part).collect(), ..mover.clone() }
+    let recoil = if model == MagnetModel::Finite { mover.recoil.clone() } else { None };
+    Mover { parts: mover.parts.iter().map(part).collect(), mass_kg: mover.mass_kg, recoil }
 }
 
 impl Drive {
@@ -98,7 +99,9 @@ fn square(mover: &Mover, model: MagnetModel, radius: f64, h: f64) -> (f64, f64) 
     if model == MagnetModel::LoneDipoles {
         return jets.fold((0.0, 0.0), |sum, (s, c)| (sum.0 + s * s, sum.1 + 2.0 * s * c));
     }
-    let (s, c) = jets.fold((0.0, 0.0), |sum, (s, c)| (sum.0 + s, sum.1 + c));
+    let recoil = mover.recoil.as_ref().map(|recoil| recoil.jet(radius, h));
+    let start = recoil.map_or((0.0, 0.0), |j| (2.0 * PI * j.slope, 2.0 * PI * j.curvature));
+    let (s, c) = jets.fold(start, |sum, (s, c)| (sum.0 + s, sum.1 + c));
     (s * s, 2.0 * s * c)
 }
 

@@ -17,6 +17,8 @@ pub enum Effect {
     Induction,
     /// The currents are spread as the field equations say, not evenly over the sections of rings: what is left of the rings.
     Field,
+    /// The magnets have their recoil permeability, not 1.
+    RecoilPermeability,
     /// Layers of the wall are permeable.
     WallPermeability,
     /// Wall and mover are at their own temperatures, not at 20 degC.
@@ -35,6 +37,7 @@ impl Effect {
             Self::FiniteLength => "finite length",
             Self::Induction => "induction",
             Self::Field => "field in the wall",
+            Self::RecoilPermeability => "recoil permeability",
             Self::WallPermeability => "wall permeability",
             Self::Temperature => "temperature",
         }
@@ -51,6 +54,7 @@ impl Effect {
             Self::FiniteLength => "the ends of the wall",
             Self::Induction => "the field of the wall's own currents (inductance, skin effect)",
             Self::Field => "the spread of current within a ring",
+            Self::RecoilPermeability => "the recoil permeability of the magnets",
             Self::WallPermeability => "the permeability of the wall",
             Self::Temperature => "the temperatures of wall and mover",
         }

@@ -27,7 +27,7 @@ use crate::problem::{Problem, Wall};
 /// # let part = Part { name: "M".into(), centre_m: 0.0, source, outline };
 /// # let problem = Problem {
 /// #     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
-/// #     mover: Mover { parts: vec![part], mass_kg: None },
+/// #     mover: Mover { parts: vec![part], mass_kg: None, recoil: None },
 /// #     travel: Travel::Steady { velocity_m_per_s: 1.0 },
 /// #     accuracy: Accuracy::default(), snapshots: SnapshotPlan::None, stations: Vec::new(),
 /// #     warming: None,

@@ -41,7 +41,7 @@ pub(super) fn problem(a: f64, b: f64, length: Option<f64>, parts: Vec<Part>, tra
             extent: length.map_or(Extent::Endless, |length_m| Extent::Finite { length_m }),
             layers: vec![layer],
         },
-        mover: Mover { parts, mass_kg: Some(0.06) },
+        mover: Mover { parts, mass_kg: Some(0.06), recoil: None },
         travel,
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

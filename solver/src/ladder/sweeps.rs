@@ -132,7 +132,7 @@ impl Designs<'_> {
         let scales = logarithmic(low, high, SCALES);
         for (k, &scale) in scales.iter().enumerate() {
             let at = |p: &Problem| with_magnets(p, scale);
-            let found = errors(&at(self.truth), &at(self.seen), quick, &[self.here], monitor)?;
+            let found = errors(&at(self.truth)?, &at(self.seen)?, quick, &[self.here], monitor)?;
             for (m, by_speed) in found.by_model.into_iter().enumerate() {
                 along[m].extend(by_speed.first().map(|&here| (scale, here)));
             }

@@ -60,6 +60,9 @@ pub enum ProblemFault {
         /// In what: a permeable wall, a rod, a wall with alternating current.
         what: &'static str,
     },
+    /// Recoil permeabilities that were solved for other parts than the mover has.
+    #[error("the mover's recoil permeabilities were solved for other parts: solve them again after changing parts")]
+    StaleRecoil,
     /// A layer whose inner radius is not below its outer one.
     #[error("layer {layer} has no thickness: inner diameter {} and outer diameter {}",
         mm(2.0 * inner_radius_m), mm(2.0 * outer_radius_m))]

@@ -1,6 +1,8 @@
 //! Everything that travels: parts with their own closed-form fields.
 
-use crate::sources::Source;
+use std::sync::Arc;
+
+use crate::sources::{Recoil, Source};
 
 /// Outline of a part's body over any coating, for clearance and overlap; `None` radii for a point dipole.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -33,4 +35,6 @@ pub struct Mover {
     pub parts: Vec<Part>,
     /// Mass of everything that travels, kg; needed by `Travel::Free`.
     pub mass_kg: Option<f64>,
+    /// What recoil permeability changes; `None` where it is 1 throughout. See [`Mover::with_recoil`].
+    pub recoil: Option<Arc<Recoil>>,
 }

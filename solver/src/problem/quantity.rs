@@ -58,6 +58,8 @@ pub enum Quantity {
     Conductivity,
     /// Relative permeability.
     RelativePermeability,
+    /// Recoil permeability of a magnet.
+    RecoilPermeability,
     /// Dipole moment, A m2.
     Moment,
     /// Remanence, T.
@@ -108,6 +110,7 @@ impl Quantity {
             Self::Amplitude => "amplitude",
             Self::Conductivity => "conductivity",
             Self::RelativePermeability => "relative permeability",
+            Self::RecoilPermeability => "recoil permeability",
             Self::Moment => "dipole moment",
             Self::Remanence => "remanence",
             Self::AmpereTurns => "turns times current",
@@ -135,7 +138,10 @@ impl Quantity {
         match self {
             Self::InnerRadius | Self::OuterRadius | Self::Length | Self::Position | Self::Amplitude => "m",
             Self::Conductivity => "S/m",
-            Self::RelativePermeability | Self::FrictionCoefficient | Self::TargetRelative => "",
+            Self::RelativePermeability
+            | Self::RecoilPermeability
+            | Self::FrictionCoefficient
+            | Self::TargetRelative => "",
             Self::Moment => "A m2",
             Self::Remanence => "T",
             Self::AmpereTurns => "A",
@@ -163,6 +169,7 @@ impl Quantity {
             Self::Amplitude => SensibleRange::positive(1e-9, 1e4),
             Self::Conductivity => SensibleRange::with_zero(1e-12, 1e10),
             Self::RelativePermeability => SensibleRange::positive(1e-6, 1e7),
+            Self::RecoilPermeability => SensibleRange::positive(1.0, 20.0),
             Self::Moment => SensibleRange::signed(1e9),
             Self::Remanence => SensibleRange::signed(10.0),
             Self::AmpereTurns => SensibleRange::signed(1e9),

@@ -115,6 +115,7 @@ mod tests {
             mover: Mover {
                 parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
                 mass_kg: Some(0.1),
+                recoil: None,
             },
             travel: Travel::Free(free),
             accuracy: Accuracy::default(),

@@ -38,7 +38,7 @@ fn traverse() -> Travel {
 fn problem() -> Problem {
     Problem {
         wall: Wall { slots: 0, extent: Extent::Finite { length_m: 0.6 }, layers: vec![layer("sleeve", 25.0, 28.0)] },
-        mover: Mover { parts: vec![magnet("M", 0.0, 22.0, 0.0)], mass_kg: Some(0.4) },
+        mover: Mover { parts: vec![magnet("M", 0.0, 22.0, 0.0)], mass_kg: Some(0.4), recoil: None },
         travel: traverse(),
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::default(),

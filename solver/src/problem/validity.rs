@@ -149,6 +149,9 @@ fn mover_faults(mover: &Mover, faults: &mut Vec<ProblemFault>) {
             faults.extend(overlap_of_parts((i, first), (j, second)));
         }
     }
+    if mover.recoil.as_ref().is_some_and(|recoil| !recoil.belongs_to(&mover.parts)) {
+        faults.push(ProblemFault::StaleRecoil);
+    }
     if mover.parts.iter().all(|p| strength(&p.source).abs() <= 0.0) {
         faults.push(ProblemFault::InertMover);
     }

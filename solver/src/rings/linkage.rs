@@ -8,7 +8,7 @@ use std::f64::consts::PI;
 
 use crate::constants::MU0;
 use crate::problem::Mover;
-use crate::sources::Source;
+use crate::sources::{AxialField, Source};
 
 use super::cell::Lattice;
 use super::loops::mutual_inductance;
@@ -135,7 +135,10 @@ fn section_average(mover: &Mover, from: f64, to: f64, pitch: f64, h: f64, gap: f
         for (height, weight_z) in rule.on(low, low + width) {
             for (r, weight_r) in rule.on(from, to) {
                 let each = mover.parts.iter().map(|p| slope(p.source, r, height - p.centre_m));
-                sum += weight_z * weight_r * each.sum::<f64>();
+                // The flux falls as the mover comes nearer from below: 2 pi d psi/dz of the mover's own field with the other sign.
+                let recoil =
+                    mover.recoil.as_ref().map_or(0.0, |recoil| 2.0 * PI * r * recoil.flux_density_r(r, height));
+                sum += weight_z * weight_r * (each.sum::<f64>() + recoil);
             }
         }
         low += width;

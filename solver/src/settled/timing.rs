@@ -39,7 +39,11 @@ fn problem(thickness: f64, mu_r: f64) -> Problem {
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m, length_m };
     Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
-        mover: Mover { parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }], mass_kg: None },
+        mover: Mover {
+            parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
+            mass_kg: None,
+            recoil: None,
+        },
         travel: Travel::Steady { velocity_m_per_s: 1.0 },
         accuracy: Accuracy::default(),
         snapshots: SnapshotPlan::None,

@@ -80,6 +80,25 @@ impl LoopGeometry {
         -8.0 * self.a * self.a * self.z / (PI * self.s * self.s * self.s * self.near_product()) * bracket
     }
 
+    /// psi of the loop and its first two derivatives along z (not divided by r^2).
+    ///
+    /// With R1 the distance of the near side, R of the far one, sigma = a^2 + r^2 + z^2, in the usual modulus (kc = R1/R):
+    /// psi' = -(z Q/(2 pi R)), Q = sigma E/R1^2 - K; psi'' is its derivative, off by some (a/r)^2 roundings where r << a.
+    pub(crate) fn jet(&self) -> Jet {
+        let Self { a, r, z, .. } = *self;
+        let (near2, far2) = ((a - r) * (a - r) + z * z, (a + r) * (a + r) + z * z);
+        let near2 = near2.max(1e-30 * far2);
+        let kc = (near2 / far2).sqrt();
+        let (b, d) = (cel2(kc, 1.0, 0.0), cel2(kc, 0.0, 1.0));
+        let (k, e) = (b + d, b + kc * kc * d);
+        let sigma = a * a + r * r + z * z;
+        let q = sigma * e / near2 - k;
+        let dq = z * (e / near2 - k / far2 - 4.0 * a * r * e / (near2 * near2) - sigma / (near2 * far2) * (e - k));
+        let far = far2.sqrt();
+        let curvature = -(q * (1.0 - z * z / far2) + z * dq) / (2.0 * PI * far);
+        Jet { psi: r * r * self.psi_over_r2(), slope: r * r * self.slope_over_r2(), curvature }
+    }
+
     /// B_z of the loop: (8 a^2/(pi S^3)) ((1 - 2t) B/kc^2 + (1 - t) D), t = r^2 (S^2 - 4 a^2)/(S^2 R R1).
     pub(crate) fn flux_density_z(&self) -> f64 {
         let Self { a, r, z, s, difference, .. } = *self;
@@ -250,6 +269,19 @@ mod tests {
                     assert!(value.is_finite(), "r {r} z {z}: {value}");
                 }
             }
+        }
+    }
+
+    #[test]
+    fn the_loop_s_own_jet_is_its_psi_and_derivatives() {
+        for (r, z) in [(0.3, 0.2), (1.4, -0.7), (5.0, 0.1), (1.0, 0.3), (1.01, 0.0), (0.02, 0.5)] {
+            let jet = LoopGeometry::new(1.0, r, z).jet();
+            let slope = |dz: f64| r * r * LoopGeometry::new(1.0, r, z + dz).slope_over_r2();
+            assert_relative_eq!(jet.psi, r * r * LoopGeometry::new(1.0, r, z).psi_over_r2(), max_relative = 1e-14);
+            assert_relative_eq!(jet.slope, slope(0.0), max_relative = 1e-14);
+            let h = 1e-3 * (r - 1.0_f64).hypot(z);
+            let d = |h: f64| (8.0 * (slope(h) - slope(-h)) - (slope(2.0 * h) - slope(-2.0 * h))) / (12.0 * h);
+            assert_relative_eq!(jet.curvature, (16.0 * d(0.5 * h) - d(h)) / 15.0, max_relative = 1e-9);
         }
     }
 

@@ -10,6 +10,7 @@ pub(crate) mod gauss;
 mod magnet;
 #[cfg(test)]
 mod quadrature;
+mod recoil;
 mod sheet;
 mod spacing;
 mod stack;
@@ -19,6 +20,7 @@ mod table;
 pub use coil::Coil;
 pub use dipole::Dipole;
 pub use magnet::Magnet;
+pub use recoil::{Filament, Recoil};
 pub use sheet::CylinderSheet;
 pub use stack::{North, Stack, StackItem, coated_magnet};
 pub use table::SourceTable;
@@ -41,7 +43,7 @@ pub enum Source {
         /// Moment along +z, A m2, signed.
         moment_a_m2: f64,
     },
-    /// Cylinder or ring, uniformly magnetised along the axis, recoil permeability 1.
+    /// Cylinder or ring, uniformly magnetised along the axis; a recoil permeability other than 1 is the mover's.
     Magnet {
         /// Inner radius, m; 0 for a cylinder.
         inner_radius_m: f64,

@@ -208,7 +208,7 @@ mod tests {
     #[test]
     fn touching_magnets_are_one_longer_magnet() {
         let halves = Stack::new(&[magnet(6e-3, 0.0, North::Up), magnet(6e-3, 0.0, North::Up)], 0.0);
-        let mover = Mover { parts: halves.parts, mass_kg: None };
+        let mover = Mover { parts: halves.parts, mass_kg: None, recoil: None };
         let whole = Stack::new(&[magnet(12e-3, 0.0, North::Up)], 0.0).parts[0].source;
         for (r, z) in [(0.012, 0.001), (0.003, -0.002), (0.02, 0.03), (1e-6, 0.1)] {
             assert_relative_eq!(mover.psi(r, z), whole.psi(r, z), max_relative = 1e-12);

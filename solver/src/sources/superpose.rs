@@ -2,7 +2,7 @@
 
 use super::current_loop::Jet;
 use super::{AxialField, Coil, Dipole, Magnet, Source};
-use crate::problem::Mover;
+use crate::problem::{Mover, Part};
 
 /// One of the closed forms.
 #[derive(Debug, Clone, Copy)]
@@ -73,24 +73,48 @@ impl AxialField for Source {
     }
 }
 
-impl Mover {
-    /// psi and its first two derivatives along z, z from the reference point.
-    pub(crate) fn jet(&self, r: f64, z: f64) -> Jet {
-        self.parts.iter().fold(Jet::default(), |sum, part| sum.plus(1.0, part.source.jet(r, z - part.centre_m)))
-    }
-}
+/// Parts that add up, all with recoil permeability 1.
+pub(super) struct Parts<'p>(pub(super) &'p [Part]);
 
-/// The sum over all parts at their centres; z is measured from the mover's reference point.
-impl AxialField for Mover {
+impl AxialField for Parts<'_> {
     fn psi(&self, r: f64, z: f64) -> f64 {
-        self.parts.iter().map(|part| part.source.psi(r, z - part.centre_m)).sum()
+        self.0.iter().map(|part| part.source.psi(r, z - part.centre_m)).sum()
     }
 
     fn flux_density_r(&self, r: f64, z: f64) -> f64 {
-        self.parts.iter().map(|part| part.source.flux_density_r(r, z - part.centre_m)).sum()
+        self.0.iter().map(|part| part.source.flux_density_r(r, z - part.centre_m)).sum()
     }
 
     fn flux_density_z(&self, r: f64, z: f64) -> f64 {
-        self.parts.iter().map(|part| part.source.flux_density_z(r, z - part.centre_m)).sum()
+        self.0.iter().map(|part| part.source.flux_density_z(r, z - part.centre_m)).sum()
+    }
+}
+
+impl Mover {
+    /// psi and its first two derivatives along z, z from the reference point.
+    pub(crate) fn jet(&self, r: f64, z: f64) -> Jet {
+        let parts =
+            self.parts.iter().fold(Jet::default(), |sum, part| sum.plus(1.0, part.source.jet(r, z - part.centre_m)));
+        self.recoil.as_ref().map_or(parts, |recoil| parts.plus(1.0, recoil.jet(r, z)))
+    }
+
+    fn sum(&self, r: f64, z: f64, field: impl Fn(&dyn AxialField, f64, f64) -> f64) -> f64 {
+        let parts = field(&Parts(&self.parts), r, z);
+        self.recoil.as_ref().map_or(parts, |recoil| parts + field(&**recoil, r, z))
+    }
+}
+
+/// The sum over all parts at their centres, and what recoil permeability changes; z is measured from the mover's reference point.
+impl AxialField for Mover {
+    fn psi(&self, r: f64, z: f64) -> f64 {
+        self.sum(r, z, |f, r, z| f.psi(r, z))
+    }
+
+    fn flux_density_r(&self, r: f64, z: f64) -> f64 {
+        self.sum(r, z, |f, r, z| f.flux_density_r(r, z))
+    }
+
+    fn flux_density_z(&self, r: f64, z: f64) -> f64 {
+        self.sum(r, z, |f, r, z| f.flux_density_z(r, z))
     }
 }

@@ -54,7 +54,7 @@ struct Row {
 /// use lenzbore_solver::sources::{AxialField, Source, SourceTable};
 /// let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 0.009, length_m: 0.012, remanence_tesla: 1.25 };
 /// let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.009, length_m: 0.012 };
-/// let mover = Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None };
+/// let mover = Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None, recoil: None };
 /// let table = SourceTable::new(&mover, &[0.011, 0.012], -0.2, 0.2, 1e-10);
 /// let mut psi = [0.0; 2];
 /// table.fill(1, &[0.003, 0.3], &mut psi);
@@ -308,7 +308,7 @@ mod tests {
     }
 
     fn movers() -> Vec<(&'static str, Mover)> {
-        let mover = |parts| Mover { parts, mass_kg: None };
+        let mover = |parts| Mover { parts, mass_kg: None, recoil: None };
         let coil = Source::Coil { inner_radius_m: 0.006, outer_radius_m: 0.0105, length_m: 0.02, ampere_turns: 900.0 };
         vec![
             ("dipole", mover(vec![part(0.0, Source::Dipole { moment_a_m2: 1.0 })])),

@@ -70,7 +70,7 @@ pub(super) fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, ampere_turns: f
 pub(crate) fn problem(wall: Wall, parts: Vec<Part>, travel: Travel, levels: usize) -> Problem {
     Problem {
         wall,
-        mover: Mover { parts, mass_kg: Some(0.02) },
+        mover: Mover { parts, mass_kg: Some(0.02), recoil: None },
         travel,
         accuracy: Accuracy { levels: Some(levels), ..Accuracy::default() },
         snapshots: SnapshotPlan::None,

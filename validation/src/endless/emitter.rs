@@ -1,7 +1,8 @@
 //! The mover's parts as coaxial currents in free space.
 
-use lenzbore_solver::problem::Mover;
-use lenzbore_solver::sources::Source;
+use lenzbore_solver::constants::MU0;
+use lenzbore_solver::problem::{Mover, Part};
+use lenzbore_solver::sources::{Filament, Source};
 
 use crate::Error;
 
@@ -31,12 +32,17 @@ pub struct Emitter {
 }
 
 impl Emitter {
-    /// All parts of a mover.
+    /// All parts of a mover, and a filament for each that stands for its recoil permeability.
     #[must_use]
     pub fn all_of(mover: &Mover) -> Vec<Self> {
-        (mover.parts.iter())
-            .map(|p| Self { name: p.name.clone(), centre_m: p.centre_m, shape: Shape::Source(p.source) })
-            .collect()
+        let part = |p: &Part| Self { name: p.name.clone(), centre_m: p.centre_m, shape: Shape::Source(p.source) };
+        let filament = |f: Filament| Self {
+            name: "recoil permeability".to_owned(),
+            centre_m: f.height_m,
+            shape: Shape::Loop { radius_m: f.radius_m, current_a: f.tesla_metre / MU0 },
+        };
+        let recoil = mover.recoil.iter().flat_map(|recoil| recoil.filaments());
+        mover.parts.iter().map(part).chain(recoil.map(filament)).collect()
     }
 
     /// Smallest and largest radius at which it carries current, m.
