@@ -45,6 +45,8 @@ pub enum Command {
     Ladder(LadderWords),
     /// Holds a calculator's or a measurement's table against the field solution
     Compare(CompareWords),
+    /// Makes the report page of a result folder again
+    Report(ReportWords),
     /// The published checks, each labelled code verification, cross-check or validation (experiment)
     Validate(ValidateWords),
     /// The material book, with the source of every number
@@ -175,6 +177,19 @@ pub enum Side {
     High,
     /// A table that says too little is dangerous
     Low,
+}
+
+/// `lenzbore report`.
+#[derive(Debug, Args)]
+pub struct ReportWords {
+    /// Folder that a run has written
+    pub folder: PathBuf,
+    /// Also makes the folder's pictures so wide on paper, as "170 mm"; letters grow in proportion
+    #[arg(long, value_name = "WIDTH", requires = "replace")]
+    pub width: Option<String>,
+    /// Puts the page in the place of an older one
+    #[arg(long)]
+    pub replace: bool,
 }
 
 /// `lenzbore validate`.

@@ -4,6 +4,7 @@ use std::fmt::Write;
 use std::path::Path;
 
 use lenzbore_io::case::ResolvedCase;
+use lenzbore_io::layout::layout;
 use lenzbore_io::picture::drawing;
 use lenzbore_solver::cost::{Forecast, forecast};
 use lenzbore_solver::problem::{Extent, Problem, Travel};
@@ -200,7 +201,7 @@ fn write_drawing(path: &Path, case: &ResolvedCase) -> Result<(), End> {
     if path.exists() {
         return Err(End::Input(format!("{} exists already; name another file", path.display())));
     }
-    let picture = drawing(&case.title, &case.problem)?;
+    let picture = drawing(&case.title, &layout(case))?;
     let bytes = match path.extension().and_then(|e| e.to_str()) {
         Some("svg") => picture.svg.into_bytes(),
         Some("png") => picture.png()?,

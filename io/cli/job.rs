@@ -3,9 +3,10 @@
 use std::io::Read;
 use std::path::{Path, PathBuf};
 
-use lenzbore_io::case::{CaseSource, ResolvedCase, read_case};
+use lenzbore_io::case::{CaseSource, OutputPlan, ResolvedCase, read_case};
+use lenzbore_io::layout::layout;
 use lenzbore_io::message::Diagnostics;
-use lenzbore_io::result::{Program, ResultHeader};
+use lenzbore_io::result::{Program, ResultHeader, WriteOptions};
 use serde_json::Value;
 
 use crate::arguments::CaseWords;
@@ -66,6 +67,19 @@ pub fn default_folder(words: &CaseWords, suffix: &str) -> PathBuf {
     Path::new("out").join(format!("{stem}{suffix}"))
 }
 
+/// Which files a case wants.
+pub fn write_options(plan: &OutputPlan, replace: bool) -> WriteOptions {
+    WriteOptions {
+        replace,
+        summary: true,
+        trace: plan.trace,
+        fields: plan.fields,
+        pictures: plan.pictures,
+        report: plan.report,
+        picture_width_m: plan.picture_width_m,
+    }
+}
+
 /// What the result says of itself.
 pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[String]) -> ResultHeader {
     let mut cautions = case.cautions.clone();
@@ -76,6 +90,7 @@ pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[
         digest: case.digest.clone(),
         program: Program { name: env!("CARGO_PKG_NAME").to_owned(), version: env!("CARGO_PKG_VERSION").to_owned() },
         resolved: case.resolved.to_json(),
+        geometry: layout(case),
         not_modelled: case.not_modelled.clone(),
         independent,
         spread: None,

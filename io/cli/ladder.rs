@@ -24,7 +24,8 @@ pub fn run(words: &LadderWords) -> Result<(), End> {
     terminal.finish();
     let cautions = case.curve.as_ref().filter(|_| asks_curve(&case, words.curve)).map(|c| c.cautions.clone());
     let header = job::header(&case, None, &cautions.unwrap_or_default());
-    let written = write_ladder(&target, words.replace, case.output.pictures, &header, &outcome, &terminal)?;
+    let options = job::write_options(&case.output, words.replace);
+    let written = write_ladder(&target, &options, &header, &outcome, &terminal)?;
     if words.case.json {
         say::to_standard_output(&format!("{:#}\n", ladder_summary(&header, &outcome)?));
     } else {

@@ -16,6 +16,7 @@ mod materials;
 mod memory;
 mod new;
 mod progress;
+mod report;
 mod say;
 mod schema;
 mod sketch;
@@ -39,6 +40,7 @@ fn main() -> ExitCode {
         Command::Curve(words) => solve::run(&words, solve::Question::Curve),
         Command::Ladder(words) => ladder::run(&words),
         Command::Compare(words) => compare::run(&words),
+        Command::Report(words) => report::run(&words),
         Command::Validate(words) => validate::run(&words),
         Command::Materials(words) => materials::run(&words),
         Command::Schema => schema::run(),

@@ -1,7 +1,7 @@
 //! `lenzbore run` and `lenzbore curve`: solve, write, say.
 
 use lenzbore_io::case::ResolvedCase;
-use lenzbore_io::result::{ResultHeader, WriteOptions, folder, summary, write};
+use lenzbore_io::result::{ResultHeader, folder, summary, write};
 use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::outcome::{Figure, Outcome};
 use lenzbore_solver::problem::{Problem, Travel};
@@ -43,13 +43,7 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     let spread = input_spread(&input, &case, question, (&problem, &outcome), &words.spread, &terminal)?;
     let independent = independent(&problem, &outcome, question);
     let header = ResultHeader { spread, ..job::header(&case, independent, &cautions) };
-    let options = WriteOptions {
-        replace: words.replace,
-        summary: true,
-        trace: case.output.trace,
-        fields: case.output.fields,
-        pictures: case.output.pictures,
-    };
+    let options = job::write_options(&case.output, words.replace);
     let written = write(&target, &options, &header, &problem, &outcome, &terminal)?;
     if words.case.json {
         say::to_standard_output(&format!("{:#}\n", summary(&header, &outcome)?));

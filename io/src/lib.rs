@@ -1,10 +1,12 @@
-//! Case files and units, material book, result folders, HDF5 and XDMF, tables and pictures. Computes no field.
+//! Case files and units, material book, result folders, HDF5 and XDMF, tables, pictures and the report page. Computes no field.
 
 pub mod case;
 pub mod explain;
+pub mod layout;
 pub mod materials;
 pub mod message;
 pub mod picture;
+pub mod report;
 pub mod result;
 pub mod schema;
 pub mod table;

@@ -1,6 +1,6 @@
 //! A result folder appears whole or not at all, and never in the place of another unasked.
 
-use crate::rig::{Bench, QUICK, entries};
+use crate::rig::{Bench, QUICK, SETTLED_FILES, entries};
 
 #[test]
 fn an_existing_result_is_refused_and_untouched() {
@@ -25,7 +25,7 @@ fn replace_puts_the_new_result_in_its_place() {
     std::fs::write(bench.path("out/case/summary.json"), "old").unwrap();
     bench.succeed(&["run", "case.toml", "--replace"]);
     assert_eq!(entries(&bench.path("out")), ["case"], "nothing of the old result lies beside");
-    assert_eq!(entries(&bench.path("out/case")), ["run.h5", "run.xdmf", "section.png", "section.svg", "summary.json"]);
+    assert_eq!(entries(&bench.path("out/case")), SETTLED_FILES);
     assert_ne!(std::fs::read_to_string(bench.path("out/case/summary.json")).unwrap(), "old");
 }
 
@@ -48,5 +48,5 @@ fn only_what_is_asked_is_written() {
     bench.succeed(&["run", "case.toml", "--set", "output.write=[\"summary\"]"]);
     assert_eq!(entries(&bench.path("out/case")), ["summary.json"]);
     bench.succeed(&["run", "case.toml", "--replace", "--set", "output.fields=\"none\""]);
-    assert_eq!(entries(&bench.path("out/case")), ["section.png", "section.svg", "summary.json"]);
+    assert_eq!(entries(&bench.path("out/case")), ["report.html", "section.png", "section.svg", "summary.json"]);
 }

@@ -18,6 +18,7 @@ mod interruption;
 mod ladder;
 mod materials;
 mod programs;
+mod report;
 mod rig;
 mod strokes;
 mod sweeps;

@@ -7,6 +7,10 @@ use assert_cmd::cargo::cargo_bin;
 use serde_json::Value;
 use tempfile::TempDir;
 
+/// The files of a run with settled fields.
+pub const SETTLED_FILES: [&str; 8] =
+    ["parts.png", "parts.svg", "report.html", "run.h5", "run.xdmf", "section.png", "section.svg", "summary.json"];
+
 /// Settled fields in an endless wall: solves in a tenth of a second.
 pub const QUICK: &str = r#"title = "Dipole in a tube"
 

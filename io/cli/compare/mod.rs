@@ -14,9 +14,10 @@ use std::io::Read as _;
 use std::path::Path;
 
 use lenzbore_io::case::{ResolvedCase, ResolvedValue};
-use lenzbore_io::picture;
 use lenzbore_io::result::folder::{self, PendingFolder};
+use lenzbore_io::result::names;
 use lenzbore_io::table::{Abscissa, Table, read_table};
+use lenzbore_io::{picture, report as page};
 use lenzbore_solver::comparison::{Point, Unsafe, Verdict};
 use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::problem::{Extent, Travel};
@@ -216,8 +217,12 @@ fn write(target: &Path, replace: bool, report: &Report<'_>, monitor: &dyn Monito
     put("comparison.csv", report.csv().as_bytes())?;
     let plot = report.plot();
     for picture in [picture::overlay(&plot), picture::residual(&plot)].into_iter().flatten() {
+        let picture = picture.at_width(report.case.output.picture_width_m);
         put(&format!("{}.svg", picture.name), picture.svg.as_bytes())?;
         put(&format!("{}.png", picture.name), &picture.png()?)?;
+    }
+    if report.case.output.report {
+        put(names::REPORT, page::build(pending.path())?.as_bytes())?;
     }
     pending.commit()?;
     Ok(files)

@@ -3,6 +3,7 @@
 use std::fmt::Write as _;
 
 use lenzbore_io::case::ResolvedCase;
+use lenzbore_io::layout::layout;
 use lenzbore_io::picture::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 use lenzbore_solver::comparison::{Allowed, Unsafe, Verdict};
 use lenzbore_solver::spread::COVERAGE;
@@ -105,6 +106,7 @@ impl Report<'_> {
             "points": (0..j.points.len()).map(|k| self.point(k)).collect::<Vec<_>>(),
             "cautions": self.cautions,
             "not_modelled": self.case.not_modelled,
+            "geometry": layout(self.case),
             "resolved": self.case.resolved.to_json(),
         })
     }

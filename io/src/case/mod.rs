@@ -112,7 +112,7 @@ pub struct StrokesPlan {
 }
 
 /// Which results are wanted beside the summary, which is always written.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq)]
 pub struct OutputPlan {
     /// `trace.csv`.
     pub trace: bool,
@@ -120,6 +120,10 @@ pub struct OutputPlan {
     pub fields: bool,
     /// Pictures.
     pub pictures: bool,
+    /// `report.html`.
+    pub report: bool,
+    /// Width of the pictures on paper, m.
+    pub picture_width_m: f64,
 }
 
 /// A case that can be solved.

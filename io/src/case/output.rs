@@ -1,13 +1,14 @@
 //! `[accuracy]` and `[output]`.
 
-use lenzbore_solver::problem::{Accuracy, Quantity as Number, SnapshotPlan};
+use lenzbore_solver::problem::{Accuracy, Quantity as Number, SensibleRange, SnapshotPlan};
 
 use super::OutputPlan;
 use super::measures::LENGTH;
-use super::reader::{Reader, Section, wanted};
+use super::reader::{Reader, Section, Wanted, wanted};
 use super::resolved::{Origin, ResolvedValue};
 use super::tree::{Node, Value};
 use crate::message::{CaseFault, nearest};
+use crate::picture::COLUMN_WIDTH_M;
 use crate::units::{Kind, read_quantity};
 
 /// Reads `[accuracy]`, or fills its defaults.
@@ -21,8 +22,11 @@ pub(super) fn read_accuracy(reader: &mut Reader, section: &Section<'_>) -> Accur
     Accuracy { target_relative, levels, cells_across_wall }
 }
 
+/// A width on paper.
+const PICTURE_WIDTH: Wanted =
+    Wanted { kind: Kind::Length, range: SensibleRange { lowest: 0.05, highest: 1.2, zero: false, signed: false } };
 const WRITES: [&str; 5] = ["summary", "trace", "fields", "pictures", "report"];
-const WRITE_EXAMPLE: &str = "write = [\"summary\", \"trace\", \"fields\", \"pictures\"]";
+const WRITE_EXAMPLE: &str = "write = [\"summary\", \"trace\", \"fields\", \"pictures\", \"report\"]";
 const FIELDS_EXAMPLE: &str = "fields = \"every 20 mm\", \"every 5 ms\", [\"0.1 s\", \"0.2 s\"] or \"none\"";
 
 /// Reads `[output]`, or fills its defaults.
@@ -37,17 +41,20 @@ pub(super) fn read_output(reader: &mut Reader, section: &Section<'_>) -> (Output
     }
     let plan = write(reader, section);
     let snapshots = snapshots(reader, section, plan.fields);
-    (OutputPlan { fields: plan.fields && snapshots != SnapshotPlan::None, ..plan }, snapshots)
+    let picture_width_m =
+        reader.quantity_or(section, "picture_width", PICTURE_WIDTH, COLUMN_WIDTH_M, "one column of a page, 85 mm");
+    (OutputPlan { picture_width_m, fields: plan.fields && snapshots != SnapshotPlan::None, ..plan }, snapshots)
 }
 
 fn write(reader: &mut Reader, section: &Section<'_>) -> OutputPlan {
     if !section.table.has("write") {
-        let list = WRITES[..4].iter().map(|w| ResolvedValue::Text((*w).to_owned())).collect();
+        let list = WRITES.iter().map(|w| ResolvedValue::Text((*w).to_owned())).collect();
         let why = "all that apply".to_owned();
         reader.note(section, "write", ResolvedValue::List(list), "", Origin::Default { why });
-        return OutputPlan { trace: true, fields: true, pictures: true };
+        return OutputPlan { trace: true, fields: true, pictures: true, report: true, picture_width_m: COLUMN_WIDTH_M };
     }
-    let mut plan = OutputPlan { trace: false, fields: false, pictures: false };
+    let mut plan =
+        OutputPlan { trace: false, fields: false, pictures: false, report: false, picture_width_m: COLUMN_WIDTH_M };
     let Some(nodes) = reader.list(section, "write", WRITE_EXAMPLE) else { return plan };
     let mut noted = Vec::new();
     for node in nodes {
@@ -61,11 +68,7 @@ fn write(reader: &mut Reader, section: &Section<'_>) -> OutputPlan {
             "trace" => plan.trace = true,
             "fields" => plan.fields = true,
             "pictures" => plan.pictures = true,
-            "report" => {
-                let what = "the report page (write = [\"report\"])".to_owned();
-                let instead = Some("the summary and pictures are: \"summary\", \"pictures\"".to_owned());
-                reader.fault(node.place.clone(), CaseFault::NotModelled { what, instead });
-            }
+            "report" => plan.report = true,
             other => unknown_result(reader, node, other),
         }
         noted.push(ResolvedValue::Text(text.trim().to_owned()));
@@ -79,7 +82,7 @@ fn unknown_result(reader: &mut Reader, node: &Node, found: &str) {
     let fault = CaseFault::UnknownChoice {
         word: "write".to_owned(),
         found: found.to_owned(),
-        choices: WRITES[..4].iter().map(|w| (*w).to_owned()).collect(),
+        choices: WRITES.iter().map(|w| (*w).to_owned()).collect(),
         nearest: nearest(found, WRITES).map(str::to_owned),
     };
     reader.fault(node.place.clone(), fault);

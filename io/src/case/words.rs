@@ -123,7 +123,12 @@ pub const TABLES: [TableWords; 15] = [
         lists: &[],
     },
     TableWords { path: "accuracy", label: "[accuracy]", words: &["target", "levels", "cells_across_wall"], lists: &[] },
-    TableWords { path: "output", label: "[output]", words: &["write", "fields", "station"], lists: &["station"] },
+    TableWords {
+        path: "output",
+        label: "[output]",
+        words: &["write", "fields", "picture_width", "station"],
+        lists: &["station"],
+    },
     TableWords {
         path: "output.station",
         label: "[[output.station]]",

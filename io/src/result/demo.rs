@@ -24,6 +24,7 @@ use crate::picture::{ComparedPlot, PlotCurve, PlotPanel, PlotPoint};
 
 pub(crate) use super::demo_fields::fields;
 use super::header::{Program, ResultHeader};
+use crate::layout::Layout;
 
 /// Low-speed damping coefficient of the made-up brake, N s/m.
 pub(crate) const COEFFICIENT: f64 = 3.1;
@@ -40,6 +41,7 @@ pub(crate) fn header(title: &str) -> ResultHeader {
         digest: "3f6c".repeat(16),
         program: Program { name: "lenzbore".into(), version: "0.1.0".into() },
         resolved: json!({"wall": {"length": {"value": 0.12, "source": "case file"}}}),
+        geometry: Layout::default(),
         not_modelled: vec!["heating of the wall during the run".into()],
         independent: None,
         spread: None,

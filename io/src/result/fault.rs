@@ -85,6 +85,34 @@ pub enum IoFault {
         /// What the drawing library said.
         source: Box<dyn std::error::Error + Send + Sync>,
     },
+    /// A report is asked of a folder without a summary.
+    #[error("{} holds no summary.json, so there is nothing to report on: name the folder that a run has written", .folder.display())]
+    NoSummary {
+        /// The folder.
+        folder: PathBuf,
+    },
+    /// A file of a result could not be read.
+    #[error("{} could not be read: {source}", .path.display())]
+    Unread {
+        /// The file.
+        path: PathBuf,
+        /// What the system said.
+        source: io::Error,
+    },
+    /// A file of a result is not what a run writes.
+    #[error("{} is not as a run writes it: {why}", .path.display())]
+    Misread {
+        /// The file.
+        path: PathBuf,
+        /// What is amiss.
+        why: String,
+    },
+    /// The page is there already and nobody asked to replace it.
+    #[error("{} exists already: say --replace to write it again", .path.display())]
+    PageExists {
+        /// The page.
+        path: PathBuf,
+    },
     /// The user stopped the program while it wrote.
     #[error("stopped while writing; nothing was kept")]
     Interrupted,
@@ -94,7 +122,16 @@ impl IoFault {
     /// True where another command line would mend it (exit status 2), false where the machine or the program failed (3).
     #[must_use]
     pub fn is_of_the_input(&self) -> bool {
-        matches!(self, Self::Exists { .. } | Self::IsAFile { .. } | Self::NotAResult { .. } | Self::NoName { .. })
+        matches!(
+            self,
+            Self::Exists { .. }
+                | Self::IsAFile { .. }
+                | Self::NotAResult { .. }
+                | Self::NoName { .. }
+                | Self::NoSummary { .. }
+                | Self::Misread { .. }
+                | Self::PageExists { .. }
+        )
     }
 
     /// The same fault of another path, where it names one.
@@ -105,6 +142,8 @@ impl IoFault {
             Self::DiskFull { path } => Self::DiskFull { path: rename(&path) },
             Self::File { path, source } => Self::File { path: rename(&path), source },
             Self::FieldFile { path, source } => Self::FieldFile { path: rename(&path), source },
+            Self::Unread { path, source } => Self::Unread { path: rename(&path), source },
+            Self::Misread { path, why } => Self::Misread { path: rename(&path), why },
             other => other,
         }
     }

@@ -176,6 +176,26 @@ pub(crate) fn write_file(path: &Path, bytes: &[u8]) -> Result<(), IoFault> {
     write().map_err(|e| IoFault::from_file(path, e))
 }
 
+/// Writes `bytes` under another name beside `path` and puts it in its place, so that a reader sees the old file or the new one whole.
+///
+/// # Errors
+/// As [`write_file`].
+pub(crate) fn write_beside(path: &Path, bytes: &[u8]) -> Result<(), IoFault> {
+    let fault = |e| IoFault::from_file(path, e);
+    let parent = path.parent().filter(|p| !p.as_os_str().is_empty()).unwrap_or(Path::new("."));
+    let mut builder = tempfile::Builder::new();
+    builder.prefix(".lenzbore-");
+    #[cfg(unix)]
+    {
+        use std::os::unix::fs::PermissionsExt as _;
+        builder.permissions(fs::Permissions::from_mode(0o666));
+    }
+    let mut file = builder.tempfile_in(parent).map_err(fault)?;
+    file.write_all(bytes).and_then(|()| file.flush()).map_err(fault)?;
+    file.persist(path).map_err(|e| fault(e.error))?;
+    Ok(())
+}
+
 /// Absolute, with links followed where the folder exists, so that a link's target is replaced and not the link.
 fn resolve(target: &Path) -> Result<PathBuf, IoFault> {
     let resolved = if target.exists() { fs::canonicalize(target) } else { std::path::absolute(target) };

@@ -3,6 +3,8 @@
 use lenzbore_solver::spread::Spread;
 use serde_json::{Map, Value};
 
+use crate::layout::Layout;
+
 /// The program that computed a result.
 #[derive(Debug, Clone, PartialEq, Eq)]
 pub struct Program {
@@ -25,6 +27,8 @@ pub struct ResultHeader {
     pub program: Program,
     /// The case with every default and book value and its source.
     pub resolved: Value,
+    /// Where every body stands.
+    pub geometry: Layout,
     /// What the model leaves out.
     pub not_modelled: Vec<String>,
     /// A semi-analytic value to hold the figures against, where the case allows one.

@@ -34,6 +34,7 @@ pub fn ladder_summary(header: &ResultHeader, outcome: &LadderOutcome) -> Result<
     let of_the_run = outcome.top.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());
     put("not_modelled", header.not_modelled.clone().into());
+    put("geometry", json!(header.geometry));
     put("resolved", header.resolved.clone());
     Ok(Value::Object(top))
 }

@@ -10,24 +10,23 @@ use super::folder::PendingFolder;
 use super::header::ResultHeader;
 use super::ladder::{ladder_csv, ladder_summary};
 use super::names;
-use super::write::Written;
-use crate::picture;
+use super::write::{WriteOptions, Written};
+use crate::{picture, report};
 
-/// Writes `summary.json`, `ladder.csv` and, where asked for, the pictures `waterfall` and `error_map`; whole or not at all.
+/// Writes `summary.json`, `ladder.csv` and, where asked for, the pictures `waterfall` and `error_map` and the page; whole or not at all.
 ///
 /// # Errors
 /// As [`super::write()`].
 pub fn write_ladder(
     folder: &Path,
-    replace: bool,
-    pictures: bool,
+    options: &WriteOptions,
     header: &ResultHeader,
     outcome: &LadderOutcome,
     monitor: &dyn Monitor,
 ) -> Result<Written, IoFault> {
-    let pending = PendingFolder::begin(folder, replace)?;
+    let pending = PendingFolder::begin(folder, options.replace)?;
     let mut files = Vec::new();
-    let filled = fill(&pending, &mut files, pictures, header, outcome, monitor);
+    let filled = fill(&pending, &mut files, options, header, outcome, monitor);
     if let Err(fault) = filled {
         return Err(pending.in_users_words(fault));
     }
@@ -37,7 +36,7 @@ pub fn write_ladder(
 fn fill(
     pending: &PendingFolder,
     files: &mut Vec<String>,
-    pictures: bool,
+    options: &WriteOptions,
     header: &ResultHeader,
     outcome: &LadderOutcome,
     monitor: &dyn Monitor,
@@ -52,12 +51,17 @@ fn fill(
     };
     put(names::SUMMARY, format!("{:#}\n", ladder_summary(header, outcome)?).as_bytes())?;
     put(names::LADDER, ladder_csv(outcome)?.as_bytes())?;
-    if pictures {
+    if options.pictures {
         let map = picture::error_map(&header.title, outcome)?;
         for picture in picture::waterfall(&header.title, outcome).into_iter().chain(map) {
+            let picture = picture.at_width(options.picture_width_m);
             put(&format!("{}.svg", picture.name), picture.svg.as_bytes())?;
             put(&format!("{}.png", picture.name), &picture.png()?)?;
         }
+    }
+    if options.report {
+        let page = report::build(pending.path())?;
+        put(names::REPORT, page.as_bytes())?;
     }
     if monitor.cancelled() { Err(IoFault::Interrupted) } else { Ok(()) }
 }

@@ -22,6 +22,7 @@ mod write;
 mod xdmf;
 
 pub use fault::IoFault;
+pub(crate) use folder::write_beside;
 pub use frequency::{across_columns, frequency_columns};
 pub use hdf5::snapshot_arrays;
 pub use header::{Program, ResultHeader};

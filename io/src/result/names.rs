@@ -28,6 +28,8 @@ pub const LADDER: &str = "ladder.csv";
 pub const FIELDS: &str = "run.h5";
 /// Opens `run.h5` in a visualisation program.
 pub const FIELDS_INDEX: &str = "run.xdmf";
+/// The page for people, made of the other files.
+pub const REPORT: &str = "report.html";
 /// Every comparison of the published checks.
 pub const VALIDATION: &str = "validation.json";
 /// The study of the bands.

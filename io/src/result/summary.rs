@@ -63,6 +63,7 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     let of_the_run = outcome.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());
     put("not_modelled", header.not_modelled.clone().into());
+    put("geometry", json!(header.geometry));
     put("resolved", header.resolved.clone());
     Ok(Value::Object(top))
 }

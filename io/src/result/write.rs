@@ -14,10 +14,11 @@ use super::{
     stroke_columns, stroke_curve_columns, summary_text, temperature_columns, temperature_curve_columns, trace_columns,
     xdmf,
 };
-use crate::picture::{self, Picture};
+use crate::picture::{self, COLUMN_WIDTH_M, Picture};
+use crate::report;
 
 /// What to write; what does not apply to a run (no series, no fields, no curve) is left out without a word.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq)]
 pub struct WriteOptions {
     /// Put the result in the place of an older one.
     pub replace: bool,
@@ -29,12 +30,24 @@ pub struct WriteOptions {
     pub fields: bool,
     /// SVG and PNG pictures.
     pub pictures: bool,
+    /// `report.html`, made of the other files; without the summary there is none.
+    pub report: bool,
+    /// Width of the pictures on paper, m.
+    pub picture_width_m: f64,
 }
 
 impl Default for WriteOptions {
     /// Everything, and nothing replaced.
     fn default() -> Self {
-        Self { replace: false, summary: true, trace: true, fields: true, pictures: true }
+        Self {
+            replace: false,
+            summary: true,
+            trace: true,
+            fields: true,
+            pictures: true,
+            report: true,
+            picture_width_m: COLUMN_WIDTH_M,
+        }
     }
 }
 
@@ -90,7 +103,12 @@ fn fill(
         fields(sheaf, header, outcome)?;
     }
     if options.pictures {
-        pictures(sheaf, header, problem, outcome)?;
+        let all = pictures_of(header, problem, outcome)?;
+        pictures(sheaf, all, options.picture_width_m)?;
+    }
+    if options.report && options.summary {
+        let page = report::build(sheaf.pending.path())?;
+        sheaf.put(names::REPORT, page.as_bytes())?;
     }
     sheaf.pause()
 }
@@ -111,6 +129,12 @@ pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) 
     all.extend(picture::current_across(&header.title, outcome));
     all.extend(header.spread.as_ref().and_then(|s| picture::spread(&header.title, s)));
     all.push(picture::section(&header.title, problem, outcome)?);
+    if !header.geometry.wall.layers.is_empty() {
+        if outcome.fields.is_some() {
+            all.push(picture::drawing(&header.title, &header.geometry)?);
+        }
+        all.extend(picture::overview(&header.title, &header.geometry));
+    }
     Ok(all)
 }
 
@@ -171,8 +195,9 @@ fn fields(sheaf: &mut Sheaf<'_>, header: &ResultHeader, outcome: &Outcome) -> Re
     sheaf.put(names::FIELDS_INDEX, xdmf::xdmf(fields).as_bytes())
 }
 
-fn pictures(sheaf: &mut Sheaf<'_>, header: &ResultHeader, problem: &Problem, outcome: &Outcome) -> Result<(), IoFault> {
-    for picture in pictures_of(header, problem, outcome)? {
+fn pictures(sheaf: &mut Sheaf<'_>, all: Vec<Picture>, width_m: f64) -> Result<(), IoFault> {
+    for picture in all {
+        let picture = picture.at_width(width_m);
         sheaf.put(&format!("{}.svg", picture.name), picture.svg.as_bytes())?;
         sheaf.put(&format!("{}.png", picture.name), &picture.png()?)?;
     }

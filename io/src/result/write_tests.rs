@@ -50,7 +50,8 @@ fn a_curve_has_its_own_files() {
     let (problem, outcome) = demo::curve();
     let target = root.path().join("curve");
     write(&target, &WriteOptions::default(), &demo::header("Curve"), &problem, &outcome, &Unwatched).unwrap();
-    let expected = ["curve.csv", "drag_speed.png", "drag_speed.svg", "section.png", "section.svg", "summary.json"];
+    let expected =
+        ["curve.csv", "drag_speed.png", "drag_speed.svg", "report.html", "section.png", "section.svg", "summary.json"];
     assert_eq!(names_in(&target), expected);
 }
 
@@ -61,7 +62,15 @@ fn only_what_is_asked_is_written() {
     let options = WriteOptions { summary: false, fields: false, pictures: false, ..WriteOptions::default() };
     assert_eq!(write_free(&target, &options).unwrap().files, ["trace.csv"]);
     assert!(matches!(write_free(&target, &options), Err(IoFault::Exists { .. })));
-    let again = WriteOptions { replace: true, summary: true, trace: false, fields: false, pictures: false };
+    let again = WriteOptions {
+        replace: true,
+        summary: true,
+        trace: false,
+        fields: false,
+        pictures: false,
+        report: false,
+        ..WriteOptions::default()
+    };
     write_free(&target, &again).unwrap();
     assert_eq!(names_in(&target), ["summary.json"]);
 }

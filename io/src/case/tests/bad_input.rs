@@ -238,7 +238,6 @@ fn words_of_later_work_are_refused_as_not_modelled_yet() {
     check(&[
         ("", "[[output.station]]\nat = \"1 mm\"\n", "21:10", &["[[output.station]]", "not modelled yet"]),
         ("", "[[mover.iron]]\nlength = \"1 mm\"\n", "21:9", &["[[mover.iron]]", "not modelled yet"]),
-        ("", "[output]\nwrite = [\"summary\", \"report\"]\n", "22:21", &["the report page", "not modelled yet"]),
     ]);
 }
 

@@ -3,7 +3,9 @@
 mod colours;
 mod dimension;
 mod flux;
+mod metal;
 mod mover;
+mod overview;
 mod sample;
 mod sizes;
 mod view;
@@ -20,8 +22,11 @@ use super::scale::significant;
 use super::style::{LABEL, MARGIN, SMALL, letters};
 use super::svg::{Anchor, Stroke, Svg, Type, polygon};
 use super::units::Shown;
+use crate::layout::{BodyKind, Layout};
 use crate::result::IoFault;
 use flux::FluxLines;
+use metal::Metal;
+pub use overview::overview;
 use sample::Patch;
 use sizes::millimetres;
 use view::{Body, View};
@@ -31,6 +36,7 @@ const NAME: &str = "section";
 const WINDOW: Stroke = Stroke::full("#b8b8b8", 1.4);
 const CENTRE: Stroke = Stroke::dashed("#222222", 1.8, "34 7 4 7");
 const FLUX: Stroke = Stroke { colour: "#333333", width: 1.7, dash: "", opacity: 0.85 };
+const SPACER: Stroke = Stroke::dashed("#444444", 1.6, "14 7");
 const TICK: Stroke = Stroke::full("#444444", 1.8);
 /// Room for the heights on the left.
 const LEFT: f64 = 96.0;
@@ -43,11 +49,17 @@ pub fn section(heading: &str, problem: &Problem, outcome: &Outcome) -> Result<Pi
     let fields = outcome.fields.as_ref();
     let shown = fields.and_then(|f| strongest(f).map(|snapshot| (f, snapshot)));
     match shown {
-        None => drawing(heading, problem),
+        None => at_rest(heading, problem, None),
         Some((fields, snapshot)) => {
             let velocity = velocity(problem, &outcome.trace, snapshot.time_s);
-            Sheet { problem, position: snapshot.mover_position_m, velocity, field: Some((fields, snapshot)) }
-                .draw(heading)
+            Sheet {
+                problem,
+                position: snapshot.mover_position_m,
+                velocity,
+                field: Some((fields, snapshot)),
+                layout: None,
+            }
+            .draw(heading)
         }
     }
 }
@@ -56,10 +68,19 @@ pub fn section(heading: &str, problem: &Problem, outcome: &Outcome) -> Result<Pi
 ///
 /// # Errors
 /// As [`section`].
-pub fn drawing(heading: &str, problem: &Problem) -> Result<Picture, IoFault> {
+pub fn drawing(heading: &str, layout: &Layout) -> Result<Picture, IoFault> {
+    at_rest(heading, &layout.bodies(), Some(layout))
+}
+
+fn at_rest(heading: &str, problem: &Problem, layout: Option<&Layout>) -> Result<Picture, IoFault> {
     let body = Body::of(&problem.mover);
     let position = problem.wall.length_m().map_or(0.0, |length| 0.5 * length - 0.5 * (body.low + body.high));
-    Sheet { problem, position, velocity: 0.0, field: None }.draw(heading)
+    let position = match layout {
+        Some(Layout { start_m: Some(start), end_m: None, .. }) => *start,
+        _ => position,
+    };
+    let picture = Sheet { problem, position, velocity: 0.0, field: None, layout }.draw(heading)?;
+    Ok(if layout.is_some() { Picture { name: "parts", ..picture } } else { picture })
 }
 
 /// What is drawn.
@@ -68,6 +89,8 @@ struct Sheet<'a> {
     position: f64,
     velocity: f64,
     field: Option<(&'a Fields, &'a Snapshot)>,
+    /// Materials and spacers, where they are known.
+    layout: Option<&'a Layout>,
 }
 
 /// The currents to be coloured, layer by layer, and their largest magnitude.
@@ -120,7 +143,7 @@ impl Sheet<'_> {
         for (n, (cut, patch)) in cuts.iter().zip(&currents.patches).enumerate() {
             match patch {
                 Some(patch) if currents.largest > 0.0 => cut.paint(svg, view, patch, currents.largest)?,
-                _ => cut.hatch(svg, view, n % 2 == 0),
+                _ => cut.hatch(svg, view, n % 2 == 0, Metal::of(cut.layer(), self.layout)),
             }
         }
         Ok(())
@@ -134,6 +157,7 @@ impl Sheet<'_> {
             (view.left(), view.bottom()),
         ];
         mover::bodies(svg, self.problem, view, self.position);
+        self.paint_spacers(svg, view);
         if let Some(flux) = flux {
             let right_half = [(view.axis, view.top), window[1], window[2], (view.axis, view.bottom())];
             let clip = svg.clip(&polygon(&right_half));
@@ -144,6 +168,17 @@ impl Sheet<'_> {
             svg.again(&name, &wall::mirror(view));
         }
         svg.path(&polygon(&window), WINDOW);
+    }
+
+    /// Spacers in broken lines: a case gives their length alone.
+    fn paint_spacers(&self, svg: &mut Svg, view: &View) {
+        let Some(layout) = self.layout else { return };
+        let outer = overview::spacer_radius(layout);
+        for body in layout.mover.iter().filter(|b| matches!(b.kind, BodyKind::Spacer)) {
+            let middle = self.position + body.at_m;
+            let (top, bottom) = (view.y(middle + 0.5 * body.length_m), view.y(middle - 0.5 * body.length_m));
+            svg.rectangle(view.x(-outer), top, view.x(outer), bottom, "#ffffff", Some(SPACER));
+        }
     }
 
     fn subtitle(&self) -> String {
@@ -172,9 +207,23 @@ impl Sheet<'_> {
             let text = "current density positive: into the page on the right half, out of it on the left";
             entries.push((Swatch::None, text.to_owned()));
         }
+        if !coloured {
+            entries.push((Swatch::None, self.hatching()));
+        }
         let sizes = "sizes in millimetres";
         entries.push((Swatch::None, format!("{}; {sizes}", self.materials())));
         entries
+    }
+
+    /// Which hatching stands for which metal.
+    fn hatching(&self) -> String {
+        let mut metals: Vec<Metal> = self.problem.wall.layers.iter().map(|l| Metal::of(l, self.layout)).collect();
+        metals.sort_unstable();
+        metals.dedup();
+        let words: Vec<&str> = metals.iter().map(|m| m.words()).collect();
+        let spacers = self.layout.is_some_and(|l| l.mover.iter().any(|b| matches!(b.kind, BodyKind::Spacer)));
+        let spacers = if spacers { "; spacers in broken lines" } else { "" };
+        format!("hatched: {}{spacers}", words.join(", "))
     }
 
     /// The layers in words, inside out.

@@ -36,7 +36,7 @@ fn a_dipole_needs_no_body() {
 #[test]
 fn without_field_metals_are_hatched() {
     let (problem, _) = demo::free();
-    let mut picture = drawing("Latch damper, before anything is solved", &problem).unwrap();
+    let mut picture = at_rest("Latch damper, before anything is solved", &problem, None).unwrap();
     picture.name = "section_hatched";
     look::keep(&picture);
     assert!(picture.svg.contains("<pattern") && !picture.svg.contains("<image"));

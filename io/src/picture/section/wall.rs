@@ -4,6 +4,7 @@ use lenzbore_solver::outcome::{Fields, Snapshot};
 use lenzbore_solver::problem::{Extent, Layer, Problem};
 
 use super::colours::colour;
+use super::metal::Metal;
 use super::sample::Patch;
 use super::view::View;
 use crate::picture::svg::{Stroke, Svg, polygon, polyline};
@@ -101,20 +102,19 @@ impl Cut<'_> {
         Ok(())
     }
 
-    /// Hatching of both halves; neighbouring layers lean opposite ways.
-    pub(super) fn hatch(&self, svg: &mut Svg, view: &View, leans_right: bool) {
-        let name = svg.name("hatch");
-        let d = if leans_right { "M-2 16L16 -2M7 25L25 7" } else { "M-2 2L16 20M7 -7L25 11" };
-        svg.define(&format!(
-            "<pattern id=\"{name}\" width=\"18\" height=\"18\" patternUnits=\"userSpaceOnUse\">\
-             <rect width=\"18\" height=\"18\" fill=\"#f4efe6\"/>\
-             <path d=\"{d}\" stroke=\"#8a7a5c\" stroke-width=\"1.3\"/></pattern>"
-        ));
+    /// Hatching of both halves by family of metal; neighbouring layers lean opposite ways.
+    pub(super) fn hatch(&self, svg: &mut Svg, view: &View, leans_right: bool, metal: Metal) {
         let outline = self.outline(view);
         let mirrored: Vec<(f64, f64)> = outline.iter().map(|(x, y)| (2.0 * view.axis - x, *y)).collect();
-        for outline in [outline, mirrored] {
+        for (outline, leans_right) in [(outline, leans_right), (mirrored, !leans_right)] {
+            let name = metal.pattern(svg, leans_right);
             svg.area(&polygon(&outline), &format!("url(#{name})"), 1.0, None);
         }
+    }
+
+    /// The layer.
+    pub(super) fn layer(&self) -> &Layer {
+        self.layer
     }
 
     /// Faces, ends and break lines of both halves.
