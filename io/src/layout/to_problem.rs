@@ -10,11 +10,13 @@ impl Layout {
     pub(crate) fn bodies(&self) -> Problem {
         let extent = self.wall.length_m.map_or(Extent::Endless, |length_m| Extent::Finite { length_m });
         Problem {
-            wall: Wall { extent, layers: self.wall.layers.iter().map(layer).collect() },
-            mover: Mover { parts: self.mover.iter().filter_map(part).collect(), mass_kg: None },
+            wall: Wall { extent, layers: self.wall.layers.iter().map(layer).collect(), slots: 0 },
+            mover: Mover { parts: self.mover.iter().filter_map(part).collect(), mass_kg: None, recoil: None },
             travel: Travel::Steady { velocity_m_per_s: 0.0 },
             accuracy: Accuracy::default(),
             snapshots: SnapshotPlan::None,
+            stations: Vec::new(),
+            warming: None,
         }
     }
 }

@@ -177,7 +177,8 @@ fn summary(chart: &Chart) -> String {
     let unit = |unit: &str| if unit.is_empty() { String::new() } else { format!("\u{a0}{unit}") };
     let (ux, uy) = (unit(&chart.x.unit), unit(&chart.y.unit));
     let at = |(x, y): (&f64, &f64)| format!("{}{uy} at {}{ux}", significant(*y, 4), significant(*x, 3));
-    format!("Lowest {}, highest {}.", at(low), at(high))
+    let whose = if chart.lines.len() > 1 { format!("{}: lowest", line.name) } else { "Lowest".to_owned() };
+    format!("{whose} {}, highest {}.", at(low), at(high))
 }
 
 fn thinned(line: &mut Line) {

@@ -1,5 +1,7 @@
 //! Names of figures and columns in the words of people who did not compute them.
 
+use crate::explain;
+
 /// A figure: its name in results, its heading, and what it says.
 type Figure = (&'static str, &'static str, &'static str);
 
@@ -49,6 +51,8 @@ const COLUMNS: &[(&str, &str)] = &[
     ("time", "Time"),
     ("position", "Position of the mover"),
     ("heat", "Heat rate in the wall"),
+    ("drag_slotted", "Drag with slots"),
+    ("slot_factor", "Share of the drag that the slots leave"),
     ("current_density_peak", "Peak current density"),
     ("r", "Radius"),
     ("phase", "Phase ahead of the coils' current"),
@@ -70,7 +74,8 @@ pub(super) fn heading(name: &str) -> String {
 
 /// What a figure says, where that is known.
 pub(super) fn meaning(name: &str) -> Option<&'static str> {
-    FIGURES.iter().find(|f| f.0 == name).map(|f| f.2)
+    let explained = || explain::figure_meaning(name).map(|f| f.about);
+    FIGURES.iter().find(|f| f.0 == name).map(|f| f.2).or_else(explained)
 }
 
 /// The heading of a column, without unit.

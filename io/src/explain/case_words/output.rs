@@ -9,6 +9,8 @@ use crate::units::Kind;
 
 const INSTANT: Form =
     Form::Quantity(Kind::Time, SensibleRange { lowest: 1e-12, highest: 1e9, zero: true, signed: false });
+const PICTURE_WIDTH: Form =
+    Form::Quantity(Kind::Length, SensibleRange { lowest: 0.05, highest: 1.2, zero: false, signed: false });
 const TURNS: Form =
     Form::Quantity(Kind::Ratio, SensibleRange { lowest: 1e-3, highest: 1e7, zero: false, signed: false });
 const RESULT: Form = Form::Choice(&["summary", "trace", "fields", "pictures", "report"]);
@@ -50,7 +52,7 @@ pub(super) const OUTPUT: CaseTable = CaseTable {
             Form::List { of: &RESULT, least: 0, most: None },
             "which results are written beside the summary, which always is",
             "all that apply",
-            "write = [\"summary\", \"trace\", \"fields\", \"pictures\"]",
+            "write = [\"summary\", \"trace\", \"fields\", \"pictures\", \"report\"]",
         ),
         word(
             "fields",
@@ -61,6 +63,13 @@ pub(super) const OUTPUT: CaseTable = CaseTable {
             "instants at which the fields are kept: every so much travel or time, a list of instants, or \"none\"",
             "instants that the program chooses",
             "fields = \"every 20 mm\"",
+        ),
+        word(
+            "picture_width",
+            PICTURE_WIDTH,
+            "how wide the pictures are on paper; letters and lines grow in proportion",
+            "85 mm, one column of a page",
+            "picture_width = \"170 mm\"",
         ),
         word("station", Form::Tables, "gauges on the wall: not modelled yet, and refused", "none", ""),
     ],

@@ -60,7 +60,8 @@ pub fn overview(heading: &str, layout: &Layout) -> Option<Picture> {
     }
     if let Some(start) = layout.start_m {
         mover(&mut svg, &view, layout, start, false);
-        labels.push((start, format!("reference point at the start, {} mm", millimetres(start))));
+        let when = if layout.end_m.is_some() { " at the start" } else { "" };
+        labels.push((start, format!("reference point{when}, {} mm", millimetres(start))));
     }
     let reach = 1.25 * outer;
     for (name, gate) in ["first gate", "second gate"].iter().zip(&layout.gates_m) {
@@ -72,9 +73,11 @@ pub fn overview(heading: &str, layout: &Layout) -> Option<Picture> {
     write(&mut svg, &view, view.x(reach), labels);
     upright(&mut svg, (view.y(length), view.y(0.0)), view.x(-outer), view.x(-outer) - 40.0, &millimetres(length));
     let end = view.y(low) + 16.0 + SMALL;
-    let note = "sizes and heights in millimetres from the wall's lower end; the mover drawn through at the start, broken at the end";
+    let ends = "; the mover drawn through at the start, in broken lines at the end";
+    let both = layout.start_m.is_some() && layout.end_m.is_some();
+    let note = format!("sizes and heights in millimetres from the wall's lower end{}", if both { ends } else { "" });
     let mut y = end;
-    for line in crate::picture::letters::lines(note, SMALL, false, COLUMN - 2.0 * MARGIN) {
+    for line in crate::picture::letters::lines(&note, SMALL, false, COLUMN - 2.0 * MARGIN) {
         svg.text(MARGIN, y, &line, Type { colour: GREY, ..Type::plain(SMALL) });
         y += LEADING;
     }

@@ -24,16 +24,16 @@ function axisOf(axis) {
   return {
     title: { text: plain(withUnit(axis)), standoff: 8 }, type: axis.log ? "log" : "linear", gridcolor: RULE, linecolor: QUIET, mirror: true, showline: true,
     ticks: "inside", tickcolor: QUIET, zeroline: !axis.log, zerolinecolor: "#9aa3ad", automargin: true, exponentformat: "power", minexponent: 4,
-    ...(axis.log ? { dtick: undefined, minor: { ticks: "inside", showgrid: false } } : {}),
+    ...(axis.log ? { tickformat: "~g", minor: { ticks: "inside", showgrid: false } } : {}),
   };
 }
 
 function baseLayout(chart) {
   return {
-    font: FONT, paper_bgcolor: "#fff", plot_bgcolor: "#fff", margin: { l: 64, r: 16, t: 10, b: 50 }, hovermode: "closest", dragmode: "zoom",
+    font: FONT, paper_bgcolor: "#fff", plot_bgcolor: "#fff", margin: { l: 64, r: 16, t: 26, b: 50 }, hovermode: "closest", dragmode: "zoom",
     hoverlabel: { bgcolor: "#fff", bordercolor: QUIET, font: FONT, align: "left", namelength: -1 },
     xaxis: axisOf(chart.x), yaxis: axisOf(chart.y), showlegend: (chart.lines || []).length > 1,
-    legend: { orientation: "h", x: 0, xanchor: "left", y: -0.2, yanchor: "top", bgcolor: "rgba(0,0,0,0)" },
+    legend: { orientation: "h", traceorder: "normal", x: 0, xanchor: "left", y: -0.2, yanchor: "top", bgcolor: "rgba(0,0,0,0)" },
   };
 }
 

@@ -33,14 +33,21 @@ ready.then(
   },
 );
 
-// On paper every chart is as wide as the sheet lets it.
+// On paper every chart is as wide as the sheet lets it, and the resolved case is unfolded.
 const SHEET = 680;
+const MILLIMETRE = 96 / 25.4;
+function onPaper(place) {
+  if (place.id === "field-plot") return [0.58 * SHEET, 120];
+  if (place.id === "field-course") return [0.38 * SHEET, 60];
+  return place.closest(".pair") ? [SHEET / 2 - 12, 56] : [SHEET, 78];
+}
 addEventListener("beforeprint", () => {
+  for (const fold of document.querySelectorAll("#record details")) fold.open = true;
   for (const place of document.querySelectorAll(".js-plotly-plot")) {
-    const half = place.closest(".pair") ? SHEET / 2 - 12 : SHEET;
-    Plotly.relayout(place, { width: place.id === "field-plot" ? SHEET / 2 + 60 : place.id === "field-course" ? SHEET / 2 - 80 : half, autosize: false });
+    const [width, height] = onPaper(place);
+    Plotly.relayout(place, { width, height: height * MILLIMETRE, autosize: false });
   }
 });
 addEventListener("afterprint", () => {
-  for (const place of document.querySelectorAll(".js-plotly-plot")) Plotly.relayout(place, { width: undefined, autosize: true });
+  for (const place of document.querySelectorAll(".js-plotly-plot")) Plotly.relayout(place, { width: undefined, height: undefined, autosize: true });
 });

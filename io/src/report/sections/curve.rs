@@ -3,40 +3,38 @@
 use super::Section;
 use super::series::{chart, groups, parted, shown};
 use crate::report::chart::{Chart, Charts, Line, Look, Mark};
+use crate::report::folder_tables::Table;
 use crate::report::numbers::significant;
 use crate::report::source::Source;
 use crate::result::names;
 
-/// Columns by which a curve may be parted.
-const PARTED_BY: [&str; 4] = ["temperature", "wall_temperature", "mover_temperature", "position"];
-
-/// Drag against speed, with heat and current density below it.
+/// Drag against speed: over temperature first, where the case asks for that; heat and current density below.
 pub(super) fn section(source: &Source, charts: &mut Charts) -> Option<Section> {
     let table = source.table(names::CURVE)?;
-    let parts = PARTED_BY.iter().find_map(|stem| groups(table, stem)).filter(|g| g.len() > 1);
-    let finish = |chart: Chart| match &parts {
-        Some(parts) => parted(chart, parts),
-        None => chart,
-    };
-    let mut drag = finish(chart(table, "force-speed", "Drag against speed", "speed", &["drag"])?);
-    if parts.is_none() {
-        mark(source, &mut drag);
-        low_speed_law(source, &mut drag);
-    }
-    let mut html = charts.add(drag);
+    let mut html =
+        source.table(names::TEMPERATURE_CURVES).and_then(over_temperature).map(|c| charts.add(c)).unwrap_or_default();
+    let mut drag = chart(table, "force-speed", "Drag against speed", "speed", &["drag", "drag_slotted"])?;
+    mark(source, &mut drag);
+    low_speed_law(source, &mut drag);
+    html.push_str(&charts.add(drag));
     let mut small = String::new();
     for (id, title, stem) in [
         ("heat-speed", "Heat in the wall against speed", "heat"),
         ("current-speed", "Peak current density against speed", "current_density_peak"),
     ] {
-        if let Some(chart) = chart(table, id, title, "speed", &[stem]) {
-            small.push_str(&charts.add(finish(chart)));
-        }
+        small.push_str(&chart(table, id, title, "speed", &[stem]).map(|c| charts.add(c)).unwrap_or_default());
     }
     if !small.is_empty() {
         html.push_str(&format!("<div class=\"pair\">\n{small}</div>\n"));
     }
     Some(Section::new("force-speed", "Force against speed", html))
+}
+
+/// A line a temperature.
+fn over_temperature(table: &Table) -> Option<Chart> {
+    let temperatures = groups(table, "temperature")?;
+    let drag = chart(table, "force-speed-temperature", "Drag against speed at each temperature", "speed", &["drag"])?;
+    Some(parted(drag, &temperatures))
 }
 
 /// Points out the greatest drag.

@@ -16,6 +16,7 @@ mod regime;
 mod series;
 mod spread;
 mod strokes;
+mod sweeps;
 mod travel;
 
 use super::chart::Charts;
@@ -50,8 +51,11 @@ pub(super) fn all(source: &Source, charts: &mut Charts) -> Result<Vec<Section>, 
     out.extend(cautions::section(source));
     out.extend(drawing::section(source)?);
     out.extend(curve::section(source, charts));
+    out.extend(sweeps::temperatures(source, charts));
+    out.extend(sweeps::positions(source, charts));
     out.extend(travel::section(source, charts));
     out.extend(strokes::section(source, charts));
+    out.extend(sweeps::strokes(source, charts));
     out.extend(frequency::section(source, charts));
     out.extend(field::section(source, charts)?);
     out.extend(ladder::section(source, charts));

@@ -14,7 +14,10 @@ use crate::report::{thin, words};
 use crate::result::names;
 
 /// Parts of the summary that have sections of their own, or stand in the head of the page.
-const KNOWN_PARTS: [&str; 41] = [
+const KNOWN_PARTS: [&str; 44] = [
+    "temperatures",
+    "positions",
+    "stroke_curve",
     "title",
     "program",
     "record",
@@ -58,7 +61,11 @@ const KNOWN_PARTS: [&str; 41] = [
     "points",
 ];
 /// Tables that have sections of their own.
-const KNOWN_TABLES: [&str; 8] = [
+const KNOWN_TABLES: [&str; 12] = [
+    names::TEMPERATURES,
+    names::TEMPERATURE_CURVES,
+    names::POSITIONS,
+    names::STROKE_CURVE,
     names::TRACE,
     names::CURVE,
     names::FREQUENCY,

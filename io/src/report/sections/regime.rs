@@ -3,19 +3,18 @@
 use serde_json::Value;
 
 use super::Section;
+use crate::explain;
 use crate::report::escape::text;
 use crate::report::numbers::{Unit, significant, with_band};
 use crate::report::source::Source;
 use crate::report::table::{Cell, HtmlTable};
 use crate::report::words;
 
-/// Known numbers of the regime and what they mean.
-const NUMBERS: [(&str, &str); 5] = [
-    ("thickness_ratio", "wall thickness over bore radius; a quick thin-wall model needs it small"),
-    ("gap_ratio", "running clearance over bore radius"),
-    ("magnetic_reynolds", "magnetic Reynolds number μ0 σ w v: the wall's own field matters from about 0.3 up"),
-    ("depth_ratio", "skin or wake depth over wall thickness; below 1 the current does not fill the wall"),
-    ("speed_m_per_s", "the speed that these hold for, m/s"),
+/// Names of the regime's numbers that need more than their underscores taken out.
+const NAMES: [(&str, &str); 3] = [
+    ("magnetic_reynolds", "Magnetic Reynolds number"),
+    ("depth_ratio", "Depth over thickness"),
+    ("speed_m_per_s", "Speed, m/s"),
 ];
 
 /// The section.
@@ -29,13 +28,10 @@ fn regime(regime: &Value) -> Option<String> {
     let regime = regime.as_object()?;
     let mut table = HtmlTable::new("Regime", &["number", "value", "what it says"]);
     for (key, value) in regime {
-        let meaning = NUMBERS.iter().find(|n| n.0 == key).map_or("", |n| n.1);
+        let meaning = explain::KEYS.iter().find(|k| k.0 == key).map_or("", |k| k.1);
+        let name = NAMES.iter().find(|n| n.0 == key).map_or_else(|| words::plain(key), |n| n.1.to_owned());
         let shown = value.as_f64().map_or_else(|| "\u{2013}".to_owned(), |x| significant(x, 4));
-        table.row(&[
-            Cell::Text(words::plain(key.trim_end_matches("_m_per_s"))),
-            Cell::Number(shown),
-            Cell::text(meaning),
-        ]);
+        table.row(&[Cell::Text(name), Cell::Number(shown), Cell::text(meaning)]);
     }
     Some(table.html())
 }
