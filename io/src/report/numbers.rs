@@ -28,7 +28,7 @@ impl Unit {
             "J/m3" if largest >= 1e6 => Self::plain("J/cm³", 1e-6),
             "K" => Self { text: "°C".to_owned(), factor: 1.0, offset: -273.15 },
             "deg" => Self::plain("°", 1.0),
-            "s" if largest >= 1.0 => Self::plain("s", 1.0),
+            "s" if largest >= 0.1 => Self::plain("s", 1.0),
             "S/m" => Self::plain("MS/m", 1e-6),
             "N" | "J" | "W" | "s" | "T" | "V" | "A" | "Hz" | "H" | "Wb" | "ohm" | "Pa" | "N s/m" | "N/m" | "A/m" => {
                 Self::prefixed(si, largest)

@@ -38,7 +38,12 @@ fn accuracy(source: &Source) -> Option<String> {
         )
     });
     Some(if accuracy.get("met")?.as_bool()? {
-        format!("Every headline figure is computed to \u{b1} {target} or better, as was asked for.{widest}")
+        let local = if source.figure("current_density_peak").is_some() {
+            " (the peak current density, the field at one point, to a hundred times that)"
+        } else {
+            ""
+        };
+        format!("Every headline figure is computed to \u{b1} {target} or better, as was asked for{local}.{widest}")
     } else {
         let advice = accuracy.get("advice").and_then(Value::as_str).unwrap_or("");
         format!("The accuracy that was asked for, \u{b1} {target}, was missed.{widest} {advice}")
@@ -49,7 +54,7 @@ fn card(name: &str, figure: &Value, left_out: &str) -> Option<String> {
     let figure = figure.as_object()?;
     let value = figure.get("value")?.as_f64()?;
     let band = figure.get("band").and_then(Value::as_f64).unwrap_or(0.0);
-    let unit = Unit::for_values(figure.get("unit").and_then(Value::as_str).unwrap_or(""), value);
+    let unit = shown_unit(name, figure.get("unit").and_then(Value::as_str).unwrap_or(""), value);
     let (shown, _) = with_band(unit.of(value), unit.width(band));
     let mut html = format!(
         "<article class=\"card\" id=\"figure-{}\"><h3>{}</h3>\n<p class=\"value\">{}<span class=\"unit\">{}</span></p>\n",
@@ -75,6 +80,12 @@ fn card(name: &str, figure: &Value, left_out: &str) -> Option<String> {
         text(left_out)
     );
     Some(html)
+}
+
+/// A figure's unit; multiples of standard gravity are pure numbers in results.
+fn shown_unit(name: &str, si: &str, value: f64) -> Unit {
+    let unit = Unit::for_values(si, value);
+    if name == "felt_acceleration_peak" { Unit { text: "g\u{2080}".to_owned(), ..unit } } else { unit }
 }
 
 /// The numerical line: how exactly the equations were solved.
