@@ -61,19 +61,19 @@ fn the_example_writes_tables_fields_and_pictures() {
     // Resistance is the winding's 1.4 ohm and what the wall adds; heat gives the same.
     let last: Vec<f64> = table.lines().last().unwrap().split(',').map(|c| c.parse().unwrap()).collect();
     assert!((last[1] - 1.4 - last[4]).abs() < 1e-12 && (last[8] / last[4] - 1.0).abs() < 1e-5, "{last:?}");
-    readme(&summary);
+    guide(&summary);
 }
 
-/// The figures in the README lie within the bands of those just computed.
-fn readme(summary: &Value) {
-    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
+/// The figures in the guide lie within the bands of those just computed.
+fn guide(summary: &Value) {
+    let text = std::fs::read_to_string(root().join("io/guide/src/case/coil-probe.md")).unwrap();
     let (_, block) = text.split_once("Probe coil in a brass tube\nended: settled").unwrap();
     let mut shown = 0;
     for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
         let words: Vec<&str> = line.split_whitespace().collect();
         let value: f64 = words[1].parse().unwrap();
         let apart = (value - figure(summary, words[0])).abs();
-        assert!(apart <= 2.1 * band(summary, words[0]), "README.md shows {} = {value}: {apart} away", words[0]);
+        assert!(apart <= 2.1 * band(summary, words[0]), "the guide shows {} = {value}: {apart} away", words[0]);
         shown += 1;
     }
     assert_eq!(shown, 3);

@@ -340,19 +340,19 @@ fn malformed_tables_are_refused_with_places() {
     assert!(ran.errors.contains("no such file"), "{}", ran.errors);
 }
 
-/// The README's example, word for word.
+/// The guide's example, word for word.
 #[test]
-fn the_readme_shows_what_the_example_gives() {
+fn the_guide_shows_what_the_example_gives() {
     let bench = Bench::new();
     let [case, table] = ["arrest-sleeve.toml", "arrest-sleeve-calculator.csv"].map(|f| root().join("examples").join(f));
     let words = ["compare", case.to_str().unwrap(), table.to_str().unwrap(), "--unsafe", "high", "--out", "result"];
     let ran = bench.run(&words);
     assert_eq!(ran.status, Some(1), "{}", ran.errors);
-    let readme = std::fs::read_to_string(root().join("README.md")).unwrap();
+    let guide = std::fs::read_to_string(root().join("io/guide/src/judge/compare.md")).unwrap();
     let summary = read_json(&bench.path("result/summary.json"));
     let reasons = summary["reasons"].as_array().unwrap().iter().map(|r| r.as_str().unwrap());
     for text in [summary["sentence"].as_str().unwrap()].into_iter().chain(reasons) {
-        assert!(readme.contains(text), "README.md lacks: {text}");
+        assert!(guide.contains(text), "the guide lacks: {text}");
         assert!(ran.output.contains(text));
     }
 }

@@ -137,10 +137,10 @@ fn slotted_brake_has_a_curve() {
     assert_eq!(basis, "approximation");
     let first = &summary["curve"][0];
     assert!((first["slot_factor"].as_f64().unwrap() - share).abs() < 1e-4 * share);
-    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
+    let text = std::fs::read_to_string(root().join("io/guide/src/case/slots.md")).unwrap();
     assert!(
         text.contains("slot_factor_low_speed                     0.3681        +/- 0.0039"),
-        "README.md shows the share"
+        "the guide shows the share"
     );
 }
 
@@ -217,6 +217,8 @@ fn every_example_is_tested_and_can_be_checked() {
         "coil-probe",
         "latch-damper",
         "ring-carriage",
+        "ring-stack",
+        "slotted-brake",
         "steel-jacket-traverse",
         "stroke-damper",
         "two-layer-steady",

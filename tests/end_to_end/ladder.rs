@@ -1,4 +1,4 @@
-//! `lenzbore ladder`: its folder, its top, what it names, and what the README shows of it.
+//! `lenzbore ladder`: its folder, its top, what it names, and what the guide shows of it.
 
 use serde_json::Value;
 
@@ -97,15 +97,15 @@ recoil_permeability = 1
 outer_diameter = "16 mm"
 length = "16 mm""#;
 
-/// The README's ladder is what this version gives: figures within their bands, rungs to the digits shown (coupled rings and
+/// The guide's ladder is what this version gives: figures within their bands, rungs to the digits shown (coupled rings and
 /// what stands above them to 1e-3 of the figure).
 #[test]
-fn the_readme_shows_this_ladder() {
+fn the_guide_shows_this_ladder() {
     let bench = Bench::new();
     let case = root().join("examples/arrest-sleeve.toml");
     let ladder = bench.succeed(&["ladder", case.to_str().unwrap(), "--json", "--out", "result"]).json();
-    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
-    let (_, after) = text.split_once("## What the simpler models cost").unwrap();
+    let text = std::fs::read_to_string(root().join("io/guide/src/judge/ladder.md")).unwrap();
+    let (_, after) = text.split_once("# What simpler models cost").unwrap();
     let block = after.split("```").nth(1).unwrap();
     let mut name = "";
     let mut shown = 0;
@@ -121,7 +121,7 @@ fn the_readme_shows_this_ladder() {
             let found = restored.iter().find(|v| line.trim_start().starts_with(v["effect"].as_str().unwrap())).unwrap();
             let found = found["value"].as_f64().unwrap();
             let value: f64 = line[34..].split_whitespace().next().unwrap().parse().unwrap();
-            assert!((value / found - 1.0).abs() < 1e-3, "README shows {line}; now {found}");
+            assert!((value / found - 1.0).abs() < 1e-3, "the guide shows {line}; now {found}");
             shown += 1;
         }
     }

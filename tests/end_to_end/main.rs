@@ -14,6 +14,7 @@ mod commands;
 mod compare;
 mod examples;
 mod folders;
+mod guide;
 mod interruption;
 mod ladder;
 mod materials;

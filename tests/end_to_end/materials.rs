@@ -145,11 +145,11 @@ fn an_own_number_without_source_is_refused_where_it_stands() {
     }
 }
 
-/// The README shows what the program says, and its own material can be read.
+/// The guide shows what the program says, and its own material can be read.
 #[test]
-fn the_readme_shows_a_grade_and_an_own_material() {
-    let readme = std::fs::read_to_string(root().join("README.md")).unwrap();
-    let (_, section) = readme.split_once("## Materials as bought").unwrap();
+fn the_guide_shows_a_grade_and_an_own_material() {
+    let guide = std::fs::read_to_string(root().join("io/guide/src/case/materials.md")).unwrap();
+    let (_, section) = guide.split_once("# Materials and temperature").unwrap();
     let block = |fence: &str| section.split_once(fence).unwrap().1.split_once("```").unwrap().0;
     let bench = Bench::new();
     assert_eq!(block("```text\n"), bench.succeed(&["materials", "Cu-DHP"]).output);

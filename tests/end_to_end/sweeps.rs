@@ -60,12 +60,12 @@ fn a_curve_over_temperature_follows_conductivity_and_remanence() {
     }
 }
 
-/// The README shows this version's table of temperatures: each damping coefficient lies within twice its band of the one just computed.
+/// The guide shows this version's table of temperatures: each damping coefficient lies within twice its band of the one just computed.
 #[test]
-fn the_readme_shows_the_curve_over_temperature() {
+fn the_guide_shows_the_curve_over_temperature() {
     let (summary, _bench) = curve(RINGS, &["curve.positions=[\"80 mm\"]"]);
-    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
-    let (_, block) = text.split_once("temperature degC    damping N s/m").expect("the README shows the table");
+    let text = std::fs::read_to_string(root().join("io/guide/src/case/damper.md")).unwrap();
+    let (_, block) = text.split_once("temperature degC    damping N s/m").expect("the guide shows the table");
     let shown: Vec<Vec<f64>> = block
         .lines()
         .skip(1)
@@ -75,9 +75,9 @@ fn the_readme_shows_the_curve_over_temperature() {
     assert_eq!(shown.len(), 3);
     for (k, row) in shown.iter().enumerate() {
         let (value, half) = at(&summary, k, "damping_coefficient_zero_speed");
-        assert!((row[1] - value).abs() <= 2.1 * half, "README.md shows {} for {value}", row[1]);
+        assert!((row[1] - value).abs() <= 2.1 * half, "the guide shows {} for {value}", row[1]);
         let (speed, half) = at(&summary, k, "critical_speed");
-        assert!((row[3] - speed).abs() <= 2.1 * half, "README.md shows {} m/s for {speed}", row[3]);
+        assert!((row[3] - speed).abs() <= 2.1 * half, "the guide shows {} m/s for {speed}", row[3]);
     }
 }
 

@@ -237,22 +237,22 @@ fn what_cannot_be_varied_is_refused() {
     assert_eq!(bench.entries(), ["close.toml", "none.toml"], "nothing is written");
 }
 
-/// Each spread that the README shows is the one just computed, to a hundredth of a per cent; and the ranking is as shown.
+/// Each spread that the guide shows is the one just computed, to a hundredth of a per cent; and the ranking is as shown.
 #[test]
-fn the_readme_shows_what_the_example_gives() {
+fn the_guide_shows_what_the_example_gives() {
     let bench = Bench::new();
     let case = root().join("examples/arrest-sleeve-tolerances.toml");
     let summary = bench.succeed(&["curve", case.to_str().unwrap(), "--json", "--out", "result"]).json();
-    let readme = std::fs::read_to_string(root().join("README.md")).unwrap();
+    let guide = std::fs::read_to_string(root().join("io/guide/src/case/tolerances.md")).unwrap();
     let mut shown = 0;
-    for line in readme.lines().filter(|l| l.contains(" 95 %: -")) {
+    for line in guide.lines().filter(|l| l.contains(" 95 %: -")) {
         let name = line.split_whitespace().next().unwrap();
         let numbers: Vec<f64> =
             line.split_once("95 %:").unwrap().1.split_whitespace().filter_map(|w| w.parse().ok()).collect();
         let value = figure(&summary, name);
         for (number, what) in numbers.iter().zip(["minus", "plus", "worst_minus", "worst_plus"]) {
             let found = 100.0 * spread_of(&summary, name, what) / value;
-            assert!((number.abs() - found.abs()).abs() < 0.01, "README.md shows {what} of {name} = {number}: {found}");
+            assert!((number.abs() - found.abs()).abs() < 0.01, "the guide shows {what} of {name} = {number}: {found}");
         }
         assert_eq!(numbers.len(), 4);
         shown += 1;
@@ -260,6 +260,6 @@ fn the_readme_shows_what_the_example_gives() {
     assert_eq!(shown, summary["figures"].as_object().unwrap().len());
     for (place, entry) in summary["spread"]["measure_better_first"].as_array().unwrap().iter().take(3).enumerate() {
         let row = format!("[{}] {}", place + 1, entry["word"].as_str().unwrap());
-        assert!(readme.contains(&row), "README.md lacks {row}");
+        assert!(guide.contains(&row), "the guide lacks {row}");
     }
 }

@@ -96,12 +96,12 @@ fn the_study_of_the_bands_is_repeated_by_its_seed() {
     assert_eq!(study("b").json()["errors"], json["errors"]);
 }
 
-/// The README's lines are what this version says, but for digits below the limits.
+/// The guide's lines are what this version says, but for digits below the limits.
 #[test]
-fn the_readme_shows_what_validate_says() {
-    let readme = std::fs::read_to_string(root().join("README.md")).unwrap();
-    let (head, _) = readme.split_once("verdict            figure").unwrap();
-    let block = &readme[head.rfind("```text").unwrap()..];
+fn the_guide_shows_what_validate_says() {
+    let guide = std::fs::read_to_string(root().join("io/guide/src/checks/about.md")).unwrap();
+    let (head, _) = guide.split_once("verdict            figure").unwrap();
+    let block = &guide[head.rfind("```text").unwrap()..];
     let shown: Vec<Vec<&str>> = block.lines().skip(1).take(4).map(columns).collect();
     let mut words = vec!["validate"];
     for line in &shown[1..] {
@@ -112,11 +112,11 @@ fn the_readme_shows_what_validate_says() {
     assert_eq!(shown[0], said[0]);
     for (shown, said) in shown.iter().zip(&said).skip(1) {
         for column in [0, 1, 2, 3, 7, 8, 9] {
-            assert_eq!(shown[column], said[column], "README.md shows {shown:?}");
+            assert_eq!(shown[column], said[column], "the guide shows {shown:?}");
         }
         let number = |cell: &str| cell.parse::<f64>().unwrap();
         let apart = (number(shown[4]) - number(said[4])).abs();
-        assert!(apart <= number(said[7]), "README.md shows {shown:?}, the program says {said:?}");
+        assert!(apart <= number(said[7]), "the guide shows {shown:?}, the program says {said:?}");
     }
 }
 
