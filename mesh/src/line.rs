@@ -10,6 +10,23 @@ const MOST_CELLS: usize = 200_000;
 const PANELS_PER_CELL: f64 = 3.0;
 
 /// A planned line: segments between breakpoints, each with an even number of cells at the coarsest level.
+///
+/// ```
+/// use lenzbore_mesh::{Anchor, PlannedLine, Refinement, SizeLaw};
+/// // From 0.1 m at s = 1 m on, sizes grow by a quarter of the distance: dx/ds = 1/(0.1 + (s - 1)/4), in all 4 ln(23.5) = 12.628 cells
+/// // to s = 10 m (by hand), and 14 is the next even number.
+/// let law = SizeLaw { growth: 0.25, anchors: vec![Anchor { position_m: 1.0, size_m: 0.1 }], caps: vec![] };
+/// let plan = PlannedLine::new(&[1.0, 10.0], &law)?;
+/// assert_eq!(plan.cells(), 14);
+/// // Level 1.5 has 21 cells on the same map: every third node of it is every second of the coarsest.
+/// let levels = Refinement::first(2);
+/// let (coarse, finer) = (plan.nodes(levels[0]), plan.nodes(levels[1]));
+/// assert_eq!((coarse.len(), finer.len()), (15, 22));
+/// assert!((coarse.nodes()[4] - finer.nodes()[6]).abs() < 1e-12);
+/// // The map in closed form: s(x) = 1 + 0.4 (23.5^(x/14) - 1).
+/// assert!((coarse.nodes()[4] - (1.0 + 0.4 * (23.5_f64.powf(4.0 / 14.0) - 1.0))).abs() < 1e-9);
+/// # Ok::<(), lenzbore_mesh::MeshFault>(())
+/// ```
 #[derive(Debug, Clone)]
 pub struct PlannedLine {
     segments: Vec<Segment>,
@@ -127,6 +144,14 @@ fn even_at_least(cells: f64) -> Option<usize> {
 }
 
 /// The nodes of one line at one level, strictly increasing, m.
+///
+/// ```
+/// use lenzbore_mesh::NodeLine;
+/// let line = NodeLine::from_nodes(vec![0.0, 1.0, 3.0])?;
+/// // Half of each neighbouring cell.
+/// assert_eq!((line.dual(0), line.dual(1), line.dual(2)), (0.5, 1.5, 1.0));
+/// # Ok::<(), lenzbore_mesh::MeshFault>(())
+/// ```
 #[derive(Debug, Clone, PartialEq)]
 pub struct NodeLine {
     nodes: Vec<f64>,

@@ -55,6 +55,41 @@ use problem::{Extent, Problem, Travel};
 
 /// Solves what the problem's law of travel asks.
 ///
+/// A dipole of 1 A m2 at 5 m/s in an endless tube:
+///
+/// ```
+/// use lenzbore_solver::solve;
+/// use lenzbore_solver::monitor::Unwatched;
+/// use lenzbore_solver::problem::{Accuracy, Extent, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall};
+/// use lenzbore_solver::sources::Source;
+/// let layer = Layer {
+///     name: "tube".into(),
+///     inner_radius_m: 10.5e-3,
+///     outer_radius_m: 12.5e-3,
+///     from_m: 0.0,
+///     to_m: 0.0,
+///     conductivity_s_per_m: 58e6,
+///     relative_permeability: 1.0,
+/// };
+/// let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
+/// let source = Source::Dipole { moment_a_m2: 1.0 };
+/// let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// let problem = Problem {
+///     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
+///     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },
+///     travel: Travel::Steady { velocity_m_per_s: 5.0 },
+///     accuracy: Accuracy::default(),
+///     snapshots: SnapshotPlan::None,
+///     stations: Vec::new(),
+///     warming: None,
+/// };
+/// let outcome = solve(&problem, &Unwatched)?;
+/// let drag = outcome.figures.iter().find(|f| f.name == "drag").expect("steady travel has a drag");
+/// // The Fourier-Bessel integral, computed independently of this program: 2.212929281 N.
+/// assert!((drag.value - 2.212_929_281).abs() < drag.band && drag.band < 1e-5, "{} +/- {}", drag.value, drag.band);
+/// # Ok::<(), lenzbore_solver::fault::SolveFault>(())
+/// ```
+///
 /// # Errors
 /// See [`SolveFault`].
 pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
@@ -74,6 +109,43 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
 }
 
 /// Drag against speed with settled fields; a finite wall is taken as endless by the caller.
+///
+/// The dipole of [`solve`], at two speeds:
+///
+/// ```
+/// use lenzbore_solver::drag_curve;
+/// # use lenzbore_solver::monitor::Unwatched;
+/// # use lenzbore_solver::problem::{Accuracy, Extent, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall};
+/// # use lenzbore_solver::sources::Source;
+/// # let layer = Layer {
+/// #     name: "tube".into(),
+/// #     inner_radius_m: 10.5e-3,
+/// #     outer_radius_m: 12.5e-3,
+/// #     from_m: 0.0,
+/// #     to_m: 0.0,
+/// #     conductivity_s_per_m: 58e6,
+/// #     relative_permeability: 1.0,
+/// # };
+/// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
+/// # let source = Source::Dipole { moment_a_m2: 1.0 };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let problem = Problem {
+/// #     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
+/// #     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },
+/// #     travel: Travel::Steady { velocity_m_per_s: 5.0 },
+/// #     accuracy: Accuracy::default(),
+/// #     snapshots: SnapshotPlan::None,
+/// #     stations: Vec::new(),
+/// #     warming: None,
+/// # };
+/// let outcome = drag_curve(&problem, &[0.1, 100.0], &Unwatched)?;
+/// let curve = outcome.curve.expect("a curve");
+/// // The same integral: 0.047203004 N and 2.574114186 N.
+/// for (point, exact) in curve.points.iter().zip([0.047_203_004, 2.574_114_186]) {
+///     assert!((point.drag_newton - exact).abs() < point.band_newton + 5e-10, "{} {exact}", point.drag_newton);
+/// }
+/// # Ok::<(), lenzbore_solver::fault::SolveFault>(())
+/// ```
 ///
 /// # Errors
 /// See [`SolveFault`].
@@ -102,6 +174,42 @@ pub fn small_strokes(
 /// Damping coefficient as the speed vanishes, with the reference point at each of `positions_m`, in a finite wall; the law of travel takes no
 /// part in it.
 ///
+/// The dipole of [`solve`] in a wall of 0.6 m: at the end half of the wall is missing, and half of the damping.
+///
+/// ```
+/// use lenzbore_solver::damping_against_position;
+/// # use lenzbore_solver::monitor::Unwatched;
+/// # use lenzbore_solver::problem::{Accuracy, Extent, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Wall};
+/// # use lenzbore_solver::sources::Source;
+/// # let layer = Layer {
+/// #     name: "tube".into(),
+/// #     inner_radius_m: 10.5e-3,
+/// #     outer_radius_m: 12.5e-3,
+/// #     from_m: 0.0,
+/// #     to_m: 0.6,
+/// #     conductivity_s_per_m: 58e6,
+/// #     relative_permeability: 1.0,
+/// # };
+/// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
+/// # let source = Source::Dipole { moment_a_m2: 1.0 };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let problem = Problem {
+/// #     wall: Wall { slots: 0, extent: Extent::Finite { length_m: 0.6 }, layers: vec![layer] },
+/// #     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },
+/// #     travel: Travel::Steady { velocity_m_per_s: 5.0 },
+/// #     accuracy: Accuracy::default(),
+/// #     snapshots: SnapshotPlan::None,
+/// #     stations: Vec::new(),
+/// #     warming: None,
+/// # };
+/// let outcome = damping_against_position(&problem, &[0.3, 0.0], &Unwatched)?;
+/// let [middle, end] = outcome.sweeps.positions[..] else { panic!("two positions") };
+/// // 0.1 m/s is slow enough for 0.047203004 N / 0.1 m/s within 1e-3; the halves are exact.
+/// assert!((middle.damping / 0.472_03 - 1.0).abs() < 1e-3, "{}", middle.damping);
+/// assert!((end.damping / middle.damping - 0.5).abs() < 1e-5, "{}", end.damping);
+/// # Ok::<(), lenzbore_solver::fault::SolveFault>(())
+/// ```
+///
 /// # Errors
 /// See [`SolveFault`].
 pub fn damping_against_position(
@@ -127,6 +235,20 @@ pub fn settled_stroke(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcom
 
 /// A wall's currents as `terms` first-order lags, fitted to small strokes over frequency; `None` with fewer points than terms, or where
 /// nothing damps.
+///
+/// ```
+/// use lenzbore_solver::lumped_model;
+/// use lenzbore_solver::outcome::SmallStroke;
+/// // One lag, c = 3 N s/m and tau = 2 ms, in closed form: damping c / (1 + x^2), stiffness omega c x / (1 + x^2), x = omega tau.
+/// let at = |frequency_hz: f64| {
+///     let omega = std::f64::consts::TAU * frequency_hz;
+///     let x = omega * 2e-3;
+///     let (damping, stiffness) = (3.0 / (1.0 + x * x), omega * 3.0 * x / (1.0 + x * x));
+///     SmallStroke { frequency_hz, stiffness, stiffness_band: 0.0, damping, damping_band: 0.0 }
+/// };
+/// let model = lumped_model(&[10.0, 50.0, 200.0].map(at), 1).expect("three points suffice");
+/// assert!((model.terms[0].damping_n_s_per_m - 3.0).abs() < 1e-6 && (model.terms[0].lag_s - 2e-3).abs() < 1e-9);
+/// ```
 #[must_use]
 pub fn lumped_model(points: &[outcome::SmallStroke], terms: usize) -> Option<outcome::LumpedModel> {
     march::lumped_model(points, terms)

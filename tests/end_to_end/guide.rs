@@ -13,7 +13,7 @@ use lenzbore_validation::checks;
 use crate::rig::{Bench, entries, root};
 
 /// Written by `lenzbore validate`, not by hand.
-const TABLE: &str = "checks/validation.md";
+const TABLE: &str = "checks/overview.md";
 
 fn source() -> PathBuf {
     root().join("io/guide/src")
@@ -194,7 +194,7 @@ fn every_word_and_command_of_the_guide_is_the_programs() {
 fn the_guide_has_every_check_with_its_source() {
     let text = std::fs::read_to_string(source().join(TABLE)).unwrap();
     let renew = "make it again: `lenzbore validate --out target/checks --replace`, then \
-                 `cp target/checks/validation.md target/checks/*.svg io/guide/src/checks/`";
+                 `cp target/checks/overview.md target/checks/*.svg io/guide/src/checks/`";
     let rows: Vec<Vec<&str>> =
         text.lines().filter(|l| l.starts_with("| [")).map(|l| l.split(" | ").map(str::trim).collect()).collect();
     let shown: Vec<&str> = rows.iter().filter_map(|r| r[0].split(['[', ']']).nth(1)).collect();

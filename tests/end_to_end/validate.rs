@@ -47,7 +47,10 @@ fn json_and_folder_hold_every_comparison_with_its_source() {
     let value = check["comparisons"][0]["value"].as_f64().unwrap();
     assert!((value - 2.6932).abs() < 1e-4, "{value}");
     let files = entries(&bench.path("result"));
-    assert_eq!(files, ["differences.svg", "thin_wall.svg", "validation.html", "validation.json", "validation.md"]);
+    assert_eq!(
+        files,
+        ["differences.svg", "overview.md", "thin_wall.svg", "validation.html", "validation.json", "validation.md"]
+    );
     assert_eq!(read_json(&bench.path("result/validation.json")), json);
     let page = std::fs::read_to_string(bench.path("result/validation.html")).unwrap();
     assert_eq!(page.matches("<svg").count(), 2);

@@ -14,6 +14,17 @@ pub type KnownWords<'a> = dyn Fn(&str) -> Option<&'static str> + 'a;
 
 /// Reads a table.
 ///
+/// ```
+/// use lenzbore_io::table::{Abscissa, read_table};
+/// let text = "speed [in/s];drag [lbf]\n10;2\n";
+/// let table = read_table("table.csv", text.as_bytes(), &|_| None)?;
+/// assert_eq!(table.abscissa, Some(Abscissa::Speed));
+/// // By definition: 10 in = 0.254 m, 2 lbf = 2 x 4.4482216152605 N.
+/// assert!((table.rows[0].at.unwrap() - 0.254).abs() < 1e-12);
+/// assert!((table.rows[0].values[0].as_ref().unwrap().value - 8.896_443_230_521).abs() < 1e-9);
+/// # Ok::<(), lenzbore_io::message::Diagnostics>(())
+/// ```
+///
 /// # Errors
 /// Every fault of the table at once, each with file, line and column.
 pub fn read_table(label: &str, bytes: &[u8], words: &KnownWords<'_>) -> Result<Table, Diagnostics> {

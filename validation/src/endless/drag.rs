@@ -20,6 +20,29 @@ pub(super) const TOLERANCE: f64 = 1e-11;
 ///
 /// Relative accuracy 1e-10 or better; some milliseconds.
 ///
+/// ```
+/// use lenzbore_validation::endless::drag;
+/// # use lenzbore_solver::problem::{Extent, Layer, Mover, Outline, Part, Wall};
+/// # use lenzbore_solver::sources::Source;
+/// # let layer = Layer {
+/// #     name: "tube".into(),
+/// #     inner_radius_m: 10.5e-3,
+/// #     outer_radius_m: 12.5e-3,
+/// #     from_m: 0.0,
+/// #     to_m: 0.0,
+/// #     conductivity_s_per_m: 58e6,
+/// #     relative_permeability: 1.0,
+/// # };
+/// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
+/// # let source = Source::Dipole { moment_a_m2: 1.0 };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let wall = Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] };
+/// # let mover = Mover { parts: vec![dipole], mass_kg: None, recoil: None };
+/// // A dipole of 1 A m2 in a wall of 10.5 to 12.5 mm and 58 MS/m at 5 m/s, computed independently in another language: 2.212929281 N.
+/// assert!((drag(&wall, &mover, 5.0)?.value - 2.212_929_281).abs() < 5e-10);
+/// # Ok::<(), lenzbore_validation::Error>(())
+/// ```
+///
 /// # Errors
 /// As [`Endless::new`], and a velocity that is no number.
 pub fn drag(wall: &Wall, mover: &Mover, velocity_m_per_s: f64) -> Result<Estimate, Error> {

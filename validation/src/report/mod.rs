@@ -124,7 +124,7 @@ impl Report {
         )
     }
 
-    /// Writes Markdown, JSON, one HTML page and the pictures into a folder that appears whole.
+    /// Writes Markdown (with all comparisons, and an overview), JSON, one HTML page and the pictures into a folder that appears whole.
     ///
     /// # Errors
     /// See [`IoFault`].
@@ -132,6 +132,7 @@ impl Report {
         let pictures = pictures::all(self);
         folder.write(names::VALIDATION, format!("{:#}\n", self.json()).as_bytes())?;
         folder.write("validation.md", self.markdown(&pictures).as_bytes())?;
+        folder.write("overview.md", self.overview(&pictures).as_bytes())?;
         folder.write("validation.html", self.html(&pictures).as_bytes())?;
         for picture in &pictures {
             folder.write(&format!("{}.svg", picture.name), picture.svg.as_bytes())?;
