@@ -119,7 +119,7 @@ pub(super) fn with_band(value: f64, band: f64) -> (String, String) {
     let size = if value.abs() > 0.0 { whole(value.abs().log10().floor()) } else { place };
     let decimals = (1 - place).min(8 - size);
     let band_text = if (-6..7).contains(&place) { fixed(band, 1 - place) } else { scientific(band, 2) };
-    if !(-4..7).contains(&size) {
+    if value.abs() > 0.0 && !(-4..7).contains(&size) {
         return (scientific(value, (size - place + 2).clamp(2, 9)), band_text);
     }
     (fixed(value, decimals), band_text)
