@@ -6,6 +6,8 @@ use super::Picture;
 
 /// Writes SVG and PNG where asked to, and renders in any case: a picture that cannot be rendered fails the test.
 pub(crate) fn keep(picture: &Picture) {
+    // 1.4 mm are 4 points: raised and lowered letters, the least that print shows.
+    assert!(smallest_letters(picture) >= 14.0, "{}: letters of {}", picture.name, smallest_letters(picture));
     let png = picture.png().unwrap();
     assert!(png.len() > 5_000, "an empty sheet?");
     if let Some(folder) = std::env::var_os("LENZBORE_PICTURES") {
@@ -14,6 +16,13 @@ pub(crate) fn keep(picture: &Picture) {
         std::fs::write(stem.with_extension("svg"), &picture.svg).unwrap();
         std::fs::write(stem.with_extension("png"), png).unwrap();
     }
+}
+
+/// Size of the smallest letters, 0.1 mm at column width.
+fn smallest_letters(picture: &Picture) -> f64 {
+    let sizes =
+        picture.svg.split("font-size=\"").skip(1).filter_map(|rest| rest.split('"').next()?.parse::<f64>().ok());
+    sizes.fold(f64::INFINITY, f64::min)
 }
 
 /// All words in a picture, lines joined by blanks.

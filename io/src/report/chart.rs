@@ -10,7 +10,7 @@ use super::thin;
 /// Rows of the table behind a chart.
 const TABLE_ROWS: usize = 40;
 /// Points of a line.
-const POINTS: usize = 3000;
+const POINTS: usize = 2400;
 
 /// An axis in its shown unit.
 #[derive(Debug, Clone, PartialEq, Serialize)]
@@ -183,11 +183,13 @@ fn summary(chart: &Chart) -> String {
 
 fn thinned(line: &mut Line) {
     let kept = thin::rows(&line.y, POINTS);
-    if kept.len() == line.y.len() {
-        return;
-    }
-    let pick = |values: &[f64]| kept.iter().filter_map(|i| values.get(*i).copied()).collect::<Vec<f64>>();
+    let pick = |values: &[f64]| kept.iter().filter_map(|i| values.get(*i).copied().map(rounded)).collect::<Vec<f64>>();
     (line.x, line.y, line.band) = (pick(&line.x), pick(&line.y), pick(&line.band));
+}
+
+/// A number to ten digits: more cannot be seen, and fewer characters make a lighter page.
+fn rounded(value: f64) -> f64 {
+    format!("{value:.9e}").parse().unwrap_or(value)
 }
 
 /// The numbers of a chart as a table: one a line, or one with all lines where these share their abscissas.

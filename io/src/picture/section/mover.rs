@@ -12,6 +12,8 @@ use crate::picture::svg::{Anchor, Stroke, Svg, Type};
 use crate::picture::units::Shown;
 
 const EDGE: Stroke = Stroke::full("#222222", 3.0);
+/// Letters smaller than this (0.1 mm at column width, 4 points) are left out.
+const LEAST: f64 = 14.0;
 const MAGNET: &str = "#dcdfe3";
 const COPPER: &str = "#f0d9c4";
 
@@ -59,7 +61,7 @@ fn poles(svg: &mut Svg, part: &Part, view: &View, position: f64, north_up: bool)
     let body = &part.outline;
     let (wide, high) = (view.scale * (body.outer_radius_m - body.inner_radius_m), view.scale * body.length_m);
     let size = (0.30 * high).min(0.62 * wide).min(34.0);
-    if size < 9.0 {
+    if size < LEAST {
         return;
     }
     let r = 0.5 * (body.inner_radius_m + body.outer_radius_m);

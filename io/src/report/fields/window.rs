@@ -172,6 +172,11 @@ impl Cut {
         self.columns.len()
     }
 
+    /// Cells of all instants together.
+    pub(super) fn count(&self) -> usize {
+        self.columns() * self.rows().iter().sum::<usize>()
+    }
+
     /// Rows of cells, instant by instant.
     pub(super) fn rows(&self) -> Vec<usize> {
         self.windows.iter().map(|(_, first, end)| end - first).collect()

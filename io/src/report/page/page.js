@@ -33,6 +33,13 @@ ready.then(
   },
 );
 
+// Only tables that scroll are stops of the tab key.
+function stops() {
+  for (const wide of document.querySelectorAll(".wide")) wide.tabIndex = wide.scrollWidth > wide.clientWidth ? 0 : -1;
+}
+stops();
+addEventListener("resize", stops);
+
 // On paper every chart is as wide as the sheet lets it, and the resolved case is unfolded.
 const SHEET = 680;
 const MILLIMETRE = 96 / 25.4;
