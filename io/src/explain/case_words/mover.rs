@@ -96,7 +96,7 @@ pub(super) const MAGNET: CaseTable = CaseTable {
         ),
         word(
             "recoil_permeability",
-            PERMEABILITY,
+            quantity(Kind::Ratio, Number::RecoilPermeability),
             "relative recoil permeability of the magnet",
             "the material's, else 1 with a caution",
             "recoil_permeability = 1.05",
