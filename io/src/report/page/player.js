@@ -181,7 +181,7 @@ class Player {
 
   // Wall, mover and centre line, drawn over the colours.
   outlines() {
-    const shapes = [{ type: "line", x0: 0, x1: 0, y0: 0, y1: 1, yref: "paper", line: { color: INK, width: 1, dash: "dashdot" } }];
+    const shapes = [{ type: "line", x0: 0, x1: 0, y0: 0, y1: 1, yref: "y domain", line: { color: INK, width: 1, dash: "dashdot" } }];
     const layout = this.about.layout;
     if (!layout) return shapes;
     const box = (inner, outer, low, high, line) => {
