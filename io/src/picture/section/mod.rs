@@ -173,11 +173,14 @@ impl Sheet<'_> {
     /// Spacers in broken lines: a case gives their length alone.
     fn paint_spacers(&self, svg: &mut Svg, view: &View) {
         let Some(layout) = self.layout else { return };
-        let outer = overview::spacer_radius(layout);
+        let (inner, outer) = overview::spacer_radii(layout);
         for body in layout.mover.iter().filter(|b| matches!(b.kind, BodyKind::Spacer)) {
             let middle = self.position + body.at_m;
             let (top, bottom) = (view.y(middle + 0.5 * body.length_m), view.y(middle - 0.5 * body.length_m));
-            svg.rectangle(view.x(-outer), top, view.x(outer), bottom, "#ffffff", Some(SPACER));
+            let halves = if inner > 0.0 { vec![(inner, outer), (-outer, -inner)] } else { vec![(-outer, outer)] };
+            for (from, to) in halves {
+                svg.rectangle(view.x(from), top, view.x(to), bottom, "#ffffff", Some(SPACER));
+            }
         }
     }
 

@@ -124,30 +124,37 @@ fn mover(svg: &mut Svg, view: &View, layout: &Layout, at: f64, phantom: bool) {
             (false, BodyKind::Spacer) => ("#ffffff", PHANTOM),
             (false, _) => ("#dcdfe3", EDGE),
         };
-        body_at(svg, view, body, at, (fill, stroke), spacer_radius(layout));
+        let radii = match body.kind {
+            BodyKind::Spacer => spacer_radii(layout),
+            _ => (0.5 * body.inner_diameter_m, 0.5 * body.outer_diameter_m),
+        };
+        body_at(svg, view, body, at, (fill, stroke), radii);
     }
 }
 
-fn body_at(svg: &mut Svg, view: &View, body: &BodyLayout, at: f64, look: (&str, Stroke), spacer: f64) {
+fn body_at(svg: &mut Svg, view: &View, body: &BodyLayout, at: f64, look: (&str, Stroke), (inner, outer): (f64, f64)) {
     let (top, bottom) = (view.y(at + body.at_m + 0.5 * body.length_m), view.y(at + body.at_m - 0.5 * body.length_m));
     if matches!(body.kind, BodyKind::Dipole { .. }) {
         svg.circle((view.axis, view.y(at + body.at_m)), 7.0, look.0, Some(look.1));
         return;
     }
-    let outer = if body.outer_diameter_m > 0.0 { 0.5 * body.outer_diameter_m } else { spacer };
-    if body.inner_diameter_m <= 0.0 {
+    if inner <= 0.0 {
         svg.rectangle(view.x(-outer), top, view.x(outer), bottom, look.0, Some(look.1));
         return;
     }
     for side in [1.0, -1.0] {
-        let (x0, x1) = (view.x(side * 0.5 * body.inner_diameter_m), view.x(side * outer));
+        let (x0, x1) = (view.x(side * inner), view.x(side * outer));
         svg.rectangle(x0, top, x1, bottom, look.0, Some(look.1));
     }
 }
 
-/// A spacer has no diameter in a case: it is drawn a little narrower than its neighbours.
-pub(super) fn spacer_radius(layout: &Layout) -> f64 {
-    0.35 * layout.mover.iter().map(|b| b.outer_diameter_m).fold(0.0, f64::max)
+/// Radii of a spacer, which has none in a case: it is drawn within those of its neighbours, around the same hole.
+pub(super) fn spacer_radii(layout: &Layout) -> (f64, f64) {
+    let solid = || layout.mover.iter().filter(|b| b.outer_diameter_m > 0.0);
+    let inner = solid().map(|b| 0.5 * b.inner_diameter_m).fold(f64::INFINITY, f64::min);
+    let outer = solid().map(|b| 0.5 * b.outer_diameter_m).fold(0.0, f64::max);
+    let inner = if inner.is_finite() { inner } else { 0.0 };
+    (inner, inner + 0.7 * (outer - inner))
 }
 
 /// Labels on the right, each with a leader to its height, moved apart where they would meet.

@@ -29,7 +29,8 @@ pub(super) fn shown(table: &Table, stem: &str) -> Option<Shown> {
     let largest = numbers.iter().filter(|x| x.is_finite()).fold(0.0_f64, |m, x| m.max(x.abs()));
     // Over a wide range the unit suits the middle of the logarithmic axis.
     let least = numbers.iter().filter(|x| x.is_finite()).fold(f64::INFINITY, |m, x| m.min(*x));
-    let usual = if is_wide(numbers) { (least * largest).sqrt() } else { largest };
+    let usual =
+        if matches!(stem, "speed" | "frequency") && is_wide(numbers) { (least * largest).sqrt() } else { largest };
     let unit = Unit::for_values(&column.unit, usual);
     let band = table.band_of(stem).map_or_else(Vec::new, |b| b.iter().map(|x| unit.width(*x)).collect());
     let values = numbers.iter().map(|x| unit.of(*x)).collect();
