@@ -28,12 +28,19 @@ function axisOf(axis) {
   };
 }
 
+// The name of the upright axis stands level above it, where it has room and is read without turning the head.
+function upName(axis) {
+  return { text: plain(withUnit(axis)), xref: "paper", x: 0, xanchor: "left", yref: "paper", y: 1, yanchor: "bottom", yshift: 3, showarrow: false, font: { size: 14 } };
+}
+
 function baseLayout(chart) {
+  const lines = (chart.lines || []).length;
+  const legend = lines > 1 ? 24 + 20 * Math.ceil(lines / 4) : 0;
   return {
-    font: FONT, paper_bgcolor: "#fff", plot_bgcolor: "#fff", margin: { l: 64, r: 16, t: 26, b: 50 }, hovermode: "closest", dragmode: "zoom",
+    font: FONT, paper_bgcolor: "#fff", plot_bgcolor: "#fff", margin: { l: 58, r: 16, t: 30, b: 48 + legend }, hovermode: "closest", dragmode: "zoom",
     hoverlabel: { bgcolor: "#fff", bordercolor: QUIET, font: FONT, align: "left", namelength: -1 },
-    xaxis: axisOf(chart.x), yaxis: axisOf(chart.y), showlegend: (chart.lines || []).length > 1,
-    legend: { orientation: "h", traceorder: "normal", x: 0, xanchor: "left", y: -0.2, yanchor: "top", bgcolor: "rgba(0,0,0,0)" },
+    xaxis: axisOf(chart.x), yaxis: { ...axisOf(chart.y), title: undefined }, showlegend: lines > 1,
+    legend: { orientation: "h", traceorder: "normal", x: 0, xanchor: "left", yref: "container", y: 0.01, yanchor: "bottom", bgcolor: "rgba(0,0,0,0)" },
   };
 }
 
@@ -107,7 +114,7 @@ function draw(place, chart) {
   const { traces, layout } = chart.bars ? barChart(chart) : { traces: lineTraces(chart), layout: baseLayout(chart) };
   const marks = marksOf(chart);
   layout.shapes = marks.shapes;
-  layout.annotations = marks.notes;
+  layout.annotations = chart.bars ? marks.notes : [upName(chart.y), ...marks.notes];
   traces.push(...marks.traces);
   return Plotly.newPlot(place, traces, layout, OPTIONS).then(() => {
     readByKeys(place, chart);

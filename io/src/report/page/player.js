@@ -175,6 +175,7 @@ class Player {
     Object.assign(layout.xaxis, { constrain: "domain", zeroline: false });
     Object.assign(layout.yaxis, { scaleanchor: "x", scaleratio: 1, zeroline: false, constrain: "domain" });
     Object.assign(layout, { uirevision: "field", dragmode: "pan", margin: { l: 60, r: 10, t: 10, b: 46 }, showlegend: false });
+    layout.yaxis.title = { text: "Height, mm", standoff: 8 };
     layout.shapes = this.outlines();
     return layout;
   }

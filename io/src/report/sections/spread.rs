@@ -75,7 +75,7 @@ fn changes(name: &str, all: &[Value], source: &Source) -> Option<Chart> {
     let share = |change: f64| 100.0 * change / value.abs();
     let bars = mine.iter().filter(|_| value.abs() > 0.0).map(|(word, low, high)| {
         let text = format!("{} / {} %", significant(share(*low), 2), significant(share(*high), 2));
-        Bar { name: (*word).to_owned(), from: share(*low), to: share(*high), text, whole: false }
+        Bar { name: (*word).to_owned(), from: share(low.min(*high)), to: share(high.max(*low)), text, whole: false }
     });
     let across =
         Axis { name: format!("Change of {}", words::heading(name).to_lowercase()), unit: "%".to_owned(), log: false };
