@@ -9,6 +9,8 @@ use crate::report::words;
 const WIDE: f64 = 40.0;
 /// Points up to which a line shows each of them.
 const FEW: usize = 80;
+/// The same where nothing was swept by choice.
+const FEWEST: usize = 16;
 
 /// A column in its shown unit.
 pub(super) struct Shown {
@@ -57,7 +59,8 @@ pub(super) fn chart(table: &Table, id: &str, title: &str, x: &str, y: &[&str]) -
     up.log = across.axis.log && columns.iter().all(|(_, c)| is_wide(&c.values)) && x == "speed";
     let mut chart = Chart::new(id, title, across.axis, up);
     chart.file.clone_from(&table.file);
-    let look = if sweep && across.values.len() <= FEW { Look::Points } else { Look::Line };
+    let few = across.values.len() <= if sweep { FEW } else { FEWEST };
+    let look = if few { Look::Points } else { Look::Line };
     for (stem, column) in columns {
         let name = words::column(stem);
         chart.lines.push(Line { name, x: across.values.clone(), y: column.values, band: column.band, look });
