@@ -128,11 +128,14 @@ pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) 
     all.extend(picture::impedance(&header.title, outcome));
     all.extend(picture::current_across(&header.title, outcome));
     all.extend(header.spread.as_ref().and_then(|s| picture::spread(&header.title, s)));
-    all.push(picture::section(&header.title, problem, outcome)?);
-    if !header.geometry.wall.layers.is_empty() {
-        if outcome.fields.is_some() {
-            all.push(picture::drawing(&header.title, &header.geometry)?);
-        }
+    let known = !header.geometry.wall.layers.is_empty();
+    if outcome.fields.is_some() || !known {
+        all.push(picture::section(&header.title, problem, outcome)?);
+    }
+    if known {
+        let parts = picture::drawing(&header.title, &header.geometry)?;
+        let name = if outcome.fields.is_some() { parts.name } else { "section" };
+        all.push(Picture { name, ..parts });
         all.extend(picture::overview(&header.title, &header.geometry));
     }
     Ok(all)
