@@ -171,3 +171,69 @@ fn write(svg: &mut Svg, view: &View, from: f64, mut labels: Vec<(f64, String)>) 
         svg.text(x, y + 0.5 * CAPITAL * SMALL, &text, letters(SMALL, Anchor::Start));
     }
 }
+
+#[cfg(test)]
+mod tests {
+    #![allow(clippy::unwrap_used, reason = "tests may stop at the first fault")]
+
+    use super::*;
+    use crate::layout::{LayerLayout, WallLayout};
+    use crate::picture::{drawing, look};
+
+    fn body(name: &str, at_m: f64, sizes: (f64, f64, f64), kind: BodyKind) -> BodyLayout {
+        let (inner_diameter_m, outer_diameter_m, length_m) = sizes;
+        BodyLayout { name: name.into(), material: None, inner_diameter_m, outer_diameter_m, length_m, at_m, kind }
+    }
+
+    /// Two opposed rings with a spacer between them around an aluminium rod.
+    fn rings() -> Layout {
+        let rod = LayerLayout {
+            name: "rod".into(),
+            material: Some("aluminium EN AW-6060 T66".into()),
+            inner_diameter_m: 0.0,
+            outer_diameter_m: 20e-3,
+            from_m: 0.0,
+            to_m: 0.2,
+            conductivity_s_per_m: 28e6,
+            relative_permeability: 1.0,
+        };
+        let ring = |at, remanence_tesla| body("R", at, (24e-3, 44e-3, 10e-3), BodyKind::Magnet { remanence_tesla });
+        Layout {
+            wall: WallLayout { length_m: Some(0.2), layers: vec![rod] },
+            mover: vec![ring(-9e-3, 1.2), body("S", 0.0, (0.0, 0.0, 8e-3), BodyKind::Spacer), ring(9e-3, -1.2)],
+            gates_m: vec![0.2, 0.0],
+            start_m: Some(0.26),
+            end_m: Some(-0.06),
+        }
+    }
+
+    #[test]
+    fn the_course_names_gates_start_and_end() {
+        let picture = overview("Rings around a rod", &rings()).unwrap();
+        look::keep(&picture);
+        let words = look::words(&picture);
+        for part in ["first gate, 200 mm", "second gate, 0 mm", "at the start, 260 mm", "at the end, −60 mm"] {
+            assert!(words.contains(part), "{part}: {words}");
+        }
+        assert!(!look::has_non_numbers(&picture));
+        assert_eq!(overview("Rings around a rod", &rings()).unwrap(), picture);
+        let endless = Layout { wall: WallLayout { length_m: None, ..rings().wall }, ..rings() };
+        assert!(overview("x", &endless).is_none());
+    }
+
+    #[test]
+    fn a_section_by_its_layout_names_metals_and_spacers() {
+        let picture = drawing("Rings around a rod", &rings()).unwrap();
+        look::keep(&picture);
+        let words = look::words(&picture);
+        for part in ["hatched: aluminium; spacers in broken lines", "gap 2", "Ø44", "Ø24", "Ø20"] {
+            assert!(words.contains(part), "{part}: {words}");
+        }
+    }
+
+    #[test]
+    fn spacers_lie_within_their_neighbours() {
+        let (inner, outer) = spacer_radii(&rings());
+        assert!((inner - 12e-3).abs() < 1e-12 && outer > inner && outer < 22e-3);
+    }
+}
