@@ -27,6 +27,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         centre_m: 0.0,
         source: Source::Magnet { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length, remanence_tesla: 1.3 },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
+        coercivity_a_per_m: None,
     };
     let problem = Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![tube] },

@@ -27,6 +27,7 @@ fn main() -> Result<(), Box<dyn Error>> {
         centre_m: 0.0,
         source: Source::Magnet { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length, remanence_tesla: 1.25 },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
+        coercivity_a_per_m: None,
     };
     // m dv/dt = -m g + F(z, v, history): F is the force of the wall's currents on the magnet.
     let fall = Free::let_go(tube_length + 30e-3, -30e-3, [tube_length, 0.0]);

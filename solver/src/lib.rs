@@ -28,6 +28,7 @@ pub mod step_field;
 
 mod band;
 mod corner;
+mod demagnetisation;
 mod direct;
 mod fields;
 mod force;

@@ -44,7 +44,7 @@ pub type NodeLines = (Vec<f64>, Vec<f64>);
 /// let source = Source::Dipole { moment_a_m2: 1.0 };
 /// let problem = Problem {
 ///     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
-///     mover: Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None, recoil: None },
+///     mover: Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }], mass_kg: None, recoil: None },
 ///     travel: Travel::Steady { velocity_m_per_s: 5.0 },
 ///     accuracy: Accuracy::default(),
 ///     snapshots: SnapshotPlan::None,

@@ -1,5 +1,6 @@
 //! Whether the wanted accuracy was met, and what would meet it.
 
+use crate::demagnetisation;
 use crate::outcome::{Accuracies, Figure, Outcome};
 use crate::problem::Accuracy;
 
@@ -43,7 +44,12 @@ const LOCAL_ALLOWANCE: f64 = 100.0;
 
 /// Figures that are a field's value at one point.
 pub(crate) fn is_local(name: &str) -> bool {
-    name == "current_density_peak"
+    matches!(name, "current_density_peak" | demagnetisation::FIELD | demagnetisation::MARGIN)
+}
+
+/// A difference that may be as small as it likes says nothing about accuracy.
+fn counts(figure: &Figure) -> bool {
+    figure.name != demagnetisation::MARGIN
 }
 
 /// Compares every figure's band with the target (a local figure's with a hundred times the target: 1 % by default).
@@ -54,7 +60,7 @@ pub(crate) fn verdict(figures: &[Figure], target_relative: f64, levels: usize) -
         let allowance = if is_local(&f.name) { LOCAL_ALLOWANCE } else { 1.0 };
         relative(f) / (allowance * target_relative)
     };
-    let worst = figures.iter().max_by(|a, b| miss(a).total_cmp(&miss(b)));
+    let worst = figures.iter().filter(|f| counts(f)).max_by(|a, b| miss(a).total_cmp(&miss(b)));
     let missed = worst.filter(|f| miss(f) > 1.0);
     Accuracies {
         target_relative,

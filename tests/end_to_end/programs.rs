@@ -42,8 +42,11 @@ fn drag_speed_says_the_greatest_drag() {
     let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 11e-3, length_m: 20e-3, remanence_tesla: 1.3 };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 11e-3, length_m: 20e-3 };
     let wall = Wall { slots: 0, extent: Extent::Endless, layers: vec![tube] };
-    let mover =
-        Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None, recoil: None };
+    let mover = Mover {
+        parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }],
+        mass_kg: None,
+        recoil: None,
+    };
     let at = |speed: f64| endless::drag(&wall, &mover, speed).unwrap().value;
 
     let (critical, greatest) = (said(&text, "critical_speed"), said(&text, "drag_max"));

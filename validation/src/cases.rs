@@ -46,7 +46,13 @@ pub fn part(name: &str, centre_m: f64, source: Source) -> Part {
         Source::Magnet { inner_radius_m, outer_radius_m, length_m, .. }
         | Source::Coil { inner_radius_m, outer_radius_m, length_m, .. } => (inner_radius_m, outer_radius_m, length_m),
     };
-    Part { name: name.to_owned(), centre_m, source, outline: Outline { inner_radius_m, outer_radius_m, length_m } }
+    Part {
+        name: name.to_owned(),
+        centre_m,
+        source,
+        outline: Outline { inner_radius_m, outer_radius_m, length_m },
+        coercivity_a_per_m: None,
+    }
 }
 
 /// A mover of these parts without mass.

@@ -28,6 +28,7 @@
 
 mod across;
 mod alternating;
+mod coercivity;
 mod conductor;
 mod curve;
 mod geometry;

@@ -133,9 +133,11 @@ fn placed_one_by_one<'t>(reader: &mut Reader, section: &Section<'t>, items: Vec<
             continue;
         }
         let at = position(reader, &item.section, alone);
-        if let (Body::Magnetic { source, outline, north, .. }, Some(centre_m)) = (&item.body, at) {
+        if let (Body::Magnetic { source, outline, north, coercivity_a_per_m, .. }, Some(centre_m)) = (&item.body, at) {
             let source = if *north == North::Down { source.reversed() } else { *source };
-            parts.push((Part { name: item.name, centre_m, source, outline: *outline }, item.section));
+            let part =
+                Part { name: item.name, centre_m, source, outline: *outline, coercivity_a_per_m: *coercivity_a_per_m };
+            parts.push((part, item.section));
         }
     }
     parts.sort_by(|a, b| a.0.centre_m.total_cmp(&b.0.centre_m));
@@ -199,7 +201,12 @@ fn stacked<'t>(reader: &mut Reader, section: &Section<'t>, items: &[Item<'t>], n
     let built = Stack::new(&stack, gap);
     let reference = reference(reader, section, built.length_m);
     let shift = 0.5 * built.length_m - reference;
-    let parts = built.parts.into_iter().map(|p| Part { centre_m: p.centre_m + shift, ..p });
+    let coercivity_of = |name: &str| items.iter().find(|i| i.name == name).and_then(|i| i.body.coercivity_a_per_m());
+    let parts = built.parts.into_iter().map(|p| Part {
+        centre_m: p.centre_m + shift,
+        coercivity_a_per_m: coercivity_of(&p.name),
+        ..p
+    });
     Placed { parts: parts.zip(order).collect(), ends_m: [-reference, built.length_m - reference] }
 }
 

@@ -5,6 +5,7 @@ use std::sync::Arc;
 use lenzbore_solver::problem::{Outline, Quantity as Number, SensibleRange};
 use lenzbore_solver::sources::{North, Source, coated_magnet};
 
+use super::coercivity::coercivity;
 use super::conductor::{grade_value, note_book};
 use super::measures::{COEFFICIENT, HOLE, LENGTH};
 use super::reader::{Reader, Section, Wanted, unit_of, wanted};
@@ -18,7 +19,7 @@ use crate::units::Kind;
 #[derive(Debug, Clone)]
 pub(super) enum Body {
     /// A part with a field; `north` as its own word says, `recoil` its recoil permeability (1 for what is no magnet).
-    Magnetic { source: Source, outline: Outline, north: North, recoil: f64 },
+    Magnetic { source: Source, outline: Outline, north: North, recoil: f64, coercivity_a_per_m: Option<f64> },
     /// A length without field.
     Spacer { length_m: f64 },
     /// An entry that could not be read; its fault stands.
@@ -29,6 +30,11 @@ impl Body {
     /// Its recoil permeability; 1 for what is no magnet.
     pub fn recoil(&self) -> f64 {
         if let Self::Magnetic { recoil, .. } = self { *recoil } else { 1.0 }
+    }
+
+    /// Coercivity of a magnet, A/m, where it is known.
+    pub fn coercivity_a_per_m(&self) -> Option<f64> {
+        if let Self::Magnetic { coercivity_a_per_m, .. } = self { *coercivity_a_per_m } else { None }
     }
 }
 
@@ -45,7 +51,9 @@ const RECOIL_COST: &str = "if it is 1.05, the zero-speed damping coefficient com
 pub(super) fn read_magnet(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> Body {
     let sizes = body_sizes(reader, section);
     let coating = reader.quantity_or(section, "coating", HOLE, 0.0, "no coating");
-    let (remanence, recoil) = remanence(reader, section, name, warmth);
+    let grade = magnet_grade(reader, section);
+    let (remanence, recoil) = remanence(reader, section, name, grade.as_deref(), warmth);
+    let coercivity_a_per_m = coercivity(reader, section, name, grade.as_deref(), warmth);
     let north = match reader.choice(section, "north", &["up", "down"], "north = \"up\"") {
         Some("down") => North::Down,
         _ => North::Up,
@@ -57,7 +65,7 @@ pub(super) fn read_magnet(reader: &mut Reader, section: &Section<'_>, name: &str
         return Body::Faulty;
     };
     match coated_magnet(0.5 * inner, 0.5 * outer, length, coating, remanence) {
-        Some((source, outline)) => Body::Magnetic { source, outline, north, recoil },
+        Some((source, outline)) => Body::Magnetic { source, outline, north, recoil, coercivity_a_per_m },
         None => {
             let place = section.place_of("coating");
             let fault = CaseFault::Impossible {
@@ -91,10 +99,14 @@ fn body_sizes(reader: &mut Reader, section: &Section<'_>) -> Option<[f64; 3]> {
 }
 
 /// Remanence at the mover's temperature, T, and recoil permeability.
-fn remanence(reader: &mut Reader, section: &Section<'_>, name: &str, warmth: f64) -> (Option<f64>, Option<f64>) {
+fn remanence(
+    reader: &mut Reader,
+    section: &Section<'_>,
+    name: &str,
+    grade: Option<&MagnetGrade>,
+    warmth: f64,
+) -> (Option<f64>, Option<f64>) {
     let named = section.table.has("material");
-    let grade = magnet_grade(reader, section);
-    let grade = grade.as_deref();
     let which = grade_value(reader, section, named);
     let recoil = recoil(reader, section, name, grade);
     (remanence_of(reader, section, (name, warmth), (named, grade, which)), recoil)
@@ -235,7 +247,8 @@ pub(super) fn read_dipole(reader: &mut Reader, section: &Section<'_>) -> Body {
     );
     let Some(moment_a_m2) = moment else { return Body::Faulty };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
-    Body::Magnetic { source: Source::Dipole { moment_a_m2 }, outline, north: North::Up, recoil: 1.0 }
+    let source = Source::Dipole { moment_a_m2 };
+    Body::Magnetic { source, outline, north: North::Up, recoil: 1.0, coercivity_a_per_m: None }
 }
 
 pub(super) fn read_coil(reader: &mut Reader, section: &Section<'_>) -> Body {
@@ -256,5 +269,6 @@ pub(super) fn read_coil(reader: &mut Reader, section: &Section<'_>) -> Body {
         outline: Outline { inner_radius_m, outer_radius_m, length_m },
         north: North::Up,
         recoil: 1.0,
+        coercivity_a_per_m: None,
     }
 }

@@ -166,13 +166,14 @@ fn without_list(path: &str) -> String {
 
 /// The kind whose SI unit is noted beside a resolved value.
 fn kind_of(unit: &str) -> Kind {
-    const KINDS: [Kind; 16] = [
+    const KINDS: [Kind; 17] = [
         Kind::Length,
         Kind::Speed,
         Kind::Temperature,
         Kind::Conductivity,
         Kind::TemperatureCoefficient,
         Kind::FluxDensity,
+        Kind::FieldStrength,
         Kind::Moment,
         Kind::Current,
         Kind::Mass,

@@ -92,6 +92,8 @@ pub const TABLES: [TableWords; 15] = [
             "remanence",
             "remanence_coefficient",
             "recoil_permeability",
+            "coercivity_hcj",
+            "coercivity_hcj_coefficient",
             "outer_diameter",
             "inner_diameter",
             "length",

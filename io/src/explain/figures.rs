@@ -66,6 +66,21 @@ pub const FIGURES: &[FigureMeaning] = &[
         TRADE,
     ),
     figure(
+        "demagnetising_field_peak",
+        "A/m",
+        "`run`, laws steady, traverse, table, free and sine, magnets of known coercivity",
+        "greatest field against a magnet's own magnetisation: its own poles, its neighbours and the wall's reaction, recoil permeability 1",
+        OWN,
+    ),
+    figure(
+        "demagnetisation_margin",
+        "1",
+        "`run`, laws steady, traverse, table, free and sine, magnets of known coercivity",
+        "1 - demagnetising field / intrinsic coercivity HcJ at the mover's temperature, where it is least; real magnets lose strength \
+         from the knee of their curve on, before it is 0",
+        OWN,
+    ),
+    figure(
         "slot_factor_low_speed",
         "1",
         "`run` and `curve`, walls with slots",

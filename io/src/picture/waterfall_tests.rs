@@ -24,7 +24,7 @@ fn outcome() -> LadderOutcome {
     let problem = Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
         mover: Mover {
-            parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }],
+            parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }],
             mass_kg: None,
             recoil: None,
         },

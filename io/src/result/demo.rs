@@ -116,6 +116,7 @@ pub(crate) fn steady() -> (Problem, Outcome) {
         centre_m: 0.0,
         source: Source::Dipole { moment_a_m2: 1.0 },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 },
+        coercivity_a_per_m: None,
     }];
     problem.travel = Travel::Steady { velocity_m_per_s: -5.0 };
     let place = Location { r_m: Some(10.5e-3), z_m: Some(-4e-3), t_s: None };
@@ -162,6 +163,7 @@ fn magnet(name: &str, centre: f64, remanence: f64) -> Part {
             remanence_tesla: remanence,
         },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: 11.015e-3, length_m: 12.03e-3 },
+        coercivity_a_per_m: None,
     }
 }
 

@@ -123,5 +123,5 @@ fn part(source: Source) -> Part {
         Source::Dipole { .. } => (0.0, 0.0),
     };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m, length_m };
-    Part { name: "magnet".to_owned(), centre_m: 0.0, source, outline }
+    Part { name: "magnet".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }
 }

@@ -41,7 +41,7 @@ fn coil(inner_mm: f64, outer_mm: f64, length_mm: f64, turns: f64, centre_mm: f64
     let (inner_radius_m, outer_radius_m, length_m) = (1e-3 * inner_mm, 1e-3 * outer_mm, 1e-3 * length_mm);
     let source = Source::Coil { inner_radius_m, outer_radius_m, length_m, ampere_turns: turns };
     let outline = Outline { inner_radius_m, outer_radius_m, length_m };
-    Part { name: format!("coil at {centre_mm}"), centre_m: 1e-3 * centre_mm, source, outline }
+    Part { name: format!("coil at {centre_mm}"), centre_m: 1e-3 * centre_mm, source, outline, coercivity_a_per_m: None }
 }
 
 fn problem(extent: Extent, layers: Vec<Layer>, parts: Vec<Part>, law: Alternating) -> Problem {

@@ -75,7 +75,7 @@ mod tests {
         let outline = Outline { inner_radius_m: inner, outer_radius_m: outer, length_m: length };
         let source =
             Source::Coil { inner_radius_m: inner, outer_radius_m: outer, length_m: length, ampere_turns: turns };
-        Part { name: "coil".to_owned(), centre_m, source, outline }
+        Part { name: "coil".to_owned(), centre_m, source, outline, coercivity_a_per_m: None }
     }
 
     fn of(parts: Vec<Part>) -> Measured {

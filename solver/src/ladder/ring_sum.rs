@@ -24,7 +24,7 @@ use crate::problem::{Problem, Wall};
 /// #     conductivity_s_per_m: 5.8e7, relative_permeability: 1.0 };
 /// # let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 5e-3, length_m: 10e-3, remanence_tesla: 1.2 };
 /// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 5e-3, length_m: 10e-3 };
-/// # let part = Part { name: "M".into(), centre_m: 0.0, source, outline };
+/// # let part = Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
 /// # let problem = Problem {
 /// #     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
 /// #     mover: Mover { parts: vec![part], mass_kg: None, recoil: None },

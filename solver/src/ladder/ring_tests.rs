@@ -22,6 +22,7 @@ pub(super) fn cylinder(radius: f64, length: f64, remanence: f64, centre: f64) ->
             remanence_tesla: remanence,
         },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: radius, length_m: length },
+        coercivity_a_per_m: None,
     }
 }
 

@@ -4,6 +4,7 @@ use super::course::{Course, End};
 use super::cycles::CycleSums;
 use super::series::Series;
 use crate::constants::STANDARD_GRAVITY;
+use crate::demagnetisation;
 use crate::outcome::{Location, Stop};
 use crate::placement::Placement;
 use crate::problem::{Free, Problem, Sine, Travel};
@@ -99,6 +100,7 @@ pub(crate) fn level_figures(problem: &Problem, series: &Series, course: &Course)
         }
     }
     figures.push(current_peak(series, span));
+    figures.extend(magnet_figures(series, span).into_iter().flatten());
     if series.pull_mid.iter().any(|p| p.abs() > 0.0) {
         let pull: Vec<f64> = series.pull_mid.iter().map(|p| p.abs()).collect();
         let (t, value) = series.greatest(&pull, span);
@@ -202,4 +204,21 @@ fn current_peak(series: &Series, span: (f64, f64)) -> LevelFigure {
 /// Location of an event at `t`.
 fn at_time(series: &Series, t: f64) -> Location {
     Location { r_m: None, z_m: Some(series.at(&series.position, t)), t_s: Some(t) }
+}
+
+/// The greatest opposing field in the magnets and what their coercivity leaves, where one is known.
+fn magnet_figures(series: &Series, span: (f64, f64)) -> [Option<LevelFigure>; 2] {
+    let worst = |name, unit, columns: &[Vec<f64>; 3], taken: fn(f64) -> f64| {
+        let [values, r, z] = columns;
+        let taken_of: Vec<f64> = values.iter().map(|v| taken(*v)).collect();
+        let (t, value) = Some(greatest(series, &taken_of, span)).filter(|_| !values.is_empty())?;
+        let k = series.time_mid.partition_point(|&s| s < t).min(series.time_mid.len().saturating_sub(1));
+        let location = Location { r_m: r.get(k).copied(), z_m: z.get(k).copied(), t_s: Some(t) };
+        Some(LevelFigure { name, unit, value: taken(value), location: Some(location) })
+    };
+    // The least margin is where the coercivity's share, 1 - margin, is greatest.
+    [
+        worst(demagnetisation::FIELD, "A/m", &series.opposing_mid, |field| field),
+        worst(demagnetisation::MARGIN, "1", &series.margin_mid, |margin| 1.0 - margin),
+    ]
 }

@@ -17,6 +17,7 @@ use super::schedule::Schedule;
 use super::series::Series;
 use super::step::{State, StepReport, Stepper};
 use super::window::Window;
+use crate::demagnetisation::Watch;
 use crate::fault::SolveFault;
 use crate::monitor::Monitor;
 use crate::outcome::Snapshot;
@@ -57,6 +58,7 @@ pub(crate) struct Run<'a, 'p> {
     window: Option<Window>,
     resampler: Option<Resampler>,
     snapshots: Vec<Snapshot>,
+    magnets: Option<Watch>,
 }
 
 impl<'a, 'p> Run<'a, 'p> {
@@ -103,6 +105,7 @@ impl<'a, 'p> Run<'a, 'p> {
             window,
             resampler: None,
             snapshots: Vec::new(),
+            magnets: Watch::new(&level.problem.mover),
             level,
             motion,
         })

@@ -35,6 +35,10 @@ pub(crate) struct Series {
     pub(crate) peak_mid: Vec<f64>,
     pub(crate) peak_r_mid: Vec<f64>,
     pub(crate) peak_z_mid: Vec<f64>,
+    /// Greatest opposing field in magnets of known coercivity, A/m, and its r and z, m; empty where there is none.
+    pub(crate) opposing_mid: [Vec<f64>; 3],
+    /// What the coercivity leaves, where it leaves least, and its r and z, m; empty where there is none.
+    pub(crate) margin_mid: [Vec<f64>; 3],
     /// Field energy at the start, J (a permeable wall's pull).
     pub(crate) energy_start: f64,
     /// Instant at which friction held the mover, s.
@@ -50,6 +54,7 @@ impl Series {
         self.at_stress().into_iter().for_each(|values| values.truncate(kept));
         self.at_ends().into_iter().for_each(|values| values.truncate(steps + 1));
         self.at_middles().into_iter().for_each(|values| values.truncate(steps));
+        self.of_magnets().for_each(|values| values.truncate(steps));
     }
 
     /// Makes room for `steps` more, so that recording them allocates nothing.
@@ -57,6 +62,7 @@ impl Series {
         self.at_stress().into_iter().for_each(|values| values.reserve(steps));
         self.at_ends().into_iter().for_each(|values| values.reserve(steps));
         self.at_middles().into_iter().for_each(|values| values.reserve(steps));
+        self.of_magnets().for_each(|values| values.reserve(steps));
     }
 
     fn at_stress(&mut self) -> [&mut Vec<f64>; 2] {
@@ -81,6 +87,10 @@ impl Series {
             &mut self.peak_r_mid,
             &mut self.peak_z_mid,
         ]
+    }
+
+    fn of_magnets(&mut self) -> impl Iterator<Item = &mut Vec<f64>> {
+        self.opposing_mid.iter_mut().chain(&mut self.margin_mid)
     }
 
     /// A quantity of step ends at `t`.

@@ -26,6 +26,8 @@ pub struct Part {
     pub source: Source,
     /// Its body (zero sizes for a dipole).
     pub outline: Outline,
+    /// Intrinsic coercivity HcJ at the mover's temperature, A/m, of a magnet that is to be watched; `None` where it is not known.
+    pub coercivity_a_per_m: Option<f64>,
 }
 
 /// The mover: parts fixed to one another, and their common mass.

@@ -113,7 +113,7 @@ mod tests {
         Problem {
             wall: Wall { slots: 0, extent: Extent::Finite { length_m: 0.3 }, layers: vec![layer] },
             mover: Mover {
-                parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
+                parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }],
                 mass_kg: Some(0.1),
                 recoil: None,
             },

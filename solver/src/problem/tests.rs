@@ -28,6 +28,7 @@ fn magnet(name: &str, inner_mm: f64, outer_mm: f64, centre_mm: f64) -> Part {
         centre_m: centre_mm / 1e3,
         source: Source::Magnet { inner_radius_m, outer_radius_m, length_m, remanence_tesla: 1.3 },
         outline: Outline { inner_radius_m, outer_radius_m, length_m },
+        coercivity_a_per_m: None,
     }
 }
 
@@ -91,6 +92,7 @@ fn a_rod_leaves_no_bore_even_for_a_dipole() {
         centre_m: 0.0,
         source: Source::Dipole { moment_a_m2: 1.0 },
         outline: Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 },
+        coercivity_a_per_m: None,
     }];
     assert!(matches!(p.faults()[..], [ProblemFault::NoClearance { .. }]));
     assert!(p.faults()[0].legal().unwrap().contains("wider than 10 mm"));

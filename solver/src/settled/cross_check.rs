@@ -41,7 +41,7 @@ fn problem(jacket: Option<f64>) -> Problem {
     Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers },
         mover: Mover {
-            parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
+            parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }],
             mass_kg: None,
             recoil: None,
         },

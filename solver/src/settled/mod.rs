@@ -12,6 +12,7 @@ mod elimination;
 mod lanczos;
 mod level;
 mod levels;
+mod magnets;
 mod method;
 mod recurrence;
 mod steady;

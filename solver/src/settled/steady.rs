@@ -3,6 +3,7 @@
 use super::balance::{cautions, three_forces, wanted_fields};
 use super::level::Wanted;
 use super::levels::{Levels, Point, damping_at_rest};
+use super::magnets::magnet_figures;
 use crate::band::{self, Ladder};
 use crate::fault::SolveFault;
 use crate::monitor::Monitor;
@@ -42,7 +43,9 @@ fn steady_on(problem: &Problem, velocity: f64, levels: &mut Levels<'_>) -> Resul
             imbalance_relative: (point.drag.value - point.heat.value) / point.drag.value,
             unit: "W",
         };
-        (moving_figures(&point, velocity), Some(forces), Some(ledger), fields)
+        let mut figures = moving_figures(&point, velocity);
+        figures.extend(magnet_figures(problem, levels, velocity)?);
+        (figures, Some(forces), Some(ledger), fields)
     } else {
         let fields = if speed > 0.0 { wanted_fields(problem, levels, velocity)? } else { None };
         (resting_figures(levels), None, None, fields)

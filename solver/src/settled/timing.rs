@@ -40,7 +40,7 @@ fn problem(thickness: f64, mu_r: f64) -> Problem {
     Problem {
         wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
         mover: Mover {
-            parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline }],
+            parts: vec![Part { name: "M".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }],
             mass_kg: None,
             recoil: None,
         },

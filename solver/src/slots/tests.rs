@@ -18,7 +18,7 @@ fn tube(thickness_mm: f64) -> Problem {
     let layer = cases::layer(12.0 - 0.5 * thickness_mm, 12.0 + 0.5 * thickness_mm, 58.0, 1.0);
     let source = Source::Dipole { moment_a_m2: 1.0 };
     let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
-    let dipole = Part { name: "dipole".to_owned(), centre_m: 0.0, source, outline };
+    let dipole = Part { name: "dipole".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
     cases::problem(cases::endless(vec![layer]), vec![dipole], Travel::Steady { velocity_m_per_s: 1.0 }, 3)
 }
 

@@ -83,7 +83,13 @@ impl Stack {
             top = bottom + item.length_m();
             if let StackItem::Magnetic { name, source, outline, north } = item {
                 let source = if *north == North::Up { *source } else { source.reversed() };
-                parts.push(Part { name: name.clone(), centre_m: 0.5 * (bottom + top), source, outline: *outline });
+                parts.push(Part {
+                    name: name.clone(),
+                    centre_m: 0.5 * (bottom + top),
+                    source,
+                    outline: *outline,
+                    coercivity_a_per_m: None,
+                });
             }
         }
         for part in &mut parts {

@@ -54,7 +54,7 @@ struct Row {
 /// use lenzbore_solver::sources::{AxialField, Source, SourceTable};
 /// let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 0.009, length_m: 0.012, remanence_tesla: 1.25 };
 /// let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.009, length_m: 0.012 };
-/// let mover = Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline }], mass_kg: None, recoil: None };
+/// let mover = Mover { parts: vec![Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None }], mass_kg: None, recoil: None };
 /// let table = SourceTable::new(&mover, &[0.011, 0.012], -0.2, 0.2, 1e-10);
 /// let mut psi = [0.0; 2];
 /// table.fill(1, &[0.003, 0.3], &mut psi);
@@ -300,7 +300,7 @@ mod tests {
 
     fn part(centre_m: f64, source: Source) -> Part {
         let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.01, length_m: 0.01 };
-        Part { name: "part".into(), centre_m, source, outline }
+        Part { name: "part".into(), centre_m, source, outline, coercivity_a_per_m: None }
     }
 
     fn magnet(inner: f64, outer: f64, length_m: f64, remanence_tesla: f64) -> Source {

@@ -36,7 +36,7 @@ pub(crate) fn finite(length_m: f64, mut layers: Vec<Layer>) -> Wall {
 pub(super) fn part(source: Source, centre_mm: f64) -> Part {
     let (inner_radius_m, outer_radius_m, half) = source_sizes(&source);
     let outline = Outline { inner_radius_m, outer_radius_m, length_m: 2.0 * half };
-    Part { name: format!("at {centre_mm} mm"), centre_m: centre_mm * 1e-3, source, outline }
+    Part { name: format!("at {centre_mm} mm"), centre_m: centre_mm * 1e-3, source, outline, coercivity_a_per_m: None }
 }
 
 /// A dipole of 1 A m2.

@@ -11,6 +11,7 @@ use crate::units::Kind;
 
 const TURNS: Form =
     Form::Quantity(Kind::Ratio, SensibleRange { lowest: 1e-3, highest: 1e7, zero: false, signed: false });
+const COERCIVITY: SensibleRange = SensibleRange { lowest: 1e2, highest: 1e8, zero: false, signed: false };
 const CURRENT: Form =
     Form::Quantity(Kind::Current, SensibleRange { lowest: 0.0, highest: 1e7, zero: true, signed: true });
 
@@ -100,6 +101,20 @@ pub(super) const MAGNET: CaseTable = CaseTable {
             "relative recoil permeability of the magnet",
             "the material's, else 1 with a caution",
             "recoil_permeability = 1.05",
+        ),
+        word(
+            "coercivity_hcj",
+            Form::Quantity(Kind::FieldStrength, COERCIVITY),
+            "intrinsic coercivity HcJ at 20 degC: the opposing field at which the polarisation is gone",
+            "the material's least, else no demagnetisation figures",
+            "coercivity_hcj = \"20 kOe\"",
+        ),
+        word(
+            "coercivity_hcj_coefficient",
+            COEFFICIENT,
+            "relative change of the intrinsic coercivity with temperature",
+            "the material's, else none and a caution",
+            "coercivity_hcj_coefficient = \"-0.55 %/K\"",
         ),
         OUTER,
         INNER,

@@ -94,6 +94,7 @@ fn a_coil_shows_the_sense_of_its_current() {
         centre_m: 0.0,
         source: Source::Coil { inner_radius_m: 5e-3, outer_radius_m: 9e-3, length_m: 16e-3, ampere_turns: 900.0 },
         outline: Outline { inner_radius_m: 5e-3, outer_radius_m: 9e-3, length_m: 16e-3 },
+        coercivity_a_per_m: None,
     }];
     outcome.fields = Some(demo::fields(&problem, &[0.0], -5.0));
     let mut picture = section("Coil in a copper tube", &problem, &outcome).unwrap();
@@ -112,5 +113,6 @@ fn ring(name: &str, centre: f64, remanence: f64) -> Part {
             remanence_tesla: remanence,
         },
         outline: Outline { inner_radius_m: 8.9e-3, outer_radius_m: 15e-3, length_m: 10e-3 },
+        coercivity_a_per_m: None,
     }
 }

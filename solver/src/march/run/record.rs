@@ -45,6 +45,20 @@ impl Run<'_, '_> {
         self.series.pull_mid.push(pull);
         self.record_routes(middle, begin + 0.5 * dt);
         self.record_peak(dt, report.travel);
+        self.record_magnets(middle);
+    }
+
+    /// How strongly magnets are driven against their magnetisation at the step's middle.
+    fn record_magnets(&mut self, middle: f64) {
+        let Some(watch) = &self.magnets else { return };
+        let worst = watch.worst(&self.level.operators.grid, &self.psi_nodes, middle);
+        let push = |series: &mut [Vec<f64>; 3], value: f64, (r, z): (f64, f64)| {
+            for (column, value) in series.iter_mut().zip([value, r, z + middle]) {
+                column.push(value);
+            }
+        };
+        push(&mut self.series.opposing_mid, worst.field, worst.field_at);
+        push(&mut self.series.margin_mid, worst.margin, worst.margin_at);
     }
 
     /// The two other routes at the step's middle.
