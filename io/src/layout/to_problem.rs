@@ -45,5 +45,5 @@ fn part(body: &BodyLayout) -> Option<Part> {
         BodyKind::Spacer => return None,
     };
     let outline = Outline { inner_radius_m, outer_radius_m, length_m };
-    Some(Part { name: body.name.clone(), centre_m: body.at_m, source, outline })
+    Some(Part { name: body.name.clone(), centre_m: body.at_m, source, outline, coercivity_a_per_m: None })
 }

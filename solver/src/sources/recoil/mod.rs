@@ -166,7 +166,7 @@ impl Mover {
     /// use lenzbore_solver::sources::{AxialField, Source};
     /// let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m: 0.011, length_m: 0.012, remanence_tesla: 1.3 };
     /// let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.011, length_m: 0.012 };
-    /// let part = Part { name: "M".into(), centre_m: 0.0, source, outline };
+    /// let part = Part { name: "M".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
     /// let mover = Mover { parts: vec![part], mass_kg: None, recoil: None };
     /// let real = mover.clone().with_recoil(&[1.05], 1e-3)?;
     /// let weaker = real.flux_density_r(0.0125, 0.006) / mover.flux_density_r(0.0125, 0.006);

@@ -12,7 +12,7 @@ use approx::assert_relative_eq;
 fn part(centre_m: f64, (inner, outer, length_m): (f64, f64, f64), remanence_tesla: f64) -> Part {
     let source = Source::Magnet { inner_radius_m: inner, outer_radius_m: outer, length_m, remanence_tesla };
     let outline = Outline { inner_radius_m: inner, outer_radius_m: outer, length_m };
-    Part { name: "M".into(), centre_m, source, outline }
+    Part { name: "M".into(), centre_m, source, outline, coercivity_a_per_m: None }
 }
 
 fn recoil(parts: &[Part], mu: f64, fineness: Fineness) -> Recoil {
