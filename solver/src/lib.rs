@@ -106,6 +106,7 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
         Travel::Alternating(law) => harmonic::alternating(problem, law, monitor),
     }?;
     slots::add_to(&mut outcome, problem);
+    demagnetisation::caution_in(&mut outcome);
     Ok(outcome)
 }
 

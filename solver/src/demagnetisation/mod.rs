@@ -14,10 +14,30 @@ mod watch;
 
 pub(crate) use watch::{Opposed, Watch};
 
+use crate::outcome::{Caution, Outcome};
+
 /// Name of the greatest opposing field, A/m.
 pub(crate) const FIELD: &str = "demagnetising_field_peak";
 /// Name of what the coercivity leaves.
 pub(crate) const MARGIN: &str = "demagnetisation_margin";
+
+/// Share of the coercivity below which the rest is small: the knee of a square curve lies some tenth below HcJ (common practice).
+const SMALL: f64 = 0.15;
+
+/// Says so where the coercivity leaves little.
+pub(crate) fn caution_in(outcome: &mut Outcome) {
+    let Some(figure) = outcome.figures.iter().find(|f| f.name == MARGIN && f.value < SMALL) else { return };
+    let text = if figure.value > 0.0 {
+        format!(
+            "The demagnetisation margin is only {:.1} %: a magnet loses strength for good from the knee of its curve on, before the margin is \
+             0; hold it against the maker's curve at the mover's temperature.",
+            100.0 * figure.value
+        )
+    } else {
+        "The field against a magnet exceeds its coercivity: it would be demagnetised there, and the other figures do not hold.".to_owned()
+    };
+    outcome.cautions.push(Caution { text });
+}
 
 #[cfg(test)]
 mod tests;
