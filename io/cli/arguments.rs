@@ -33,7 +33,7 @@ pub fn commands() -> Vec<(String, String)> {
 /// The commands.
 #[derive(Debug, Subcommand)]
 pub enum Command {
-    /// Writes a commented starter case
+    /// Writes a commented starter case: an arrestor, a damper or a coil probe
     New(NewWords),
     /// Reads a case and says what would be solved: parts to scale, clearance, grids, steps, memory and time; solves nothing
     Check(CheckWords),
@@ -51,6 +51,10 @@ pub enum Command {
     Validate(ValidateWords),
     /// The material book, with the source of every number
     Materials(MaterialsWords),
+    /// Writes a result in another format: for visualisation programs, spreadsheets or other solvers
+    Export(ExportWords),
+    /// Solves a result folder's case again and says figure by figure whether it comes back within its band
+    Rerun(RerunWords),
     /// The JSON Schema of the case file, for completion and checks in editors
     Schema,
     /// What a word means: of the case file, of a result, of a table, a command; without a word, lists all
@@ -68,6 +72,20 @@ pub struct NewWords {
     /// File to write; `-` is standard output
     #[arg(default_value = "case.toml")]
     pub path: PathBuf,
+    /// What the case is of
+    #[arg(long, value_name = "KIND", value_enum, default_value_t = StarterKind::Arrestor)]
+    pub kind: StarterKind,
+}
+
+/// What a starter is of.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum StarterKind {
+    /// A carrier that falls through a sleeve and is caught by it
+    Arrestor,
+    /// Magnets that swing to and fro in a sleeve
+    Damper,
+    /// A coil with alternating current in a tube
+    CoilProbe,
 }
 
 /// What names a case.
@@ -232,6 +250,48 @@ pub struct MaterialsWords {
     /// Also reads own materials from this file
     #[arg(long, value_name = "FILE")]
     pub with: Option<PathBuf>,
+    /// Prints one JSON object instead of text
+    #[arg(long)]
+    pub json: bool,
+}
+
+/// `lenzbore export`.
+#[derive(Debug, Args)]
+pub struct ExportWords {
+    /// The result folder, of `run` or `curve`
+    pub folder: PathBuf,
+    /// The format
+    #[arg(long, value_name = "FORMAT", value_enum)]
+    pub to: ExportFormat,
+    /// csv: the snapshot nearest to this instant, as "0.12 s" [default: the one with the greatest current density]
+    #[arg(long, value_name = "TIME")]
+    pub at: Option<String>,
+    /// Folder of the export [default: the result folder with - and the format behind it]
+    #[arg(long, value_name = "FOLDER")]
+    pub out: Option<PathBuf>,
+    /// Puts the export in the place of an older one
+    #[arg(long)]
+    pub replace: bool,
+}
+
+/// A format that results can be written in.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, ValueEnum)]
+pub enum ExportFormat {
+    /// One rectilinear XML file a snapshot (.vtr) and their series (.pvd)
+    Vtk,
+    /// run.h5 with its index run.xdmf
+    Xdmf,
+    /// The fields of one snapshot as tables, and the series of the run
+    Csv,
+    /// K, G, C and the source of every grid level: settled and alternating fields
+    MatrixMarket,
+}
+
+/// `lenzbore rerun`.
+#[derive(Debug, Args)]
+pub struct RerunWords {
+    /// The result folder, of `run` or `curve`
+    pub folder: PathBuf,
     /// Prints one JSON object instead of text
     #[arg(long)]
     pub json: bool,

@@ -207,5 +207,8 @@ fn write_drawing(path: &Path, case: &ResolvedCase) -> Result<(), End> {
         Some("png") => picture.png()?,
         _ => return Err(End::Input(format!("{}: the drawing is an .svg or a .png file", path.display()))),
     };
-    std::fs::write(path, bytes).map_err(|e| End::Failed(format!("{} cannot be written: {e}", path.display())))
+    std::fs::write(path, bytes).map_err(|e| match e.kind() {
+        std::io::ErrorKind::NotFound => End::Input(format!("{}: the folder does not exist", path.display())),
+        _ => End::Failed(format!("{} cannot be written: {e}", path.display())),
+    })
 }

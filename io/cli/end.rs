@@ -7,7 +7,7 @@ use lenzbore_io::result::IoFault;
 use lenzbore_solver::fault::SolveFault;
 
 /// Commands of the vocabulary that are not built yet.
-const LATER: [&str; 4] = ["rerun", "export", "sweep", "identify"];
+const LATER: [&str; 2] = ["sweep", "identify"];
 
 /// Why a command ended.
 #[derive(Debug)]

@@ -81,7 +81,12 @@ pub fn write_options(plan: &OutputPlan, replace: bool) -> WriteOptions {
 }
 
 /// What the result says of itself.
-pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[String]) -> ResultHeader {
+pub fn header(
+    case: &ResolvedCase,
+    command: &'static str,
+    independent: Option<Value>,
+    more_cautions: &[String],
+) -> ResultHeader {
     let mut cautions = case.cautions.clone();
     cautions.extend_from_slice(more_cautions);
     ResultHeader {
@@ -89,6 +94,8 @@ pub fn header(case: &ResolvedCase, independent: Option<Value>, more_cautions: &[
         record: case.record.clone(),
         digest: case.digest.clone(),
         program: Program { name: env!("CARGO_PKG_NAME").to_owned(), version: env!("CARGO_PKG_VERSION").to_owned() },
+        command,
+        case: case.kept.to_json(),
         resolved: case.resolved.to_json(),
         geometry: layout(case),
         not_modelled: case.not_modelled.clone(),

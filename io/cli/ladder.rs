@@ -23,7 +23,7 @@ pub fn run(words: &LadderWords) -> Result<(), End> {
     let outcome = answer(&input, &case, words.curve, &terminal)?;
     terminal.finish();
     let cautions = case.curve.as_ref().filter(|_| asks_curve(&case, words.curve)).map(|c| c.cautions.clone());
-    let header = job::header(&case, None, &cautions.unwrap_or_default());
+    let header = job::header(&case, "ladder", None, &cautions.unwrap_or_default());
     let options = job::write_options(&case.output, words.replace);
     let written = write_ladder(&target, &options, &header, &outcome, &terminal)?;
     if words.case.json {

@@ -10,6 +10,7 @@ mod completions;
 mod curve;
 mod end;
 mod explain;
+mod export;
 mod job;
 mod ladder;
 mod materials;
@@ -17,6 +18,7 @@ mod memory;
 mod new;
 mod progress;
 mod report;
+mod rerun;
 mod say;
 mod schema;
 mod sketch;
@@ -43,6 +45,8 @@ fn main() -> ExitCode {
         Command::Report(words) => report::run(&words),
         Command::Validate(words) => validate::run(&words),
         Command::Materials(words) => materials::run(&words),
+        Command::Export(words) => export::run(&words),
+        Command::Rerun(words) => rerun::run(&words),
         Command::Schema => schema::run(),
         Command::Explain(words) => explain::run(&words),
         Command::Completions(words) => completions::run(&words),

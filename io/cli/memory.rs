@@ -43,7 +43,7 @@ fn place(case: &ResolvedCase, curve: bool) -> Option<String> {
     let of_other = |word: &str| word.starts_with(if curve { "travel." } else { "curve." });
     LARGE.iter().filter(|word| !of_other(word)).find_map(|word| match &case.resolved.get(word)?.origin {
         Origin::Given { place, .. } => Some(place.clone()),
-        Origin::Override { text } => Some(format!("--set {word} = {text}")),
+        Origin::Override { text } => Some(format!("--set {text}")),
         _ => None,
     })
 }

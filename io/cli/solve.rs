@@ -26,6 +26,21 @@ pub enum Question {
     Curve,
 }
 
+impl Question {
+    /// The command that asks it.
+    pub const fn command(self) -> &'static str {
+        match self {
+            Self::Travel => "run",
+            Self::Curve => "curve",
+        }
+    }
+
+    /// What a command asks.
+    pub fn of_command(command: &str) -> Option<Self> {
+        [Self::Travel, Self::Curve].into_iter().find(|q| q.command() == command)
+    }
+}
+
 /// Solves and writes.
 pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     let input = CaseInput::open(&words.case)?;
@@ -42,7 +57,7 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     terminal.finish();
     let spread = input_spread(&input, &case, question, (&problem, &outcome), &words.spread, &terminal)?;
     let independent = independent(&problem, &outcome, question);
-    let header = ResultHeader { spread, ..job::header(&case, independent, &cautions) };
+    let header = ResultHeader { spread, ..job::header(&case, question.command(), independent, &cautions) };
     let options = job::write_options(&case.output, words.replace);
     let written = write(&target, &options, &header, &problem, &outcome, &terminal)?;
     if words.case.json {
@@ -102,7 +117,8 @@ pub fn nominal(outcome: &Outcome) -> Vec<Nominal> {
     outcome.figures.iter().map(of).collect()
 }
 
-fn answer(
+/// The problem that was solved, its outcome, and cautions that belong to the question.
+pub fn answer(
     case: &ResolvedCase,
     question: Question,
     monitor: &dyn Monitor,

@@ -2,6 +2,7 @@
 
 pub mod case;
 pub mod explain;
+pub mod export;
 pub mod layout;
 pub mod materials;
 pub mod message;

@@ -7,7 +7,7 @@ use thiserror::Error;
 #[non_exhaustive]
 pub enum MeshFault {
     /// Breakpoints are not finite and strictly increasing.
-    #[error("breakpoint {index} at {position_m} m does not lie above the one before it")]
+    #[error("two faces or ends lie at one place, or one is no number: the {index}th along its line, at {position_m} m")]
     Breakpoints {
         /// Index of the first offending breakpoint.
         index: usize,
@@ -15,7 +15,7 @@ pub enum MeshFault {
         position_m: f64,
     },
     /// The size law asks for a cell that is not positive and finite.
-    #[error("the cell size at {position_m} m is {size_m} m")]
+    #[error("its cells at {position_m} m would have to be {size_m} m in size")]
     Size {
         /// Where, m.
         position_m: f64,
@@ -23,7 +23,9 @@ pub enum MeshFault {
         size_m: f64,
     },
     /// The line would have more cells than is sensible.
-    #[error("a node line would need {cells:.0} cells (limit {limit})")]
+    #[error(
+        "it would take {cells:.0} cells along one direction, and {limit} are the most: wall or travel are very long for the finest part"
+    )]
     TooManyCells {
         /// Cells asked.
         cells: f64,

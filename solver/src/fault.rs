@@ -11,19 +11,25 @@ pub enum SolveFault {
     #[error("the grid cannot be built: {0}")]
     Mesh(#[from] MeshFault),
     /// The matrix was not numerically positive definite.
-    #[error("the factorisation failed on {unknowns} unknowns: the matrix is not positive definite")]
+    #[error(
+        "the field could not be computed: its {unknowns} equations have no stable solution; look for sizes, conductivities or \
+         permeabilities that lie very many powers of ten apart"
+    )]
     Factorisation {
         /// Unknowns.
         unknowns: usize,
     },
     /// A number that is not finite appeared.
-    #[error("{what} is not a finite number")]
+    #[error("the computation failed: {what} came out as no finite number")]
     NotFinite {
         /// What.
         what: &'static str,
     },
     /// A linear solve left too large a residual.
-    #[error("a linear solve left a relative residual of {residual:.1e} (limit {limit:.1e})")]
+    #[error(
+        "the field could not be computed: its equations are fulfilled to {residual:.1e} only, where {limit:.1e} is asked; look for sizes, \
+         conductivities or permeabilities that lie very many powers of ten apart"
+    )]
     Residual {
         /// The residual.
         residual: f64,

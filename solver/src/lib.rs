@@ -25,6 +25,7 @@ pub mod slots;
 pub mod sources;
 pub mod spread;
 pub mod step_field;
+pub mod system;
 
 mod band;
 mod corner;

@@ -52,7 +52,22 @@ pub(super) fn odd_sizes(problem: &Problem) -> Vec<String> {
         let (length, across) = (1e3 * p.outline.length_m, 1e3 * across);
         format!("part '{}' is {length} mm long where the wall is {across} mm across: was another unit meant?", p.name)
     };
-    problem.mover.parts.iter().filter(long).map(say).collect()
+    let lost = largest_clearance(problem).filter(|(gap, size)| *gap > WIDE_GAP * size);
+    let far = lost.map(|(gap, size)| {
+        let (gap, size) = (1e3 * gap, 1e3 * size);
+        format!("the mover, {size} mm across, runs {gap} mm away from the wall: was another unit meant?")
+    });
+    problem.mover.parts.iter().filter(long).map(say).chain(far).collect()
+}
+
+/// A running clearance of so many diameters of the mover was hardly meant.
+const WIDE_GAP: f64 = 20.0;
+
+/// Clearance in a bore and diameter of the widest part, m.
+fn largest_clearance(problem: &Problem) -> Option<(f64, f64)> {
+    let bore = problem.wall.inner_radius_m();
+    let widest = problem.mover.parts.iter().map(|p| p.outline.outer_radius_m).fold(0.0, f64::max);
+    (widest > 0.0 && bore > widest && bore.is_finite()).then_some((bore - widest, 2.0 * widest))
 }
 
 /// A fault that stems from parts left out because they could not be read.

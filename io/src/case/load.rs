@@ -1,5 +1,6 @@
 //! Reads a case file and the files it starts from.
 
+use std::collections::BTreeMap;
 use std::io::Read;
 use std::path::{Component, Path, PathBuf};
 
@@ -26,6 +27,10 @@ pub(super) struct Loaded {
     pub notes: Vec<String>,
     /// Grades of the case's own file of materials.
     pub own_materials: Book,
+    /// Contents of the files that the case names, by the name as it stands there.
+    pub kept_files: BTreeMap<String, String>,
+    /// The word `materials`, which is not in the tree any more.
+    pub materials: Option<Entry>,
     /// Whether every file could be read as TOML.
     pub readable: bool,
 }
@@ -36,6 +41,7 @@ pub(super) fn load(source: &CaseSource<'_>, sets: &[String]) -> Loaded {
     let tree = match source {
         CaseSource::Path(path) => read_file(path, None, &mut Vec::new(), &mut loaded),
         CaseSource::Text { name, text, base_dir } => read_text(name, text, base_dir, &mut Vec::new(), &mut loaded),
+        CaseSource::Kept(case) => read_text("the kept case", &case.toml, Path::new(""), &mut Vec::new(), &mut loaded),
     };
     let over = overrides_tree(sets, &tree, &mut loaded.sources, &mut loaded.faults);
     loaded.tree = overlay(tree, over, &mut loaded.notes);
@@ -49,14 +55,16 @@ fn read_own_materials(source: &CaseSource<'_>, loaded: &mut Loaded) {
     let place = entry.node.place.clone();
     let fault = match &entry.node.value {
         Value::Text(text) if !text.trim().is_empty() => {
-            let path = tidy(&folder_of(&place, source, &loaded.sources).join(text.trim()));
-            let label = path.display().to_string();
-            match text_of(&path).map(|text| own_materials(&label, &text, &mut loaded.sources)) {
-                Ok(Ok(book)) => {
+            let (label, content) = named_file(&place, source, &loaded.sources, text.trim());
+            let content = content.and_then(utf8);
+            match content.map(|content| (own_materials(&label, &content, &mut loaded.sources), content)) {
+                Ok((Ok(book), content)) => {
+                    loaded.kept_files.insert(text.trim().to_owned(), content);
                     loaded.own_materials = book;
+                    loaded.materials = Some(entry);
                     return;
                 }
-                Ok(Err(faults)) => {
+                Ok((Err(faults), _)) => {
                     loaded.faults.extend(faults);
                     loaded.readable = false;
                     return;
@@ -74,8 +82,23 @@ fn read_own_materials(source: &CaseSource<'_>, loaded: &mut Loaded) {
     loaded.readable = false;
 }
 
+/// A file that the case names at `place`: what messages call it, and its bytes or why they cannot be read.
+pub(super) fn named_file(
+    place: &Place,
+    source: &CaseSource<'_>,
+    sources: &Sources,
+    name: &str,
+) -> (String, Result<Vec<u8>, String>) {
+    if let CaseSource::Kept(case) = source {
+        let content = case.files.get(name).map(|text| text.clone().into_bytes());
+        return (name.to_owned(), content.ok_or_else(|| "it was not kept with the case".to_owned()));
+    }
+    let path = tidy(&folder_of(place, source, sources).join(name));
+    (path.display().to_string(), bytes_of(&path))
+}
+
 /// The folder of the file that a place points into.
-pub(super) fn folder_of(place: &Place, source: &CaseSource<'_>, sources: &Sources) -> PathBuf {
+fn folder_of(place: &Place, source: &CaseSource<'_>, sources: &Sources) -> PathBuf {
     match source {
         CaseSource::Text { base_dir, .. } if place.source == 0 => base_dir.to_path_buf(),
         _ => sources.text(place).and_then(|t| Path::new(&t.label).parent()).unwrap_or(Path::new("")).to_owned(),
@@ -103,11 +126,15 @@ fn read_file(path: &Path, named_at: Option<Place>, chain: &mut Vec<PathBuf>, loa
 
 /// The text of a file, or why it cannot be read.
 pub(crate) fn text_of(path: &Path) -> Result<String, String> {
-    String::from_utf8(bytes_of(path)?).map_err(|_| "it is not UTF-8 text".to_owned())
+    utf8(bytes_of(path)?)
+}
+
+fn utf8(bytes: Vec<u8>) -> Result<String, String> {
+    String::from_utf8(bytes).map_err(|_| "it is not UTF-8 text".to_owned())
 }
 
 /// The bytes of a file, or why it cannot be read.
-pub(super) fn bytes_of(path: &Path) -> Result<Vec<u8>, String> {
+fn bytes_of(path: &Path) -> Result<Vec<u8>, String> {
     let plain = |e: std::io::Error| match e.kind() {
         std::io::ErrorKind::NotFound => "there is no such file".to_owned(),
         std::io::ErrorKind::PermissionDenied => "no permission to read it".to_owned(),
@@ -188,7 +215,7 @@ fn file_name(path: &Path) -> String {
 }
 
 /// `cases/../base.toml` is shown as `base.toml`.
-pub(super) fn tidy(path: &Path) -> PathBuf {
+fn tidy(path: &Path) -> PathBuf {
     let mut tidy = PathBuf::new();
     for part in path.components() {
         match part {

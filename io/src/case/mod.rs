@@ -32,6 +32,7 @@ mod coercivity;
 mod conductor;
 mod curve;
 mod geometry;
+mod kept;
 mod load;
 mod measures;
 mod mover;
@@ -45,6 +46,7 @@ mod reader;
 mod resolve;
 mod resolved;
 mod sizes;
+mod starters;
 mod stroke;
 mod temperature;
 mod tolerance;
@@ -59,16 +61,15 @@ use std::path::Path;
 use lenzbore_solver::problem::{Extent, Problem, Sine, SnapshotPlan, Travel, Traverse};
 
 use crate::message::Diagnostics;
+pub use kept::KeptCase;
 pub(crate) use load::text_of;
 pub use resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
+pub use starters::{STARTER, STARTERS, Starter, starter};
 pub use tolerance::Tolerance;
 pub use words::{LAWS, LawWords, TABLES, TableWords, law_words, table_words};
 
 #[cfg(test)]
 mod tests;
-
-/// A commented case that resolves as it stands: what `lenzbore new` writes.
-pub const STARTER: &str = include_str!("starter.toml");
 
 /// Where a case comes from.
 #[derive(Debug, Clone, Copy)]
@@ -84,6 +85,8 @@ pub enum CaseSource<'a> {
         /// Folder that a relative `like` starts from.
         base_dir: &'a Path,
     },
+    /// A result that kept it.
+    Kept(&'a KeptCase),
 }
 
 /// What `lenzbore curve` sweeps. Lists that were not asked for are empty.
@@ -154,6 +157,8 @@ pub struct ResolvedCase {
     pub digest: String,
     /// Case file and base files, in the order of reading.
     pub files: Vec<String>,
+    /// The whole case in one piece, to be read again without its files.
+    pub kept: KeptCase,
 }
 
 impl ResolvedCase {

@@ -98,7 +98,7 @@ fn snapshots(reader: &mut Reader, section: &Section<'_>, written: bool) -> Snaps
         Value::Text(text) => every(reader, node, text),
         Value::List(nodes) => instants(reader, nodes, node),
         _ => {
-            reader.wrong_shape(entry, "a plan of snapshots", FIELDS_EXAMPLE);
+            reader.wrong_shape(entry, "how often fields are kept", FIELDS_EXAMPLE);
             None
         }
     };

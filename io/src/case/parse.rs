@@ -62,12 +62,25 @@ fn whole(digits: &str, radix: u32) -> f64 {
 
 fn syntax(error: &toml::de::Error, text: &str, source: usize) -> Diagnostic {
     let span = error.span().unwrap_or(0..0);
-    let detail = error.message().replace('\n', "; ");
+    let detail = in_plain_words(&error.message().replace('\n', "; "));
     let hint = unquoted_quantity(text, span.start);
     Diagnostic::at(
         Place::new(source, span),
         CaseFault::Syntax { detail: format!("not readable as TOML: {detail}"), hint },
     )
+}
+
+/// What the TOML library says, where its users' words say more.
+fn in_plain_words(detail: &str) -> String {
+    match detail {
+        "duplicate key" => {
+            "this stands here a second time: every word once in its table, every table once (lists of tables in [[ ]])"
+                .to_owned()
+        }
+        "key with no value, expected `=`" => "a word without a value: WORD = VALUE".to_owned(),
+        "string values must be quoted, expected literal string" => "a text stands in quotes".to_owned(),
+        other => other.to_owned(),
+    }
 }
 
 /// `length = 600 mm` without quotes is the slip that people make most.

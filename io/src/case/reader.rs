@@ -1,5 +1,7 @@
 //! Reads words of tables: shape, unit and range are checked, faults collected, values noted with their origin.
 
+use std::collections::BTreeMap;
+
 use lenzbore_solver::problem::{Quantity as Number, SensibleRange};
 
 use super::resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
@@ -19,6 +21,8 @@ pub(super) struct Reader {
     pub resolved: Resolved,
     /// Grades of the case's own file of materials.
     pub own_materials: Book,
+    /// Contents of the files that the case names, by the name as it stands there.
+    pub kept_files: BTreeMap<String, String>,
 }
 
 /// A table, what messages call it, and the path of its words.

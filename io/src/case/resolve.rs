@@ -1,11 +1,14 @@
 //! From the tree of words to the resolved case.
 
+use std::collections::BTreeMap;
+
 use lenzbore_solver::problem::{Accuracy, Extent, Mover, Problem, SnapshotPlan, Travel, Traverse, Wall};
 use serde_json::{Map, Value as Json};
 
 use super::alternating::{is_asked, read_alternating};
 use super::curve::read_curve;
 use super::geometry::{Parts, odd_sizes, place_faults};
+use super::kept::{KeptCase, toml_text};
 use super::load::Loaded;
 use super::mover::{MoverReading, read_mover};
 use super::output::{read_accuracy, read_output};
@@ -13,7 +16,7 @@ use super::reader::{Reader, Section};
 use super::stroke::{is_given_motion, read_given_motion};
 use super::tolerance::{Tolerance, read_tolerances};
 use super::travel::{Surroundings, read_travel};
-use super::tree::Table;
+use super::tree::{Entry, Table};
 use super::wall::read_wall;
 use super::{CaseSource, CurvePlan, OutputPlan, ResolvedCase};
 use crate::message::{CaseFault, Diagnostics, Place};
@@ -21,14 +24,14 @@ use crate::message::{CaseFault, Diagnostics, Place};
 static NO_TABLE: Table = Table { entries: Vec::new() };
 
 pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<ResolvedCase, Diagnostics> {
-    let Loaded { tree, sources, faults, notes, own_materials, readable } = loaded;
+    let Loaded { tree, sources, faults, notes, own_materials, kept_files, materials, readable } = loaded;
     if !readable {
         return Err(Diagnostics::new(sources, faults));
     }
-    let mut reader = Reader { sources, faults, cautions: notes, own_materials, ..Reader::default() };
+    let mut reader = Reader { sources, faults, cautions: notes, own_materials, kept_files, ..Reader::default() };
     let root = Section { table: &tree, kind: "", label: "a case file", path: Vec::new(), place: Place::new(0, 0..0) };
     let read = read_root(&mut reader, &root, source);
-    let Reader { sources, faults, cautions, not_modelled, resolved, .. } = reader;
+    let Reader { sources, faults, cautions, not_modelled, resolved, kept_files, .. } = reader;
     match read {
         Some(read) if faults.is_empty() => Ok(ResolvedCase {
             title: read.title,
@@ -39,6 +42,7 @@ pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<Resolve
             output: read.output,
             tolerances: read.tolerances,
             digest: resolved.digest(),
+            kept: kept(&tree, materials, kept_files),
             files: sources.files().map(str::to_owned).collect(),
             resolved,
             cautions,
@@ -46,6 +50,13 @@ pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<Resolve
         }),
         _ => Err(Diagnostics::new(sources, faults)),
     }
+}
+
+/// The case in one piece; what came from the shell or base files is in the tree already.
+fn kept(tree: &Table, materials: Option<Entry>, files: BTreeMap<String, String>) -> KeptCase {
+    let mut whole = tree.clone();
+    whole.entries.extend(materials);
+    KeptCase { toml: toml_text(&whole), files }
 }
 
 struct Read {
@@ -168,7 +179,7 @@ fn title(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -> St
     }
     match source {
         CaseSource::Path(path) => path.file_stem().map(|s| s.to_string_lossy().into_owned()),
-        CaseSource::Text { .. } => None,
+        CaseSource::Text { .. } | CaseSource::Kept(_) => None,
     }
     .unwrap_or_else(|| "case".to_owned())
 }

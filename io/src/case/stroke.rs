@@ -1,11 +1,11 @@
 //! `[travel]` of laws `sine` and `table`: motions that are given.
 
-use std::path::Path;
-
 use lenzbore_solver::problem::{MOST_CYCLES, MotionTable, Quantity as Number, Sine, Travel};
 
+use sha2::{Digest, Sha256};
+
 use super::CaseSource;
-use super::load::{bytes_of, folder_of, tidy};
+use super::load::named_file;
 use super::measures::POSITION;
 use super::reader::{Reader, Section, Wanted, wanted};
 use super::resolved::{Origin, ResolvedValue};
@@ -63,37 +63,59 @@ fn table(reader: &mut Reader, section: &Section<'_>, source: &CaseSource<'_>) ->
     }
     let name = reader.text(section, "file", FILE)?;
     let place = section.place_of("file");
-    let path = tidy(&folder_of(&place, source, &reader.sources).join(name.trim()));
+    let (label, bytes) = named_file(&place, source, &reader.sources, name.trim());
     reader.note_text(section, "file", &name);
-    motion(reader, &place, &path)
+    let (motion, text) = motion(reader, &place, (&label, bytes))?;
+    // The digest knows the motion itself, not the name of its file alone.
+    let content = Sha256::digest(text.as_bytes()).iter().map(|byte| format!("{byte:02x}")).collect();
+    let origin = reader.origin(&place);
+    reader.note(section, "file_sha256", ResolvedValue::Text(content), "", origin);
+    reader.kept_files.insert(name.trim().to_owned(), text);
+    Some(motion)
 }
 
-/// Reads the file at `path`, which the case names at `place`; its faults join those of the case.
-fn motion(reader: &mut Reader, place: &Place, path: &Path) -> Option<MotionTable> {
-    let label = path.display().to_string();
-    let bytes = match bytes_of(path) {
+/// Reads the file that the case names at `place`, and gives its text beside the motion; its faults join those of the case.
+fn motion(
+    reader: &mut Reader,
+    place: &Place,
+    (label, bytes): (&str, Result<Vec<u8>, String>),
+) -> Option<(MotionTable, String)> {
+    let bytes = match bytes {
         Ok(bytes) => bytes,
         Err(why) => {
-            reader.fault(place.clone(), CaseFault::UnreadableFile { path: label, why });
+            reader.fault(place.clone(), CaseFault::UnreadableFile { path: label.to_owned(), why });
             return None;
         }
     };
-    match read_table(&label, &bytes, &|_| None) {
+    match read_table(label, &bytes, &|_| None) {
         Ok(table) => {
             let text = table.sources.text(&Place::new(0, 0..0)).map_or_else(String::new, |t| t.text.clone());
-            let index = reader.sources.add(&label, &text, SourceKind::File);
+            let index = reader.sources.add(label, &text, SourceKind::File);
             reader.cautions.extend(table.notes.iter().map(|note| format!("{label}: {note}")));
-            points(reader, &table, index)
+            points(reader, &table, index).map(|motion| (motion, text))
         }
         Err(faults) => {
             let text = faults.sources().text(&Place::new(0, 0..0)).map_or_else(String::new, |t| t.text.clone());
-            let index = reader.sources.add(&label, &text, SourceKind::File);
+            let index = reader.sources.add(label, &text, SourceKind::File);
             reader.faults.extend(faults.faults().iter().map(|d| Diagnostic {
+                fault: Box::new(of_motion(&d.fault)),
                 place: d.place.as_ref().map(|p| here(p, index)).or_else(|| Some(place.clone())),
                 ..d.clone()
             }));
             None
         }
+    }
+}
+
+/// What is said of a table to compare, said of a motion.
+fn of_motion(fault: &CaseFault) -> CaseFault {
+    match fault {
+        CaseFault::Table(TableFault::UnknownColumn { header, .. }) => TableFault::NoMotion {
+            what: format!("a column '{header}', which is neither time nor position"),
+            mend: "a header as time_s,position_mm, and a row for each instant".to_owned(),
+        }
+        .into(),
+        other => other.clone(),
     }
 }
 

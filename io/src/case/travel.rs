@@ -105,14 +105,15 @@ pub(super) fn law(reader: &mut Reader, section: &Section<'_>) -> Option<&'static
 
 fn check_law_words(reader: &mut Reader, section: &Section<'_>, law: &'static str, words: &[&'static str]) {
     for entry in section.table.entries.iter().filter(|e| e.word != "law" && !words.contains(&e.word.as_str())) {
-        let owner = LAWS.iter().find(|l| l.words.contains(&entry.word.as_str()));
-        let fault = match owner {
-            Some(owner) => CaseFault::Clash {
+        let of_word = LAWS.iter().filter(|l| l.words.contains(&entry.word.as_str()));
+        let owners: Vec<String> = of_word.map(|l| format!("'{}'", l.law)).collect();
+        let fault = match owners.as_slice() {
+            [_, ..] => CaseFault::Clash {
                 words: format!("'{}' in a travel of law '{law}'", entry.word),
-                why: format!("it is a word of law '{}'", owner.law),
+                why: format!("it is a word of law {}", owners.join(", ")),
                 mend: format!("words of law '{law}': {}", words.join(", ")),
             },
-            None => CaseFault::UnknownWord {
+            [] => CaseFault::UnknownWord {
                 word: entry.word.clone(),
                 table: section.label.to_owned(),
                 nearest: nearest(&entry.word, words.iter().copied().chain(["law"])),

@@ -5,6 +5,7 @@ use lenzbore_solver::problem::SensibleRange;
 use super::reader::{Reader, Section, Wanted, unit_of};
 use super::resolved::{Origin, ResolvedValue};
 use super::tree::{Node, Value};
+use crate::explain::short;
 use crate::message::{CaseFault, Place, SourceKind, nearest};
 use crate::units::{Kind, read_bare_number, read_quantity};
 
@@ -91,11 +92,11 @@ impl Reader {
         let unit = wanted.kind.si_unit();
         let unit = if unit == "1" { String::new() } else { format!(" {unit}") };
         let legal = match (signed, zero) {
-            (true, _) => format!("sensible: {}{unit} to {highest}{unit}", -highest),
+            (true, _) => format!("sensible: {}{unit} to {}{unit}", short(-highest), short(highest)),
             (false, true) if si < 0.0 => format!("it is 0 or greater, at most {highest}{unit}"),
             (false, false) if si <= 0.0 => format!("it is greater than 0, at most {highest}{unit}"),
-            (false, true) => format!("sensible: 0, or {lowest}{unit} to {highest}{unit}"),
-            (false, false) => format!("sensible: {lowest}{unit} to {highest}{unit}"),
+            (false, true) => format!("sensible: 0, or {}{unit} to {}{unit}", short(lowest), short(highest)),
+            (false, false) => format!("sensible: {}{unit} to {}{unit}", short(lowest), short(highest)),
         };
         let mend = match &node.value {
             Value::Number(_) if wanted.kind != Kind::Ratio => Some(format!(

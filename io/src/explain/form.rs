@@ -132,6 +132,10 @@ fn in_words(kind: Kind, range: &SensibleRange) -> String {
 }
 
 /// A bound in few digits.
-fn short(x: f64) -> String {
+pub(crate) fn short(x: f64) -> String {
+    // A right angle is the one bound that is no round number.
+    if (x.abs() - std::f64::consts::FRAC_PI_2).abs() < 1.0e-12 {
+        return format!("{x:.4}");
+    }
     if x.abs() > 0.0 && !(1.0e-3..1.0e5).contains(&x.abs()) { format!("{x:e}") } else { format!("{x}") }
 }

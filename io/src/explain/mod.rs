@@ -21,6 +21,7 @@ mod tests;
 pub use case_words::{CASE_TABLES, CaseTable, CaseWord, case_table, case_word};
 pub use figures::{FIGURES, FigureMeaning, figure_meaning};
 pub use form::Form;
+pub(crate) use form::short;
 pub use meaning::{Meaning, find, meanings, nearest_names};
 pub use results::{FILES, KEYS};
 #[cfg(test)]

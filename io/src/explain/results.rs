@@ -9,6 +9,7 @@ pub const KEYS: &[(&str, &str)] = &[
     ("name", "of the program"),
     ("version", "of the program"),
     ("record", "texts of the case's [record]"),
+    ("command", "the command that computed the result"),
     ("digest", "SHA-256 of the resolved case: equal digests, equal inputs"),
     ("figures", "the headline figures by name, each with value, unit, band, basis"),
     ("value", "the figure, in the unit beside it"),
@@ -99,6 +100,9 @@ pub const KEYS: &[(&str, &str)] = &[
     ("start_m", "position of the reference point at the start, m"),
     ("end_m", "position of the reference point at the end, m"),
     ("not_modelled", "what the case has and the model leaves out"),
+    ("case", "the whole case in one piece, base files and overrides laid in; `lenzbore rerun` solves it again"),
+    ("toml", "its words"),
+    ("files", "contents of the files that it names, by their names"),
     ("resolved", "every word of the case with its value in SI, its unit and where it comes from"),
 ];
 
@@ -117,4 +121,5 @@ pub const FILES: &[(&str, &str)] = &[
     (names::REPORT, "the page for people, made of the other files: `lenzbore report DIR --replace` makes it again"),
     (names::VALIDATION, "every comparison of the published checks"),
     (names::COVERAGE, "the study of the bands"),
+    (names::EXPORT, "what the files of an export are, with units, and how they belong together"),
 ];

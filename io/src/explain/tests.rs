@@ -9,7 +9,7 @@ use lenzbore_solver::problem::SensibleRange;
 use serde_json::Value;
 
 use super::*;
-use crate::case::{CaseSource, LAWS, ResolvedCase, STARTER, TABLES, read_case};
+use crate::case::{CaseSource, LAWS, ResolvedCase, STARTERS, TABLES, read_case};
 use crate::result::{demo, summary};
 use crate::table::FIGURES as COMPARED;
 use crate::units::Kind;
@@ -75,7 +75,7 @@ fn explanations_are_whole() {
     }
 }
 
-/// Every example case, the starter, and a case of each law.
+/// Every example case and every starter.
 fn cases() -> Vec<(String, ResolvedCase)> {
     let folder = Path::new(env!("CARGO_MANIFEST_DIR")).join("../examples");
     let files = std::fs::read_dir(folder).unwrap().map(|e| e.unwrap().path());
@@ -83,8 +83,10 @@ fn cases() -> Vec<(String, ResolvedCase)> {
     let mut cases: Vec<(String, ResolvedCase)> = toml
         .map(|p| (p.display().to_string(), read_case(&CaseSource::Path(&p), &[]).unwrap_or_else(|e| panic!("{e}"))))
         .collect();
-    let text = CaseSource::Text { name: "starter", text: STARTER, base_dir: Path::new("") };
-    cases.push(("starter".to_owned(), read_case(&text, &[]).unwrap()));
+    for starter in STARTERS {
+        let text = CaseSource::Text { name: starter.kind, text: starter.text, base_dir: Path::new("") };
+        cases.push((starter.kind.to_owned(), read_case(&text, &[]).unwrap_or_else(|e| panic!("{e}"))));
+    }
     cases
 }
 

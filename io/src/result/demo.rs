@@ -40,6 +40,8 @@ pub(crate) fn header(title: &str) -> ResultHeader {
         record,
         digest: "3f6c".repeat(16),
         program: Program { name: "lenzbore".into(), version: "0.1.0".into() },
+        command: "run",
+        case: json!({"toml": "title = \"t\"\n", "files": {}}),
         resolved: json!({"wall": {"length": {"value": 0.12, "source": "case file"}}}),
         geometry: Layout::default(),
         not_modelled: vec!["heating of the wall during the run".into()],

@@ -113,6 +113,28 @@ pub enum IoFault {
         /// The page.
         path: PathBuf,
     },
+    /// A folder that holds no result.
+    #[error("{} holds no result of a run: there is no summary.json in it", .folder.display())]
+    NoResult {
+        /// The folder.
+        folder: PathBuf,
+    },
+    /// A file of a result that cannot be read.
+    #[error("{} cannot be read: {why}", .path.display())]
+    Unreadable {
+        /// The file.
+        path: PathBuf,
+        /// Why.
+        why: String,
+    },
+    /// A result that does not hold what is asked of it.
+    #[error("the result in {} does not hold {what}", .folder.display())]
+    Lacks {
+        /// The folder.
+        folder: PathBuf,
+        /// What it lacks.
+        what: &'static str,
+    },
     /// The user stopped the program while it wrote.
     #[error("stopped while writing; nothing was kept")]
     Interrupted,
@@ -131,6 +153,9 @@ impl IoFault {
                 | Self::NoSummary { .. }
                 | Self::Misread { .. }
                 | Self::PageExists { .. }
+                | Self::NoResult { .. }
+                | Self::Unreadable { .. }
+                | Self::Lacks { .. }
         )
     }
 

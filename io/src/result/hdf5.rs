@@ -6,6 +6,7 @@
 mod dataset;
 mod frequency;
 mod levels;
+mod read;
 mod regions;
 mod snapshots;
 
@@ -22,6 +23,7 @@ use super::header::ResultHeader;
 use super::series::{Column, curve_columns, trace_columns};
 use super::strokes::stroke_columns;
 use dataset::{About, put, text};
+pub use read::read_fields;
 pub use snapshots::snapshot_arrays;
 
 const STORED: &str = "Stored fields are those of the finest grid, with its discretisation error. Figures are extrapolated \

@@ -25,6 +25,10 @@ pub struct ResultHeader {
     pub digest: String,
     /// The program and its version.
     pub program: Program,
+    /// The command that computed it, as `run`.
+    pub command: &'static str,
+    /// The whole case in one piece, see [`crate::case::KeptCase`].
+    pub case: Value,
     /// The case with every default and book value and its source.
     pub resolved: Value,
     /// Where every body stands.

@@ -21,6 +21,7 @@ pub fn ladder_summary(header: &ResultHeader, outcome: &LadderOutcome) -> Result<
     put("title", json!(header.title));
     put("program", json!({"name": header.program.name, "version": header.program.version}));
     put("record", Value::Object(header.record.clone()));
+    put("command", json!(header.command));
     put("digest", json!(header.digest));
     put("figures", named(&outcome.figures, |f| &f.name, top_figure)?);
     put("ladder", named(&outcome.figures, |f| &f.name, |f| steps_of(f, &outcome.rungs))?);
@@ -36,6 +37,7 @@ pub fn ladder_summary(header: &ResultHeader, outcome: &LadderOutcome) -> Result<
     put("not_modelled", header.not_modelled.clone().into());
     put("geometry", json!(header.geometry));
     put("resolved", header.resolved.clone());
+    put("case", header.case.clone());
     Ok(Value::Object(top))
 }
 

@@ -4,6 +4,7 @@
 pub(crate) mod demo;
 #[cfg(test)]
 mod demo_fields;
+mod earlier;
 mod fault;
 mod finite;
 pub mod folder;
@@ -21,10 +22,11 @@ mod sweeps;
 mod write;
 mod xdmf;
 
+pub use earlier::{Earlier, EarlierFigure, changed_words, read_earlier};
 pub use fault::IoFault;
 pub(crate) use folder::write_beside;
 pub use frequency::{across_columns, frequency_columns};
-pub use hdf5::snapshot_arrays;
+pub use hdf5::{read_fields, snapshot_arrays};
 pub use header::{Program, ResultHeader};
 pub use ladder::{ladder_csv, ladder_summary};
 pub use ladder_write::write_ladder;
@@ -34,3 +36,4 @@ pub use strokes::stroke_columns;
 pub use summary::{summary, summary_text};
 pub use sweeps::{position_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns};
 pub use write::{WriteOptions, Written, pictures_of, write};
+pub use xdmf::xdmf;

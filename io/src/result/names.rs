@@ -35,5 +35,8 @@ pub const VALIDATION: &str = "validation.json";
 /// The study of the bands.
 pub const COVERAGE: &str = "coverage.json";
 
+/// What an export holds.
+pub const EXPORT: &str = "export.json";
+
 /// Files by any of which a folder is known as a run's result.
-pub const RESULT_MARKS: [&str; 6] = [SUMMARY, TRACE, CURVE, FIELDS, VALIDATION, COVERAGE];
+pub const RESULT_MARKS: [&str; 7] = [SUMMARY, TRACE, CURVE, FIELDS, VALIDATION, COVERAGE, EXPORT];

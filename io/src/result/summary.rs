@@ -28,6 +28,7 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     put("title", json!(header.title));
     put("program", json!({"name": header.program.name, "version": header.program.version}));
     put("record", Value::Object(header.record.clone()));
+    put("command", json!(header.command));
     put("digest", json!(header.digest));
     put("figures", figures(&outcome.figures, header.spread.as_ref())?);
     if let Some(spread) = &header.spread {
@@ -65,6 +66,7 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     put("not_modelled", header.not_modelled.clone().into());
     put("geometry", json!(header.geometry));
     put("resolved", header.resolved.clone());
+    put("case", header.case.clone());
     Ok(Value::Object(top))
 }
 

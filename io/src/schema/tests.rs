@@ -8,7 +8,7 @@ use jsonschema::Validator;
 use serde_json::{Map, Value, json};
 
 use super::case_schema;
-use crate::case::{LAWS, STARTER, TABLES};
+use crate::case::{LAWS, STARTERS, TABLES};
 use crate::explain::{CASE_TABLES, Form};
 
 fn validator() -> Validator {
@@ -38,8 +38,10 @@ fn examples_and_starters_pass() {
         }
     }
     assert!(seen >= 9);
-    let found = faults(STARTER);
-    assert!(found.is_empty(), "{found:#?}");
+    for starter in STARTERS {
+        let found = faults(starter.text);
+        assert!(found.is_empty(), "{}: {found:#?}", starter.kind);
+    }
 }
 
 /// A case that starts from another and has this line in the table at `path`.

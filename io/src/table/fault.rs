@@ -56,7 +56,7 @@ pub enum TableFault {
         header: String,
     },
     /// A row with too few or too many cells.
-    #[error("the row has {found} cells, the header {expected}")]
+    #[error("the row has {found} cell{}, the header {expected}", if *found == 1 { "" } else { "s" })]
     Uneven {
         /// Cells of the row.
         found: usize,

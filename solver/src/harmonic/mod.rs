@@ -70,7 +70,7 @@ fn ellipse(shift: f64, omega: f64) -> f64 {
 }
 
 /// `problem` with every part at its height over the wall's lower end.
-fn in_the_walls_frame(problem: &Problem, law: &Alternating) -> Problem {
+pub(crate) fn in_the_walls_frame(problem: &Problem, law: &Alternating) -> Problem {
     let mut placed = problem.clone();
     placed.mover.parts.iter_mut().for_each(|part| part.centre_m += law.position_m);
     placed

@@ -56,7 +56,8 @@ impl Alternating {
     }
 
     /// 2 pi times the frequencies, rad/s.
-    pub(crate) fn angular_frequencies(&self) -> Vec<f64> {
+    #[must_use]
+    pub fn angular_frequencies(&self) -> Vec<f64> {
         self.frequencies_hz.iter().map(|f| 2.0 * std::f64::consts::PI * f).collect()
     }
 }

@@ -281,7 +281,7 @@ pub(crate) fn greatest_node(operators: &Operators, currents: &[f64]) -> Option<(
 }
 
 /// psi of the mover at all nodes of the wall's radii (boundary rows included), zero elsewhere.
-fn wall_source(operators: &Operators, problem: &Problem) -> Vec<f64> {
+pub(crate) fn wall_source(operators: &Operators, problem: &Problem) -> Vec<f64> {
     let grid = &operators.grid;
     let mut psi = vec![0.0; grid.nodes()];
     for row in &operators.wall.rows {
@@ -294,7 +294,7 @@ fn wall_source(operators: &Operators, problem: &Problem) -> Vec<f64> {
 }
 
 /// K psi = -(K - K0) psi_s: the static reaction of a permeable wall, at all nodes, with its residual.
-fn static_reaction(
+pub(crate) fn static_reaction(
     operators: &Operators,
     factor: &mut DirectFactor,
     problem: &Problem,
@@ -312,7 +312,7 @@ fn static_reaction(
 }
 
 /// d psi_0/dz along the wall: exact for the mover's own field (-r B_r), central differences for the static reaction.
-fn slope(operators: &Operators, problem: &Problem, reaction: Option<&[f64]>) -> Vec<f64> {
+pub(crate) fn slope(operators: &Operators, problem: &Problem, reaction: Option<&[f64]>) -> Vec<f64> {
     let grid = &operators.grid;
     let (r, z) = (grid.r.nodes(), grid.z.nodes());
     let mut slope = vec![0.0; operators.wall.len()];

@@ -22,7 +22,7 @@ mod vectors;
 
 pub(crate) use curve::curve;
 pub(crate) use elimination::{elimination_bytes, elimination_seconds};
-pub(crate) use level::greatest_node;
+pub(crate) use level::{greatest_node, slope, static_reaction, wall_source};
 pub(crate) use levels::plan;
 pub(crate) use method::{Share, share, shielding};
 pub(crate) use steady::steady;

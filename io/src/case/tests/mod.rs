@@ -11,6 +11,7 @@ mod alternating;
 mod bad_input;
 mod bad_overrides;
 mod geometry;
+mod kept;
 mod layering;
 mod overrides;
 mod random;

@@ -14,7 +14,9 @@ use crate::report::{thin, words};
 use crate::result::names;
 
 /// Parts of the summary that have sections of their own, or stand in the head of the page.
-const KNOWN_PARTS: [&str; 44] = [
+const KNOWN_PARTS: [&str; 46] = [
+    "command",
+    "case",
     "temperatures",
     "positions",
     "stroke_curve",
