@@ -44,6 +44,7 @@ checks! {
     val_source_force: "source-force",
     val_source_loop: "source-loop",
     val_slots: "slots",
+    val_demagnetisation: "demagnetisation",
     val_grid_convergence: "grid-convergence",
     val_step_rod: "step-rod",
     val_step_tube: "step-tube",

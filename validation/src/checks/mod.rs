@@ -4,6 +4,7 @@
 //! each of them; so can a command.
 
 mod closed_form;
+mod demagnetisation;
 mod endless;
 mod experiment;
 mod field;
@@ -89,6 +90,7 @@ pub fn all() -> Vec<Check> {
         endless::CHECKS,
         rings::CHECKS,
         slots::CHECKS,
+        demagnetisation::CHECKS,
         grid_index::CHECKS,
         step::CHECKS,
         sphere::CHECKS,

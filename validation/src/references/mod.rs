@@ -6,6 +6,7 @@
 pub mod coil_impedance;
 pub mod coil_inductance;
 pub mod cylinder_damping;
+pub mod demagnetisation;
 pub mod dipole_drag;
 pub mod fall;
 pub mod falling_magnet;
