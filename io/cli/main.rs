@@ -17,6 +17,7 @@ mod materials;
 mod memory;
 mod new;
 mod progress;
+mod recoil;
 mod report;
 mod rerun;
 mod say;

@@ -1,6 +1,6 @@
 //! `lenzbore run` and `lenzbore curve`: solve, write, say.
 
-use lenzbore_io::case::ResolvedCase;
+use lenzbore_io::case::{BACK_ACTION, ResolvedCase};
 use lenzbore_io::result::{ResultHeader, folder, summary, write};
 use lenzbore_solver::monitor::Monitor;
 use lenzbore_solver::outcome::{Figure, Outcome};
@@ -15,7 +15,7 @@ use crate::end::End;
 use crate::job::CaseInput;
 use crate::progress::Terminal;
 use crate::spread::{self, spread_text};
-use crate::{curve, job, memory, say};
+use crate::{curve, job, memory, recoil, say};
 
 /// What is asked of a case.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -57,7 +57,11 @@ pub fn run(words: &SolveWords, question: Question) -> Result<(), End> {
     terminal.finish();
     let spread = input_spread(&input, &case, question, (&problem, &outcome), &words.spread, &terminal)?;
     let independent = independent(&problem, &outcome, question);
-    let header = ResultHeader { spread, ..job::header(&case, question.command(), independent, &cautions) };
+    let mut header = ResultHeader { spread, ..job::header(&case, question.command(), independent, &cautions) };
+    if let Some(words) = recoil::back_action(&problem, &outcome, &terminal)? {
+        header.not_modelled.retain(|w| w != BACK_ACTION);
+        header.not_modelled.push(words);
+    }
     let options = job::write_options(&case.output, words.replace);
     let written = write(&target, &options, &header, &problem, &outcome, &terminal)?;
     if words.case.json {

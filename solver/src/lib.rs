@@ -159,6 +159,22 @@ pub fn drag_curve(problem: &Problem, speeds_m_per_s: &[f64], monitor: &dyn Monit
     Ok(outcome)
 }
 
+/// What the wall's currents do to the magnets' recoil permeability, which [`solve`] and [`drag_curve`] leave out: the relative change of the
+/// settled drag at each speed (m/s), negative where the drag is truly lower. Zeros where no recoil permeability is given.
+///
+/// The same field is solved with the magnets' permeability in the stiffness, in their frame, and without it. A finite wall is taken as
+/// endless, with the layers at the height where most conducts. Coarsest grid: to some 5 % of itself. Cost: about half a coarse curve.
+///
+/// # Errors
+/// See [`SolveFault`].
+pub fn recoil_back_action(
+    problem: &Problem,
+    speeds_m_per_s: &[f64],
+    monitor: &dyn Monitor,
+) -> Result<Vec<f64>, SolveFault> {
+    settled::back_action(problem, speeds_m_per_s, monitor)
+}
+
 /// Stiffness and damping coefficient of strokes of vanishing amplitude about `centre_m`, m, in a finite wall, at each of `frequencies_hz`;
 /// the static pull of a permeable wall is left out.
 ///

@@ -39,6 +39,15 @@ impl Operators {
         Self { grid, materials, stiffness, stiffness_free, excess, wall }
     }
 
+    /// The same with magnets of the permeability `magnets` of each cell, 1 outside them: in K, but not in what a permeable wall adds to
+    /// the mover's own field, which has it already.
+    pub(crate) fn with_magnets(grid: Grid, wall: Materials, magnets: &[f64]) -> Self {
+        let plain = Self::new(grid, wall);
+        let mut materials = plain.materials.clone();
+        materials.mu_r.iter_mut().zip(magnets).for_each(|(mu, magnet)| *mu *= magnet);
+        Self { stiffness: stiffness(&plain.grid, &materials.mu_r), materials, ..plain }
+    }
+
     /// Number of unknowns.
     pub(crate) fn unknowns(&self) -> usize {
         (self.grid.nr() - 2) * (self.grid.nz() - 2)
@@ -126,7 +135,7 @@ fn stiffness(grid: &Grid, mu_r: &[f64]) -> CsMat<f64> {
 }
 
 /// D^T (N - N0) D with all nodes as columns and unknowns as rows.
-fn excess(grid: &Grid, mu_r: &[f64]) -> CsMat<f64> {
+pub(crate) fn excess(grid: &Grid, mu_r: &[f64]) -> CsMat<f64> {
     let edges = edges(grid, |cell| (1.0 / mu_r[cell] - 1.0) / MU0);
     let inner = difference(grid, &edges, unknowns(grid), |g, (i, j)| unknown_of(g, i, j));
     let all = difference(grid, &edges, grid.nodes(), |g, (i, j)| Some(g.node(i, j)));

@@ -142,3 +142,19 @@ fn positions_alone_are_a_curve() {
     let none = bench.run(&["run", "case.toml"]);
     assert_eq!(none.status, Some(2));
 }
+
+/// A worked design of the trade: a recoil permeability of 1.05 takes about 5 % from the damping coefficient; what the wall does to it
+/// is said with its size.
+#[test]
+fn recoil_permeability_weakens_the_ring_stack() {
+    const C0: &str = "damping_coefficient_zero_speed";
+    let (plain, _) = curve(RINGS, &[]);
+    let (real, _) = curve(RINGS, &["mover.R.recoil_permeability=1.05"]);
+    let ratio = figure(&real, C0) / figure(&plain, C0);
+    assert!((ratio - 0.95).abs() < 0.015, "{ratio}");
+    assert!(real["independent"]["inside_band"].as_bool().unwrap());
+    let left_out: Vec<&str> = real["not_modelled"].as_array().unwrap().iter().filter_map(|w| w.as_str()).collect();
+    let back_action: Vec<&&str> = left_out.iter().filter(|w| w.contains("back-action")).collect();
+    assert!(back_action.len() == 1 && back_action[0].contains("lower the drag by"), "{left_out:?}");
+    assert!(!plain["not_modelled"].to_string().contains("back-action"));
+}

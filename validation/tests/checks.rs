@@ -45,6 +45,8 @@ checks! {
     val_source_loop: "source-loop",
     val_slots: "slots",
     val_demagnetisation: "demagnetisation",
+    val_recoil_moment: "recoil-moment",
+    val_recoil_damping: "recoil-damping",
     val_grid_convergence: "grid-convergence",
     val_step_rod: "step-rod",
     val_step_tube: "step-tube",

@@ -63,6 +63,7 @@ use lenzbore_solver::problem::{Extent, Problem, Sine, SnapshotPlan, Travel, Trav
 use crate::message::Diagnostics;
 pub use kept::KeptCase;
 pub(crate) use load::text_of;
+pub use resolve::BACK_ACTION;
 pub use resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
 pub use starters::{STARTER, STARTERS, Starter, starter};
 pub use tolerance::Tolerance;

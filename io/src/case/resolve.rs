@@ -21,6 +21,9 @@ use super::wall::read_wall;
 use super::{CaseSource, CurvePlan, OutputPlan, ResolvedCase};
 use crate::message::{CaseFault, Diagnostics, Place};
 
+/// What a recoil permeability still leaves out, as an entry of `not_modelled`.
+pub const BACK_ACTION: &str = "the wall's back-action on the magnets' recoil permeability";
+
 static NO_TABLE: Table = Table { entries: Vec::new() };
 
 pub(super) fn resolve(loaded: Loaded, source: &CaseSource<'_>) -> Result<ResolvedCase, Diagnostics> {
@@ -115,6 +118,9 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     place_faults(reader, problem.faults(), &parts);
     let problem = if reader.faults.is_empty() { with_recoil(reader, problem, &mover)? } else { problem };
     reader.cautions.extend(odd_sizes(&problem));
+    if problem.mover.recoil.is_some() {
+        reader.not_modelled.push(BACK_ACTION.to_owned());
+    }
     if matches!(travel, Some(Travel::Traverse(_) | Travel::Free(_) | Travel::Sine(_) | Travel::Table(_))) {
         let text =
             "currents in the mover's own conducting parts (a sintered magnet conducts about 1 % as well as copper)";

@@ -61,10 +61,11 @@ impl LayeredPlan {
     pub(super) fn new(operators: &Operators) -> Option<Self> {
         let grid = &operators.grid;
         let rows: Vec<&[usize]> = operators.materials.region.chunks_exact(grid.nr() - 1).collect();
+        let mu_r: Vec<&[f64]> = operators.materials.mu_r.chunks_exact(grid.nr() - 1).collect();
         let mut segments = Vec::new();
         let mut start = 0;
         for end in 1..=rows.len() {
-            if end == rows.len() || rows[end] != rows[start] {
+            if end == rows.len() || rows[end] != rows[start] || mu_r[end] != mu_r[start] {
                 segments.push(Segment::new(operators, start, end));
                 start = end;
             }

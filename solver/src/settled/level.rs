@@ -88,7 +88,14 @@ impl SettledLevel {
     /// See [`SolveFault`].
     pub(super) fn new(problem: &Problem, plan: &GridPlan, grid: Grid, wanted: Wanted<'_>) -> Result<Self, SolveFault> {
         let materials = Materials::new(&problem.wall, &Regions::new(&grid, &plan.rectangles));
-        let operators = Operators::new(grid, materials);
+        Self::on(problem, Operators::new(grid, materials), wanted)
+    }
+
+    /// Builds the level of `operators` for the speeds `wanted`.
+    ///
+    /// # Errors
+    /// See [`SolveFault`].
+    pub(super) fn on(problem: &Problem, operators: Operators, wanted: Wanted<'_>) -> Result<Self, SolveFault> {
         let mut factor = DirectPlan::new(&operators)?.factor(&operators, 0.0)?;
         let mut counters = WorkCounters { factorisations: 1, ..WorkCounters::default() };
         let (static_reaction, static_residual) = static_reaction(&operators, &mut factor, problem, &mut counters)?;

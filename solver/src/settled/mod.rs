@@ -4,6 +4,7 @@
 //! and one three-term recurrence give the drag at every speed. It needs more vectors the faster the mover: where an elimination
 //! of K - v C for each speed is cheaper, that takes its place (`method.rs` has the rule).
 
+mod back_action;
 mod balance;
 #[cfg(test)]
 mod cross_check;
@@ -20,6 +21,7 @@ mod steady;
 mod timing;
 mod vectors;
 
+pub(crate) use back_action::back_action;
 pub(crate) use curve::curve;
 pub(crate) use elimination::{elimination_bytes, elimination_seconds};
 pub(crate) use level::{greatest_node, slope, static_reaction, wall_source};

@@ -16,6 +16,7 @@ mod field_position;
 mod field_stroke;
 mod grid_index;
 mod harmonic;
+mod recoil;
 mod rings;
 mod slots;
 mod sources;
@@ -87,6 +88,7 @@ pub fn all() -> Vec<Check> {
     let groups = [
         closed_form::CHECKS,
         sources::CHECKS,
+        recoil::CHECKS,
         endless::CHECKS,
         rings::CHECKS,
         slots::CHECKS,

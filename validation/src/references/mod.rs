@@ -21,6 +21,7 @@ pub mod nagaoka;
 pub mod passage;
 pub mod permeable_tube;
 pub mod position;
+pub mod recoil;
 pub mod rod_alternating;
 pub mod slots;
 pub mod solenoid;
