@@ -131,7 +131,7 @@ mod tests {
         let (outer_radius_m, length_m) = (11e-3, 12e-3);
         let source = Source::Magnet { inner_radius_m: 0.0, outer_radius_m, length_m, remanence_tesla: 1.3 };
         let outline = Outline { inner_radius_m: 0.0, outer_radius_m, length_m };
-        let part = Part { name: "M".to_owned(), centre_m: 0.0, source, outline };
+        let part = Part { name: "M".to_owned(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
         let problem = Problem {
             wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
             mover: Mover { parts: vec![part], mass_kg: None, recoil: None },
