@@ -24,6 +24,7 @@ mod report;
 mod rerun;
 mod rig;
 mod starters;
+mod stations;
 mod strokes;
 mod sweeps;
 mod tolerance;

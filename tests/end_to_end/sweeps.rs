@@ -158,3 +158,25 @@ fn recoil_permeability_weakens_the_ring_stack() {
     assert!(back_action.len() == 1 && back_action[0].contains("lower the drag by"), "{left_out:?}");
     assert!(!plain["not_modelled"].to_string().contains("back-action"));
 }
+
+/// Strokes over frequency and amplitude: the settled stroke of the example is one of them.
+#[test]
+fn strokes_are_swept_over_frequency_and_amplitude() {
+    let (summary, bench) = curve("stroke-damper-sweep", &[]);
+    let table = rows(&bench, "stroke_curve.csv");
+    assert_eq!(table.len(), 6);
+    let own = table.iter().find(|r| r[0] == 85.0 && r[1] == 0.004).unwrap();
+    // The README's figure of the stroke alone.
+    assert!((own[2] - 15.003_785).abs() <= own[3] + 5e-5, "{} N s/m", own[2]);
+    for row in &table {
+        let wanted = std::f64::consts::PI * std::f64::consts::TAU * row[0] * row[1] * row[1] * row[2];
+        assert!((row[6] / wanted - 1.0).abs() < 1e-9, "loss = pi omega c X^2");
+    }
+    // The wall's own field takes from the damping as the frequency rises.
+    let slow = table.iter().find(|r| r[0] == 20.0 && r[1] == own[1]).unwrap();
+    assert!(slow[2] > own[2]);
+    let most = table.iter().map(|r| r[2]).fold(0.0, f64::max);
+    assert_eq!(figure(&summary, "damping_coefficient_equivalent_greatest"), most);
+    let files = entries(&bench.path("result"));
+    assert!(files.iter().any(|f| f == "stroke_curve.png"), "{files:?}");
+}

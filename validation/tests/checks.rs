@@ -73,6 +73,7 @@ checks! {
     val_field_passage: "field-passage",
     val_field_fall: "field-fall",
     val_field_position: "field-position",
+    val_field_station: "field-station",
     val_field_stroke: "field-stroke",
     val_alternating_coil: "alternating-coil",
     val_alternating_rod: "alternating-rod",

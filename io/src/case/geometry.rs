@@ -15,6 +15,8 @@ pub(super) struct Parts<'a, 't> {
     pub travel: Option<&'a Section<'t>>,
     pub accuracy: Option<&'a Section<'t>>,
     pub output: Option<&'a Section<'t>>,
+    /// Those of the stations that could be read.
+    pub stations: Vec<&'a Section<'t>>,
     /// Whether wall, mover and travel could be read whole; of what could not, what is missing is no fault.
     pub whole_wall: bool,
     pub whole_mover: bool,
@@ -84,6 +86,9 @@ fn is_of_what_is_missing(fault: &ProblemFault, parts: &Parts<'_, '_>) -> bool {
         | ProblemFault::NoTravel { .. } => !parts.whole_travel || parts.wall.extent.is_none(),
         // Gates that nobody wrote stand at the ends of the wall, and an endless wall has none.
         ProblemFault::GatesCoincide { .. } => !parts.travel.is_some_and(|t| parts.whole_travel && t.table.has("gates")),
+        ProblemFault::StationLaw { .. } | ProblemFault::StationInPath { .. } | ProblemFault::StationFar { .. } => {
+            !parts.whole_travel || parts.wall.extent.is_none()
+        }
         ProblemFault::LayerEmpty { .. } | ProblemFault::LayerBeyondWall { .. } => parts.wall.extent.is_none(),
         ProblemFault::Impossible { subject: Subject::Wall, .. } => parts.wall.extent.is_none(),
         ProblemFault::Impossible { subject: Subject::Travel, .. } => !parts.whole_travel,
@@ -97,6 +102,7 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
     let root = || parts.root.place.clone();
     let layer = |i: usize, words: &[&str]| parts.wall.layers.get(i).map_or_else(root, |s| s.place_of_any(words));
     let part = |i: usize, words: &[&str]| parts.mover.parts.get(i).map_or_else(root, |s| s.place_of_any(words));
+    let station_of = |i: usize, words: &[&str]| parts.stations.get(i).map_or_else(root, |s| s.place_of_any(words));
     let travel = |words: &[&str]| parts.travel.map_or_else(root, |s| s.place_of_any(words));
     match fault {
         ProblemFault::Impossible { subject, quantity, .. } => (of_number(*subject, *quantity, parts), None),
@@ -146,6 +152,16 @@ fn places(fault: &ProblemFault, parts: &Parts<'_, '_>) -> (Place, Related) {
         ProblemFault::CellsAcrossWall { .. } => {
             (parts.accuracy.map_or_else(root, |s| s.place_of("cells_across_wall")), None)
         }
+        ProblemFault::StationLaw { .. } => {
+            (parts.output.map_or_else(root, |s| s.place_of("station")), Some((travel(&["law"]), "the law")))
+        }
+        ProblemFault::StationInPath { station, part: p } => {
+            (station_of(station.index, &["radius", "diameter", "at"]), Some((part(p.index, &["name"]), "the part")))
+        }
+        ProblemFault::StationNoConductor { station } | ProblemFault::StationFar { station, .. } => {
+            (station_of(station.index, &["radius", "diameter", "at"]), None)
+        }
+        ProblemFault::StationCoil { station } => (station_of(station.index, &["turns", "diameter", "radius"]), None),
         ProblemFault::Instants => (parts.output.map_or_else(root, |s| s.place_of("fields")), None),
         _ => (root(), None),
     }

@@ -47,6 +47,7 @@ mod resolve;
 mod resolved;
 mod sizes;
 mod starters;
+mod station;
 mod stroke;
 mod temperature;
 mod tolerance;

@@ -32,13 +32,6 @@ const FIELDS_EXAMPLE: &str = "fields = \"every 20 mm\", \"every 5 ms\", [\"0.1 s
 /// Reads `[output]`, or fills its defaults.
 pub(super) fn read_output(reader: &mut Reader, section: &Section<'_>) -> (OutputPlan, SnapshotPlan) {
     reader.check_words(section);
-    if let Some(entry) = section.table.entry("station") {
-        reader.not_modelled_yet(
-            entry,
-            "gauges on the wall ([[output.station]])",
-            Some("fields at chosen instants are: 'fields'"),
-        );
-    }
     let plan = write(reader, section);
     let snapshots = snapshots(reader, section, plan.fields);
     let picture_width_m =

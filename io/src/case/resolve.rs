@@ -13,6 +13,7 @@ use super::load::Loaded;
 use super::mover::{MoverReading, read_mover};
 use super::output::{read_accuracy, read_output};
 use super::reader::{Reader, Section};
+use super::station::read_stations;
 use super::stroke::{is_given_motion, read_given_motion};
 use super::tolerance::{Tolerance, read_tolerances};
 use super::travel::{Surroundings, read_travel};
@@ -101,9 +102,11 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     let accuracy = read_accuracy(reader, &accuracy_section);
     let output_section = optional(reader, root, "output");
     let (output, snapshots) = read_output(reader, &output_section);
+    let stations = read_stations(reader, &output_section);
     let tolerances = read_tolerances(reader, root);
     let (wall, mover) = (wall?, mover?);
-    let problem = problem(&wall.wall, &mover.mover, travel.as_ref(), curve.as_ref(), (accuracy, snapshots));
+    let mut problem = problem(&wall.wall, &mover.mover, travel.as_ref(), curve.as_ref(), (accuracy, snapshots));
+    problem.stations = stations.iter().map(|(station, _)| station.clone()).collect();
     let parts = Parts {
         root,
         wall: &wall,
@@ -111,6 +114,7 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
         travel: travel_section.as_ref(),
         accuracy: Some(&accuracy_section),
         output: Some(&output_section),
+        stations: stations.iter().map(|(_, section)| section).collect(),
         whole_wall: wall.complete,
         whole_mover: mover.complete,
         whole_travel: travel.is_some(),

@@ -134,7 +134,7 @@ pub const TABLES: [TableWords; 15] = [
     TableWords {
         path: "output.station",
         label: "[[output.station]]",
-        words: &["name", "at", "radius", "what", "turns", "diameter"],
+        words: &["name", "at", "radius", "diameter", "what", "turns", "length"],
         lists: &[],
     },
 ];

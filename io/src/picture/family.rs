@@ -77,7 +77,7 @@ impl Family<'_> {
 }
 
 /// The ribbon where it shows, and the line on it.
-fn draw(svg: &mut Svg, curve: &Banded, (x, y): (&Scale, &Scale), stroke: Stroke) {
+pub(super) fn draw(svg: &mut Svg, curve: &Banded, (x, y): (&Scale, &Scale), stroke: Stroke) {
     let at = |k: usize, sign: f64| {
         let value = (curve.y[k] + sign * curve.band[k]).clamp(y.low, y.high);
         (x.at(curve.x[k].clamp(x.low, x.high)), y.at(value))

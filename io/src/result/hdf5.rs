@@ -9,6 +9,7 @@ mod levels;
 mod read;
 mod regions;
 mod snapshots;
+mod stations;
 
 use std::path::Path;
 
@@ -63,6 +64,7 @@ pub fn write_fields(
     if let Some(response) = &outcome.strokes {
         table(&file, "strokes", &stroke_columns(response)?).map_err(blame)?;
     }
+    stations::write(&file, &outcome.stations).map_err(blame)?;
     snapshots::write(&file, fields, path, monitor)?;
     file.flush().map_err(blame)?;
     file.close().map_err(blame)

@@ -12,6 +12,8 @@ pub const FREQUENCY: &str = "frequency.csv";
 pub const ACROSS: &str = "across.csv";
 /// Small strokes over frequency.
 pub const STROKES: &str = "strokes.csv";
+/// What gauges at fixed places read.
+pub const STATIONS: &str = "stations.csv";
 /// Figures of the curve at each temperature.
 pub const TEMPERATURES: &str = "temperatures.csv";
 /// Drag against speed at each temperature.

@@ -86,7 +86,7 @@ pub fn csv(columns: &[Column<'_>]) -> String {
 }
 
 /// Shortest decimal that reads back to `value`, with an exponent where the digits would run long.
-fn decimal(value: f64) -> String {
+pub(super) fn decimal(value: f64) -> String {
     let value = value + 0.0;
     let magnitude = value.abs();
     if magnitude > 0.0 && !(1e-4..1e15).contains(&magnitude) { format!("{value:e}") } else { format!("{value}") }

@@ -12,6 +12,7 @@ use super::frequency::frequency_object;
 use super::header::ResultHeader;
 use super::series::curve_columns;
 use super::spread::{input_spread, spread_object};
+use super::stations::stations_object;
 use super::strokes::strokes_object;
 use super::sweeps::{positions_object, stroke_curve_object, temperatures_object};
 
@@ -50,6 +51,9 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     }
     if let Some(response) = &outcome.strokes {
         put("strokes", strokes_object(response)?);
+    }
+    if !outcome.stations.is_empty() {
+        put("stations", stations_object(&outcome.stations)?);
     }
     let sweeps = &outcome.sweeps;
     if !sweeps.temperatures.is_empty() {

@@ -11,8 +11,8 @@ use super::folder::PendingFolder;
 use super::header::ResultHeader;
 use super::{
     across_columns, csv, curve_columns, frequency_columns, hdf5, names, position_columns, sensitivities_csv,
-    stroke_columns, stroke_curve_columns, summary_text, temperature_columns, temperature_curve_columns, trace_columns,
-    xdmf,
+    stations_csv, stroke_columns, stroke_curve_columns, summary_text, temperature_columns, temperature_curve_columns,
+    trace_columns, xdmf,
 };
 use crate::picture::{self, COLUMN_WIDTH_M, Picture};
 use crate::report;
@@ -123,6 +123,7 @@ pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) 
     all.extend(picture::positions(&header.title, outcome));
     all.extend(picture::stroke_curve(&header.title, outcome));
     all.extend(picture::travel(&header.title, problem, outcome));
+    all.extend(picture::stations(&header.title, outcome));
     all.extend(picture::force_loop(&header.title, problem, outcome));
     all.extend(picture::stroke_response(&header.title, problem, outcome));
     all.extend(picture::impedance(&header.title, outcome));
@@ -168,6 +169,9 @@ fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
     }
     if let Some(curve) = &outcome.curve {
         sheaf.put(names::CURVE, csv(&curve_columns(curve, outcome.slotted.as_ref())?).as_bytes())?;
+    }
+    if !outcome.stations.is_empty() {
+        sheaf.put(names::STATIONS, stations_csv(&outcome.stations)?.as_bytes())?;
     }
     let sweeps = &outcome.sweeps;
     if !sweeps.temperatures.is_empty() {

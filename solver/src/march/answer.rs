@@ -16,6 +16,7 @@ use super::schedule::Schedule;
 use super::series::Series;
 use super::small::around;
 use super::snapshots::instants;
+use super::stations::{Marched, station_traces};
 use super::window::{Window, WindowRule};
 use crate::band::{self, Ladder};
 use crate::corner::corner_powers;
@@ -28,7 +29,7 @@ use crate::interpolate::sampled;
 use crate::materials::Materials;
 use crate::monitor::{Monitor, Quiet};
 use crate::outcome::{
-    Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, Stop, Sweeps, Trace, WorkCounters,
+    Caution, Fields, Figure, GridReport, Ledger, Outcome, Snapshot, StationTrace, Stop, Sweeps, Trace, WorkCounters,
 };
 use crate::placement::Placement;
 use crate::problem::{Problem, Sine, SnapshotPlan};
@@ -265,13 +266,17 @@ impl<'p> Journey<'p> {
         let margins = Margins { residual, apart: routes.apart(), corners, unsettled };
         let (figures, slow) = combine(&factors, &by_level, cut.as_deref(), &margins);
         let trace = self.trace(records, &factors);
+        let stations = self.stations(records, &factors, &trace);
         let peak_time = figures.iter().find(|f| f.name == "drag_peak").and_then(|f| f.location?.t_s);
+        // A gauge reads a field at one point: its band is no part of the target.
         let mut accuracy = verdict(&figures, self.problem.accuracy.target_relative, factors.len());
         if let (Some(settling), Some(advice)) = (&records.settling, &mut accuracy.advice)
             && !settling.settled()
         {
             *advice = unsettled_advice(settling);
         }
+        let mut figures = figures;
+        figures.extend(stations.iter().flat_map(StationTrace::figures));
         let mut counters = WorkCounters::default();
         for level in records.levels.iter().chain(records.cut.as_ref()) {
             counters.factorisations += level.counters.factorisations;
@@ -290,7 +295,7 @@ impl<'p> Journey<'p> {
             frequency: None,
             strokes: None,
             sweeps: Sweeps::default(),
-            stations: Vec::new(),
+            stations,
             thermal: None,
             slotted: None,
             forces: peak_time.map(|t| routes.forces(t)),
@@ -327,6 +332,17 @@ impl<'p> Journey<'p> {
             trace.heat_watt.push(of(|s, t| s.mid_at(&s.heat_rate_mid, t)).value);
         }
         trace
+    }
+
+    /// What the gauges read at the instants of the trace.
+    fn stations(&self, records: &Records, factors: &[f64], trace: &Trace) -> Vec<StationTrace> {
+        let marched = Marched {
+            levels: records.levels.iter().map(|l| &l.series).collect(),
+            cut: records.cut.as_ref().map(|c| &c.series),
+            factors,
+            corners: corner_powers(&self.problem.wall, factors.len()),
+        };
+        station_traces(self.problem, &marched, (&trace.time_s, &trace.position_m), records.course.since)
     }
 
     /// Middles of the coarsest level's pairs; of its steps where the path is given, so that a stroke's loop is round.

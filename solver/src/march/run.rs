@@ -8,6 +8,7 @@ use lenzbore_mesh::Refinement;
 use record::PEAK_REACH;
 
 use super::course::Course;
+use super::gauge::{Gauges, channels};
 use super::level::MarchLevel;
 use super::motion::{Motion, friction, frictionless, other_force};
 use super::pace::{PlannedPair, pairs_of_table};
@@ -57,6 +58,7 @@ pub(crate) struct Run<'a, 'p> {
     losses: f64,
     window: Option<Window>,
     resampler: Option<Resampler>,
+    gauges: Gauges,
     snapshots: Vec<Snapshot>,
     magnets: Option<Watch>,
 }
@@ -82,7 +84,10 @@ impl<'a, 'p> Run<'a, 'p> {
             Motion::Free { law, mass } => driving_force(law, *mass, course) / mass,
         };
         let state = State::new(course.from, course.velocity, flux, source, acceleration);
-        let mut series = Series { energy_start, ..Series::default() };
+        let problem = level.problem;
+        let gauges = Gauges::new(&problem.stations, &level.operators, &problem.wall);
+        let readings = problem.stations.iter().map(|s| channels(s.gauge)).sum();
+        let mut series = Series { energy_start, stations: vec![Vec::new(); readings], ..Series::default() };
         series.time.push(0.0);
         series.position.push(course.from);
         series.velocity.push(course.velocity);
@@ -104,6 +109,7 @@ impl<'a, 'p> Run<'a, 'p> {
             losses: 0.0,
             window,
             resampler: None,
+            gauges,
             snapshots: Vec::new(),
             magnets: Watch::new(&level.problem.mover),
             level,

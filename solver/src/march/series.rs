@@ -39,6 +39,8 @@ pub(crate) struct Series {
     pub(crate) opposing_mid: [Vec<f64>; 3],
     /// What the coercivity leaves, where it leaves least, and its r and z, m; empty where there is none.
     pub(crate) margin_mid: [Vec<f64>; 3],
+    /// What each gauge reads of the reaction, a series of step middles a reading.
+    pub(crate) stations: Vec<Vec<f64>>,
     /// Field energy at the start, J (a permeable wall's pull).
     pub(crate) energy_start: f64,
     /// Instant at which friction held the mover, s.
@@ -55,6 +57,7 @@ impl Series {
         self.at_ends().into_iter().for_each(|values| values.truncate(steps + 1));
         self.at_middles().into_iter().for_each(|values| values.truncate(steps));
         self.of_magnets().for_each(|values| values.truncate(steps));
+        self.stations.iter_mut().for_each(|values| values.truncate(steps));
     }
 
     /// Makes room for `steps` more, so that recording them allocates nothing.
@@ -63,6 +66,7 @@ impl Series {
         self.at_ends().into_iter().for_each(|values| values.reserve(steps));
         self.at_middles().into_iter().for_each(|values| values.reserve(steps));
         self.of_magnets().for_each(|values| values.reserve(steps));
+        self.stations.iter_mut().for_each(|values| values.reserve(steps));
     }
 
     fn at_stress(&mut self) -> [&mut Vec<f64>; 2] {

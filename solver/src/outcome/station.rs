@@ -1,6 +1,6 @@
 //! What gauges at fixed places read over time.
 
-use super::Location;
+use super::{Basis, Figure, Location};
 
 /// One reading of a gauge over time.
 #[derive(Debug, Clone, PartialEq)]
@@ -19,7 +19,7 @@ pub struct StationSeries {
     pub peak: f64,
     /// Half-width of its band.
     pub peak_band: f64,
-    /// Where the mover was and when: `z_m` is the mover's position.
+    /// The gauge's place, and when.
     pub peak_at: Location,
     /// The peak on each grid level, coarse to fine.
     pub peak_levels: Vec<f64>,
@@ -42,4 +42,28 @@ pub struct StationTrace {
     pub position_m: Vec<f64>,
     /// Its readings.
     pub series: Vec<StationSeries>,
+}
+
+impl StationTrace {
+    /// The peaks as figures, named as `station.gauge 1.flux_density_z_peak`.
+    #[must_use]
+    pub fn figures(&self) -> Vec<Figure> {
+        let figure = |s: &StationSeries| Figure {
+            name: format!("station.{}.{}_peak", self.name, StationSeries::stem(s.name)),
+            value: s.peak,
+            unit: s.unit,
+            band: s.peak_band,
+            basis: Basis::Extrapolated,
+            location: Some(s.peak_at),
+            levels: s.peak_levels.clone(),
+        };
+        self.series.iter().map(figure).collect()
+    }
+}
+
+impl StationSeries {
+    /// The name without its unit.
+    fn stem(name: &'static str) -> &'static str {
+        ["_A_per_m2", "_T", "_V"].into_iter().find_map(|unit| name.strip_suffix(unit)).unwrap_or(name)
+    }
 }

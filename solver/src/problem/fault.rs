@@ -265,6 +265,43 @@ pub enum ProblemFault {
         /// The number found.
         found: usize,
     },
+    /// Gauges asked of a law without a motion in time.
+    #[error("gauges read a motion in time: under law '{law}' they are not modelled yet")]
+    StationLaw {
+        /// The law.
+        law: &'static str,
+    },
+    /// A gauge that the mover runs through.
+    #[error("station {station} stands in the way of part {part}")]
+    StationInPath {
+        /// The station.
+        station: Named,
+        /// The part that passes there.
+        part: Named,
+    },
+    /// A current density asked where nothing conducts.
+    #[error("station {station} reads a current density where no layer conducts")]
+    StationNoConductor {
+        /// The station.
+        station: Named,
+    },
+    /// A search coil without turns, or around nothing.
+    #[error("station {station} is a search coil without turns or without a diameter")]
+    StationCoil {
+        /// The station.
+        station: Named,
+    },
+    /// A gauge too far from the wall to be read.
+    #[error("station {station} at diameter {} and height {} is farther from wall and travel than ten of the wall's radii",
+        mm(2.0 * radius_m), mm(*at_m))]
+    StationFar {
+        /// The station.
+        station: Named,
+        /// Its radius, m.
+        radius_m: f64,
+        /// Its height, m.
+        at_m: f64,
+    },
     /// Instants of snapshots that do not increase from 0.
     #[error("the instants of the snapshots do not increase from 0")]
     Instants,
@@ -316,6 +353,12 @@ impl ProblemFault {
             Self::TableTimes { .. } => "sort the points by time, and give each instant once",
             Self::TableJump { .. } => "check the units of time and position, and take stray points out",
             Self::NoCoil { .. } => "a steady field takes no part in it: leave magnets and dipoles out",
+            Self::StationLaw { .. } => {
+                "a 'traverse' through a long wall reads at a gauge in its middle what 'steady' would; or take the stations out"
+            }
+            Self::StationInPath { .. } => "put it out of the mover's way: into the running gap, the wall or outside",
+            Self::StationNoConductor { .. } => "put it into a layer with a conductivity, or read the flux density",
+            Self::StationFar { .. } => "put it nearer",
             _ => return None,
         };
         Some(text.to_owned())

@@ -7,6 +7,7 @@ mod mover;
 mod quantity;
 mod reach;
 mod station;
+mod station_faults;
 mod stroke;
 mod travel;
 mod validity;

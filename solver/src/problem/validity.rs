@@ -3,6 +3,7 @@
 use super::fault::{Named, ProblemFault, Subject};
 use super::quantity::Quantity;
 use super::reach::{next_to_nothing, out_of_reach};
+use super::station_faults::station_faults;
 use super::{
     Alternating, Extent, Layer, MOST_CYCLES, MotionTable, Mover, Part, Problem, Sine, SnapshotPlan, Travel, Wall,
 };
@@ -27,6 +28,7 @@ impl Problem {
         clearance_faults(&self.wall, &self.mover, &mut faults);
         travel_faults(self, &mut faults);
         plan_faults(self, &mut faults);
+        station_faults(self, &mut faults);
         faults
     }
 }

@@ -13,6 +13,7 @@ mod field_fall;
 mod field_loop;
 mod field_passage;
 mod field_position;
+mod field_station;
 mod field_stroke;
 mod grid_index;
 mod harmonic;
@@ -102,6 +103,7 @@ pub fn all() -> Vec<Check> {
         field_passage::CHECKS,
         field_fall::CHECKS,
         field_position::CHECKS,
+        field_station::CHECKS,
         field_stroke::CHECKS,
         harmonic::CHECKS,
         experiment::CHECKS,

@@ -27,6 +27,7 @@ pub mod slots;
 pub mod solenoid;
 pub mod sphere_alternating;
 pub mod stacks;
+pub mod station;
 pub mod step_rod;
 pub mod step_tube;
 pub mod stroke;

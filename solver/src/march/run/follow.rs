@@ -2,6 +2,7 @@
 
 use super::Run;
 use crate::fault::SolveFault;
+use crate::march::gauge::Gauges;
 use crate::march::schedule::Schedule;
 use crate::march::step::Stepper;
 use crate::march::transfer::{Heights, carry};
@@ -43,6 +44,8 @@ impl Run<'_, '_> {
         self.stepper = Stepper::new(self.level);
         self.currents = vec![0.0; wall];
         self.psi_nodes = vec![0.0; nodes];
+        let problem = self.level.problem;
+        self.gauges = Gauges::new(&problem.stations, &self.level.operators, &problem.wall);
         self.window = Some(window);
         Ok(())
     }

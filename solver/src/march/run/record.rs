@@ -45,6 +45,7 @@ impl Run<'_, '_> {
         self.series.pull_mid.push(pull);
         self.record_routes(middle, begin + 0.5 * dt);
         self.record_peak(dt, report.travel);
+        self.record_stations(dt, report.travel);
         self.record_magnets(middle);
     }
 
@@ -106,6 +107,19 @@ impl Run<'_, '_> {
         self.series.peak_mid.push(value);
         self.series.peak_r_mid.push(r);
         self.series.peak_z_mid.push(z);
+    }
+
+    /// What the gauges read of the reaction at the step's middle.
+    fn record_stations(&mut self, dt: f64, travel: f64) {
+        let (end, mover) = (self.state.position, &self.level.problem.mover);
+        let own = |r: f64, z: f64| (mover.psi(r, z - end + travel) - mover.psi(r, z - end)) / dt;
+        let series = &mut self.series.stations;
+        let put = |channel: usize, value: f64| {
+            if let Some(values) = series.get_mut(channel) {
+                values.push(value);
+            }
+        };
+        self.gauges.read(&self.level.operators, (&self.psi_nodes, &self.currents), &own, put);
     }
 
     pub(super) fn keep_snapshot(&mut self, time: f64, travel: f64) -> Result<(), SolveFault> {
