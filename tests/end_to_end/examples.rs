@@ -215,11 +215,13 @@ fn every_example_is_tested_and_can_be_checked() {
         "arrest-sleeve",
         "cam-follower",
         "coil-probe",
+        "gauge-sleeve",
         "latch-damper",
         "ring-carriage",
         "ring-stack",
         "slotted-brake",
         "steel-jacket-traverse",
+        "stroke-damper-sweep",
         "stroke-damper",
         "two-layer-steady",
     ];
