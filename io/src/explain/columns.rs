@@ -3,8 +3,8 @@
 use lenzbore_solver::outcome::{DragCurve, FrequencyResponse, Measured, SlotShare, SlottedDrag, StrokeResponse, Trace};
 
 use crate::result::{
-    Column, IoFault, across_columns, curve_columns, frequency_columns, names, snapshot_arrays, stroke_columns,
-    trace_columns,
+    Column, IoFault, across_columns, curve_columns, frequency_columns, names, position_columns, snapshot_arrays,
+    stroke_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns, trace_columns,
 };
 
 /// A column: the file, its name, its unit, what it is.
@@ -27,6 +27,10 @@ pub(super) fn column_meanings() -> Vec<ColumnMeaning> {
         (names::FREQUENCY, frequency_columns(&coils)),
         (names::ACROSS, across_columns(&coils)),
         (names::STROKES, stroke_columns(&strokes)),
+        (names::TEMPERATURES, temperature_columns(&[])),
+        (names::TEMPERATURE_CURVES, temperature_curve_columns(&[])),
+        (names::POSITIONS, position_columns(&[])),
+        (names::STROKE_CURVE, stroke_curve_columns(&[])),
     ];
     let arrays = snapshot_arrays().map(|(name, unit, about)| ColumnMeaning { file: names::FIELDS, name, unit, about });
     tables.into_iter().flat_map(|(file, columns)| of_table(file, columns)).chain(arrays).collect()

@@ -43,6 +43,20 @@ pub const FIGURES: &[FigureMeaning] = &[
         "axial force of the field on the mover against its motion, settled fields",
         TRADE,
     ),
+    figure(
+        "damping_coefficient_greatest",
+        "N s/m",
+        "`curve`, positions",
+        "greatest damping coefficient at zero speed of those at the positions asked for, at the z beside it",
+        OWN,
+    ),
+    figure(
+        "damping_coefficient_equivalent_greatest",
+        "N s/m",
+        "`curve`, frequencies and amplitudes",
+        "greatest equivalent damping coefficient of the strokes asked for",
+        OWN,
+    ),
     figure("damping_coefficient", "N s/m", "`run`, law steady", "drag over speed at this speed", TRADE),
     figure(
         "dissipated_power",

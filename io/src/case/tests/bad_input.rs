@@ -256,9 +256,7 @@ fn given_motions_need_their_words() {
 
 #[test]
 fn words_of_later_work_are_refused_as_not_modelled_yet() {
-    check(&[
-        ("", "[[mover.iron]]\nlength = \"1 mm\"\n", "21:9", &["[[mover.iron]]", "not modelled yet"]),
-    ]);
+    check(&[("", "[[mover.iron]]\nlength = \"1 mm\"\n", "21:9", &["[[mover.iron]]", "not modelled yet"])]);
 }
 
 #[test]

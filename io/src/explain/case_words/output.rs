@@ -4,7 +4,7 @@ use lenzbore_solver::problem::{Quantity as Number, SensibleRange};
 
 use super::across::name;
 use super::{CaseTable, word};
-use crate::explain::form::{Form, LENGTH, POSITION, quantity};
+use crate::explain::form::{Form, HOLE, LENGTH, POSITION, quantity};
 use crate::units::Kind;
 
 const INSTANT: Form =
@@ -71,17 +71,23 @@ pub(super) const OUTPUT: CaseTable = CaseTable {
             "85 mm, one column of a page",
             "picture_width = \"170 mm\"",
         ),
-        word("station", Form::Tables, "gauges on the wall: not modelled yet, and refused", "none", ""),
+        word("station", Form::Tables, "gauges at fixed places, for laying beside a measurement", "none", ""),
     ],
 };
 
 pub(super) const STATION: CaseTable = CaseTable {
     path: "output.station",
-    about: "a gauge on the wall, whose reading becomes a trace: not modelled yet, and refused",
+    about: "a gauge at a fixed place, whose readings over a motion in time have bands; under steady and alternating refused as not modelled yet",
     words: &[
         name("what results call the gauge", "name = \"G1\""),
-        word("at", POSITION, "height of the gauge", "needed", "at = \"90 mm\""),
-        word("radius", LENGTH, "radius at which it sits", "needed", "radius = \"16 mm\""),
+        word("at", POSITION, "height of the gauge, of a search coil of its middle", "needed", "at = \"90 mm\""),
+        word(
+            "radius",
+            HOLE,
+            "radius at which it sits",
+            "half the diameter, and one of the two is needed",
+            "radius = \"16 mm\"",
+        ),
         word(
             "what",
             Form::Choice(&["flux density", "current density", "search coil"]),
@@ -90,6 +96,19 @@ pub(super) const STATION: CaseTable = CaseTable {
             "what = \"search coil\"",
         ),
         word("turns", TURNS, "turns of a search coil", "needed for a search coil", "turns = 100"),
-        word("diameter", LENGTH, "diameter of a search coil", "needed for a search coil", "diameter = \"40 mm\""),
+        word(
+            "diameter",
+            HOLE,
+            "diameter at which it sits, of a search coil that of its turns",
+            "twice the radius, and one of the two is needed",
+            "diameter = \"40 mm\"",
+        ),
+        word(
+            "length",
+            LENGTH,
+            "length over which the turns of a search coil are spread",
+            "all turns at one height",
+            "length = \"3 mm\"",
+        ),
     ],
 };
