@@ -9,6 +9,7 @@ use super::letters::fitting;
 use super::paper::{COLUMN, Picture};
 use super::ribbon::Banded;
 use super::scale::significant;
+use super::smooth::smooth;
 use super::style::{MARGIN, MARK, SMALL, letters};
 use super::svg::{Anchor, Svg};
 use super::units::Shown;
@@ -53,7 +54,8 @@ pub fn stations(heading: &str, outcome: &Outcome) -> Option<Picture> {
             svg.line((left, y.scale.at(0.0)), (right, y.scale.at(0.0)), MARK);
         }
         for (n, curve) in panel.curves.iter().enumerate() {
-            draw(&mut svg, curve, (&x.scale, &y.scale), stroke(n, 2));
+            let line = smooth(curve, &x.scale, &y.scale);
+            draw(&mut svg, &line, (&x.scale, &y.scale), stroke(n, 2));
         }
         let heading = fitting(&panel.heading(), SMALL, false, right - left);
         svg.text(left, top - 10.0, &heading, letters(SMALL, Anchor::Start));

@@ -19,7 +19,7 @@ const NEAR: usize = 6;
 /// Share of what the nearer boundary changes.
 const CUT: f64 = 0.5;
 /// Share of the greatest reading.
-const FLOOR: f64 = 5.0e-6;
+const FLOOR: f64 = 1.0e-5;
 
 /// The levels that were marched.
 pub(super) struct Marched<'s> {
