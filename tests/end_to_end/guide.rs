@@ -126,7 +126,7 @@ impl Commands {
     /// What is wrong with a command line that begins with `lenzbore`.
     fn fault(&self, line: &str) -> Option<String> {
         let mut words = line.split_whitespace().skip(1);
-        let Some(command) = words.next() else { return None };
+        let command = words.next()?;
         let Some(options) = self.options(command) else { return Some(format!("no command '{command}'")) };
         for word in words {
             if let Some(option) = word.starts_with("--").then(|| word.split('=').next()).flatten()
