@@ -11,6 +11,8 @@ use lenzbore_solver::outcome::{
     Basis, DragCurve, Figure, FrequencyResponse, LumpedModel, Outcome, SlottedDrag, StrokeResponse,
 };
 
+mod warmth;
+
 /// Points of a curve shown on the terminal.
 const SHOWN_POINTS: usize = 12;
 
@@ -62,7 +64,13 @@ pub fn answer(header: &ResultHeader, outcome: &Outcome) -> String {
         stroke_lines(&mut text, response);
     }
     sweeps::lines(&mut text, &outcome.sweeps);
+    if let Some(duty) = outcome.thermal.as_ref().and_then(|t| t.duty.as_ref()) {
+        text.push_str(&warmth::duty_lines(duty));
+    }
     balance(&mut text, outcome);
+    if let Some(thermal) = &outcome.thermal {
+        text.push_str(&warmth::ledger_line(thermal));
+    }
     regime(&mut text, outcome);
     let cautions: Vec<&str> =
         header.cautions.iter().map(String::as_str).chain(outcome.cautions.iter().map(|c| c.text.as_str())).collect();
@@ -82,7 +90,11 @@ fn list(text: &mut String, heading: &str, items: &[&str]) {
 }
 
 fn figure_line(figure: &Figure) -> String {
-    let (value, band) = with_band(figure.value, figure.band);
+    let (value, band) = if figure.band <= 0.0 && figure.value.abs() > 0.0 {
+        (significant(figure.value), "0".to_owned())
+    } else {
+        with_band(figure.value, figure.band)
+    };
     let place = figure.location.map_or(String::new(), |l| {
         // A place that rounds to zero has no sign.
         let millimetres = |x: f64| format!("{:.2} mm", (1e5 * x).round() / 1e2 + 0.0);
@@ -122,7 +134,7 @@ pub fn with_band(value: f64, band: f64) -> (String, String) {
 const DIGITS: f64 = 8.0;
 
 /// A number to eight significant digits.
-fn significant(value: f64) -> String {
+pub fn significant(value: f64) -> String {
     let size = value.abs();
     if size > 0.0 && !(1.0e-3..1.0e7).contains(&size) {
         return format!("{value:.*e}", whole(DIGITS - 1.0));

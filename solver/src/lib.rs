@@ -12,6 +12,7 @@
 
 pub mod comparison;
 pub mod constants;
+pub mod cool_down;
 pub mod cost;
 pub mod extrapolate;
 pub mod fault;
@@ -46,6 +47,7 @@ mod placement;
 mod regime;
 mod settled;
 mod target;
+mod thermal;
 #[cfg(test)]
 mod verification;
 mod wall_nodes;

@@ -44,12 +44,17 @@ const LOCAL_ALLOWANCE: f64 = 100.0;
 
 /// Figures that are a field's value at one point.
 pub(crate) fn is_local(name: &str) -> bool {
-    matches!(name, "current_density_peak" | demagnetisation::FIELD | demagnetisation::MARGIN)
+    matches!(name, "current_density_peak" | demagnetisation::FIELD | demagnetisation::MARGIN) || is_temperature(name)
 }
 
-/// A difference that may be as small as it likes says nothing about accuracy.
+/// A difference that may be as small as it likes says nothing about accuracy, nor does what follows from where heat is left.
 fn counts(figure: &Figure) -> bool {
-    figure.name != demagnetisation::MARGIN
+    figure.name != demagnetisation::MARGIN && !is_temperature(&figure.name)
+}
+
+/// Figures that follow from where the heat is left: their bands are told, and no level is added for them.
+fn is_temperature(name: &str) -> bool {
+    name.starts_with("temperature_") || name.starts_with("surface_temperature_")
 }
 
 /// Compares every figure's band with the target (a local figure's with a hundred times the target: 1 % by default).

@@ -29,4 +29,5 @@ mod strokes;
 mod sweeps;
 mod tolerance;
 mod validate;
+mod warmth;
 mod words;

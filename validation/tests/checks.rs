@@ -80,5 +80,8 @@ checks! {
     val_alternating_skin_depth: "alternating-skin-depth",
     val_alternating_tube: "alternating-tube",
     val_alternating_sphere: "alternating-sphere",
+    val_cooling_slab: "cooling-slab",
+    val_cooling_rod: "cooling-rod",
+    val_cooling_tube: "cooling-tube",
     val_experiment_falling_magnet: "experiment-falling-magnet",
 }

@@ -55,6 +55,7 @@ mod travel;
 pub(crate) mod tree;
 mod values;
 mod wall;
+mod warming;
 mod words;
 
 use std::path::Path;
@@ -68,6 +69,7 @@ pub use resolve::BACK_ACTION;
 pub use resolved::{Origin, Resolved, ResolvedValue, ResolvedWord};
 pub use starters::{STARTER, STARTERS, Starter, starter};
 pub use tolerance::Tolerance;
+pub(crate) use warming::{CONDUCTION, DENSITY, FILM, PERIOD, SPECIFIC_HEAT, UNTIL_SETTLED};
 pub use words::{LAWS, LawWords, TABLES, TableWords, law_words, table_words};
 
 #[cfg(test)]

@@ -63,7 +63,7 @@ impl Section<'_> {
 
 /// How a quantity is read: what it measures, and the range of sense.
 #[derive(Debug, Clone, Copy)]
-pub(super) struct Wanted {
+pub(crate) struct Wanted {
     pub kind: Kind,
     pub range: SensibleRange,
 }

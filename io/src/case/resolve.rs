@@ -19,6 +19,7 @@ use super::tolerance::{Tolerance, read_tolerances};
 use super::travel::{Surroundings, read_travel};
 use super::tree::{Entry, Table};
 use super::wall::read_wall;
+use super::warming::read_warming;
 use super::{CaseSource, CurvePlan, OutputPlan, ResolvedCase};
 use crate::message::{CaseFault, Diagnostics, Place};
 
@@ -103,10 +104,12 @@ fn read_root(reader: &mut Reader, root: &Section<'_>, source: &CaseSource<'_>) -
     let output_section = optional(reader, root, "output");
     let (output, snapshots) = read_output(reader, &output_section);
     let stations = read_stations(reader, &output_section);
+    let warming = wall.as_ref().and_then(|w| read_warming(reader, root, w, travel.as_ref()));
     let tolerances = read_tolerances(reader, root);
     let (wall, mover) = (wall?, mover?);
     let mut problem = problem(&wall.wall, &mover.mover, travel.as_ref(), curve.as_ref(), (accuracy, snapshots));
     problem.stations = stations.iter().map(|(station, _)| station.clone()).collect();
+    problem.warming = warming;
     let parts = Parts {
         root,
         wall: &wall,

@@ -16,7 +16,7 @@ const LOWEST_BARE_K: f64 = 150.0;
 /// Linear coefficients are trusted from here ...
 const LINEAR_FROM_K: f64 = CELSIUS_ZERO_K - 60.0;
 /// ... to here.
-const LINEAR_TO_K: f64 = CELSIUS_ZERO_K + 200.0;
+pub(super) const LINEAR_TO_K: f64 = CELSIUS_ZERO_K + 200.0;
 
 const RANGE: SensibleRange = SensibleRange { lowest: 1.0, highest: 2000.0, zero: false, signed: false };
 /// How a temperature is read.

@@ -166,7 +166,7 @@ fn without_list(path: &str) -> String {
 
 /// The kind whose SI unit is noted beside a resolved value.
 fn kind_of(unit: &str) -> Kind {
-    const KINDS: [Kind; 17] = [
+    const KINDS: [Kind; 21] = [
         Kind::Length,
         Kind::Speed,
         Kind::Temperature,
@@ -184,6 +184,10 @@ fn kind_of(unit: &str) -> Kind {
         Kind::Force,
         Kind::AirDrag,
         Kind::SpringRate,
+        Kind::Density,
+        Kind::SpecificHeat,
+        Kind::ThermalConductivity,
+        Kind::FilmCoefficient,
     ];
     KINDS.into_iter().find(|k| unit_of(*k) == unit).unwrap_or(Kind::Ratio)
 }

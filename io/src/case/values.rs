@@ -217,6 +217,10 @@ fn example_of(kind: Kind) -> &'static str {
         Kind::Force => "\"0.5 N\"",
         Kind::AirDrag => "\"0.002 N s2/m2\"",
         Kind::SpringRate => "\"120 N/m\"",
+        Kind::Density => "\"8940 kg/m3\"",
+        Kind::SpecificHeat => "\"385 J/(kg K)\"",
+        Kind::ThermalConductivity => "\"340 W/(m K)\"",
+        Kind::FilmCoefficient => "\"10 W/(m2 K)\"",
         Kind::Ratio => "0.2",
         _ => "a number with its unit in quotes",
     }

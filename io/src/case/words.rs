@@ -14,7 +14,7 @@ pub struct TableWords {
 }
 
 /// Every table.
-pub const TABLES: [TableWords; 15] = [
+pub const TABLES: [TableWords; 17] = [
     TableWords {
         path: "",
         label: "a case file",
@@ -26,6 +26,8 @@ pub const TABLES: [TableWords; 15] = [
             "wall",
             "mover",
             "travel",
+            "cooling",
+            "duty",
             "curve",
             "tolerance",
             "accuracy",
@@ -56,6 +58,9 @@ pub const TABLES: [TableWords; 15] = [
             "conductivity_at",
             "temperature_coefficient",
             "permeability",
+            "density",
+            "specific_heat",
+            "thermal_conductivity",
             "size",
             "inner_diameter",
             "outer_diameter",
@@ -118,6 +123,13 @@ pub const TABLES: [TableWords; 15] = [
         lists: &[],
     },
     TableWords { path: "travel", label: "[travel]", words: &TRAVEL_WORDS, lists: &[] },
+    TableWords {
+        path: "cooling",
+        label: "[cooling]",
+        words: &["bore_film_coefficient", "outside_film_coefficient", "ends_film_coefficient", "ambient"],
+        lists: &[],
+    },
+    TableWords { path: "duty", label: "[duty]", words: &["period", "repeats"], lists: &[] },
     TableWords {
         path: "curve",
         label: "[curve]",

@@ -1,10 +1,13 @@
 //! The columns of every table that a result holds, read off the writers themselves.
 
-use lenzbore_solver::outcome::{DragCurve, FrequencyResponse, Measured, SlotShare, SlottedDrag, StrokeResponse, Trace};
+use lenzbore_solver::outcome::{
+    DragCurve, DutyOutcome, FrequencyResponse, Measured, SlotShare, SlottedDrag, StrokeResponse, Trace,
+};
 
 use crate::result::{
-    Column, IoFault, across_columns, curve_columns, frequency_columns, names, position_columns, snapshot_arrays,
-    stroke_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns, trace_columns,
+    Column, IoFault, across_columns, curve_columns, duty_columns, frequency_columns, names, position_columns,
+    snapshot_arrays, stroke_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns,
+    trace_columns,
 };
 
 /// A column: the file, its name, its unit, what it is.
@@ -21,6 +24,8 @@ pub(super) fn column_meanings() -> Vec<ColumnMeaning> {
     let (trace, curve) = (Trace::default(), DragCurve::default());
     let slotted = SlottedDrag { slots: 1, low_speed: SlotShare { value: 1.0, band: 0.0 }, points: Vec::new() };
     let strokes = StrokeResponse { points: Vec::new(), lumped: Vec::new() };
+    let duty =
+        DutyOutcome { stops: Vec::new(), has_bore: true, settled: false, solved_at: Vec::new(), uniform_cost: 0.0 };
     let tables = [
         (names::TRACE, trace_columns(&trace)),
         (names::CURVE, curve_columns(&curve, Some(&slotted))),
@@ -31,6 +36,7 @@ pub(super) fn column_meanings() -> Vec<ColumnMeaning> {
         (names::TEMPERATURE_CURVES, temperature_curve_columns(&[])),
         (names::POSITIONS, position_columns(&[])),
         (names::STROKE_CURVE, stroke_curve_columns(&[])),
+        (names::DUTY, duty_columns(&duty)),
     ];
     let arrays = snapshot_arrays().map(|(name, unit, about)| ColumnMeaning { file: names::FIELDS, name, unit, about });
     tables.into_iter().flat_map(|(file, columns)| of_table(file, columns)).chain(arrays).collect()

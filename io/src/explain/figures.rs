@@ -32,6 +32,8 @@ const SLOTS: &str =
     "defined here; its factor after R. L. Russell and K. H. Norsworthy, Proceedings of the IEE 105A, 163-175 (1958)";
 const GIVEN: &str = "`run`, laws traverse and table";
 const ALL_TRAVEL: &str = "`run`, laws traverse, table, free and sine";
+const WARM: &str = "`run`, laws traverse, table, free and sine, where densities and specific heats are known";
+const REPEATED: &str = "`run` with [duty]";
 const COILS: &str = "`run`, law alternating";
 
 /// Every figure.
@@ -270,6 +272,70 @@ pub const FIGURES: &[FigureMeaning] = &[
         "1",
         "`run`, law alternating, sweep",
         "greatest resistance change over omega times the inductance without the wall",
+        OWN,
+    ),
+    figure("wall_mass", "kg", WARM, "mass of all layers", TRADE),
+    figure("wall_heat_capacity", "J/K", WARM, "sum of mass times specific heat over the layers", TRADE),
+    figure(
+        "temperature_rise_mean",
+        "K",
+        WARM,
+        "heat left in the wall over its heat capacity, no heat given off (law sine: by one settled cycle)",
+        TRADE,
+    ),
+    figure(
+        "temperature_rise_peak",
+        "K",
+        WARM,
+        "greatest local rise if no heat spread at all: integral of J^2 / sigma over time, over rho c; a local figure",
+        OWN,
+    ),
+    figure(
+        "temperature_rise_section_peak",
+        "K",
+        WARM,
+        "greatest rise of a layer's cross-section with the heat evened out across it and none spreading along",
+        OWN,
+    ),
+    figure(
+        "surface_temperature_bore",
+        "K",
+        WARM,
+        "hottest point of the bore's surface right after the event; with [duty], from the last stop to the next",
+        OWN,
+    ),
+    figure(
+        "surface_temperature_outside",
+        "K",
+        WARM,
+        "hottest point of the outside right after the event; with [duty], from the last stop to the next",
+        OWN,
+    ),
+    figure(
+        "cooling_time_constant",
+        "s",
+        "`run` with [cooling]",
+        "time in which the slowest part of the wall's warmth falls to 1/e of itself",
+        "lowest eigenvalue of the heat equation with the films given",
+    ),
+    figure("energy_per_stop", "J", REPEATED, "heat left in the wall by the last stop", OWN),
+    figure("temperature_rise_per_stop", "K", REPEATED, "that over the wall's heat capacity", OWN),
+    figure(
+        "drag_fade",
+        "1",
+        REPEATED,
+        "1 - greatest drag of the last stop over that of the first",
+        "common practice: brakes fade as they warm",
+    ),
+    figure("temperature_settled_mean", "K", REPEATED, "mean of the wall right after the last stop, settled", OWN),
+    figure("temperature_settled_peak", "K", REPEATED, "hottest point right after the last stop, settled", OWN),
+    figure("temperature_last_mean", "K", REPEATED, "mean of the wall right after the last stop, not yet settled", OWN),
+    figure("temperature_last_peak", "K", REPEATED, "hottest point right after the last stop, not yet settled", OWN),
+    figure(
+        "stops_to_settle",
+        "1",
+        REPEATED,
+        "first stop before which the wall is within 1 % of its whole rise from where it settles",
         OWN,
     ),
 ];

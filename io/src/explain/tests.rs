@@ -140,7 +140,7 @@ fn keys(value: &Value, into: &mut BTreeSet<String>) {
 #[test]
 fn every_key_of_a_summary_is_explained() {
     let mut all = BTreeSet::new();
-    for (_, outcome) in [demo::free(), demo::curve(), demo::steady()] {
+    for (_, outcome) in [demo::free(), demo::duty(), demo::curve(), demo::steady()] {
         keys(&summary(&demo::header("t"), &outcome).unwrap(), &mut all);
     }
     let known = meanings();

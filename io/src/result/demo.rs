@@ -90,6 +90,13 @@ pub(crate) fn free() -> (Problem, Outcome) {
     (problem, outcome)
 }
 
+/// The same brake again and again, its wall warming.
+pub(crate) fn duty() -> (Problem, Outcome) {
+    let (problem, mut outcome) = free();
+    outcome.thermal = Some(super::demo_thermal::thermal());
+    (problem, outcome)
+}
+
 /// Drag against speed of the same brake: a curve with one maximum.
 pub(crate) fn curve() -> (Problem, Outcome) {
     let (mut problem, _) = free();

@@ -10,6 +10,7 @@ mod read;
 mod regions;
 mod snapshots;
 mod stations;
+mod thermal;
 
 use std::path::Path;
 
@@ -23,6 +24,7 @@ use super::frequency::frequency_columns;
 use super::header::ResultHeader;
 use super::series::{Column, curve_columns, trace_columns};
 use super::strokes::stroke_columns;
+use super::thermal::duty_columns;
 use dataset::{About, put, text};
 pub use read::read_fields;
 pub use snapshots::snapshot_arrays;
@@ -65,6 +67,15 @@ pub fn write_fields(
         table(&file, "strokes", &stroke_columns(response)?).map_err(blame)?;
     }
     stations::write(&file, &outcome.stations).map_err(blame)?;
+    if let Some(warm) = &outcome.thermal {
+        if let Some(duty) = &warm.duty {
+            table(&file, "duty", &duty_columns(duty)?).map_err(blame)?;
+        }
+        for field in &warm.fields {
+            array(field.moment, &field.temperature_k, warm.r_m.len() * warm.z_m.len())?;
+        }
+        thermal::write(&file, warm).map_err(blame)?;
+    }
     snapshots::write(&file, fields, path, monitor)?;
     file.flush().map_err(blame)?;
     file.close().map_err(blame)

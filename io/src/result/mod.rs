@@ -5,6 +5,8 @@ pub(crate) mod demo;
 #[cfg(test)]
 mod demo_fields;
 mod earlier;
+#[cfg(test)]
+mod demo_thermal;
 mod fault;
 mod finite;
 pub mod folder;
@@ -20,6 +22,7 @@ mod stations;
 mod strokes;
 mod summary;
 mod sweeps;
+mod thermal;
 mod write;
 mod xdmf;
 
@@ -37,5 +40,6 @@ pub use stations::stations_csv;
 pub use strokes::stroke_columns;
 pub use summary::{summary, summary_text};
 pub use sweeps::{position_columns, stroke_curve_columns, temperature_columns, temperature_curve_columns};
+pub use thermal::duty_columns;
 pub use write::{WriteOptions, Written, pictures_of, write};
 pub use xdmf::xdmf;

@@ -22,6 +22,8 @@ pub const TEMPERATURE_CURVES: &str = "curve_temperatures.csv";
 pub const POSITIONS: &str = "positions.csv";
 /// Settled strokes over frequency and amplitude.
 pub const STROKE_CURVE: &str = "stroke_curve.csv";
+/// A repeated event stop by stop.
+pub const DUTY: &str = "duty.csv";
 /// What each input makes of each figure.
 pub const SENSITIVITIES: &str = "sensitivities.csv";
 /// Figures at every rung of a ladder.

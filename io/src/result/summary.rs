@@ -15,6 +15,7 @@ use super::spread::{input_spread, spread_object};
 use super::stations::stations_object;
 use super::strokes::strokes_object;
 use super::sweeps::{positions_object, stroke_curve_object, temperatures_object};
+use super::thermal::thermal_object;
 
 /// The summary of a run.
 ///
@@ -64,6 +65,9 @@ pub fn summary(header: &ResultHeader, outcome: &Outcome) -> Result<Value, IoFaul
     }
     if !sweeps.strokes.is_empty() {
         put("stroke_curve", stroke_curve_object(&sweeps.strokes)?);
+    }
+    if let Some(thermal) = &outcome.thermal {
+        put("thermal", thermal_object(thermal)?);
     }
     let of_the_run = outcome.cautions.iter().map(|c| c.text.clone());
     put("cautions", header.cautions.iter().cloned().chain(of_the_run).collect::<Vec<_>>().into());

@@ -10,9 +10,9 @@ use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
 use super::{
-    across_columns, csv, curve_columns, frequency_columns, hdf5, names, position_columns, sensitivities_csv,
-    stations_csv, stroke_columns, stroke_curve_columns, summary_text, temperature_columns, temperature_curve_columns,
-    trace_columns, xdmf,
+    across_columns, csv, curve_columns, duty_columns, frequency_columns, hdf5, names, position_columns,
+    sensitivities_csv, stations_csv, stroke_columns, stroke_curve_columns, summary_text, temperature_columns,
+    temperature_curve_columns, trace_columns, xdmf,
 };
 use crate::picture::{self, COLUMN_WIDTH_M, Picture};
 use crate::report;
@@ -126,6 +126,7 @@ pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) 
     all.extend(picture::stations(&header.title, outcome));
     all.extend(picture::force_loop(&header.title, problem, outcome));
     all.extend(picture::stroke_response(&header.title, problem, outcome));
+    all.extend(picture::duty(&header.title, outcome));
     all.extend(picture::impedance(&header.title, outcome));
     all.extend(picture::current_across(&header.title, outcome));
     all.extend(header.spread.as_ref().and_then(|s| picture::spread(&header.title, s)));
@@ -190,6 +191,9 @@ fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
     }
     if let Some(response) = &outcome.strokes {
         sheaf.put(names::STROKES, csv(&stroke_columns(response)?).as_bytes())?;
+    }
+    if let Some(duty) = outcome.thermal.as_ref().and_then(|t| t.duty.as_ref()) {
+        sheaf.put(names::DUTY, csv(&duty_columns(duty)?).as_bytes())?;
     }
     Ok(())
 }

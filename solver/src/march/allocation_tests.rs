@@ -6,7 +6,7 @@ use lenzbore_mesh::Refinement;
 use super::answer::Journey;
 use super::run::Run;
 use crate::problem::{Problem, Sine, Travel};
-use crate::verification::cases::{fall, finite, layer, long_passage, magnet, problem};
+use crate::verification::cases::{fall, finite, layer, long_passage, magnet, problem, warmed};
 
 /// Steps before the count, and counted.
 const WARM: u32 = 4;
@@ -30,6 +30,7 @@ fn allocations(problem: &Problem, dt: f64) -> u64 {
 #[test]
 fn a_step_at_uniform_speed_allocates_nothing() {
     assert_eq!(allocations(&long_passage(0.3, 3.0), 1e-4), 0);
+    assert_eq!(allocations(&warmed(long_passage(0.3, 3.0)), 1e-4), 0);
 }
 
 #[test]

@@ -5,7 +5,7 @@ use lenzbore_mesh::{Refinement, Regions};
 use super::combine::{Margins, combine};
 use super::course::{Course, HELD_STRIDE, life_time, plan, reach, set_out, windows};
 use super::cycles::Settling;
-use super::figures::{LevelFigure, end_of, level_figures};
+use super::figures::{LevelFigure, end_of};
 use super::level::MarchLevel;
 use super::lines::LevelLines;
 use super::motion::{Motion, potential_energy};
@@ -40,8 +40,8 @@ use crate::target::{refine, verdict};
 const MOST_MARCH_LEVELS: usize = 4;
 
 /// One level's record.
-struct LevelRecord {
-    series: Series,
+pub(super) struct LevelRecord {
+    pub(super) series: Series,
     report: GridReport,
     counters: WorkCounters,
     fields: Option<Fields>,
@@ -49,7 +49,7 @@ struct LevelRecord {
 
 /// A march set up: where it goes, on which grids.
 pub(super) struct Journey<'p> {
-    problem: &'p Problem,
+    pub(super) problem: &'p Problem,
     placement: Placement,
     plan: GridPlan,
     pub(super) motion: Motion,
@@ -72,7 +72,7 @@ pub(crate) fn march(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome,
 /// # Errors
 /// See [`SolveFault`].
 pub(crate) fn settled_stroke(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-    Journey::new(problem)?.through_levels(monitor)
+    Ok(Journey::new(problem)?.through_levels(monitor)?.1)
 }
 
 /// The same without windows.
@@ -95,7 +95,7 @@ pub(crate) fn coarsest_both_ways(
 ) -> Result<Vec<(&'static str, [f64; 2])>, SolveFault> {
     let figures = |journey: Journey<'_>| {
         let records = journey.first(monitor)?;
-        Ok::<_, SolveFault>(level_figures(problem, &records.levels[0].series, &records.course))
+        Ok::<_, SolveFault>(super::figures::level_figures(problem, &records.levels[0].series, &records.course))
     };
     let windows = Journey::new(problem)?;
     assert!(windows.windows.is_some(), "the wall is too short for windows");
@@ -104,12 +104,12 @@ pub(crate) fn coarsest_both_ways(
 }
 
 /// The schedule, the levels so far, the coarsest level on half the domain.
-struct Records {
+pub(super) struct Records {
     /// The course, a stroke's with its last cycle.
-    course: Course,
+    pub(super) course: Course,
     settling: Option<Settling>,
-    schedule: Schedule,
-    levels: Vec<LevelRecord>,
+    pub(super) schedule: Schedule,
+    pub(super) levels: Vec<LevelRecord>,
     cut: Option<LevelRecord>,
 }
 
@@ -127,22 +127,24 @@ impl<'p> Journey<'p> {
     }
 
     fn solve(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
-        let mut outcome = self.through_levels(monitor)?;
+        let (records, mut outcome) = self.through_levels(monitor)?;
         if let Some(sine) = self.motion.sine()
             && life_time(&self.problem.wall) > 0.0
         {
             outcome.strokes = Some(around(self.problem, sine, monitor)?);
         }
+        self.warm(&records, &mut outcome, monitor)?;
         monitor.progress(1.0, "done");
         Ok(outcome)
     }
 
-    fn through_levels(&self, monitor: &dyn Monitor) -> Result<Outcome, SolveFault> {
+    fn through_levels(&self, monitor: &dyn Monitor) -> Result<(Records, Outcome), SolveFault> {
         let mut records = self.first(monitor)?;
-        refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
+        let outcome = refine(&self.problem.accuracy, MOST_MARCH_LEVELS, |count| {
             self.replay_missing(&mut records, count, monitor)?;
             Ok::<_, SolveFault>(self.outcome(&mut records))
-        })
+        })?;
+        Ok((records, outcome))
     }
 
     /// The window to begin with.
@@ -155,7 +157,7 @@ impl<'p> Journey<'p> {
         MarchLevel::new(self.problem, &self.placement, lines, self.window(), self.reach)
     }
 
-    fn first(&self, monitor: &dyn Monitor) -> Result<Records, SolveFault> {
+    pub(super) fn first(&self, monitor: &dyn Monitor) -> Result<Records, SolveFault> {
         let mut level = self.level(Refinement::COARSEST, false)?;
         let run = Run::new(&mut level, &self.motion, &self.course, self.window())?;
         let share = Share { from: 0.0, to: 0.08 };
@@ -215,7 +217,7 @@ impl<'p> Journey<'p> {
         Ok(())
     }
 
-    fn replay(
+    pub(super) fn replay(
         &self,
         schedule: &Schedule,
         refinement: Refinement,
@@ -256,8 +258,8 @@ impl<'p> Journey<'p> {
         let factors: Vec<f64> = Refinement::first(records.levels.len()).iter().map(|f| f.factor()).collect();
         let (stop, _) = end_of(&records.levels[0].series, &records.course);
         let by_level: Vec<Vec<LevelFigure>> =
-            records.levels.iter().map(|l| level_figures(self.problem, &l.series, &records.course)).collect();
-        let cut = records.cut.as_ref().map(|c| level_figures(self.problem, &c.series, &records.course));
+            records.levels.iter().map(|l| self.figures_of(l, &records.course)).collect();
+        let cut = records.cut.as_ref().map(|c| self.figures_of(c, &records.course));
         let residual = records.levels.iter().map(|l| l.report.residual).fold(0.0, f64::max);
         let corners = corner_powers(&self.problem.wall, factors.len());
         let routes = self.routes(records, &factors);

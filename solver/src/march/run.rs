@@ -9,6 +9,7 @@ use record::PEAK_REACH;
 
 use super::course::Course;
 use super::gauge::{Gauges, channels};
+use super::heating::Heating;
 use super::level::MarchLevel;
 use super::motion::{Motion, friction, frictionless, other_force};
 use super::pace::{PlannedPair, pairs_of_table};
@@ -61,6 +62,8 @@ pub(crate) struct Run<'a, 'p> {
     gauges: Gauges,
     snapshots: Vec<Snapshot>,
     magnets: Option<Watch>,
+    course: Course,
+    heating: Option<Heating>,
 }
 
 impl<'a, 'p> Run<'a, 'p> {
@@ -112,6 +115,8 @@ impl<'a, 'p> Run<'a, 'p> {
             gauges,
             snapshots: Vec::new(),
             magnets: Watch::new(&level.problem.mover),
+            course: course.clone(),
+            heating: level.problem.warming.is_some().then(|| Heating::new(level)).transpose()?,
             level,
             motion,
         })
@@ -151,8 +156,7 @@ impl<'a, 'p> Run<'a, 'p> {
                 break;
             }
         }
-        self.level.counters.steps += self.series.time_mid.len();
-        Ok((self.series, schedule))
+        Ok((self.finish(), schedule))
     }
 
     /// Runs the coarsest level through a table of positions.
@@ -208,8 +212,10 @@ impl<'a, 'p> Run<'a, 'p> {
     }
 
     /// Ends the run with its record.
-    pub(super) fn finish(self) -> Series {
+    pub(super) fn finish(mut self) -> Series {
         self.level.counters.steps += self.series.time_mid.len();
+        let stroke = self.motion.sine().is_some();
+        self.series.heat_left = self.heating.map(|h| h.finish(self.level, stroke));
         self.series
     }
 
@@ -249,8 +255,8 @@ impl<'a, 'p> Run<'a, 'p> {
                 break;
             }
         }
-        self.level.counters.steps += self.series.time_mid.len();
-        Ok((self.series, self.snapshots))
+        let snapshots = std::mem::take(&mut self.snapshots);
+        Ok((self.finish(), snapshots))
     }
 
     /// Makes room for `steps` more, and the factor of `dt` ready.
@@ -293,6 +299,9 @@ impl<'a, 'p> Run<'a, 'p> {
             let dt = schedule.dt(rung);
             self.level.prepare(dt)?;
             self.saved.copy_from(&self.state);
+            if let Some(heating) = &mut self.heating {
+                heating.save();
+            }
             let keep = (self.heat, self.work, self.losses, self.series.time_mid.len());
             for n in 0..2 {
                 let start = begin + count(n) * dt;
@@ -311,6 +320,9 @@ impl<'a, 'p> Run<'a, 'p> {
                 return Ok(rung);
             }
             self.state.copy_from(&self.saved);
+            if let Some(heating) = &mut self.heating {
+                heating.restore();
+            }
             (self.heat, self.work, self.losses) = (keep.0, keep.1, keep.2);
             self.series.truncate(keep.3, begin);
             rung -= 1;

@@ -1,5 +1,6 @@
 //! What one level records, and its reading at any instant.
 
+use super::heating::HeatLeft;
 use crate::interpolate::{ALONG_POINTS, Stencil, sampled};
 
 /// Values at step ends (`time` and the like) and at step middles (`*_mid`).
@@ -47,6 +48,8 @@ pub(crate) struct Series {
     pub(crate) stopped_at: Option<f64>,
     /// The mover left the wall's field for good.
     pub(crate) lost: bool,
+    /// The heat that the run has left in the wall, node by node, where it is asked for.
+    pub(crate) heat_left: Option<HeatLeft>,
 }
 
 impl Series {

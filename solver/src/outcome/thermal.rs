@@ -72,6 +72,8 @@ pub struct DutyStop {
 pub struct DutyOutcome {
     /// Stop by stop, extrapolated over the grids.
     pub stops: Vec<DutyStop>,
+    /// Whether the wall has a bore; without one `surface_bore_k` repeats the outside.
+    pub has_bore: bool,
     /// Whether the temperatures have settled by the last.
     pub settled: bool,
     /// Temperatures of the whole wall at which the event was solved, K, and the heat, J, and greatest drag, N, that it had there.

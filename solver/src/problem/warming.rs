@@ -1,5 +1,9 @@
 //! What the heat left in the wall meets: densities, specific heats, cooling, and how often it comes.
 
+use std::f64::consts::PI;
+
+use super::Wall;
+
 /// Repeats of an event at most, where none are given.
 pub const MOST_STOPS: u32 = 4000;
 
@@ -73,6 +77,20 @@ pub struct Duty {
 }
 
 impl Warming {
+    /// Mass of layer `index`, kg.
+    #[must_use]
+    pub fn mass_kg(&self, wall: &Wall, index: usize) -> f64 {
+        let (layer, heat) = (&wall.layers[index], &self.layers[index]);
+        let [inner, outer] = [layer.inner_radius_m, layer.outer_radius_m];
+        heat.density_kg_per_m3 * PI * (outer * outer - inner * inner) * (layer.to_m - layer.from_m)
+    }
+
+    /// Heat capacity of the whole wall, J/K.
+    #[must_use]
+    pub fn heat_capacity_j_per_k(&self, wall: &Wall) -> f64 {
+        (0..self.layers.len()).map(|k| self.mass_kg(wall, k) * self.layers[k].specific_heat_j_per_kg_k).sum()
+    }
+
     /// Conductivity of layer `index` at the wall's temperature `at_k`, over that at the start: 1 / (1 + coefficient (T - start)).
     #[must_use]
     pub fn conductivity_ratio(&self, index: usize, at_k: f64) -> f64 {

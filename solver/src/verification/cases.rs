@@ -4,7 +4,8 @@ use crate::monitor::Unwatched;
 use crate::outcome::{Figure, Outcome};
 use crate::placement::source_sizes;
 use crate::problem::{
-    Accuracy, Extent, Free, Layer, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Traverse, Wall,
+    Accuracy, Extent, Free, Layer, LayerHeat, Mover, Outline, Part, Problem, SnapshotPlan, Travel, Traverse, Wall,
+    Warming,
 };
 use crate::sources::Source;
 
@@ -85,7 +86,7 @@ pub(super) fn steady(wall: Wall, parts: Vec<Part>, velocity_m_per_s: f64) -> Pro
 }
 
 /// Uniform speed through a finite wall, from and to in mm.
-pub(super) fn traverse(speed_m_per_s: f64, from_mm: f64, to_mm: f64) -> Travel {
+pub(crate) fn traverse(speed_m_per_s: f64, from_mm: f64, to_mm: f64) -> Travel {
     Travel::Traverse(Traverse { speed_m_per_s, from_m: from_mm * 1e-3, to_m: to_mm * 1e-3 })
 }
 
@@ -101,18 +102,32 @@ pub(crate) fn fall(release_mm: f64, until_mm: f64, wall_mm: f64) -> Free {
     Free::let_go(release_mm * 1e-3, until_mm * 1e-3, [wall_mm * 1e-3, 0.0])
 }
 
+/// The same problem with its wall's heat followed: every layer as aluminium, insulated.
+pub(crate) fn warmed(problem: Problem) -> Problem {
+    let layer = LayerHeat {
+        density_kg_per_m3: 2700.0,
+        specific_heat_j_per_kg_k: 900.0,
+        thermal_conductivity_w_per_m_k: Some(200.0),
+        resistivity_coefficient_per_k: Some(0.004),
+        trusted_to_k: 473.15,
+        melting_k: None,
+    };
+    let layers = vec![layer; problem.wall.layers.len()];
+    Problem { warming: Some(Warming { start_k: 293.15, layers, cooling: None, duty: None }), ..problem }
+}
+
 /// The answer to a sound problem.
-pub(super) fn answer(problem: &Problem) -> Outcome {
+pub(crate) fn answer(problem: &Problem) -> Outcome {
     assert_eq!(problem.faults(), []);
     crate::solve(problem, &Unwatched).unwrap()
 }
 
 /// A figure by its name.
-pub(super) fn figure<'o>(outcome: &'o Outcome, name: &str) -> &'o Figure {
+pub(crate) fn figure<'o>(outcome: &'o Outcome, name: &str) -> &'o Figure {
     outcome.figures.iter().find(|f| f.name == name).unwrap_or_else(|| panic!("no figure {name}"))
 }
 
 /// A figure's value by its name.
-pub(super) fn value(outcome: &Outcome, name: &str) -> f64 {
+pub(crate) fn value(outcome: &Outcome, name: &str) -> f64 {
     figure(outcome, name).value
 }

@@ -24,6 +24,7 @@ mod sources;
 mod sphere;
 mod step;
 mod verdict;
+mod warmth;
 
 pub use field_coverage::{COVERAGE_SEED, Coverage};
 pub use verdict::{Banded, Comparison, Limits, Series, Verdict};
@@ -106,6 +107,7 @@ pub fn all() -> Vec<Check> {
         field_station::CHECKS,
         field_stroke::CHECKS,
         harmonic::CHECKS,
+        warmth::CHECKS,
         experiment::CHECKS,
     ];
     groups.concat()

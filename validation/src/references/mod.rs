@@ -5,6 +5,7 @@
 
 pub mod coil_impedance;
 pub mod coil_inductance;
+pub mod cooling;
 pub mod cylinder_damping;
 pub mod demagnetisation;
 pub mod dipole_drag;

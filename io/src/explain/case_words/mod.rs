@@ -9,6 +9,7 @@ mod output;
 mod top;
 mod travel;
 mod wall;
+mod warming;
 
 use super::form::Form;
 
@@ -73,6 +74,8 @@ pub const CASE_TABLES: &[CaseTable] = &[
     mover::COIL,
     mover::IRON,
     travel::TRAVEL,
+    warming::COOLING,
+    warming::DUTY,
     curve::CURVE,
     output::ACCURACY,
     output::OUTPUT,

@@ -28,6 +28,14 @@ pub(super) const TOP: CaseTable = CaseTable {
         word("wall", Form::Table, "the conductor at rest: tube, sleeve, layers or rod", "needed", ""),
         word("mover", Form::Table, "everything that travels (under law alternating: the coils at rest)", "needed", ""),
         word("travel", Form::Table, "how the mover travels", "`curve` alone is asked", ""),
+        word(
+            "cooling",
+            Form::Table,
+            "how the wall gives off heat to the air",
+            "the wall gives off none: one event warms it without loss",
+            "",
+        ),
+        word("duty", Form::Table, "the event of [travel] again and again, the wall warming", "one event", ""),
         word("curve", Form::Table, "what `lenzbore curve` sweeps", NOT_ASKED, ""),
         word(
             "tolerance",

@@ -4,6 +4,7 @@ use lenzbore_solver::problem::Quantity as Number;
 
 use super::across::name;
 use super::{CaseTable, word};
+use crate::case::{CONDUCTION, DENSITY, SPECIFIC_HEAT};
 use crate::explain::form::{
     COEFFICIENT, Form, GRADE_VALUE, HOLE, LENGTH, PERMEABILITY, POSITION, TEMPERATURE, quantity,
 };
@@ -89,6 +90,27 @@ pub(super) const LAYER: CaseTable = CaseTable {
             "relative magnetic permeability, linear and without hysteresis",
             "the material's, else 1",
             "permeability = 100",
+        ),
+        word(
+            "density",
+            Form::Quantity(DENSITY.kind, DENSITY.range),
+            "density, for how warm the wall gets",
+            "the material's; with neither, temperatures are left out",
+            "density = \"8940 kg/m3\"",
+        ),
+        word(
+            "specific_heat",
+            Form::Quantity(SPECIFIC_HEAT.kind, SPECIFIC_HEAT.range),
+            "specific heat, taken as constant",
+            "the material's; with neither, temperatures are left out",
+            "specific_heat = \"385 J/(kg K)\"",
+        ),
+        word(
+            "thermal_conductivity",
+            Form::Quantity(CONDUCTION.kind, CONDUCTION.range),
+            "thermal conductivity, taken as constant; [cooling] and [duty] need it",
+            "the material's",
+            "thermal_conductivity = \"340 W/(m K)\"",
         ),
         word(
             "size",

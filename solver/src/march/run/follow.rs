@@ -32,7 +32,13 @@ impl Run<'_, '_> {
         let Some(rule) = self.level.lines.rule() else { return Ok(()) };
         let from = Heights { z: self.level.operators.grid.z.nodes().to_vec(), wall: self.level.operators.wall.clone() };
         let reaction: Vec<f64> = self.state.flux.iter().zip(&self.state.source).map(|(y, s)| y - s).collect();
+        if let Some(heating) = &mut self.heating {
+            heating.leave(self.level);
+        }
         self.level.enter(window)?;
+        if let Some(heating) = &mut self.heating {
+            heating.enter(self.level);
+        }
         let operators = &self.level.operators;
         let (wall, nodes) = (operators.wall.len(), operators.grid.nodes());
         let mut flux = carry(&from, &reaction, (operators.grid.z.nodes(), &operators.wall), rule.ends());

@@ -5,6 +5,7 @@ use crate::fault::SolveFault;
 use crate::fields::snapshot;
 use crate::force::{by_stress, on_mover};
 use crate::interpolate::{ALONG_POINTS, Stencil, peak_near, sampled};
+use crate::march::heating::share_before_end;
 use crate::march::motion::{Motion, losses};
 use crate::march::resample::{Instant, Resampler};
 use crate::march::step::{StepReport, heat_rate};
@@ -37,6 +38,11 @@ impl Run<'_, '_> {
         series.heat_rate_mid.push(heat_rate(self.level, &self.currents));
         series.energy_mid.push(report.energy);
         series.acceleration_mid.push(report.acceleration);
+        if let Some(heating) = &mut self.heating {
+            let ends = (self.state.position - report.travel, self.state.position);
+            let share = share_before_end(&self.course, (begin, dt), ends);
+            heating.add(self.level, &self.currents, (dt, share), self.motion.cycle(begin + 0.5 * dt));
+        }
         if report.held {
             let before = series.velocity[series.velocity.len() - 2];
             series.stopped_at = Some(begin + dt * before / (before - self.state.velocity));
