@@ -52,12 +52,23 @@ pub fn cool_down(
         by_level.push(rows);
     }
     let factors: Vec<f64> = Refinement::first(LEVELS).iter().map(|f| f.factor()).collect();
-    let reading = |row: usize, column: usize| {
-        let ladder = Ladder::new(&factors, by_level.iter().map(|rows| rows[row][column]).collect());
-        let rule = if column < places.len() { local } else { one_route };
-        Measured { value: ladder.value, band: rule(&ladder, 0.0, 0.0) }
+    let ladders = |row: usize| -> Vec<Ladder> {
+        (0..=places.len())
+            .map(|column| Ladder::new(&factors, by_level.iter().map(|rows| rows[row][column]).collect()))
+            .collect()
     };
-    Ok((0..times_s.len()).map(|row| (0..=places.len()).map(|column| reading(row, column)).collect()).collect())
+    Ok((0..times_s.len()).map(|row| banded(ladders(row))).collect())
+}
+
+/// Readings of one instant, the mean last. At one place two extrapolations may agree by accident: no band is narrower than the widest step
+/// of the instant.
+fn banded(ladders: Vec<Ladder>) -> Vec<Measured> {
+    let least = ladders.iter().map(|l| one_route(l, 0.0, 0.0)).fold(0.0, f64::max);
+    let last = ladders.len() - 1;
+    let rule = |column: usize| if column < last { local } else { one_route };
+    let reading =
+        |(column, l): (usize, Ladder)| Measured { value: l.value, band: rule(column)(&l, 0.0, 0.0).max(least) };
+    ladders.into_iter().enumerate().map(reading).collect()
 }
 
 fn conducts(layer: &LayerHeat) -> bool {
