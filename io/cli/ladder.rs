@@ -49,7 +49,7 @@ fn answer(input: &CaseInput, case: &ResolvedCase, curve: bool, terminal: &Termin
     let curve = asks_curve(case, curve);
     let Some(problem) = asked(case, curve) else {
         return Err(End::Input(
-            "the case has no speeds in [curve]; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40"
+            "the case has no [curve] with speeds; add\n  [curve]\n  speeds = [\"0.01 m/s\", \"50 m/s\"]\n  points = 40"
                 .to_owned(),
         ));
     };

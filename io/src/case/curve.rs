@@ -99,6 +99,10 @@ impl Spread {
 
     /// Refuses words that have nothing to spread, notes those left out.
     fn check(&self, reader: &mut Reader, section: &Section<'_>) {
+        if !["speeds", "temperatures", "positions", "frequencies", "amplitudes"].iter().any(|w| section.table.has(w)) {
+            // Nothing is swept: that has its own fault.
+            return;
+        }
         let two = |word: &str| section.table.get(word).is_some_and(is_pair);
         let (speeds, positions) = (two("speeds"), two("positions"));
         for (word, serves) in [("points", speeds || positions), ("spacing", speeds)] {

@@ -4,9 +4,9 @@
 pub(crate) mod demo;
 #[cfg(test)]
 mod demo_fields;
-mod earlier;
 #[cfg(test)]
 mod demo_thermal;
+mod earlier;
 mod fault;
 mod finite;
 pub mod folder;

@@ -163,7 +163,7 @@ fn faults_point_at_line_and_column() {
         ("speed [m/s];drag [N]\n1;2 N\n", "2:3", "a unit belongs in the header"),
         ("speed [m/s];drag [N]\n1;1.234,5\n", "2:3", "digits are not grouped"),
         ("speed [m/s],drag [N]\n0,5,1,25\n", "2:1", "decimal commas need semicolons"),
-        ("speed [m/s];drag [N]\n1\n", "2:1", "the row has 1 cells, the header 2"),
+        ("speed [m/s];drag [N]\n1\n", "2:1", "the row has 1 cell, the header 2"),
         ("speed [m/s];drag [mT]\n1;2\n", "1:13", "'mT' does not measure a force"),
         ("speed [m/s];drag\n1;2\n", "1:13", "has no unit"),
         ("speed [m/s];drog [N]\n1;2\n", "1:13", "did you mean 'drag'?"),
