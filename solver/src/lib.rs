@@ -77,7 +77,7 @@ use problem::{Extent, Problem, Travel};
 /// };
 /// let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
 /// let source = Source::Dipole { moment_a_m2: 1.0 };
-/// let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
 /// let problem = Problem {
 ///     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
 ///     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },
@@ -133,7 +133,7 @@ pub fn solve(problem: &Problem, monitor: &dyn Monitor) -> Result<Outcome, SolveF
 /// # };
 /// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
 /// # let source = Source::Dipole { moment_a_m2: 1.0 };
-/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
 /// # let problem = Problem {
 /// #     wall: Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] },
 /// #     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },
@@ -213,7 +213,7 @@ pub fn small_strokes(
 /// # };
 /// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
 /// # let source = Source::Dipole { moment_a_m2: 1.0 };
-/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
 /// # let problem = Problem {
 /// #     wall: Wall { slots: 0, extent: Extent::Finite { length_m: 0.6 }, layers: vec![layer] },
 /// #     mover: Mover { parts: vec![dipole], mass_kg: None, recoil: None },

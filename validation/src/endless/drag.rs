@@ -35,7 +35,7 @@ pub(super) const TOLERANCE: f64 = 1e-11;
 /// # };
 /// # let outline = Outline { inner_radius_m: 0.0, outer_radius_m: 0.0, length_m: 0.0 };
 /// # let source = Source::Dipole { moment_a_m2: 1.0 };
-/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline };
+/// # let dipole = Part { name: "D".into(), centre_m: 0.0, source, outline, coercivity_a_per_m: None };
 /// # let wall = Wall { slots: 0, extent: Extent::Endless, layers: vec![layer] };
 /// # let mover = Mover { parts: vec![dipole], mass_kg: None, recoil: None };
 /// // A dipole of 1 A m2 in a wall of 10.5 to 12.5 mm and 58 MS/m at 5 m/s, computed independently in another language: 2.212929281 N.
