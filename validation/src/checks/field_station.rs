@@ -49,6 +49,9 @@ fn gauge(name: &str, radius_m: f64, at_m: f64, gauge: Gauge) -> Station {
     Station { name: name.to_owned(), at_m, radius_m, gauge }
 }
 
+/// Values at heights over the mover, m, by the method that the gauge is held against.
+type Exact<'a> = &'a mut dyn FnMut(&[f64]) -> Result<Vec<f64>, Error>;
+
 /// Holds a series against `exact`, by the position of the mover, within `reach` of the gauge: the worst difference, and the instant at which the
 /// band is exceeded most, or is nearest to it.
 fn hold(
@@ -56,7 +59,7 @@ fn hold(
     what: &str,
     (trace, series): (&StationTrace, &StationSeries),
     reach: f64,
-    exact: &mut dyn FnMut(&[f64]) -> Result<Vec<f64>, Error>,
+    exact: Exact<'_>,
 ) -> Result<(), Error> {
     let chosen: Vec<usize> =
         (0..trace.time_s.len()).filter(|k| (trace.position_m[*k] - trace.at_m).abs() <= reach).collect();
