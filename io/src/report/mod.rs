@@ -1,7 +1,7 @@
 //! `report.html`: one page that shows a result folder to people. It is made of the folder's files alone, so that it can be made
 //! again at any time; it holds everything it shows, asks no network, and what it takes from a result is escaped.
 //!
-//! A section is a function of [`source::Source`]; a figure, table or part of the summary that no section knows is shown all the
+//! A section is a function of `source::Source`; a figure, table or part of the summary that no section knows is shown all the
 //! same, as a table and a chart of its own.
 
 mod chart;

@@ -4,15 +4,15 @@
 //! no slots; what is given here is a factor on its drag, an approximation with a model band of its own:
 //!
 //! - at low speed (resistive limit, no induction) the factor of an endless wall lies between two bounds that hold exactly
-//!   ([`strip`]): no current along the radius at all, and no resistance along it. A thin wall has both in one:
+//!   ([`thin_strip_share`]): no current along the radius at all, and no resistance along it. A thin wall has both in one:
 //!   1 - tanh(x)/x, x = k pi a/n, at each axial wavenumber k;
-//! - with induction the mean reaction of the strips' currents is taken in ([`ratio`]); what varies round the wall is not. Half
+//! - with induction the mean reaction of the strips' currents is taken in; what varies round the wall is not. Half
 //!   of what that changes is added to the band: an estimate, no bound.
 //!
 //! Limits: endless wall, permeability 1, slots narrow against the strips and without current across them, magnets coaxial.
 //!
 //! Source of the factor: R. L. Russell and K. H. Norsworthy, Proceedings of the IEE 105A, 163-175 (1958), for sheet rotors (named
-//! from memory); derived again in [`strip`].
+//! from memory); derived again in [`thin_strip_share`].
 
 mod ratio;
 mod spectrum;
