@@ -87,7 +87,7 @@ fn is_of_what_is_missing(fault: &ProblemFault, parts: &Parts<'_, '_>) -> bool {
         // Gates that nobody wrote stand at the ends of the wall, and an endless wall has none.
         ProblemFault::GatesCoincide { .. } => !parts.travel.is_some_and(|t| parts.whole_travel && t.table.has("gates")),
         ProblemFault::StationLaw { .. } | ProblemFault::StationInPath { .. } | ProblemFault::StationFar { .. } => {
-            !parts.whole_travel || parts.wall.extent.is_none()
+            !parts.whole_travel || !parts.whole_wall || parts.wall.extent.is_none()
         }
         ProblemFault::LayerEmpty { .. } | ProblemFault::LayerBeyondWall { .. } => parts.wall.extent.is_none(),
         ProblemFault::Impossible { subject: Subject::Wall, .. } => parts.wall.extent.is_none(),

@@ -1,5 +1,8 @@
 //! Numbers as people read them: in a handy unit, to the digits that the band leaves.
 
+/// Below this a number in K is no temperature of a working wall.
+const COLDEST: f64 = 150.0;
+
 /// A unit as shown, and what a value in SI is multiplied by.
 #[derive(Debug, Clone, PartialEq)]
 pub(super) struct Unit {
@@ -26,6 +29,8 @@ impl Unit {
             "A/m2" if largest >= 1e2 => Self::plain("kA/m²", 1e-3),
             "W/m3" if largest >= 1e6 => Self::plain("W/cm³", 1e-6),
             "J/m3" if largest >= 1e6 => Self::plain("J/cm³", 1e-6),
+            // No wall works so cold: this is a difference of temperatures.
+            "K" if largest < COLDEST => Self::plain("K", 1.0),
             "K" => Self { text: "°C".to_owned(), factor: 1.0, offset: -273.15 },
             "deg" => Self::plain("°", 1.0),
             "s" if largest >= 0.1 => Self::plain("s", 1.0),
@@ -35,6 +40,11 @@ impl Unit {
             }
             other => Self::plain(&raised(other), 1.0),
         }
+    }
+
+    /// The handy unit of what `name` calls: temperatures are shown in degC, their rises in K.
+    pub(super) fn of_named(name: &str, si: &str, largest: f64) -> Self {
+        if si == "K" && name.contains("rise") { Self::plain("K", 1.0) } else { Self::for_values(si, largest) }
     }
 
     fn plain(text: &str, factor: f64) -> Self {
@@ -195,6 +205,8 @@ mod tests {
         assert_eq!(of("m/s2", 81.0), "m/s²");
         assert_eq!(of("1", 9.3), "");
         assert_eq!(Unit::for_values("K", 300.0).of(293.15), 20.0);
+        assert_eq!(Unit::for_values("K", 0.2).of(0.2), 0.2);
+        assert_eq!(Unit::of_named("temperature_rise_peak", "K", 310.0).of(310.0), 310.0);
     }
 
     #[test]

@@ -31,6 +31,23 @@ const FIGURES: &[Figure] = &[
     ("dissipated_power", "Dissipated power", "heat in the wall"),
     ("dissipated_energy", "Dissipated energy", "what the wall takes up as heat, what is still in the field included"),
     ("current_density_peak", "Peak current density", "the densest current anywhere in the wall"),
+    ("temperature_rise_peak", "Peak temperature rise", "the hottest point of the wall, before heat has spread"),
+    ("temperature_rise_mean", "Mean temperature rise", "heat over the heat capacity of the wall"),
+    ("surface_temperature_bore", "Hottest bore surface", "right after the event; with repeats, the last one"),
+    ("surface_temperature_outside", "Hottest outer surface", "right after the event; with repeats, until the next"),
+    ("temperature_settled_peak", "Settled peak temperature", "the hottest point once the repeats have settled"),
+    ("temperature_settled_mean", "Settled mean temperature", "of the wall once the repeats have settled"),
+    ("drag_fade", "Fade of the drag", "share of the first stop's greatest drag that the last stop lacks"),
+    (
+        "demagnetisation_margin",
+        "Demagnetisation margin",
+        "share of the coercivity that the field against a magnet leaves",
+    ),
+    (
+        "demagnetising_field_peak",
+        "Peak demagnetising field",
+        "its own poles, its neighbours and the wall against a magnet",
+    ),
     ("lag_time", "Lag time", "how far the drag trails behind a change of speed"),
     ("resistance", "Resistance", "of the coils, with the wall"),
     ("reactance", "Reactance", "of the coils, with the wall"),
@@ -67,8 +84,20 @@ pub(super) fn rank(name: &str) -> usize {
     FIGURES.iter().position(|f| f.0 == name).unwrap_or(FIGURES.len())
 }
 
+/// What gauges read, by the last word of its figure's name.
+const READINGS: &[(&str, &str)] = &[
+    ("emf_peak", "Peak e.m.f."),
+    ("flux_density_r_peak", "Peak radial flux density"),
+    ("flux_density_z_peak", "Peak axial flux density"),
+    ("current_density_phi_peak", "Peak current density"),
+];
+
 /// The heading of a figure.
 pub(super) fn heading(name: &str) -> String {
+    if let Some((gauge, reading)) = name.strip_prefix("station.").and_then(|rest| rest.rsplit_once('.')) {
+        let known = READINGS.iter().find(|r| r.0 == reading).map_or_else(|| plain(reading), |r| r.1.to_owned());
+        return format!("{known}, gauge {gauge}");
+    }
     FIGURES.iter().find(|f| f.0 == name).map_or_else(|| plain(name), |f| f.1.to_owned())
 }
 

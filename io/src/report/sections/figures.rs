@@ -84,7 +84,7 @@ fn card(name: &str, figure: &Value, left_out: &str) -> Option<String> {
 
 /// A figure's unit; multiples of standard gravity are pure numbers in results.
 fn shown_unit(name: &str, si: &str, value: f64) -> Unit {
-    let unit = Unit::for_values(si, value);
+    let unit = Unit::of_named(name, si, value);
     if name == "felt_acceleration_peak" { Unit { text: "g\u{2080}".to_owned(), ..unit } } else { unit }
 }
 
@@ -127,7 +127,8 @@ fn inputs(spread: Option<&Value>, value: f64, unit: &Unit) -> String {
 /// Where and when a figure is had.
 fn place(place: &Map<String, Value>) -> Option<String> {
     let of = |key: &str| place.get(key).and_then(Value::as_f64);
-    let millimetres = |x: f64| format!("{}\u{a0}mm", significant(1e3 * x, 5));
+    // A place that rounds to zero is zero.
+    let millimetres = |x: f64| format!("{}\u{a0}mm", significant((1e8 * x).round() / 1e5 + 0.0, 5));
     let mut parts = Vec::new();
     parts.extend(of("r_m").map(|r| format!("radius {}", millimetres(r))));
     parts.extend(of("z_m").map(|z| format!("height {}", millimetres(z))));

@@ -81,7 +81,7 @@ fn figure_row(name: &str, figure: &Value, levels: usize) -> Option<Vec<Cell>> {
         return None;
     }
     let (value, band) = (figure.get("value")?.as_f64()?, figure.get("band")?.as_f64()?);
-    let unit = Unit::for_values(figure.get("unit")?.as_str()?, value);
+    let unit = Unit::of_named(name, figure.get("unit")?.as_str()?, value);
     let (shown, half) = with_band(unit.of(value), unit.width(band));
     let mut row = vec![Cell::Text(words::heading(name)), Cell::text(&unit.text)];
     for k in 0..levels {

@@ -47,7 +47,7 @@ fn waterfall(name: &str, figure: &Value, source: &Source) -> Option<Chart> {
         values.iter().filter_map(|v| Some((v.get("effect")?.as_str()?, v.get("value")?.as_f64()?))).collect();
     let (first, last) = (known.first()?, known.last()?);
     let largest = known.iter().fold(0.0_f64, |m, (_, v)| m.max(v.abs()));
-    let unit = Unit::for_values(figure.get("unit")?.as_str()?, largest);
+    let unit = Unit::of_named(name, figure.get("unit")?.as_str()?, largest);
     let shown = |value: f64| significant(unit.of(value), 4) + &unit.behind();
     let whole = |name: String, value: f64| Bar { name, from: 0.0, to: unit.of(value), text: shown(value), whole: true };
     let mut bars = vec![whole(format!("{} alone", first.0), first.1)];

@@ -33,7 +33,7 @@ pub(super) fn shown(table: &Table, stem: &str) -> Option<Shown> {
     let least = numbers.iter().filter(|x| x.is_finite()).fold(f64::INFINITY, |m, x| m.min(*x));
     let usual =
         if matches!(stem, "speed" | "frequency") && is_wide(numbers) { (least * largest).sqrt() } else { largest };
-    let unit = Unit::for_values(&column.unit, usual);
+    let unit = Unit::of_named(stem, &column.unit, usual);
     let band = table.band_of(stem).map_or_else(Vec::new, |b| b.iter().map(|x| unit.width(*x)).collect());
     let values = numbers.iter().map(|x| unit.of(*x)).collect();
     let axis = Axis { name: words::column(stem), unit: unit.text.clone(), log: false };
