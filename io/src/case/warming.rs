@@ -109,8 +109,15 @@ fn repeats(reader: &mut Reader, section: &Section<'_>) -> Option<Option<u32>> {
         reader.note(section, "repeats", ResolvedValue::Text(UNTIL_SETTLED.to_owned()), "", Origin::Default { why });
         return Some(None);
     };
-    if let Value::Text(_) = node.value {
-        return reader.choice(section, "repeats", &[UNTIL_SETTLED], "repeats = 30").map(|_| None);
+    if let Value::Text(text) = &node.value {
+        if text.trim() == UNTIL_SETTLED {
+            return reader.choice(section, "repeats", &[UNTIL_SETTLED], "repeats = 30").map(|_| None);
+        }
+        let choices = vec![UNTIL_SETTLED.to_owned(), format!("a whole number from 1 to {MOST_STOPS}")];
+        let nearest = crate::message::nearest(text, [UNTIL_SETTLED]).map(str::to_owned);
+        let fault = CaseFault::UnknownChoice { word: "repeats".to_owned(), found: text.clone(), choices, nearest };
+        reader.fault(node.place.clone(), fault);
+        return None;
     }
     reader.count(section, "repeats", 1, MOST_STOPS).map(|n| u32::try_from(n).ok())
 }
