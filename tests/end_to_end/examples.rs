@@ -12,7 +12,7 @@
 
 use serde_json::Value;
 
-use crate::rig::{Bench, band, entries, figure, read_json, root};
+use crate::rig::{Bench, band, check_shown, entries, figure, read_json, root};
 
 /// A headline number, its relative tolerance and where it comes from.
 struct Headline {
@@ -76,29 +76,6 @@ fn check_ledger(name: &str, summary: &Value) {
     assert!(open.abs() < 1e-5, "{name}: the ledger is open by {open}");
 }
 
-/// The README shows what this version gives: each of its figures lies within the two bands of the one just computed.
-fn check_readme(ended: &str, summary: &Value) {
-    let text = std::fs::read_to_string(root().join("README.md")).unwrap();
-    let (_, block) = text.split_once(ended).unwrap_or_else(|| panic!("README.md shows no result that {ended}"));
-    let mut shown = 0;
-    for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
-        let (left, right) = line.split_once(" +/- ").unwrap();
-        let mut words = left.split_whitespace();
-        let (name, printed) = (words.next().unwrap(), words.next().unwrap());
-        let value: f64 = printed.parse().unwrap();
-        // A figure without a numerical band is as exact as it is printed.
-        let decimals = printed.split_once('.').map_or(0, |(_, d)| d.split('e').next().unwrap().len());
-        let rounding = 0.51 * 10.0_f64.powi(-i32::try_from(decimals).unwrap());
-        let shown_band: f64 = right.split_whitespace().next().unwrap().parse().unwrap();
-        let apart = (value - figure(summary, name)).abs();
-        let bands = shown_band + band(summary, name);
-        let allowed = if bands > 0.0 { 1.05 * bands } else { rounding };
-        assert!(apart <= allowed, "README.md shows {name} = {value}: {apart} away");
-        shown += 1;
-    }
-    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "README.md shows every figure");
-}
-
 #[test]
 fn arrest_sleeve_runs() {
     let name = "arrest-sleeve";
@@ -112,7 +89,7 @@ fn arrest_sleeve_runs() {
         reg("deceleration_peak", 81.42305),
     ];
     check(name, &summary, &expected);
-    check_readme("ended: end of travel", &summary);
+    check_shown("README.md", "ended: end of travel", &summary);
     check_ledger(name, &summary);
 }
 
@@ -122,7 +99,7 @@ fn arrest_sleeve_has_a_curve() {
     let summary = solve("curve", name);
     check_independent(name, &summary);
     check(name, &summary, &[reg("drag_max", 336.9801), reg("critical_speed", 15.65202)]);
-    check_readme("ended: settled", &summary);
+    check_shown("README.md", "ended: settled", &summary);
     assert_eq!(summary["curve"].as_array().unwrap().len(), 40);
     // The carrier's weight over the slope at low speed is the speed at which it settles, within what 0.24 m/s bends the slope.
     let settled = 1.1 * 9.80665 / figure(&summary, "damping_coefficient_zero_speed");

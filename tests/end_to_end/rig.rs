@@ -165,3 +165,26 @@ pub fn read_json(path: &Path) -> Value {
 pub fn root() -> &'static Path {
     Path::new(env!("CARGO_MANIFEST_DIR"))
 }
+
+/// The document `file` shows what this version gives: in its block behind `marker` each figure lies within the two bands of the one just
+/// computed, and none lacks.
+pub fn check_shown(file: &str, marker: &str, summary: &Value) {
+    let text = std::fs::read_to_string(root().join(file)).unwrap();
+    let (_, block) = text.split_once(marker).unwrap_or_else(|| panic!("{file} shows no result behind {marker}"));
+    let mut shown = 0;
+    for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
+        let (left, right) = line.split_once(" +/- ").unwrap();
+        let mut words = left.split_whitespace();
+        let (name, printed) = (words.next().unwrap(), words.next().unwrap());
+        let value: f64 = printed.parse().unwrap();
+        // A figure without a numerical band is as exact as it is printed.
+        let decimals = printed.split_once('.').map_or(0, |(_, d)| d.split('e').next().unwrap().len());
+        let rounding = 0.51 * 10.0_f64.powi(-i32::try_from(decimals).unwrap());
+        let bands = right.split_whitespace().next().unwrap().parse::<f64>().unwrap() + band(summary, name);
+        let allowed = if bands > 0.0 { 1.05 * bands } else { rounding };
+        let apart = (value - figure(summary, name)).abs();
+        assert!(apart <= allowed, "{file} shows {name} = {value}: {apart} away");
+        shown += 1;
+    }
+    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "{file} shows every figure");
+}

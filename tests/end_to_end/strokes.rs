@@ -2,7 +2,7 @@
 
 use serde_json::Value;
 
-use crate::rig::{Bench, band, entries, figure, read_json, root};
+use crate::rig::{Bench, band, check_shown, entries, figure, read_json, root};
 
 const STROKE: &str = "stroke-damper";
 const CAM: &str = "cam-follower";
@@ -21,28 +21,11 @@ fn run(name: &str, sets: &[&str]) -> (Value, Bench) {
     (summary, bench)
 }
 
-/// The guide shows what this version gives: each of its figures lies within the two bands of the one just computed.
-fn check_guide(title: &str, summary: &Value) {
-    let text = std::fs::read_to_string(root().join("io/guide/src/case/damper.md")).unwrap();
-    let (_, block) = text.split_once(&format!("```text\n{title}\n")).expect("the guide shows this result");
-    let mut shown = 0;
-    for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
-        let (left, right) = line.split_once(" +/- ").unwrap();
-        let mut words = left.split_whitespace();
-        let (name, value) = (words.next().unwrap(), words.next().unwrap().parse::<f64>().unwrap());
-        let shown_band: f64 = right.split_whitespace().next().unwrap().parse().unwrap();
-        let apart = (value - figure(summary, name)).abs();
-        assert!(apart <= 1.05 * (shown_band + band(summary, name)), "the guide shows {name} = {value}: {apart} away");
-        shown += 1;
-    }
-    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "the guide shows every figure");
-}
-
 #[test]
 fn a_stroke_settles_and_its_loss_is_work_and_heat() {
     let (summary, bench) = run(STROKE, &[]);
     assert!(summary["accuracy"]["met"].as_bool().unwrap() && summary["forces"]["agree"].as_bool().unwrap());
-    check_guide("Stroke damper for a slender tool", &summary);
+    check_shown("io/guide/src/case/damper.md", "```text\nStroke damper for a slender tool\n", &summary);
     let loss = figure(&summary, "loss_per_cycle");
     for part in ["work", "heat"] {
         let other = summary["ledger"][part].as_f64().unwrap();
