@@ -166,9 +166,14 @@ pub fn root() -> &'static Path {
     Path::new(env!("CARGO_MANIFEST_DIR"))
 }
 
-/// The document `file` shows what this version gives: in its block behind `marker` each figure lies within the two bands of the one just
-/// computed, and none lacks.
+/// The document `file` shows what this version gives: all figures, in its block behind `marker`.
 pub fn check_shown(file: &str, marker: &str, summary: &Value) {
+    let shown = count_shown(file, marker, summary);
+    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "{file} shows every figure");
+}
+
+/// How many figures the block of `file` behind `marker` shows; each lies within the two bands of the one just computed.
+pub fn count_shown(file: &str, marker: &str, summary: &Value) -> usize {
     let text = std::fs::read_to_string(root().join(file)).unwrap();
     let (_, block) = text.split_once(marker).unwrap_or_else(|| panic!("{file} shows no result behind {marker}"));
     let mut shown = 0;
@@ -186,5 +191,19 @@ pub fn check_shown(file: &str, marker: &str, summary: &Value) {
         assert!(apart <= allowed, "{file} shows {name} = {value}: {apart} away");
         shown += 1;
     }
-    assert_eq!(shown, summary["figures"].as_object().unwrap().len(), "{file} shows every figure");
+    shown
+}
+
+/// The summary and the result folder of an example that is run with overrides.
+pub fn run_example(name: &str, sets: &[&str]) -> (Value, Bench) {
+    let bench = Bench::new();
+    let case = root().join(format!("examples/{name}.toml"));
+    let mut words = vec!["run", case.to_str().unwrap(), "--json", "--out", "result"];
+    for set in sets {
+        words.extend(["--set", set]);
+    }
+    let summary = bench.succeed(&words).json();
+    assert_eq!(summary, read_json(&bench.path("result/summary.json")));
+    crate::words::assert_figures_are_explained(&summary);
+    (summary, bench)
 }

@@ -1,29 +1,14 @@
 //! Strokes and motions from a table: what the binary reads, writes and says of them.
 
-use serde_json::Value;
-
-use crate::rig::{Bench, band, check_shown, entries, figure, read_json, root};
+use crate::rig::{Bench, band, check_shown, entries, figure, root, run_example};
 
 const STROKE: &str = "stroke-damper";
 const CAM: &str = "cam-follower";
 const DAMPING: &str = "damping_coefficient_equivalent";
 
-/// The summary and the result folder of an example.
-fn run(name: &str, sets: &[&str]) -> (Value, Bench) {
-    let bench = Bench::new();
-    let case = root().join(format!("examples/{name}.toml"));
-    let mut words = vec!["run", case.to_str().unwrap(), "--json", "--out", "result"];
-    for set in sets {
-        words.extend(["--set", set]);
-    }
-    let summary = bench.succeed(&words).json();
-    assert_eq!(summary, read_json(&bench.path("result/summary.json")));
-    (summary, bench)
-}
-
 #[test]
 fn a_stroke_settles_and_its_loss_is_work_and_heat() {
-    let (summary, bench) = run(STROKE, &[]);
+    let (summary, bench) = run_example(STROKE, &[]);
     assert!(summary["accuracy"]["met"].as_bool().unwrap() && summary["forces"]["agree"].as_bool().unwrap());
     check_shown("io/guide/src/case/damper.md", "```text\nStroke damper for a slender tool\n", &summary);
     let loss = figure(&summary, "loss_per_cycle");
@@ -49,7 +34,7 @@ fn a_stroke_settles_and_its_loss_is_work_and_heat() {
 /// the damping coefficient and 2 % to the stiffness, a hundredth of it a ten-thousandth of that.
 #[test]
 fn small_strokes_are_those_of_a_small_amplitude() {
-    let (summary, bench) = run(STROKE, &["travel.amplitude=40 um"]);
+    let (summary, bench) = run_example(STROKE, &["travel.amplitude=40 um"]);
     let points = summary["strokes"]["points"].as_array().unwrap();
     let own = points.iter().find(|p| p["frequency_Hz"].as_f64() == Some(85.0)).unwrap();
     for (word, name) in [("damping_coefficient_N_s_per_m", DAMPING), ("stiffness_N_per_m", "stiffness")] {
@@ -80,7 +65,7 @@ fn as_many_cycles_as_the_case_asks() {
     assert_eq!(ran.status, Some(4), "{}", ran.errors);
     assert!(ran.errors.contains("leave 'cycles' out of the travel, or give more"), "{}", ran.errors);
     let one = ran.json();
-    let (all, _) = run(STROKE, &["travel.frequency=600 Hz", "travel.amplitude=1 mm"]);
+    let (all, _) = run_example(STROKE, &["travel.frequency=600 Hz", "travel.amplitude=1 mm"]);
     let off = (figure(&one, DAMPING) - figure(&all, DAMPING)).abs();
     assert!(off > 0.01 * figure(&all, DAMPING) && off <= band(&one, DAMPING), "{off} and {}", band(&one, DAMPING));
     let cautions = one["cautions"].as_array().unwrap();
@@ -89,7 +74,7 @@ fn as_many_cycles_as_the_case_asks() {
 
 #[test]
 fn a_table_beside_the_case_is_followed() {
-    let (summary, bench) = run(CAM, &[]);
+    let (summary, bench) = run_example(CAM, &[]);
     assert!(summary["accuracy"]["met"].as_bool().unwrap() && summary["forces"]["agree"].as_bool().unwrap());
     assert!(summary["ledger"]["imbalance_relative"].as_f64().unwrap().abs() < 1e-5);
     // At rest at the end: the work is heat, and the field has died away.

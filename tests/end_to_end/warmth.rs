@@ -1,28 +1,12 @@
 //! How warm the wall gets: what the binary reads, writes and says of it.
 
-use serde_json::Value;
-
-use crate::rig::{Bench, band, entries, figure, read_json, root};
+use crate::rig::{Bench, count_shown, entries, figure, root, run_example};
 
 const SHUTTLE: &str = "shuttle-brake";
 
-/// The summary and the result folder of an example with overrides.
-fn run(name: &str, sets: &[&str]) -> (Value, Bench) {
-    let bench = Bench::new();
-    let case = root().join(format!("examples/{name}.toml"));
-    let mut words = vec!["run", case.to_str().unwrap(), "--json", "--out", "result"];
-    for set in sets {
-        words.extend(["--set", set]);
-    }
-    let summary = bench.succeed(&words).json();
-    assert_eq!(summary, read_json(&bench.path("result/summary.json")));
-    crate::words::assert_figures_are_explained(&summary);
-    (summary, bench)
-}
-
 #[test]
 fn a_duty_settles_where_it_gives_off_what_each_stop_brings() {
-    let (summary, bench) = run(SHUTTLE, &[]);
+    let (summary, bench) = run_example(SHUTTLE, &[]);
     assert!(summary["accuracy"]["met"].as_bool().unwrap());
     let thermal = &summary["thermal"];
     assert!(thermal["duty"]["settled"].as_bool().unwrap());
@@ -41,27 +25,7 @@ fn a_duty_settles_where_it_gives_off_what_each_stop_brings() {
     assert_eq!(text.lines().count() - 1, usize::try_from(thermal["duty"]["stops"].as_u64().unwrap()).unwrap());
     let cautions = summary["cautions"].to_string();
     assert!(cautions.contains("ISO 13732-1") && cautions.contains("the drag would change"), "{cautions}");
-    check_guide(&summary);
-}
-
-/// The guide shows what this version gives.
-fn check_guide(summary: &Value) {
-    let text = std::fs::read_to_string(root().join("io/guide/src/case/warmth.md")).unwrap();
-    let (_, block) = text.split_once("# How warm the wall gets").expect("the guide tells of it");
-    let (_, block) = block.split_once("```text\n").unwrap();
-    let mut shown = 0;
-    for line in block.lines().take_while(|l| *l != "```").filter(|l| l.contains(" +/- ")) {
-        let (left, right) = line.split_once(" +/- ").unwrap();
-        let mut words = left.split_whitespace();
-        let (name, value) = (words.next().unwrap(), words.next().unwrap().parse::<f64>().unwrap());
-        let shown_band: f64 = right.split_whitespace().next().unwrap().parse().unwrap();
-        let apart = (value - figure(summary, name)).abs();
-        assert!(
-            apart <= 1.05 * (shown_band + band(summary, name)) + 1e-7 * value.abs(),
-            "the guide shows {name} = {value}"
-        );
-        shown += 1;
-    }
+    let shown = count_shown("io/guide/src/case/warmth.md", "# How warm the wall gets", &summary);
     assert!(shown > 10, "{shown}");
 }
 

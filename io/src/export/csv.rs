@@ -6,7 +6,8 @@ use std::path::Path;
 use lenzbore_solver::outcome::{Fields, Snapshot};
 use serde_json::{Value, json};
 
-use super::{Sheaf, fields};
+use super::fields;
+use crate::result::Sheaf;
 use crate::result::{IoFault, names};
 
 /// Which snapshot.

@@ -7,8 +7,9 @@ use std::fmt::Write as _;
 use lenzbore_solver::system::{LevelSystem, SparseMatrix};
 use serde_json::{Value, json};
 
-use super::{Sheaf, Systems};
+use super::Systems;
 use crate::result::IoFault;
+use crate::result::Sheaf;
 
 /// Writes every level, and says how they belong together.
 pub(super) fn write(sheaf: &mut Sheaf<'_>, systems: &Systems) -> Result<Value, IoFault> {

@@ -16,7 +16,7 @@ use lenzbore_solver::system::LevelSystem;
 use serde_json::{Value, json};
 
 use crate::result::folder::PendingFolder;
-use crate::result::{Earlier, IoFault, names, read_fields, xdmf};
+use crate::result::{Earlier, IoFault, Sheaf, names, read_fields, xdmf};
 
 pub use csv::Chosen;
 
@@ -109,23 +109,4 @@ fn copy_with_index(sheaf: &mut Sheaf<'_>, folder: &Path) -> Result<Value, IoFaul
     sheaf.files.push(names::FIELDS.to_owned());
     sheaf.put(names::FIELDS_INDEX, xdmf(&fields).as_bytes())?;
     Ok(json!("open run.xdmf: the half-plane lies with r along x and z along y; names of arrays end in their units"))
-}
-
-/// A pending folder and what is in it so far.
-struct Sheaf<'a> {
-    pending: PendingFolder,
-    files: Vec<String>,
-    monitor: &'a dyn Monitor,
-}
-
-impl Sheaf<'_> {
-    /// Writes a file, unless the user wants to stop.
-    fn put(&mut self, name: &str, bytes: &[u8]) -> Result<(), IoFault> {
-        if self.monitor.cancelled() {
-            return Err(IoFault::Interrupted);
-        }
-        self.pending.write(name, bytes)?;
-        self.files.push(name.to_owned());
-        Ok(())
-    }
 }

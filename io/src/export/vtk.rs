@@ -10,8 +10,8 @@ use base64::engine::general_purpose::STANDARD;
 use lenzbore_solver::outcome::{Fields, Snapshot};
 use serde_json::{Value, json};
 
-use super::Sheaf;
 use crate::result::IoFault;
+use crate::result::Sheaf;
 
 /// The series.
 const SERIES: &str = "fields.pvd";

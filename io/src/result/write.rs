@@ -9,6 +9,7 @@ use lenzbore_solver::problem::Problem;
 use super::fault::IoFault;
 use super::folder::PendingFolder;
 use super::header::ResultHeader;
+use super::sheaf::Sheaf;
 use super::{
     across_columns, csv, curve_columns, duty_columns, frequency_columns, hdf5, names, position_columns,
     sensitivities_csv, stations_csv, stroke_columns, stroke_curve_columns, summary_text, temperature_columns,
@@ -141,27 +142,6 @@ pub fn pictures_of(header: &ResultHeader, problem: &Problem, outcome: &Outcome) 
         all.extend(picture::overview(&header.title, &header.geometry));
     }
     Ok(all)
-}
-
-/// A pending folder and what is in it so far.
-struct Sheaf<'a> {
-    pending: PendingFolder,
-    files: Vec<String>,
-    monitor: &'a dyn Monitor,
-}
-
-impl Sheaf<'_> {
-    fn put(&mut self, name: &str, bytes: &[u8]) -> Result<(), IoFault> {
-        self.pause()?;
-        self.pending.write(name, bytes)?;
-        self.files.push(name.to_owned());
-        Ok(())
-    }
-
-    /// Ends here if the user wants so.
-    fn pause(&self) -> Result<(), IoFault> {
-        if self.monitor.cancelled() { Err(IoFault::Interrupted) } else { Ok(()) }
-    }
 }
 
 fn tables(sheaf: &mut Sheaf<'_>, outcome: &Outcome) -> Result<(), IoFault> {
